@@ -1,0 +1,119 @@
+# gridleak. The two commands of the README: make demo, make check.
+VERSION = 0.1.0
+BUILD = build
+PREFIX = /usr/local
+CC = gcc
+OPTIMISE = -O2 -g
+WARNINGS = -Wall -Wextra -Wconversion -Wshadow -Werror=switch
+EXTRA =
+CFLAGS = -std=c11 -D_GNU_SOURCE -DGRIDLEAK_VERSION='"$(VERSION)"' $(OPTIMISE) $(WARNINGS) $(EXTRA) \
+         -Isrc $(shell pkg-config --cflags harfbuzz-subset yaml-0.1 libcmark cminpack libcjson)
+LDLIBS = $(shell pkg-config --libs yaml-0.1 libcmark harfbuzz-subset libpng libturbojpeg cminpack nettle \
+         libcjson) -lutf8proc -lhpdf -ldeflate -lpthread -lm
+
+# What a bare Debian 12 needs to build and run, and what it needs besides to check.
+BUILD_PACKAGES = gcc make libc6-dev pkg-config libyaml-dev libcmark-dev libhpdf-dev libharfbuzz-dev \
+    libdeflate-dev libpng-dev libturbojpeg0-dev libcminpack-dev nettle-dev libcjson-dev libutf8proc-dev \
+    fonts-open-sans fonts-dejavu-core fonts-dejavu-extra icc-profiles-free
+CHECK_PACKAGES = libcmocka-dev clang-format clang-tidy cppcheck valgrind jq ngspice qpdf poppler-utils \
+    openjdk-17-jre-headless libpdfbox2-java libactivation-java libjaxb-api-java nodejs npm chromium \
+    python3 git openssh-client
+
+# From low to high: a module may use those before it and no other.
+MODULES = base quantity reference job assess report write archive
+objects_of = $(patsubst src/%.c,$(BUILD)/src/%.o,$(wildcard src/$(1)/*.c))
+library_of = $(BUILD)/lib$(1).a
+# The libraries of a module and of all below it, highest first, as the linker wants them.
+down_from = $(call reverse,$(call up_to,$(1),$(MODULES)))
+up_to = $(if $(filter $(1),$(firstword $(2))),$(1),$(if $(2),$(firstword $(2)) $(call up_to,$(1),$(wordlist 2,99,$(2)))))
+reverse = $(if $(1),$(call reverse,$(wordlist 2,99,$(1))) $(firstword $(1)))
+libraries_from = $(foreach module,$(call down_from,$(1)),$(call library_of,$(module)))
+
+FONTS = OpenSans-Regular OpenSans-Semibold OpenSans-Italic OpenSans-SemiboldItalic DejaVuSansCondensed \
+    DejaVuSansCondensed-Bold DejaVuSansCondensed-Oblique DejaVuSansMono
+SHARE = $(BUILD)/share/gridleak
+TEMPLATES = $(wildcard templates/*)
+SHARE_FILES = $(patsubst templates/%,$(SHARE)/templates/%,$(TEMPLATES)) \
+    $(patsubst %,$(SHARE)/fonts/%.ttf,$(FONTS)) $(SHARE)/fonts/sRGB.icc
+
+all: $(BUILD)/gridleak $(SHARE_FILES)
+
+$(BUILD)/gridleak: $(BUILD)/src/main.o $(call libraries_from,archive)
+	$(CC) $(CFLAGS) $^ $(LDLIBS) -o $@
+
+$(BUILD)/src/%.o: src/%.c
+	@mkdir -p $(@D)
+	$(CC) $(CFLAGS) -MMD -MP -c $< -o $@
+
+define library
+$(call library_of,$(1)): $(call objects_of,$(1))
+	@mkdir -p $$(@D)
+	@rm -f $$@
+	ar rcs $$@ $$^
+endef
+$(foreach module,$(MODULES),$(eval $(call library,$(module))))
+
+$(SHARE)/templates/%: templates/%
+	@mkdir -p $(@D)
+	cp $< $@
+
+$(SHARE)/fonts/%.ttf:
+	@mkdir -p $(@D)
+	cp $$(find /usr/share/fonts -name $*.ttf | head -n 1) $@
+
+$(SHARE)/fonts/sRGB.icc:
+	@mkdir -p $(@D)
+	cp /usr/share/color/icc/sRGB.icc $@
+
+# ---- tests: tests/unit/<module>/<name>_test.c is a program of its own, linked with its module and
+# those below only.
+UNIT_SOURCES = $(wildcard tests/unit/*/*_test.c)
+UNIT_TESTS = $(patsubst %.c,$(BUILD)/%,$(UNIT_SOURCES))
+
+define unit_rule
+$(BUILD)/tests/unit/$(1)/%_test: tests/unit/$(1)/%_test.c $(call libraries_from,$(1))
+	@mkdir -p $$(@D)
+	$(CC) $(CFLAGS) -Itests $$^ $(LDLIBS) -lcmocka -o $$@
+endef
+$(foreach module,$(MODULES),$(eval $(call unit_rule,$(module))))
+
+unit: $(UNIT_TESTS)
+	tests/run-unit.sh $(UNIT_TESTS)
+
+packages:
+	@tests/packages.sh $(BUILD_PACKAGES)
+
+check-packages:
+	@tests/packages.sh $(BUILD_PACKAGES) $(CHECK_PACKAGES)
+
+demo: packages
+	$(MAKE) all
+	$(BUILD)/gridleak publish jobs-example -o output
+
+check: check-packages
+	$(MAKE) all $(UNIT_TESTS)
+	tests/run.sh $(BUILD) $(UNIT_TESTS)
+
+lint:
+	tests/lint/run.sh
+
+format:
+	clang-format -i $$(git ls-files 'src/*.[ch]' 'tests/*.[ch]')
+
+install: all
+	install -d $(DESTDIR)$(PREFIX)/bin $(DESTDIR)$(PREFIX)/share/gridleak/templates \
+	    $(DESTDIR)$(PREFIX)/share/gridleak/fonts $(DESTDIR)$(PREFIX)/share/man/man1
+	install -m 755 $(BUILD)/gridleak $(DESTDIR)$(PREFIX)/bin/gridleak
+	install -m 644 $(SHARE)/templates/* $(DESTDIR)$(PREFIX)/share/gridleak/templates
+	install -m 644 $(SHARE)/fonts/* $(DESTDIR)$(PREFIX)/share/gridleak/fonts
+
+uninstall:
+	rm -f $(DESTDIR)$(PREFIX)/bin/gridleak $(DESTDIR)$(PREFIX)/share/man/man1/gridleak.1
+	rm -rf $(DESTDIR)$(PREFIX)/share/gridleak
+
+clean:
+	rm -rf $(BUILD) asan
+
+-include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
+.PHONY: all unit packages check-packages demo check lint format install uninstall clean
+.SECONDARY:

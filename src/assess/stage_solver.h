@@ -1,0 +1,60 @@
+/*
+ * The direct voltages and currents of one or several coupled stages with leaking capacitors.
+ *
+ * Circuit voltages are to chassis. Every stage has: grid leak to `return_v` (plus the back bias),
+ * a coupling leak (a source behind a resistance), anode and screen fed through resistances, a
+ * cathode resistance. Leaks are conductances in siemens, 0: none. Stages that name the same node
+ * share one resistor and are solved together. Nested brackets, no starting value: the root is
+ * unique (methods: "Solver").
+ */
+#ifndef ASSESS_STAGE_SOLVER_H
+#define ASSESS_STAGE_SOLVER_H
+
+#include "assess/valve_law.h"
+
+struct stage_circuit {
+    struct valve_law law;
+    double supply_v;        /* HT at the anode load's far end */
+    double anode_ohm;       /* d.c. resistance of the load */
+    double screen_supply_v; /* screen valves */
+    double screen_ohm;      /* the dropper */
+    double cathode_ohm;     /* 0: cathode at chassis */
+    double grid_leak_ohm;
+    double return_v;          /* volts at the far end of the grid leak, without back bias */
+    bool contact_bias;        /* grounded cathode, bias out of the grid current */
+    double coupling_source_v; /* e.m.f. behind the coupling capacitor */
+    double coupling_source_ohm;
+    double coupling_leak_s; /* all leaks onto this grid together */
+    double screen_leak_s;   /* screen to chassis */
+    double cathode_leak_s;  /* across the cathode resistor */
+    double anode_leak_s;    /* anode to chassis */
+    int cathode_node;       /* stages with the same number >= 0 share one cathode resistor */
+    int screen_node;        /* the same for one screen dropper */
+    int bias_node;          /* the same for one resistance in the negative HT lead */
+    double bias_ohm;        /* of that resistance; 0: none */
+    double bias_leak_s;     /* across it (bias bypass) */
+    double bias_others_a;   /* current of the rest of the set through it */
+};
+
+enum solve_status {
+    SOLVE_OK,
+    SOLVE_BOTTOMED,     /* the anode is below V_g2/5: voltages stand, no figure for the split */
+    SOLVE_BELOW_BOUNDS, /* under 20 % of the row's current: outside the law's stated bounds */
+    SOLVE_IMPOSSIBLE    /* a negative resistance or a supply of 0 V; solution untouched */
+};
+
+struct stage_solution {
+    enum solve_status status;
+    double grid_v, cathode_v, anode_v, screen_v; /* screen NaN for a triode */
+    double anode_a, screen_a, cathode_a, grid_a;
+    double anode_w, screen_w; /* dissipation in the valve */
+    double screen_resistor_w;
+    double return_v; /* far end of the grid leak, back bias included */
+};
+
+/* Solve `count` stages (1 to 8) that are coupled through their nodes; solutions[i] for circuits[i].
+   The worst status is returned. */
+enum solve_status stages_solve(const struct stage_circuit *circuits, size_t count,
+                               struct stage_solution *solutions);
+
+#endif

@@ -1,0 +1,201 @@
+#include "base/file.h"
+
+#include "base/memory.h"
+
+#include <dirent.h>
+#include <errno.h>
+#include <fcntl.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <sys/stat.h>
+#include <unistd.h>
+
+static enum file_status status_of(int error)
+{
+    switch (error) {
+    case ENOENT:
+    case ENOTDIR:
+        return FILE_MISSING;
+    case EACCES:
+    case EPERM:
+    case EROFS:
+        return FILE_FORBIDDEN;
+    case ENOSPC:
+    case EDQUOT:
+        return FILE_DISK_FULL;
+    default:
+        return FILE_FAILED;
+    }
+}
+
+const char *file_status_text(enum file_status status)
+{
+    switch (status) {
+    case FILE_OK:
+        return "no error";
+    case FILE_MISSING:
+        return "no such file";
+    case FILE_FORBIDDEN:
+        return "not permitted";
+    case FILE_NOT_REGULAR:
+        return "not a regular file";
+    case FILE_LARGE:
+        return "too large";
+    case FILE_DISK_FULL:
+        return "the disk is full";
+    case FILE_FAILED:
+        return strerror(errno);
+    }
+    return "";
+}
+
+static enum file_status read_all(int file, size_t limit_bytes, struct buffer *contents)
+{
+    struct stat about;
+    if (fstat(file, &about) != 0)
+        return status_of(errno);
+    if (S_ISDIR(about.st_mode))
+        return FILE_NOT_REGULAR;
+    size_t before = contents->length;
+    for (;;) {
+        size_t expected =
+            about.st_size > 0 && contents->length == before ? (size_t)about.st_size + 1 : 65536;
+        if (expected > limit_bytes + 1)
+            expected = limit_bytes + 1;
+        buffer_reserve(contents, expected);
+        ssize_t got = read(file, contents->data + contents->length, expected);
+        if (got < 0 && errno == EINTR)
+            continue;
+        if (got < 0) {
+            contents->length = before;
+            return status_of(errno);
+        }
+        if (got == 0)
+            return FILE_OK;
+        contents->length += (size_t)got;
+        if (contents->length - before > limit_bytes) {
+            contents->length = before;
+            return FILE_LARGE;
+        }
+    }
+}
+
+enum file_status file_read(const char *path, size_t limit_bytes, struct buffer *contents)
+{
+    int file = open(path, O_RDONLY | O_CLOEXEC | O_NONBLOCK);
+    if (file < 0)
+        return status_of(errno);
+    enum file_status status = read_all(file, limit_bytes, contents);
+    close(file);
+    return status;
+}
+
+static bool holds_already(const char *path, const void *data, size_t length)
+{
+    struct stat about;
+    if (lstat(path, &about) != 0 || !S_ISREG(about.st_mode) || (size_t)about.st_size != length)
+        return false;
+    struct buffer old = {0};
+    bool same = file_read(path, length, &old) == FILE_OK && old.length == length &&
+                (length == 0 || memcmp(old.data, data, length) == 0);
+    buffer_release(&old);
+    return same;
+}
+
+static enum file_status write_all(int file, const char *data, size_t length)
+{
+    while (length > 0) {
+        ssize_t written = write(file, data, length);
+        if (written < 0 && errno == EINTR)
+            continue;
+        if (written < 0)
+            return status_of(errno);
+        data += written;
+        length -= (size_t)written;
+    }
+    return FILE_OK;
+}
+
+enum file_status file_write(const char *path, const void *data, size_t length, bool *changed)
+{
+    if (changed)
+        *changed = false;
+    if (holds_already(path, data, length))
+        return FILE_OK;
+    struct buffer aside = {0};
+    buffer_print(&aside, "%s.part-%ld", path, (long)getpid());
+    const char *aside_path = buffer_string(&aside);
+    enum file_status status = FILE_OK;
+    int file = open(aside_path, O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
+    if (file < 0) {
+        status = status_of(errno);
+    } else {
+        status = write_all(file, data, length);
+        if (close(file) != 0 && status == FILE_OK)
+            status = status_of(errno);
+        if (status == FILE_OK && rename(aside_path, path) != 0)
+            status = status_of(errno);
+        if (status != FILE_OK) {
+            int error = errno;
+            unlink(aside_path);
+            errno = error;
+        }
+    }
+    buffer_release(&aside);
+    if (changed)
+        *changed = status == FILE_OK;
+    return status;
+}
+
+enum file_status folder_make(const char *path)
+{
+    if (mkdir(path, 0777) == 0)
+        return FILE_OK;
+    if (errno == EEXIST) {
+        struct stat about;
+        return stat(path, &about) == 0 && S_ISDIR(about.st_mode) ? FILE_OK : FILE_NOT_REGULAR;
+    }
+    const char *slash = strrchr(path, '/');
+    if (errno != ENOENT || !slash || slash == path)
+        return status_of(errno);
+    char *above = memory_get((size_t)(slash - path) + 1);
+    memcpy(above, path, (size_t)(slash - path));
+    above[slash - path] = '\0';
+    enum file_status status = folder_make(above);
+    free(above);
+    if (status != FILE_OK)
+        return status;
+    return mkdir(path, 0777) == 0 || errno == EEXIST ? FILE_OK : status_of(errno);
+}
+
+static enum file_status remove_entry(const char *folder, const char *name)
+{
+    struct buffer path = {0};
+    buffer_print(&path, "%s/%s", folder, name);
+    struct stat about;
+    enum file_status status = FILE_OK;
+    if (lstat(buffer_string(&path), &about) != 0)
+        status = errno == ENOENT ? FILE_OK : status_of(errno);
+    else if (S_ISDIR(about.st_mode))
+        status = folder_remove(buffer_string(&path));
+    else if (unlink(buffer_string(&path)) != 0)
+        status = status_of(errno);
+    buffer_release(&path);
+    return status;
+}
+
+enum file_status folder_remove(const char *path)
+{
+    DIR *folder = opendir(path);
+    if (!folder)
+        return errno == ENOENT ? FILE_OK : status_of(errno);
+    enum file_status status = FILE_OK;
+    for (struct dirent *entry; status == FILE_OK && (entry = readdir(folder));)
+        if (strcmp(entry->d_name, ".") != 0 && strcmp(entry->d_name, "..") != 0)
+            status = remove_entry(path, entry->d_name);
+    closedir(folder);
+    if (status == FILE_OK && rmdir(path) != 0)
+        status = status_of(errno);
+    return status;
+}

@@ -1,0 +1,39 @@
+/*
+ * Files read whole and written whole. Every file that the program makes appears complete or not at
+ * all: written aside, flushed, renamed; one that would not change is not touched.
+ */
+#ifndef BASE_FILE_H
+#define BASE_FILE_H
+
+#include "base/buffer.h"
+
+#include <stdbool.h>
+#include <stddef.h>
+
+enum file_status {
+    FILE_OK,
+    FILE_MISSING,
+    FILE_FORBIDDEN,
+    FILE_NOT_REGULAR, /* a folder, a device */
+    FILE_LARGE,       /* more than the limit */
+    FILE_DISK_FULL,
+    FILE_FAILED /* any other; errno says why */
+};
+
+/* English, lower case, no full stop: "cannot open 'x': " comes before it. */
+const char *file_status_text(enum file_status status);
+
+/* Append the whole file; more than limit_bytes is FILE_LARGE. On failure *contents is as before. */
+enum file_status file_read(const char *path, size_t limit_bytes, struct buffer *contents);
+
+/* Make the file hold exactly these bytes. *changed (may be NULL): whether it held others before. */
+enum file_status file_write(const char *path, const void *data, size_t length, bool *changed);
+
+/* Make a folder and those above it; an existing one is fine. */
+enum file_status folder_make(const char *path);
+
+/* Remove a folder with all it holds; a missing one is fine. Symbolic links are removed, not
+ * followed. */
+enum file_status folder_remove(const char *path);
+
+#endif

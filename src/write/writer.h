@@ -1,0 +1,44 @@
+/*
+ * Writers: a document in one format, appended to a buffer. They touch no file, never change the
+ * tree, and see of report only document.h and exhibit.h.
+ */
+#ifndef WRITE_WRITER_H
+#define WRITE_WRITER_H
+
+#include "base/buffer.h"
+#include "base/diagnostic.h"
+#include "report/document.h"
+
+/* CommonMark; plots as links to pictures/<id>.svg with their numbers as a table, tables as pipe
+   tables padded to line up in a pager. */
+void markdown_write(const struct document *document, struct buffer *out);
+
+/* A whole HTML page with its style inside. style: contents of style.css; page: the page template
+   (page.html), with {{title}}, {{language}}, {{style}}, {{> document}} ... */
+void html_write(const struct document *document, const char *style, const char *page_template,
+                struct buffer *out);
+
+/* Only the document's body, without page: for pages of the archive. */
+void html_write_body(const struct document *document, struct buffer *out);
+
+/* Plain text for a terminal `columns` wide; colour: ANSI bold allowed (isatty, no NO_COLOR). */
+void terminal_write(const struct document *document, unsigned columns, bool bold_allowed,
+                    struct buffer *out);
+
+/* One plot as a standalone SVG file, `width` 720 or 350 units, light colours. */
+void svg_write_file(const struct exhibit *exhibit, const char *accent, struct buffer *out);
+
+/* What PDFs share: faces and colour profile, opened once per process, then only read. */
+struct pdf_resources;
+
+/* Open fonts and profile in `folder` (OpenSans-Regular.ttf, ... , sRGB.icc). NULL with a
+   diagnostic when one is missing or damaged. */
+struct pdf_resources *pdf_resources_open(const char *folder, struct diagnostics *diagnostics);
+void pdf_resources_close(struct pdf_resources *resources);
+
+/* PDF/A-1b. false with a diagnostic when the library failed; *out is then as before. A sign that
+   no face has is a diagnostic (warning) and drawn as U+FFFD. level: of deflation. */
+bool pdf_write(const struct document *document, const struct pdf_resources *resources, int level,
+               struct buffer *out, struct diagnostics *diagnostics);
+
+#endif
