@@ -7,9 +7,11 @@ OPTIMISE = -O2 -g
 WARNINGS = -Wall -Wextra -Wconversion -Wshadow -Werror=switch
 EXTRA =
 CFLAGS = -std=c11 -D_GNU_SOURCE -DGRIDLEAK_VERSION='"$(VERSION)"' $(OPTIMISE) $(WARNINGS) $(EXTRA) \
-         -Isrc $(shell pkg-config --cflags harfbuzz-subset yaml-0.1 libcmark cminpack libcjson)
-LDLIBS = $(shell pkg-config --libs yaml-0.1 libcmark harfbuzz-subset libpng libturbojpeg cminpack nettle \
-         libcjson) -lutf8proc -lhpdf -ldeflate -lpthread -lm
+         -Isrc $(PACKAGE_CFLAGS)
+# Empty on a bare machine, where the first make only installs and calls make again.
+PACKAGE_CFLAGS := $(shell pkg-config --cflags harfbuzz-subset yaml-0.1 libcmark cminpack libcjson 2>/dev/null)
+LDLIBS := $(shell pkg-config --libs yaml-0.1 libcmark harfbuzz-subset libpng libturbojpeg cminpack nettle \
+         libcjson 2>/dev/null) -lutf8proc -lhpdf -ldeflate -lpthread -lm
 
 # What a bare Debian 12 needs to build and run, and what it needs besides to check.
 BUILD_PACKAGES = gcc make libc6-dev pkg-config libyaml-dev libcmark-dev libhpdf-dev libharfbuzz-dev \
@@ -39,31 +41,33 @@ SHARE_FILES = $(patsubst templates/%,$(SHARE)/templates/%,$(TEMPLATES)) \
 all: $(BUILD)/gridleak $(SHARE_FILES)
 
 $(BUILD)/gridleak: $(BUILD)/src/main.o $(call libraries_from,archive)
-	$(CC) $(CFLAGS) $^ $(LDLIBS) -o $@
+	@echo "  link    $@"
+	@$(CC) $(CFLAGS) $^ $(LDLIBS) -o $@
 
 $(BUILD)/src/%.o: src/%.c
 	@mkdir -p $(@D)
-	$(CC) $(CFLAGS) -MMD -MP -c $< -o $@
+	@echo "  cc      $<"
+	@$(CC) $(CFLAGS) -MMD -MP -c $< -o $@
 
 define library
 $(call library_of,$(1)): $(call objects_of,$(1))
 	@mkdir -p $$(@D)
 	@rm -f $$@
-	ar rcs $$@ $$^
+	@ar rcs $$@ $$^
 endef
 $(foreach module,$(MODULES),$(eval $(call library,$(module))))
 
 $(SHARE)/templates/%: templates/%
 	@mkdir -p $(@D)
-	cp $< $@
+	@cp $< $@
 
 $(SHARE)/fonts/%.ttf:
 	@mkdir -p $(@D)
-	cp $$(find /usr/share/fonts -name $*.ttf | head -n 1) $@
+	@cp $$(find /usr/share/fonts -name $*.ttf | head -n 1) $@
 
 $(SHARE)/fonts/sRGB.icc:
 	@mkdir -p $(@D)
-	cp /usr/share/color/icc/sRGB.icc $@
+	@cp /usr/share/color/icc/sRGB.icc $@
 
 # ---- tests: tests/unit/<module>/<name>_test.c is a program of its own, linked with its module and
 # those below only.
@@ -73,7 +77,8 @@ UNIT_TESTS = $(patsubst %.c,$(BUILD)/%,$(UNIT_SOURCES))
 define unit_rule
 $(BUILD)/tests/unit/$(1)/%_test: tests/unit/$(1)/%_test.c $(call libraries_from,$(1))
 	@mkdir -p $$(@D)
-	$(CC) $(CFLAGS) -Itests $$^ $(LDLIBS) -lcmocka -o $$@
+	@echo "  link    $$@"
+	@$(CC) $(CFLAGS) -Itests $$^ $(LDLIBS) -lcmocka -o $$@
 endef
 $(foreach module,$(MODULES),$(eval $(call unit_rule,$(module))))
 
