@@ -42,10 +42,11 @@ struct document {
 /* The exhibit of a top-level node; NULL: it is prose or a heading. */
 const struct exhibit *document_exhibit(cmark_node *node);
 
-/* [a-z0-9-]+ from a heading's text, into *id. */
+/* Append [a-z0-9-]+ from a heading's text to *id: unique among the headings and exhibits of its
+   document, and never "main", which is the page's own. */
 void document_section_id(cmark_node *heading, struct buffer *id);
 
-/* The plain text of a node and its children. */
+/* Append the plain text of a node and its children; a line end becomes a space. */
 void document_plain_text(cmark_node *node, struct buffer *text);
 
 void document_release(struct document *document);

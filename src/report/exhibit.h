@@ -46,7 +46,8 @@ struct cell {
     const char *text;              /* COLUMN_REF, TEXT, OUTCOME; and numbers in one string */
     struct figures figures;        /* COLUMN_NUMBER: whole == NULL means empty or `text` as it is */
     const char *second;            /* a second, soft line or the reason under an outcome; NULL */
-    struct figures second_figures; /* COLUMN_NUMBER: a second number under the first; whole NULL */
+    struct figures second_figures; /* COLUMN_NUMBER: a second number: right of the first, or under
+                                      it in write_in tables; whole NULL */
     enum mark mark;
     bool strong;       /* a fail; a figure above its rating */
     const char *notes; /* raised note signs, "1" or "1 3"; NULL */
