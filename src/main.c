@@ -1,7 +1,430 @@
-#include <stdio.h>
+/*
+ * The command line: one function per command, and the only place that prints.
+ * Exit 0 done; 1 the answer is no; 2 wrong input; 3 the system failed.
+ */
+#include "archive/archive.h"
+#include "archive/job_files.h"
+#include "archive/publish.h"
+#include "base/options.h"
+#include "job/manual.h"
+#include "job/schema.h"
+#include "job/start.h"
+#include "write/json.h"
 
-int main(void)
+#include <errno.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <unistd.h>
+
+enum { EXIT_DONE = 0, EXIT_NO = 1, EXIT_INPUT = 2, EXIT_SYSTEM = 3 };
+enum { TERMINAL_COLUMNS = 80 };
+
+/* What the options of all commands fill. */
+struct options {
+    bool help, quiet, json, strict, schema, pages;
+    const char *archive, *output, *like, *threads;
+};
+
+/* What every command works with. */
+struct session {
+    struct arena arena;
+    struct diagnostics diagnostics;
+    struct options options;
+    char **operands;
+    int operand_count;
+};
+
+enum command_bit {
+    COMMAND_START = 1 << 0,
+    COMMAND_SHEET = 1 << 1,
+    COMMAND_ASSESS = 1 << 2,
+    COMMAND_PUBLISH = 1 << 3,
+    COMMAND_FIELDS = 1 << 4,
+    COMMAND_ALL = (1 << 5) - 1
+};
+
+#define OPTION_AT(member) offsetof(struct options, member)
+static const struct option_row option_rows[] = {
+    {"archive", 'a', "DIR", "the folder that holds shop.yaml; else found from the job file",
+     OPTION_AT(archive), COMMAND_START | COMMAND_SHEET | COMMAND_ASSESS | COMMAND_PUBLISH},
+    {"like", 0, "JOB", "keep the chassis' parts of this job, blank its readings", OPTION_AT(like),
+     COMMAND_START},
+    {"output", 'o', "PATH", "sheet: a file .html, .pdf or .md; publish: the folder, else output",
+     OPTION_AT(output), COMMAND_SHEET | COMMAND_PUBLISH},
+    {"json", 0, NULL, "one object a job, on one line", OPTION_AT(json), COMMAND_ASSESS},
+    {"strict", 0, NULL, "exit 1 when there is a warning", OPTION_AT(strict),
+     COMMAND_ASSESS | COMMAND_PUBLISH},
+    {"threads", 0, "N", "jobs made at the same time, else 2", OPTION_AT(threads), COMMAND_PUBLISH},
+    {"pages", 0, NULL, "only the pages over all jobs", OPTION_AT(pages), COMMAND_PUBLISH},
+    {"schema", 0, NULL, "JSON Schema (draft-07) for editors", OPTION_AT(schema), COMMAND_FIELDS},
+    {"quiet", 'q', NULL, "no notes and no progress", OPTION_AT(quiet), COMMAND_ALL},
+    {"help", 'h', NULL, "this help", OPTION_AT(help), COMMAND_ALL},
+    {0},
+};
+
+static const struct command_row command_rows[] = {
+    {"start", "JOB [--like JOB]", "begin a job file, never over one that is there",
+     "Writes JOB.yaml into the archive, with every section ready to be filled in. With\n"
+     "--like the parts of an earlier job on the same chassis are kept and its readings,\n"
+     "dates and actions left out.\n",
+     COMMAND_START},
+    {"sheet", "JOB.yaml [-o FILE]", "bench sheet before measuring",
+     "What to lift, at which volts to test, how long to wait, and the limit of each part in\n"
+     "microamperes and in megohms, with blanks to write in. On the terminal, or in the\n"
+     "format of FILE's name: .html, .pdf or .md.\n",
+     COMMAND_SHEET},
+    {"assess", "JOB.yaml...", "findings, part by part",
+     "What each capacitor leaks, what that does where it sits, whether it may stay, and why.\n"
+     "`-` reads standard input. A failed capacitor is a finding, never an exit status.\n",
+     COMMAND_ASSESS},
+    {"publish", "ARCHIVE | JOB.yaml... [-o DIR]", "records, bench sheets and pages",
+     "Makes the shop's, the client's and the sale copy of every job as Markdown, HTML and\n"
+     "PDF, the bench sheets, and the list of the archive. A job file with mistakes is told\n"
+     "and left out; the others are made.\n",
+     COMMAND_PUBLISH},
+    {"fields", "[--schema]", "every key of a job file",
+     "Each key with its unit, choices and an example, or a JSON Schema for editors.\n",
+     COMMAND_FIELDS},
+    {0},
+};
+
+static const char headline[] = "gridleak - assess, restore and record valve radios, part by part";
+
+static int complain(const struct buffer *message)
 {
-    puts("gridleak " GRIDLEAK_VERSION);
-    return 0;
+    fprintf(stderr, "gridleak: %.*s\n", (int)message->length, message->data ? message->data : "");
+    return EXIT_INPUT;
+}
+
+static int system_failure(const char *path, enum file_status status)
+{
+    fprintf(stderr, "gridleak: cannot write '%s': %s\n", path ? path : "",
+            file_status_text(status));
+    return EXIT_SYSTEM;
+}
+
+static void show_diagnostics(const struct diagnostics *list, bool quiet)
+{
+    struct diagnostics shown = *list;
+    struct arena arena = {0};
+    if (quiet) {
+        /* Errors and warnings are shown even so; notes are not. */
+        shown.items = arena_array(&arena, list->count, sizeof *list->items);
+        shown.count = 0;
+        for (size_t i = 0; i < list->count; i++)
+            if (list->items[i].severity != SEVERITY_NOTE)
+                shown.items[shown.count++] = list->items[i];
+    }
+    struct buffer text = {0};
+    diagnostics_format(&shown, &text);
+    if (text.length)
+        fwrite(text.data, 1, text.length, stderr);
+    buffer_release(&text);
+    arena_release(&arena);
+}
+
+/* Standard output, whole; a full disk or a closed pipe is a failure of the system. */
+static int print(const struct buffer *text)
+{
+    if (text->length && fwrite(text->data, 1, text->length, stdout) != text->length)
+        return EXIT_SYSTEM;
+    return fflush(stdout) == 0 ? EXIT_DONE : EXIT_SYSTEM;
+}
+
+static bool bold_allowed(void)
+{
+    const char *no_colour = getenv("NO_COLOR");
+    return isatty(STDOUT_FILENO) && !(no_colour && *no_colour);
+}
+
+static bool open_archive(struct session *session, const char *job_path, struct archive *archive)
+{
+    const char *share = archive_share_folder(&session->arena);
+    if (!share) {
+        fputs("gridleak: the templates are not where they were installed\n", stderr);
+        exit(EXIT_SYSTEM);
+    }
+    const char *folder = session->options.archive ? session->options.archive
+                         : job_path && strcmp(job_path, "-") != 0
+                             ? archive_folder_of(job_path, &session->arena)
+                             : ".";
+    bool good = archive_open(archive, folder, share, &session->arena, &session->diagnostics);
+    if (!good)
+        show_diagnostics(&session->diagnostics, session->options.quiet);
+    return good;
+}
+
+static int exit_of(const struct session *session, size_t errors, size_t warnings)
+{
+    if (errors)
+        return EXIT_INPUT;
+    return session->options.strict && warnings ? EXIT_NO : EXIT_DONE;
+}
+
+/* ---- assess */
+
+static int assess_one(struct session *session, const struct archive *archive, const char *path,
+                      struct buffer *out, struct diagnostics *diagnostics)
+{
+    struct opened_job opened = job_open(archive, path, diagnostics->arena, diagnostics);
+    diagnostics_sort(diagnostics);
+    if (session->options.json) {
+        json_write_findings(opened.findings, out);
+        return EXIT_DONE;
+    }
+    if (diagnostics->errors)
+        return EXIT_INPUT;
+    struct document *document =
+        report_compose(opened.findings, DOCUMENT_ASSESSMENT, archive->templates, NULL,
+                       diagnostics->arena, diagnostics);
+    if (!document)
+        return EXIT_INPUT;
+    terminal_write(document, TERMINAL_COLUMNS, bold_allowed(), out);
+    document_release(document);
+    return EXIT_DONE;
+}
+
+static int command_assess(struct session *session)
+{
+    struct archive archive;
+    size_t errors = 0, warnings = 0;
+    if (!open_archive(session, session->operands[0], &archive))
+        return EXIT_INPUT;
+    for (int i = 0; i < session->operand_count; i++) {
+        struct arena arena = {0};
+        struct diagnostics diagnostics = diagnostics_in(&arena);
+        struct buffer out = {0};
+        assess_one(session, &archive, session->operands[i], &out, &diagnostics);
+        show_diagnostics(&diagnostics, session->options.quiet);
+        errors += diagnostics.errors;
+        warnings += diagnostics.warnings;
+        int printed = print(&out);
+        buffer_release(&out);
+        arena_release(&arena);
+        if (printed != EXIT_DONE)
+            return printed;
+    }
+    archive_close(&archive);
+    return exit_of(session, errors, warnings);
+}
+
+/* ---- sheet */
+
+static bool ends_with(const char *name, const char *ending)
+{
+    size_t length = strlen(name), end_length = strlen(ending);
+    return length > end_length && strcmp(name + length - end_length, ending) == 0;
+}
+
+/* Write the sheet in the format of the file's name; EXIT_INPUT for a name of no format. */
+static int write_sheet(struct session *session, struct archive *archive,
+                       const struct document *document, struct buffer *out)
+{
+    const char *name = session->options.output;
+    if (!name) {
+        terminal_write(document, TERMINAL_COLUMNS, bold_allowed(), out);
+        return print(out);
+    }
+    if (ends_with(name, ".html")) {
+        html_write(document, archive->style, archive->page_template, out);
+    } else if (ends_with(name, ".md")) {
+        markdown_write(document, out);
+    } else if (ends_with(name, ".pdf")) {
+        if (!archive_open_pdf(archive, &session->arena, &session->diagnostics) ||
+            !pdf_write(document, archive->pdf, JOB_DEFLATE_LEVEL, out, &session->diagnostics))
+            return EXIT_SYSTEM;
+    } else {
+        fprintf(stderr, "gridleak: '%s' should end in .html, .pdf or .md\n", name);
+        return EXIT_INPUT;
+    }
+    enum file_status status = file_write(name, out->data, out->length, NULL);
+    return status == FILE_OK ? EXIT_DONE : system_failure(name, status);
+}
+
+static int command_sheet(struct session *session)
+{
+    struct archive archive;
+    const char *path = session->operands[0];
+    if (!open_archive(session, path, &archive))
+        return EXIT_INPUT;
+    struct opened_job opened = job_open(&archive, path, &session->arena, &session->diagnostics);
+    int answer = EXIT_INPUT;
+    if (session->diagnostics.errors == 0) {
+        struct document *document =
+            report_compose(opened.findings, DOCUMENT_SHEET, archive.templates, NULL,
+                           &session->arena, &session->diagnostics);
+        if (document) {
+            struct buffer out = {0};
+            answer = write_sheet(session, &archive, document, &out);
+            buffer_release(&out);
+            document_release(document);
+        }
+    }
+    diagnostics_sort(&session->diagnostics);
+    show_diagnostics(&session->diagnostics, session->options.quiet);
+    archive_close(&archive);
+    return answer;
+}
+
+/* ---- publish */
+
+static void tell_job(const struct publish_event *event, void *context)
+{
+    const struct session *session = context;
+    show_diagnostics(event->diagnostics, session->options.quiet);
+    if (!session->options.quiet && isatty(STDERR_FILENO))
+        fprintf(stderr, "\r%zu of %zu%s", event->done, event->of,
+                event->done == event->of ? "\n" : "");
+}
+
+static int command_publish(struct session *session)
+{
+    const char *first = session->operands[0];
+    bool whole = session->operand_count == 1 && !ends_with(first, ".yaml");
+    if (whole)
+        session->options.archive = first;
+    struct archive archive;
+    if (!open_archive(session, first, &archive))
+        return EXIT_INPUT;
+    if (!archive_open_pdf(&archive, &session->arena, &session->diagnostics)) {
+        show_diagnostics(&session->diagnostics, session->options.quiet);
+        return EXIT_SYSTEM;
+    }
+    const char *threads = session->options.threads;
+    struct publish_request request = {
+        .output = session->options.output ? session->options.output : "output",
+        .job_paths = whole ? NULL : (const char *const *)session->operands,
+        .job_path_count = whole ? 0 : (size_t)session->operand_count,
+        .pages_only = session->options.pages,
+        .threads = threads ? (unsigned)strtoul(threads, NULL, 10) : 0,
+        .listener = tell_job,
+        .listener_context = session,
+    };
+    struct publish_result result = publish(&archive, &request, &session->arena);
+    archive_close(&archive);
+    if (result.failure != FILE_OK)
+        return system_failure(result.failed_path, result.failure);
+    if (!session->options.quiet)
+        fprintf(stderr, "%zu jobs published into %s, %zu with mistakes left out\n",
+                result.jobs - result.broken, request.output, result.broken);
+    return exit_of(session, result.broken, result.warnings);
+}
+
+/* ---- fields, start */
+
+static int command_fields(struct session *session)
+{
+    struct buffer out = {0};
+    if (session->options.schema)
+        schema_write(&out);
+    else
+        manual_write(&out);
+    int answer = print(&out);
+    buffer_release(&out);
+    return answer;
+}
+
+static const struct command_row *find_command(const char *name)
+{
+    for (const struct command_row *row = command_rows; row->name; row++)
+        if (strcmp(row->name, name) == 0)
+            return row;
+    return NULL;
+}
+
+static int run(struct session *session, const struct command_row *command)
+{
+    if (command->bit == COMMAND_FIELDS)
+        return command_fields(session);
+    if (session->operand_count == 0) {
+        fprintf(stderr, "gridleak: usage: gridleak %s %s\n", command->name, command->usage);
+        return EXIT_INPUT;
+    }
+    switch ((enum command_bit)command->bit) {
+    case COMMAND_ASSESS:
+        return command_assess(session);
+    case COMMAND_SHEET:
+        return command_sheet(session);
+    case COMMAND_PUBLISH:
+        return command_publish(session);
+    case COMMAND_START:
+    case COMMAND_FIELDS:
+    case COMMAND_ALL:
+        break;
+    }
+    return EXIT_INPUT;
+}
+
+static int show_text(void (*fill)(struct buffer *))
+{
+    struct buffer out = {0};
+    fill(&out);
+    int answer = print(&out);
+    buffer_release(&out);
+    return answer;
+}
+
+static void fill_help(struct buffer *out)
+{
+    options_help_program(command_rows, headline, out);
+}
+
+static void fill_man_page(struct buffer *out)
+{
+    static const struct manual_page page = {
+        .name = "gridleak",
+        .version = GRIDLEAK_VERSION,
+        .headline = headline,
+        .exit_status = "0 done; 1 the answer is no (--strict and a warning); 2 wrong input\n"
+                       "(command line, job, template); 3 the system failed.",
+        .files = "shop.yaml marks the archive's folder and holds the shop's policy;\n"
+                 "<job>.yaml is a job. Templates and words are looked for in the archive's\n"
+                 "templates folder first, then where they were installed.",
+        .caution = "Mains and high tension kill. The figures say what was measured and what\n"
+                   "follows from it; local codes and a licensed person decide what may be\n"
+                   "connected to the mains.",
+    };
+    options_man_page(option_rows, command_rows, &page, out);
+}
+
+static int run_command(const struct command_row *command, int argc, char **argv)
+{
+    struct session session = {.operands = argv};
+    session.diagnostics = diagnostics_in(&session.arena);
+    struct buffer message = {0};
+    int answer;
+    session.operand_count =
+        options_parse(option_rows, command, argc, argv, &session.options, &message);
+    if (session.operand_count < 0) {
+        answer = complain(&message);
+    } else if (session.options.help) {
+        options_help_command(option_rows, command, &message);
+        answer = print(&message);
+    } else {
+        answer = run(&session, command);
+    }
+    buffer_release(&message);
+    arena_release(&session.arena);
+    return answer;
+}
+
+int main(int argc, char **argv)
+{
+    if (argc < 2 || strcmp(argv[1], "--help") == 0 || strcmp(argv[1], "-h") == 0) {
+        int answer = show_text(fill_help);
+        return argc < 2 ? EXIT_INPUT : answer;
+    }
+    if (strcmp(argv[1], "--version") == 0) {
+        puts("gridleak " GRIDLEAK_VERSION);
+        return EXIT_DONE;
+    }
+    if (strcmp(argv[1], "--man-page") == 0) /* for `make man` */
+        return show_text(fill_man_page);
+    const struct command_row *command = find_command(argv[1]);
+    if (!command) {
+        fprintf(stderr, "gridleak: no command '%s'; see gridleak --help\n", argv[1]);
+        return EXIT_INPUT;
+    }
+    return run_command(command, argc - 2, argv + 2);
 }

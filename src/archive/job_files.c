@@ -1,0 +1,223 @@
+#include "archive/job_files.h"
+
+#include "archive/photographs.h"
+#include "archive/summary.h"
+#include "base/hash.h"
+#include "write/json.h"
+
+#include <string.h>
+
+static const char *read_text(const char *path, struct source *source, struct arena *arena,
+                             struct diagnostics *diagnostics)
+{
+    struct buffer contents = {0};
+    bool from_stdin = strcmp(path, "-") == 0;
+    enum file_status status = file_read(from_stdin ? "/dev/stdin" : path, JOB_BYTES_MAX, &contents);
+    const char *text = NULL;
+    if (status == FILE_OK) {
+        text = arena_text(arena, contents.data, contents.length);
+        source->length = contents.length;
+    } else {
+        diagnostic_add(diagnostics, source, (struct position){0},
+                       status == FILE_LARGE ? DIAGNOSTIC_FILE_TOO_LARGE
+                                            : DIAGNOSTIC_FILE_UNREADABLE,
+                       NULL, "cannot read it: %s", file_status_text(status));
+    }
+    buffer_release(&contents);
+    return text;
+}
+
+struct opened_job job_open(const struct archive *archive, const char *path, struct arena *arena,
+                           struct diagnostics *diagnostics)
+{
+    struct source *source = arena_get(arena, sizeof *source);
+    source->path = arena_copy(arena, path);
+    source->text = read_text(path, source, arena, diagnostics);
+    struct opened_job opened = {0};
+    /* An unreadable file is told once, not as an empty one besides. */
+    struct diagnostics silent = diagnostics_in(arena);
+    opened.job = job_read(source, arena, source->text ? diagnostics : &silent);
+    opened.findings = assess_job(opened.job, archive->shop, GRIDLEAK_VERSION, arena, diagnostics);
+    opened.findings->diagnostics = diagnostics;
+    report_explain(opened.findings, templates_words(archive->templates), arena);
+    return opened;
+}
+
+/* What making one folder of copies needs to know. */
+struct copy_work {
+    const struct archive *archive;
+    const struct opened_job *opened;
+    const struct photographs *photographs;
+    struct arena *arena;
+    struct diagnostics *diagnostics;
+};
+
+static void add_plots(const struct document *document, const char *accent,
+                      struct folder_image *image)
+{
+    for (cmark_node *node = cmark_node_first_child(document->root); node;
+         node = cmark_node_next(node)) {
+        const struct exhibit *exhibit = document_exhibit(node);
+        if (!exhibit || exhibit->kind != EXHIBIT_PLOT)
+            continue;
+        struct buffer name = {0};
+        buffer_print(&name, "pictures/%s.svg", exhibit->id);
+        svg_write_file(exhibit, accent, folder_image_add(image, buffer_string(&name)));
+        buffer_release(&name);
+    }
+}
+
+/* One document as files stem.html, stem.pdf and, for records, stem.md with its plots. */
+static bool add_document(const struct copy_work *work, const struct document *document,
+                         const char *stem, struct folder_image *image)
+{
+    const struct archive *archive = work->archive;
+    html_write(document, archive->style, archive->page_template,
+               folder_image_add(image, arena_print(work->arena, "%s.html", stem)));
+    bool good = pdf_write(document, archive->pdf, JOB_DEFLATE_LEVEL,
+                          folder_image_add(image, arena_print(work->arena, "%s.pdf", stem)),
+                          work->diagnostics);
+    if (document->kind == DOCUMENT_RECORD) {
+        markdown_write(document, folder_image_add(image, arena_print(work->arena, "%s.md", stem)));
+        add_plots(document, archive->shop->accent, image);
+    }
+    return good;
+}
+
+static bool add_record(const struct copy_work *work, enum copy copy, const char *stem,
+                       struct folder_image *image)
+{
+    struct findings *findings = findings_for_copy(work->opened->findings, copy, work->arena);
+    struct buffer *json = folder_image_add(image, "findings.json");
+    json_write_findings(findings, json);
+    struct hash hash = hash_of(json->data, json->length);
+    char *fingerprint = arena_get(work->arena, HASH_TEXT_BYTES);
+    hash_text(&hash, fingerprint);
+    findings->fingerprint = fingerprint;
+    const struct report_picture *pictures = photographs_for_copy(
+        work->photographs, work->opened->job, findings->job, image, work->arena);
+    struct document *document = report_compose(findings, DOCUMENT_RECORD, work->archive->templates,
+                                               pictures, work->arena, work->diagnostics);
+    if (!document)
+        return false;
+    bool good = add_document(work, document, stem, image);
+    document_release(document);
+    return good;
+}
+
+static bool add_sheet(const struct copy_work *work, struct folder_image *image)
+{
+    struct document *document =
+        report_compose(work->opened->findings, DOCUMENT_SHEET, work->archive->templates, NULL,
+                       work->arena, work->diagnostics);
+    if (!document)
+        return false;
+    bool good = add_document(work, document, "sheet", image);
+    document_release(document);
+    return good;
+}
+
+/* The folder that leaves the house: client/ or sale/. */
+static enum file_status lay_copy(const struct copy_work *work, enum copy copy, const char *folder,
+                                 struct buffer *failed, bool *good)
+{
+    struct folder_image image = {0};
+    enum file_status status = FILE_OK;
+    *good = add_record(work, copy, work->opened->job->number, &image);
+    if (*good) {
+        struct buffer manifest = {0};
+        folder_image_manifest(&image, &manifest);
+        struct buffer *file = folder_image_add(&image, "manifest.sha256");
+        buffer_append(file, manifest.data, manifest.length);
+        buffer_release(&manifest);
+        status = folder_image_lay(&image, folder, NULL, failed);
+    }
+    folder_image_release(&image);
+    return status;
+}
+
+static enum file_status lay_shop(const struct copy_work *work, const char *folder,
+                                 struct buffer *failed)
+{
+    static const char *const kept[] = {"client", "sale", NULL};
+    struct folder_image image = {0};
+    enum file_status status = FILE_OK;
+    if (add_record(work, COPY_SHOP, "shop", &image) && add_sheet(work, &image)) {
+        summary_write(work->opened->findings, folder_image_add(&image, "summary.json"));
+        status = folder_image_lay(&image, folder, kept, failed);
+    }
+    folder_image_release(&image);
+    return status;
+}
+
+static enum file_status publish_whole(const struct copy_work *work, const char *folder,
+                                      struct buffer *failed)
+{
+    const struct opened_job *opened = work->opened;
+    const struct findings *findings = opened->findings;
+    const char *client = arena_print(work->arena, "%s/client", folder);
+    const char *sale = arena_print(work->arena, "%s/sale", folder);
+    bool finished = !findings->in_progress, good = true;
+    bool for_sale =
+        finished && report_sale_copy_is_clean(opened->job, work->arena, work->diagnostics);
+    enum file_status status = FILE_OK;
+    if (finished)
+        status = lay_copy(work, COPY_CLIENT, client, failed, &good);
+    if (status == FILE_OK && good && for_sale)
+        status = lay_copy(work, COPY_SALE, sale, failed, &good);
+    if (status == FILE_OK && good)
+        status = lay_shop(work, folder, failed);
+    if (status == FILE_OK && !finished)
+        status = folder_remove(client);
+    if (status == FILE_OK && !for_sale)
+        status = folder_remove(sale);
+    return status;
+}
+
+static enum file_status lay_broken(const char *folder, const char *name,
+                                   const struct diagnostics *diagnostics, struct buffer *failed)
+{
+    struct buffer summary = {0}, path = {0};
+    summary_write_broken(name, diagnostics, &summary);
+    buffer_print(&path, "%s/summary.json", folder);
+    enum file_status status = folder_make(folder);
+    if (status == FILE_OK)
+        status = file_write(buffer_string(&path), summary.data, summary.length, NULL);
+    if (status != FILE_OK)
+        buffer_append(failed, path.data, path.length);
+    buffer_release(&summary);
+    buffer_release(&path);
+    return status;
+}
+
+const char *job_name_of(const char *path, struct arena *arena)
+{
+    const char *slash = strrchr(path, '/');
+    const char *name = slash ? slash + 1 : path;
+    size_t length = strlen(name);
+    if (length > 5 && strcmp(name + length - 5, ".yaml") == 0)
+        length -= 5;
+    return arena_text(arena, name, length);
+}
+
+enum file_status job_files_publish(const struct archive *archive, const char *path,
+                                   const char *output, struct arena *arena,
+                                   struct diagnostics *diagnostics, struct buffer *failed)
+{
+    size_t errors_before = diagnostics->errors;
+    const char *name = job_name_of(path, arena);
+    const char *folder = arena_print(arena, "%s/jobs/%s", output, name);
+    struct opened_job opened = job_open(archive, path, arena, diagnostics);
+    struct photographs photographs = {0};
+    if (diagnostics->errors == errors_before)
+        photographs = photographs_read(archive, opened.job, arena, diagnostics);
+    enum file_status status = FILE_OK;
+    if (diagnostics->errors == errors_before) {
+        struct copy_work work = {archive, &opened, &photographs, arena, diagnostics};
+        status = publish_whole(&work, folder, failed);
+    }
+    photographs_release(&photographs);
+    if (diagnostics->errors != errors_before && status == FILE_OK)
+        status = lay_broken(folder, name, diagnostics, failed);
+    return status;
+}

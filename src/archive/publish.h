@@ -1,0 +1,37 @@
+/*
+ * Publishing: every job of an archive into an output folder, and the pages over all of them.
+ */
+#ifndef ARCHIVE_PUBLISH_H
+#define ARCHIVE_PUBLISH_H
+
+#include "archive/archive.h"
+
+/* What happened to one job, told in the order of names while others are still being made. */
+struct publish_event {
+    const char *job;
+    size_t done, of;                       /* how many jobs are finished, of how many */
+    const struct diagnostics *diagnostics; /* of this job */
+};
+typedef void (*publish_listener)(const struct publish_event *event, void *context);
+
+struct publish_request {
+    const char *output;           /* folder to publish into */
+    const char *const *job_paths; /* these jobs only; count 0: all of the archive */
+    size_t job_path_count;
+    bool pages_only;
+    unsigned threads;          /* 0: two */
+    publish_listener listener; /* called from one thread at a time; never NULL */
+    void *listener_context;
+};
+
+struct publish_result {
+    size_t jobs, broken, warnings;
+    enum file_status failure; /* FILE_OK, or the first file that could not be written */
+    const char *failed_path;
+};
+
+/* archive->pdf must be open. Strings of the result belong to the arena. */
+struct publish_result publish(const struct archive *archive, const struct publish_request *request,
+                              struct arena *arena);
+
+#endif

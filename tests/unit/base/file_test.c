@@ -1,0 +1,146 @@
+/* Files whole or not at all; command lines. */
+#include "base/file.h"
+#include "base/options.h"
+#include "kit.h"
+
+#include <stdlib.h>
+#include <string.h>
+#include <sys/stat.h>
+#include <unistd.h>
+
+static char folder[] = "/tmp/gridleak-file-XXXXXX";
+
+static int make_folder(void **state)
+{
+    (void)state;
+    return mkdtemp(folder) ? 0 : -1;
+}
+
+static int drop_folder(void **state)
+{
+    (void)state;
+    return folder_remove(folder) == FILE_OK ? 0 : -1;
+}
+
+static const char *in_folder(const char *name)
+{
+    static char path[256];
+    snprintf(path, sizeof path, "%s/%s", folder, name);
+    return path;
+}
+
+static void a_file_is_written_and_read(void **state)
+{
+    (void)state;
+    bool changed;
+    assert_int_equal(file_write(in_folder("a"), "abc", 3, &changed), FILE_OK);
+    assert_true(changed);
+    struct stat before, after;
+    assert_int_equal(stat(in_folder("a"), &before), 0);
+    assert_int_equal(file_write(in_folder("a"), "abc", 3, &changed), FILE_OK);
+    assert_false(changed);
+    assert_int_equal(stat(in_folder("a"), &after), 0);
+    assert_int_equal(before.st_ino, after.st_ino); /* untouched: not even renamed over */
+    struct buffer contents = {0};
+    assert_int_equal(file_read(in_folder("a"), 3, &contents), FILE_OK);
+    assert_int_equal(file_read(in_folder("a"), 2, &contents), FILE_LARGE);
+    assert_int_equal(contents.length, 3);
+    assert_memory_equal(contents.data, "abc", 3);
+    assert_int_equal(file_read(in_folder("none"), 10, &contents), FILE_MISSING);
+    assert_int_equal(file_read(folder, 10, &contents), FILE_NOT_REGULAR);
+    buffer_release(&contents);
+}
+
+static void a_failure_is_told(void **state)
+{
+    (void)state;
+    assert_int_equal(file_write("/proc/none/x", "x", 1, NULL), FILE_MISSING);
+    for (enum file_status status = FILE_OK; status <= FILE_FAILED; status++)
+        assert_true(strlen(file_status_text(status)) > 0);
+}
+
+static void folders_are_made_and_removed(void **state)
+{
+    (void)state;
+    assert_int_equal(folder_make(in_folder("x/y/z")), FILE_OK);
+    assert_int_equal(folder_make(in_folder("x/y/z")), FILE_OK);
+    assert_int_equal(file_write(in_folder("x/y/f"), "", 0, NULL), FILE_OK);
+    assert_int_equal(folder_make(in_folder("x/y/f")), FILE_NOT_REGULAR);
+    assert_int_equal(symlink("/etc", in_folder("x/link")), 0);
+    assert_int_equal(folder_remove(in_folder("x")), FILE_OK);
+    assert_int_equal(access(in_folder("x"), F_OK), -1);
+    assert_int_equal(access("/etc/passwd", F_OK), 0);
+    assert_int_equal(folder_remove(in_folder("x")), FILE_OK);
+}
+
+struct values {
+    bool flag;
+    const char *name;
+};
+static const struct option_row rows[] = {
+    {"flag", 'f', NULL, "a flag", offsetof(struct values, flag), 1},
+    {"name", 'n', "NAME", "a name", offsetof(struct values, name), 1},
+    {"other", 0, NULL, "of another command", offsetof(struct values, flag), 2},
+    {0},
+};
+static const struct command_row commands[] = {
+    {"do", "FILE", "does it", "At length.\n", 1},
+    {0},
+};
+
+static int parse(struct values *values, char **words, int count, struct buffer *message)
+{
+    *values = (struct values){0};
+    buffer_clear(message);
+    return options_parse(rows, commands, count, words, values, message);
+}
+
+static void options_are_parsed(void **state)
+{
+    (void)state;
+    struct values values;
+    struct buffer message = {0};
+    char *good[] = {"a", "-f", "--name=x", "-", "-n", "y", "--", "-z"};
+    assert_int_equal(parse(&values, good, 8, &message), 3);
+    assert_true(values.flag);
+    assert_string_equal(values.name, "y");
+    assert_string_equal(good[1], "-");
+    assert_string_equal(good[2], "-z");
+    char *unknown[] = {"--other"};
+    assert_int_equal(parse(&values, unknown, 1, &message), -1);
+    assert_string_equal(buffer_string(&message), "unknown option '--other' of do");
+    char *lacking[] = {"--name"};
+    assert_int_equal(parse(&values, lacking, 1, &message), -1);
+    assert_string_equal(buffer_string(&message), "--name needs NAME");
+    char *surplus[] = {"--flag=1"};
+    assert_int_equal(parse(&values, surplus, 1, &message), -1);
+    assert_string_equal(buffer_string(&message), "--flag takes no value");
+    buffer_release(&message);
+}
+
+static void help_names_every_option(void **state)
+{
+    (void)state;
+    struct buffer out = {0};
+    options_help_command(rows, commands, &out);
+    assert_non_null(strstr(buffer_string(&out), "  -n, --name NAME"));
+    assert_null(strstr(buffer_string(&out), "other"));
+    options_help_program(commands, "head", &out);
+    assert_non_null(strstr(buffer_string(&out), "gridleak do FILE"));
+    static const struct manual_page page = {"gridleak", "1", "a - b", ".dot\n'quote \\", "f", "c"};
+    buffer_clear(&out);
+    options_man_page(rows, commands, &page, &out);
+    assert_non_null(strstr(buffer_string(&out), "\\&.dot\n\\&'quote \\e"));
+    assert_non_null(strstr(buffer_string(&out), ".B \\-f, \\-\\-flag"));
+    buffer_release(&out);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(a_file_is_written_and_read),   cmocka_unit_test(a_failure_is_told),
+        cmocka_unit_test(folders_are_made_and_removed), cmocka_unit_test(options_are_parsed),
+        cmocka_unit_test(help_names_every_option),
+    };
+    return cmocka_run_group_tests_name("file", tests, make_folder, drop_folder);
+}
