@@ -1,0 +1,262 @@
+#include "write/pdf_lines.h"
+
+#include "base/utf8.h"
+
+#include <string.h>
+
+enum { EN_DASH = 0x2013, EM_DASH = 0x2014 };
+
+/* Characters that steer a layout and have no picture: soft hyphen, joiners, direction marks. */
+static bool is_invisible(uint32_t code_point)
+{
+    return code_point == 0xAD || (code_point >= 0x200B && code_point <= 0x200F) ||
+           (code_point >= 0x202A && code_point <= 0x202E) ||
+           (code_point >= 0x2060 && code_point <= 0x2069) || code_point == 0xFEFF;
+}
+
+/* Bytes that need a look: controls, and the first bytes of all invisible characters. */
+static bool is_clean(const char *text, size_t length)
+{
+    for (size_t i = 0; i < length; i++) {
+        unsigned char byte = (unsigned char)text[i];
+        unsigned char next = i + 1 < length ? (unsigned char)text[i + 1] : 0;
+        if (byte < 0x20 || (byte == 0xC2 && next == 0xAD) || byte == 0xEF ||
+            (byte == 0xE2 && (next == 0x80 || next == 0x81)))
+            return false;
+    }
+    return true;
+}
+
+static const char *clean(struct arena *arena, const char *text, size_t *length)
+{
+    if (is_clean(text, *length))
+        return text;
+    char *copy = arena_get(arena, *length + 1);
+    size_t kept = 0;
+    const char *end = text + *length;
+    while (text < end) {
+        const char *character = text;
+        uint32_t code_point = utf8_next(&text, end);
+        if (code_point >= '\t' && code_point <= '\r') {
+            copy[kept++] = ' ';
+        } else if (!is_invisible(code_point)) {
+            memcpy(copy + kept, character, (size_t)(text - character));
+            kept += (size_t)(text - character);
+        }
+    }
+    *length = kept;
+    return copy;
+}
+
+void text_runs_add_part(struct text_runs *runs, const char *text, size_t length,
+                        struct text_style style, const char *uri)
+{
+    runs->items =
+        arena_grow(runs->arena, runs->items, runs->count, &runs->capacity, sizeof *runs->items);
+    text = clean(runs->arena, text, &length);
+    runs->items[runs->count++] =
+        (struct text_run){.text = text, .length = length, .style = style, .uri = uri};
+}
+
+void text_runs_add(struct text_runs *runs, const char *text, struct text_style style)
+{
+    if (text && *text)
+        text_runs_add_part(runs, text, strlen(text), style, NULL);
+}
+
+/* A place in the runs, and the line's width before it. */
+struct spot {
+    size_t run;
+    const char *at;
+    double width;
+};
+
+struct breaker {
+    const struct text_runs *runs;
+    const struct pdf_resources *resources;
+    struct arena *arena;
+    double limit;
+    struct text_lines lines;
+};
+
+static bool is_letter(uint32_t code_point)
+{
+    return (code_point >= 'a' && code_point <= 'z') || (code_point >= 'A' && code_point <= 'Z') ||
+           (code_point >= 0xC0 && code_point < 0x2000);
+}
+
+static uint32_t look_ahead(const char *at, const char *end)
+{
+    return at < end ? utf8_next(&at, end) : 0;
+}
+
+/* Whether a line may end behind code_point, which is no space. */
+static bool breaks_behind(uint32_t before, uint32_t code_point, uint32_t after)
+{
+    if (code_point == EM_DASH)
+        return true;
+    return (code_point == '-' || code_point == EN_DASH || code_point == '/') && is_letter(before) &&
+           is_letter(after);
+}
+
+static const char *run_end(const struct breaker *breaker, size_t run)
+{
+    return breaker->runs->items[run].text + breaker->runs->items[run].length;
+}
+
+static void add_piece(struct breaker *breaker, struct text_line *line, const struct text_run *run,
+                      const char *from, const char *to)
+{
+    if (from >= to)
+        return;
+    struct line_piece piece = {.text = from,
+                               .length = (size_t)(to - from),
+                               .style = run->style,
+                               .uri = run->uri,
+                               .x = line->width};
+    piece.width = (double)pdf_text_width(breaker->resources, run->style.face, from, piece.length) *
+                  run->style.size_pt / 1000;
+    line->width += piece.width;
+    line->pieces[line->piece_count++] = piece;
+}
+
+/* The line from..to, spaces at its end left out. */
+static void add_line(struct breaker *breaker, struct spot from, struct spot to)
+{
+    struct text_lines *lines = &breaker->lines;
+    lines->items = arena_grow(breaker->arena, lines->items, lines->count, &lines->capacity,
+                              sizeof *lines->items);
+    struct text_line *line = &lines->items[lines->count++];
+    *line = (struct text_line){0};
+    line->pieces = arena_array(breaker->arena, to.run - from.run + 1, sizeof *line->pieces);
+    while (to.at == breaker->runs->items[to.run].text && to.run > from.run) {
+        to.run--;
+        to.at = run_end(breaker, to.run);
+    }
+    for (;;) {
+        const char *start = to.run == from.run ? from.at : breaker->runs->items[to.run].text;
+        while (to.at > start && to.at[-1] == ' ')
+            to.at--;
+        if (to.at > start || to.run == from.run)
+            break;
+        to.run--;
+        to.at = run_end(breaker, to.run);
+    }
+    for (size_t run = from.run; run <= to.run; run++) {
+        const struct text_run *item = &breaker->runs->items[run];
+        const char *start = run == from.run ? from.at : item->text;
+        const char *end = run == to.run ? to.at : run_end(breaker, run);
+        add_piece(breaker, line, item, start, end);
+    }
+}
+
+/* Behind the spaces at a place where a line was broken. */
+static struct spot skip_spaces(const struct breaker *breaker, struct spot place)
+{
+    while (place.run < breaker->runs->count) {
+        const char *end = run_end(breaker, place.run);
+        while (place.at < end && *place.at == ' ')
+            place.at++;
+        if (place.at < end || breaker->runs->items[place.run].line_end ||
+            place.run + 1 == breaker->runs->count)
+            break;
+        place.run++;
+        place.at = breaker->runs->items[place.run].text;
+    }
+    place.width = 0;
+    return place;
+}
+
+/* One line from `from`; the answer is where the next begins. */
+static struct spot break_line(struct breaker *breaker, struct spot from)
+{
+    struct spot at = from, candidate = from, last = from;
+    bool has_candidate = false;
+    uint32_t before = 0;
+    while (at.run < breaker->runs->count) {
+        const struct text_run *run = &breaker->runs->items[at.run];
+        const char *end = run->text + run->length;
+        while (at.at < end) {
+            last = at;
+            uint32_t code_point = utf8_next(&at.at, end);
+            if (code_point == ' ') {
+                candidate = at;
+                has_candidate = true;
+            }
+            at.width += pdf_character_width(breaker->resources, run->style.face, code_point) *
+                        run->style.size_pt / 1000;
+            if (code_point != ' ' && at.width > breaker->limit + 0.01) {
+                if (!has_candidate && last.run == from.run && last.at == from.at)
+                    last = at; /* not even one character fits: it stands alone */
+                struct spot end_of_line = has_candidate ? candidate : last;
+                add_line(breaker, from, end_of_line);
+                return skip_spaces(breaker, end_of_line);
+            }
+            if (breaks_behind(before, code_point, look_ahead(at.at, end))) {
+                candidate = at;
+                has_candidate = true;
+            }
+            before = code_point;
+        }
+        if (run->line_end || at.run + 1 == breaker->runs->count) {
+            add_line(breaker, from, at);
+            at.run++;
+            at.at = at.run < breaker->runs->count ? breaker->runs->items[at.run].text : NULL;
+            at.width = 0;
+            return at;
+        }
+        at.run++;
+        at.at = breaker->runs->items[at.run].text;
+    }
+    return at;
+}
+
+struct text_lines text_lines_break(const struct text_runs *runs,
+                                   const struct pdf_resources *resources, double width)
+{
+    struct breaker breaker = {
+        .runs = runs, .resources = resources, .arena = runs->arena, .limit = width};
+    if (runs->count == 0)
+        return breaker.lines;
+    struct spot at = {0, runs->items[0].text, 0};
+    while (at.run < runs->count) {
+        if (at.run + 1 == runs->count && at.at == run_end(&breaker, at.run) &&
+            breaker.lines.count > 0)
+            break; /* only spaces were left behind the last break */
+        at = break_line(&breaker, at);
+    }
+    return breaker.lines;
+}
+
+double text_runs_width(const struct text_runs *runs, const struct pdf_resources *resources)
+{
+    double width = 0;
+    for (size_t i = 0; i < runs->count; i++)
+        width += (double)pdf_text_width(resources, runs->items[i].style.face, runs->items[i].text,
+                                        runs->items[i].length) *
+                 runs->items[i].style.size_pt / 1000;
+    return width;
+}
+
+double text_runs_word_width(const struct text_runs *runs, const struct pdf_resources *resources)
+{
+    double widest = 0, word = 0;
+    for (size_t i = 0; i < runs->count; i++) {
+        const struct text_run *run = &runs->items[i];
+        const char *end = run->text + run->length;
+        uint32_t before = 0;
+        for (const char *at = run->text; at < end;) {
+            uint32_t code_point = utf8_next(&at, end);
+            if (code_point != ' ')
+                word += pdf_character_width(resources, run->style.face, code_point) *
+                        run->style.size_pt / 1000;
+            widest = word > widest ? word : widest;
+            if (code_point == ' ' || breaks_behind(before, code_point, look_ahead(at, end)))
+                word = 0;
+            before = code_point;
+        }
+        if (run->line_end)
+            word = 0;
+    }
+    return widest;
+}

@@ -1,0 +1,141 @@
+#include "write/pdf_object.h"
+
+#include "base/memory.h"
+#include "base/utf8.h"
+#include "write/deflate.h"
+
+#include <stdlib.h>
+#include <string.h>
+
+static void *allocate(HPDF_UINT size_bytes)
+{
+    return memory_get(size_bytes);
+}
+
+/* libharu calls this again for every call after an error, with other codes: keep the first. */
+static void keep_first_error(HPDF_STATUS code, HPDF_STATUS detail, void *user_data)
+{
+    struct pdf_error *error = user_data;
+    if (error->code == HPDF_OK)
+        *error = (struct pdf_error){code, detail};
+}
+
+HPDF_Doc pdf_file_create(struct pdf_error *error)
+{
+    *error = (struct pdf_error){HPDF_OK, 0};
+    HPDF_Doc document = HPDF_NewEx(keep_first_error, allocate, free, 0, error);
+    document->pdf_version = HPDF_VER_14;
+    return document;
+}
+
+static HPDF_STATUS write_flate_filter(HPDF_Dict dict, HPDF_Stream stream)
+{
+    (void)dict;
+    return HPDF_Stream_WriteStr(stream, "/Filter /FlateDecode\n");
+}
+
+static void append_stream(struct buffer *buffer, HPDF_Stream stream)
+{
+    HPDF_UINT count = HPDF_MemStream_GetBufCount(stream);
+    for (HPDF_UINT i = 0; i < count; i++) {
+        HPDF_UINT length;
+        const HPDF_BYTE *data = HPDF_MemStream_GetBufPtr(stream, i, &length);
+        buffer_append(buffer, data, length);
+    }
+}
+
+/* libharu would deflate with zlib at its default level: twice the time for the same size. */
+static void deflate_stream(HPDF_Dict dict, int level)
+{
+    struct buffer plain = {0};
+    struct buffer deflated = {0};
+    append_stream(&plain, dict->stream);
+    deflate_append(&deflated, plain.data, plain.length, level);
+    HPDF_MemStream_FreeData(dict->stream);
+    HPDF_Stream_Write(dict->stream, (const HPDF_BYTE *)deflated.data, (HPDF_UINT)deflated.length);
+    dict->write_fn = write_flate_filter;
+    buffer_release(&plain);
+    buffer_release(&deflated);
+}
+
+static HPDF_BOOL is_plain_stream(const void *object)
+{
+    const HPDF_Obj_Header *header = object;
+    if ((header->obj_class & HPDF_OCLASS_ANY) != HPDF_OCLASS_DICT)
+        return HPDF_FALSE;
+    HPDF_Dict dict = (HPDF_Dict)header;
+    if (!dict->stream || dict->filter != HPDF_STREAM_FILTER_NONE || dict->write_fn)
+        return HPDF_FALSE;
+    HPDF_Name type = HPDF_Dict_GetItem(dict, "Type", HPDF_OCLASS_NAME);
+    return !type || strcmp(type->value, "Metadata") != 0;
+}
+
+HPDF_STATUS pdf_file_save(HPDF_Doc document, int level, struct buffer *file)
+{
+    const struct pdf_error *error = document->error.user_data;
+    if (HPDF_GetError(document) != HPDF_OK)
+        return error->code != HPDF_OK ? error->code : HPDF_GetError(document);
+    for (HPDF_UINT i = 1; i < document->xref->entries->count; i++) {
+        HPDF_XrefEntry entry = HPDF_Xref_GetEntry(document->xref, i);
+        if (is_plain_stream(entry->obj))
+            deflate_stream(entry->obj, level);
+    }
+    HPDF_STATUS status = HPDF_SaveToStream(document);
+    if (status != HPDF_OK)
+        return status;
+    append_stream(file, document->stream);
+    return HPDF_OK;
+}
+
+HPDF_Dict pdf_stream(HPDF_Doc document, const struct buffer *plain)
+{
+    HPDF_Dict dict = HPDF_DictStream_New(document->mmgr, document->xref);
+    HPDF_Stream_Write(dict->stream, (const HPDF_BYTE *)plain->data, (HPDF_UINT)plain->length);
+    return dict;
+}
+
+HPDF_Dict pdf_stream_deflated(HPDF_Doc document, const struct buffer *deflated)
+{
+    HPDF_Dict dict = pdf_stream(document, deflated);
+    dict->write_fn = write_flate_filter;
+    return dict;
+}
+
+void *pdf_text_string(HPDF_Doc document, const char *utf8, size_t length)
+{
+    struct buffer ascii = {0};
+    struct buffer utf16 = {0};
+    buffer_be16(&utf16, 0xFEFF);
+    const char *end = utf8 + (length < PDF_TEXT_STRING_MAX ? length : PDF_TEXT_STRING_MAX);
+    HPDF_BOOL all_ascii = HPDF_TRUE;
+    for (const char *at = utf8; at < end;) {
+        uint32_t code_point = utf8_next(&at, end);
+        if (code_point >= 0x80 || code_point == 0)
+            all_ascii = HPDF_FALSE;
+        char character = (char)(code_point & 0x7F);
+        buffer_append(&ascii, &character, 1);
+        utf8_append_utf16(&utf16, code_point == UTF8_ILL_FORMED ? 0xFFFD : code_point);
+    }
+    buffer_append(&ascii, "", 1);
+    void *object = all_ascii ? (void *)HPDF_String_New(document->mmgr, ascii.data, NULL)
+                             : (void *)HPDF_Binary_New(document->mmgr, (HPDF_BYTE *)utf16.data,
+                                                       (HPDF_UINT)utf16.length);
+    buffer_release(&ascii);
+    buffer_release(&utf16);
+    return object;
+}
+
+HPDF_Image pdf_image(HPDF_Doc document, const struct picture *picture)
+{
+    HPDF_Dict image = pdf_stream(document, &picture->data);
+    image->header.obj_class |= HPDF_OSUBCLASS_XOBJECT;
+    if (picture->kind == PICTURE_JPEG)
+        image->filter = HPDF_STREAM_FILTER_DCT_DECODE;
+    HPDF_Dict_AddName(image, "Type", "XObject");
+    HPDF_Dict_AddName(image, "Subtype", "Image");
+    HPDF_Dict_AddNumber(image, "Width", (HPDF_INT32)picture->width_px);
+    HPDF_Dict_AddNumber(image, "Height", (HPDF_INT32)picture->height_px);
+    HPDF_Dict_AddName(image, "ColorSpace", picture->components == 1 ? "DeviceGray" : "DeviceRGB");
+    HPDF_Dict_AddNumber(image, "BitsPerComponent", 8);
+    return image;
+}

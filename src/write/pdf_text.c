@@ -1,0 +1,141 @@
+#include "write/pdf_text.h"
+
+#include "base/memory.h"
+#include "base/utf8.h"
+#include "write/pdf_font.h"
+
+#include <stdio.h>
+#include <stdlib.h>
+
+enum { CHAIN_MAX = 4 };
+
+/* Faces to try in order; the regular fallback ends each row and has U+FFFD. */
+static const enum text_face chains[FACE_COUNT][CHAIN_MAX] = {
+    [FACE_REGULAR] = {FACE_REGULAR, FACE_FALLBACK, FACE_MONO, FACE_FALLBACK},
+    [FACE_SEMIBOLD] = {FACE_SEMIBOLD, FACE_FALLBACK_BOLD, FACE_MONO, FACE_FALLBACK},
+    [FACE_ITALIC] = {FACE_ITALIC, FACE_FALLBACK_OBLIQUE, FACE_MONO, FACE_FALLBACK},
+    [FACE_SEMIBOLD_ITALIC] = {FACE_SEMIBOLD_ITALIC, FACE_FALLBACK_BOLD, FACE_MONO, FACE_FALLBACK},
+    [FACE_MONO] = {FACE_MONO, FACE_FALLBACK, FACE_REGULAR, FACE_FALLBACK},
+    [FACE_FALLBACK] = {FACE_FALLBACK, FACE_FALLBACK, FACE_MONO, FACE_FALLBACK},
+    [FACE_FALLBACK_BOLD] = {FACE_FALLBACK_BOLD, FACE_FALLBACK, FACE_MONO, FACE_FALLBACK},
+    [FACE_FALLBACK_OBLIQUE] = {FACE_FALLBACK_OBLIQUE, FACE_FALLBACK, FACE_MONO, FACE_FALLBACK},
+};
+
+struct glyph_place {
+    enum text_face face;
+    uint32_t code_point;
+    uint16_t glyph; /* 0: no face has it */
+};
+
+static struct glyph_place find_in_chain(const struct pdf_resources *resources, enum text_face face,
+                                        uint32_t code_point)
+{
+    for (size_t i = 0; i < CHAIN_MAX; i++) {
+        enum text_face tried = chains[face][i];
+        uint16_t glyph = font_face_glyph(resources->faces[tried], code_point);
+        if (glyph != 0)
+            return (struct glyph_place){tried, code_point, glyph};
+    }
+    return (struct glyph_place){FACE_FALLBACK, code_point, 0};
+}
+
+/* Controls have glyphs of no width in some faces; a reader should see that there is something. */
+static bool is_control(uint32_t code_point)
+{
+    return code_point < 0x20 || (code_point >= 0x7F && code_point < 0xA0);
+}
+
+static struct glyph_place find_glyph(const struct pdf_resources *resources, enum text_face face,
+                                     uint32_t code_point, bool *missing)
+{
+    struct glyph_place place = {FACE_FALLBACK, code_point, 0};
+    if (!is_control(code_point))
+        place = find_in_chain(resources, face, code_point);
+    *missing = place.glyph == 0;
+    if (*missing)
+        place = find_in_chain(resources, face, 0xFFFD);
+    return place;
+}
+
+unsigned pdf_character_width(const struct pdf_resources *resources, enum text_face face,
+                             uint32_t code_point)
+{
+    bool missing;
+    struct glyph_place place = find_glyph(resources, face, code_point, &missing);
+    return font_face_advance(resources->faces[place.face], place.glyph);
+}
+
+unsigned long pdf_text_width(const struct pdf_resources *resources, enum text_face face,
+                             const char *text, size_t length)
+{
+    unsigned long total = 0;
+    for (const char *end = text + length; text < end;)
+        total += pdf_character_width(resources, face, utf8_next(&text, end));
+    return total;
+}
+
+static void note_missing(struct pdf_fonts *fonts, uint32_t code_point)
+{
+    if (code_point == UTF8_ILL_FORMED) {
+        fonts->ill_formed++;
+        return;
+    }
+    for (size_t i = 0; i < fonts->missing_count; i++)
+        if (fonts->missing[i] == code_point)
+            return;
+    if (fonts->missing_count < MISSING_MAX)
+        fonts->missing[fonts->missing_count++] = code_point;
+}
+
+static struct font_charset *set_of(struct pdf_fonts *fonts, enum text_face face)
+{
+    if (!fonts->sets[face]) {
+        fonts->sets[face] = font_charset_create(fonts->resources->faces[face]);
+        fonts->fonts[face] = pdf_font_begin(fonts->document);
+    }
+    return fonts->sets[face];
+}
+
+enum text_face pdf_text_encode(struct pdf_fonts *fonts, enum text_face face, const char **text,
+                               const char *end, struct buffer *codes)
+{
+    enum text_face shown = FACE_COUNT;
+    while (*text < end) {
+        const char *next = *text;
+        uint32_t code_point = utf8_next(&next, end);
+        bool missing;
+        struct glyph_place place = find_glyph(fonts->resources, face, code_point, &missing);
+        if (shown != FACE_COUNT && place.face != shown)
+            break;
+        shown = place.face;
+        if (missing)
+            note_missing(fonts, code_point);
+        buffer_be16(codes, font_charset_add(set_of(fonts, shown), place.code_point));
+        *text = next;
+    }
+    return shown;
+}
+
+enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_dict, int level)
+{
+    HPDF_Dict names = HPDF_Dict_New(fonts->document->mmgr);
+    HPDF_Dict_Add(resources_dict, "Font", names);
+    for (int face = 0; face < FACE_COUNT; face++) {
+        if (!fonts->sets[face])
+            continue;
+        enum font_status status =
+            pdf_font_finish(fonts->document, fonts->fonts[face], fonts->sets[face], level);
+        if (status != FONT_OK)
+            return status;
+        char name[8];
+        snprintf(name, sizeof name, "F%d", face);
+        HPDF_Dict_Add(names, name, fonts->fonts[face]);
+    }
+    return FONT_OK;
+}
+
+void pdf_fonts_release(struct pdf_fonts *fonts)
+{
+    for (int face = 0; face < FACE_COUNT; face++)
+        font_charset_destroy(fonts->sets[face]);
+}
