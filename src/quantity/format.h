@@ -3,6 +3,10 @@
  *
  * True minus (U+2212), no-break space before the unit, thin space in numbers of five digits and
  * more, no zero with a sign, "½" where a power rating is one half.
+ *
+ * A half is rounded away from zero, and what differs from a half by less than 1e-13 of the value is
+ * one: 0.0995 to two figures is 0.10, as on paper, though no double is 0.0995. Readings are not
+ * averaged from printed figures, so rounding half to even would gain nothing and surprise people.
  */
 #ifndef QUANTITY_FORMAT_H
 #define QUANTITY_FORMAT_H
@@ -13,14 +17,16 @@
 /* A number apart, so that tables can align the decimal point. All owned by the arena. */
 struct figures {
     const char *bound;    /* "<", ">", or "" */
-    const char *whole;    /* "−12", "1 100" */
+    const char *whole;    /* "−12", "1100", "11 000" */
     const char *fraction; /* ".62" or "" */
     const char *unit;     /* "µA", "MΩ", "" */
 };
 
 /*
- * value in SI to `digits` significant figures with the prefix that suits it (pF nF µF, Ω kΩ MΩ GΩ,
- * nA µA mA A, mV V kV, mW W, s min h ...). NaN is a mistake of the caller.
+ * value in SI to `digits` (1 to 12) significant figures with the prefix the trade gives it: pF
+ * below 1 nF, then µF (0.005 µF); µA from 0.1 µA (0.62 µA); V to 10 kV; Ω kΩ MΩ GΩ; s, min from 2
+ * min, h from 2 h. 0 is "0", a time without a broken part is whole ("5 min"). One digit and 0.5 W
+ * is "½". NaN is a mistake of the caller; infinity is printed as 1e18 of the unit, never as a word.
  */
 struct figures figures_of(struct arena *arena, double value, enum unit unit, unsigned digits);
 

@@ -70,6 +70,21 @@ struct quantity_form {
 };
 
 /*
+ * How numbers are read
+ * - Sign `-`, `+` or U+2212; point or, between digits, comma; `1/2`, `1 1/2`, `½`, `1½`. A comma
+ *   before exactly three digits is refused with both readings, unless only one makes sense
+ *   (`0,047 uF`). Thin spaces may part thousands.
+ * - IEC 60062: `4R7`, `2K2`, `1M0`, `4n7`, `p33`; for these alone the letter stands for the point.
+ * - A power of ten needs a sign, `1.1e-6 A`, so that the valve 6E5 is no number.
+ * - No hexadecimal, no "inf", no "nan"; not more than 27 figures; 0 or 1e-30 to 1e30.
+ * - Nothing depends on the locale. Values are the double nearest to what was written.
+ *
+ * How units are read: with or without a space before them; µ in both code points or u; Ω in both or
+ * ohm; a full stop behind is dropped (`mfd.`). `M` alone is megohm. `mF`, `MF`, `MFD` in any case
+ * are microfarads: on old parts they always were, and nobody measures millifarads in a valve set;
+ * all but `mfd`, which cannot be mistaken, set *old_unit. `F` is Fahrenheit where a temperature is
+ * wanted, else farad. `mc/s` is Mc/s. Times may go on in falling units (`1 h 10 min`).
+ *
  * Read all of text[0..length). On QUANTITY_OK *quantity is set (written copied to the arena,
  * `at` left to the caller). *old_unit (may be NULL) tells that `MF` or `MFD` was read as
  * microfarads, which deserves a note. On failure *quantity is untouched, but for WRONG_UNIT.
