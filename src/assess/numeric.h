@@ -46,7 +46,9 @@ enum numeric_status numeric_least_squares(numeric_model model, const void *conte
                                           const double *start, size_t parameter_count,
                                           struct numeric_fit *fit);
 
-/* Student's t, two-sided 95 %, for freedom >= 1; and the chi^2 quantile at probability p. */
+/* Student's t for a two-sided probability p (0.95), freedom >= 1, INFINITY: normal; the same at
+   95 %; and the chi^2 quantile at probability p. */
+double numeric_t_quantile(double p, double freedom);
 double numeric_t95(double freedom);
 double numeric_chi2_quantile(double p, size_t freedom);
 

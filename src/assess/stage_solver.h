@@ -4,8 +4,13 @@
  * Circuit voltages are to chassis. Every stage has: grid leak to `return_v` (plus the back bias),
  * a coupling leak (a source behind a resistance), anode and screen fed through resistances, a
  * cathode resistance. Leaks are conductances in siemens, 0: none. Stages that name the same node
- * share one resistor and are solved together. Nested brackets, no starting value: the root is
- * unique (methods: "Solver").
+ * share one resistor and are solved together: its ohms and supply are those of the first of them,
+ * its leak (and bias_others_a) is the largest figure that any of them gives, counted once. Nested
+ * brackets: every unknown is the root of a falling function whose signs at both ends are known.
+ *
+ * The resistance in the negative HT lead carries the anode and screen feeds of its stages, with
+ * the leaks behind them, and bias_others_a. A bias bypass sits at the far end of the grid leak
+ * behind bias_feed_ohm; with bias_node < 0 it loads the fixed bias return_v in the same way.
  */
 #ifndef ASSESS_STAGE_SOLVER_H
 #define ASSESS_STAGE_SOLVER_H
@@ -32,7 +37,8 @@ struct stage_circuit {
     int screen_node;        /* the same for one screen dropper */
     int bias_node;          /* the same for one resistance in the negative HT lead */
     double bias_ohm;        /* of that resistance; 0: none */
-    double bias_leak_s;     /* across it (bias bypass) */
+    double bias_leak_s;     /* of the bias bypass */
+    double bias_feed_ohm;   /* between the bias and that bypass; 0: across the bias itself */
     double bias_others_a;   /* current of the rest of the set through it */
 };
 

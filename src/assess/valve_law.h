@@ -27,7 +27,7 @@ struct valve_law {
 enum law_status {
     LAW_OK,
     LAW_WARN_MU12,  /* outside 0.8 to 1.1 of a printed mu12; *law is set */
-    LAW_NO_CURRENT, /* the row has no anode current or no anode volts */
+    LAW_NO_CURRENT, /* the row lacks anode current, anode or grid volts; screen volts or current */
     LAW_NO_GAIN,    /* neither g_m nor mu (mu12) */
     LAW_IMPOSSIBLE  /* mu12 or the drive would be zero or negative */
 };
@@ -49,5 +49,9 @@ struct valve_currents valve_law_currents(const struct valve_law *law, double vg1
 
 /* Grid current, labelled default: 15 uA * exp(Vgk/0.23 V), linear beyond +0.5 V. */
 double valve_grid_current(double vgk_v);
+
+/* Where the grid settles, to the cathode, fed from emf_v (to the cathode too) behind ohm >= 0, with
+   that grid current flowing. */
+double valve_grid_volts(double emf_v, double ohm);
 
 #endif
