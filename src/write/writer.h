@@ -14,9 +14,12 @@
 void markdown_write(const struct document *document, struct buffer *out);
 
 /* A whole HTML page with its style inside. style: contents of style.css; page: the page template
-   (page.html), with {{title}}, {{language}}, {{style}}, {{> document}} ... */
-void html_write(const struct document *document, const char *style, const char *page_template,
-                struct buffer *out);
+   (page.html). The template sees {{language}}, {{title}}, {{author}}, {{subject}}, {{kind}}
+   (record, sheet, page, assessment), {{skip}}, {{footer}}, and the partials {{> style}},
+   {{> page_style}} (accent, paper size, running head) and {{> document}}, each alone on its line.
+   Its mistakes are appended to diagnostics. */
+void html_write(const struct document *document, const char *style, const struct source *page,
+                struct buffer *out, struct diagnostics *diagnostics);
 
 /* Only the document's body, without page: for pages of the archive. */
 void html_write_body(const struct document *document, struct buffer *out);
@@ -25,7 +28,8 @@ void html_write_body(const struct document *document, struct buffer *out);
 void terminal_write(const struct document *document, unsigned columns, bool bold_allowed,
                     struct buffer *out);
 
-/* One plot as a standalone SVG file, `width` 720 or 350 units, light colours. */
+/* A plot or headline as a standalone SVG file, light colours, accent "#1b4b6b". Nothing for
+   other exhibits. */
 void svg_write_file(const struct exhibit *exhibit, const char *accent, struct buffer *out);
 
 /* What PDFs share: faces and colour profile, opened once per process, then only read. */
