@@ -10,7 +10,7 @@
 #define MICRO          "\xC2\xB5"
 #define OHM            "\xCE\xA9"
 
-enum { DIGITS_MOST = 12 };
+enum { DIGITS_MOST = 12, DECIMALS_MOST = 18 };
 
 /* From which value on a unit is written so; the last row of a unit takes what is smaller. */
 struct step {
@@ -120,7 +120,7 @@ unsigned decimals_for(double value, double scale, unsigned digits)
     if (scaled == 0 || !isfinite(scaled))
         return digits - 1;
     int decimals = (int)digits - 1 - leading_power(scaled, digits);
-    return decimals < 0 ? 0 : decimals > DIGITS_MOST ? DIGITS_MOST : (unsigned)decimals;
+    return decimals < 0 ? 0 : decimals > DECIMALS_MOST ? DECIMALS_MOST : (unsigned)decimals;
 }
 
 /* The whole part with thin spaces from five figures on. */
@@ -162,7 +162,7 @@ struct figures figures_scaled(struct arena *arena, double value, double scale,
 {
     double size = fabs(value / scale);
     assert(!isnan(value));
-    decimals = decimals > DIGITS_MOST ? DIGITS_MOST : decimals;
+    decimals = decimals > DECIMALS_MOST ? DECIMALS_MOST : decimals;
     while (decimals > 0 && size * powers[decimals] >= 1e15)
         decimals--; /* beyond what a double holds */
     if (size >= 1e18)
@@ -176,10 +176,11 @@ struct figures figures_scaled(struct arena *arena, double value, double scale,
                             .unit = unit_text};
 }
 
-static const struct step *step_for(double value, enum unit unit)
+/* The step by what will be printed: 7190 s to two figures are 2 h, not 120 min. */
+static const struct step *step_for(double size, enum unit unit, unsigned digits)
 {
     const struct step *step = steps_of[unit];
-    while (value < step->from * (1 - 1e-12))
+    while (rounded_to(size / step->scale, digits) * step->scale < step->from * (1 - 1e-12))
         step++;
     return step;
 }
@@ -190,24 +191,24 @@ static const struct step *step_for_zero(enum unit unit)
     const struct step *step = steps_of[unit];
     while (step->from > 0 && step->scale != 1)
         step++;
-    return step->scale == 1 ? step : step_for(0, unit);
+    return step;
 }
 
 struct figures figures_of(struct arena *arena, double value, enum unit unit, unsigned digits)
 {
     assert(!isnan(value) && unit < UNIT_COUNT);
     digits = clamp_digits(digits);
-    double rounded = isfinite(value) ? rounded_to(fabs(value), digits) : 1e18;
-    const struct step *step = rounded == 0 ? step_for_zero(unit) : step_for(rounded, unit);
+    double size = fmin(fabs(value), 1e18);
+    const struct step *step = size == 0 ? step_for_zero(unit) : step_for(size, unit, digits);
     if (unit == UNIT_POWER && digits == 1 && fabs(value) == 0.5)
         return (struct figures){
             .bound = "", .whole = value < 0 ? MINUS "½" : "½", .fraction = "", .unit = "W"};
-    unsigned decimals = decimals_for(rounded, step->scale, digits);
+    double scaled = rounded_to(size / step->scale, digits);
+    unsigned decimals = decimals_for(scaled, 1, digits);
     /* A time is what was set, 5 min, and no measured figure; nor has nothing any figures. */
-    if (rounded == 0 ||
-        (unit == UNIT_TIME && rounded / step->scale == floor(rounded / step->scale)))
+    if (scaled == 0 || (unit == UNIT_TIME && scaled == floor(scaled)))
         decimals = 0;
-    return figures_scaled(arena, value < 0 ? -rounded : rounded, step->scale, step->text, decimals);
+    return figures_scaled(arena, value < 0 ? -scaled : scaled, 1, step->text, decimals);
 }
 
 const char *figures_text(struct arena *arena, const struct figures *figures)

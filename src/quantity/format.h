@@ -26,7 +26,7 @@ struct figures {
  * value in SI to `digits` (1 to 12) significant figures with the prefix the trade gives it: pF
  * below 1 nF, then µF (0.005 µF); µA from 0.1 µA (0.62 µA); V to 10 kV; Ω kΩ MΩ GΩ; s, min from 2
  * min, h from 2 h. 0 is "0", a time without a broken part is whole ("5 min"). One digit and 0.5 W
- * is "½". NaN is a mistake of the caller; infinity is printed as 1e18 of the unit, never as a word.
+ * is "½". NaN is a mistake of the caller; infinity is printed as 1e18 in SI, never as a word.
  */
 struct figures figures_of(struct arena *arena, double value, enum unit unit, unsigned digits);
 

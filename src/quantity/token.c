@@ -102,6 +102,13 @@ static const char *more_time(const char *cursor, const char *end, unsigned secon
     return cursor;
 }
 
+/* `100 V,60 s`: a unit, a comma and no space; to be refused as one. */
+static bool lacks_space_after_comma(const char *unit, const char *end)
+{
+    const char *comma = memchr(unit, ',', (size_t)(run_end(unit, end) - unit));
+    return comma != NULL && unit_find(unit, (size_t)(comma - unit), UNIT_COUNT) != NULL;
+}
+
 /* Behind one number: its unit, more time, or nothing. */
 static const char *unit_behind(const char *cursor, const char *end,
                                const struct unit_spelling **unit)
@@ -111,7 +118,7 @@ static const char *unit_behind(const char *cursor, const char *end,
     if (*unit != NULL && at > cursor && is_preposition(at, behind, end))
         *unit = NULL;
     if (*unit == NULL)
-        return cursor;
+        return lacks_space_after_comma(at, end) ? run_end(at, end) : cursor;
     return more_time(behind, end, unit_seconds(*unit));
 }
 

@@ -444,7 +444,8 @@ static void tokens(void **state)
         {"100 V,60 s", "#100 V,60|s"},
         {"hot 45 C by bridge", "hot|#45 C|by|bridge"},
         {"a, b", "a|,b"},
-        {" , a ,, ,", ",a"},
+        {" , a , , b", ",a|,b"},
+        {"a ,, b", "a|,|,b"},
         {"", ""},
         {" , ", ""},
     };
