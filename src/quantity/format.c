@@ -6,6 +6,7 @@
 
 #define THIN_SPACE     "\xE2\x80\x89"
 #define NO_BREAK_SPACE "\xC2\xA0"
+#define HALF           "\xC2\xBD"
 #define MINUS          "\xE2\x88\x92"
 #define MICRO          "\xC2\xB5"
 #define OHM            "\xCE\xA9"
@@ -163,7 +164,7 @@ struct figures figures_scaled(struct arena *arena, double value, double scale,
     double size = fabs(value / scale);
     assert(!isnan(value));
     decimals = decimals > DECIMALS_MOST ? DECIMALS_MOST : decimals;
-    while (decimals > 0 && size * powers[decimals] >= 1e15)
+    while (size * powers[decimals] >= 1e15 && decimals > 0)
         decimals--; /* beyond what a double holds */
     if (size >= 1e18)
         size = 1e18;
@@ -200,10 +201,10 @@ struct figures figures_of(struct arena *arena, double value, enum unit unit, uns
     digits = clamp_digits(digits);
     double size = fmin(fabs(value), 1e18);
     const struct step *step = size == 0 ? step_for_zero(unit) : step_for(size, unit, digits);
-    if (unit == UNIT_POWER && digits == 1 && fabs(value) == 0.5)
-        return (struct figures){
-            .bound = "", .whole = value < 0 ? MINUS "½" : "½", .fraction = "", .unit = "W"};
     double scaled = rounded_to(size / step->scale, digits);
+    if (unit == UNIT_POWER && digits == 1 && step->scale == 1 && scaled == 0.5)
+        return (struct figures){
+            .bound = "", .whole = value < 0 ? MINUS HALF : HALF, .fraction = "", .unit = "W"};
     unsigned decimals = decimals_for(scaled, 1, digits);
     /* A time is what was set, 5 min, and no measured figure; nor has nothing any figures. */
     if (scaled == 0 || (unit == UNIT_TIME && scaled == floor(scaled)))

@@ -179,7 +179,7 @@ static struct cut cut_number(const char *text)
     return cut;
 }
 
-/* The number without its marks, but for a point where the one at `point` stands; NULL: for none. */
+/* The number without its marks, but for a point where the one at `point` stands. */
 static const char *without_marks(struct arena *arena, const struct cut *cut, const char *point)
 {
     char *text = arena_get(arena, (size_t)(cut->rest - cut->number) + 1);
@@ -197,14 +197,13 @@ static const char *comma_hint(struct arena *arena, const char *text)
 {
     struct cut cut = cut_number(text);
     int before = (int)(cut.number - text);
-    const char *first = NULL, *last = NULL;
-    for (const char *at = cut.number; at < cut.rest; at++) {
-        if (*at != ',' && *at != '.')
-            continue;
-        first = first == NULL ? at : first;
-        last = at;
-    }
-    const char *whole = without_marks(arena, &cut, NULL);
+    const char *first = cut.number, *last = cut.rest;
+    while (first < last && *first != ',' && *first != '.')
+        first++;
+    do
+        last--;
+    while (last > first && *last != ',' && *last != '.');
+    const char *whole = without_marks(arena, &cut, cut.rest);
     const char *broken = without_marks(arena, &cut, last);
     if (first != last)
         return arena_print(arena, "write %.*s%s%s, without marks between thousands", before, text,
