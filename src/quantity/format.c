@@ -199,6 +199,8 @@ struct figures figures_of(struct arena *arena, double value, enum unit unit, uns
 {
     assert(!isnan(value) && unit < UNIT_COUNT);
     digits = clamp_digits(digits);
+    if (unit == UNIT_TIME && digits < 2)
+        digits = 2; /* one figure would make 2 min of 90 s */
     double size = fmin(fabs(value), 1e18);
     const struct step *step = size == 0 ? step_for_zero(unit) : step_for(size, unit, digits);
     double scaled = rounded_to(size / step->scale, digits);

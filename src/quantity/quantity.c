@@ -161,15 +161,15 @@ enum quantity_status quantity_read(struct arena *arena, const char *text, size_t
     return status;
 }
 
-/* The text cut into what stands before, in and behind its first number. */
+/* Where the first number of a text begins and ends. */
 struct cut {
-    const char *start, *number, *rest;
+    const char *number, *rest;
 };
 
 static struct cut cut_number(const char *text)
 {
     const char *end = text + strlen(text);
-    struct cut cut = {text, text, text};
+    struct cut cut = {text, text};
     struct decimal number;
     while (cut.number < end && !scan_begins_number(cut.number, end))
         cut.number++;
