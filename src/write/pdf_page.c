@@ -1,0 +1,213 @@
+#include "write/pdf_page.h"
+
+#include "write/pdf_drawing.h"
+#include "write/pdf_object.h"
+
+#include <hpdf_pages.h>
+#include <stdio.h>
+#include <string.h>
+
+static const double hairline_pt = 0.35;
+
+struct page_geometry page_geometry_of(const struct document *document)
+{
+    bool letter = document->page == PAGE_LETTER;
+    struct page_geometry page = {
+        .width = mm(letter ? 215.9 : 210), .height = mm(letter ? 279.4 : 297), .measure = mm(122)};
+    if (document->kind == DOCUMENT_SHEET) {
+        page.left = mm(18);
+        page.text_width = page.width - mm(18 + 12);
+        page.top = mm(17);
+        page.bottom = page.height - mm(12);
+        page.head_baseline = mm(11);
+    } else {
+        page.left = mm(25);
+        page.text_width = mm(letter ? 174 : 168);
+        page.top = mm(22);
+        page.bottom = mm(letter ? 259 : 277);
+        page.head_baseline = mm(15);
+    }
+    return page;
+}
+
+/* ---- images */
+
+/* FNV-1a, twice with different starts: an identifier, not a seal. */
+static void hash_contents(struct page_writer *writer, const struct buffer *contents)
+{
+    if (writer->document->fingerprint)
+        return;
+    for (size_t i = 0; i < contents->length; i++) {
+        unsigned char byte = (unsigned char)contents->data[i];
+        writer->hash[0] = (writer->hash[0] ^ byte) * 0x100000001B3u;
+        writer->hash[1] = (writer->hash[1] ^ writer->hash[0] >> 56) * 0x100000001B3u;
+    }
+}
+
+static unsigned image_number(struct page_writer *writer, const struct picture *picture)
+{
+    for (size_t i = 0; i < writer->picture_count; i++)
+        if (writer->pictures[i] == picture)
+            return (unsigned)i;
+    writer->pictures = arena_grow(writer->arena, writer->pictures, writer->picture_count,
+                                  &writer->picture_capacity, sizeof *writer->pictures);
+    writer->pictures[writer->picture_count] = picture;
+    if (!writer->images) {
+        writer->images = HPDF_Dict_New(writer->file->mmgr);
+        HPDF_Dict_Add(writer->resources, "XObject", writer->images);
+    }
+    hash_contents(writer, &picture->data);
+    char name[24];
+    snprintf(name, sizeof name, "I%zu", writer->picture_count);
+    HPDF_Dict_Add(writer->images, name, pdf_image(writer->file, picture));
+    return (unsigned)writer->picture_count++;
+}
+
+/* ---- one page */
+
+struct page {
+    struct page_writer *writer;
+    struct pdf_canvas canvas;
+    HPDF_Page page;
+};
+
+static void add_link(struct page *page, const struct item *item, struct point at)
+{
+    HPDF_REAL top = (HPDF_REAL)(page->writer->geometry->height - at.y);
+    HPDF_Rect area = {(HPDF_REAL)at.x, top - (HPDF_REAL)item->link.height,
+                      (HPDF_REAL)(at.x + item->link.width), top};
+    pdf_link_to_uri(page->writer->file, page->page, area, item->link.uri);
+}
+
+static void draw_item(struct page *page, const struct item *item, struct point origin)
+{
+    struct point at = {origin.x + item->at.x, origin.y + item->at.y};
+    struct pdf_canvas *canvas = &page->canvas;
+    switch (item->kind) {
+    case ITEM_TEXT:
+        pdf_canvas_text(canvas, at, &item->text.style, item->text.text, item->text.length);
+        break;
+    case ITEM_RULE:
+        pdf_canvas_line(canvas, at,
+                        (struct point){origin.x + item->rule.to.x, origin.y + item->rule.to.y},
+                        item->rule.line_pt, item->rule.ink);
+        break;
+    case ITEM_IMAGE:
+        pdf_canvas_image(canvas, image_number(page->writer, item->image.picture), at,
+                         item->image.width, item->image.height);
+        break;
+    case ITEM_DRAWING:
+        pdf_drawing(canvas, item->drawing.drawing, at, item->drawing.scale);
+        break;
+    case ITEM_LINK:
+        add_link(page, item, at);
+        break;
+    }
+}
+
+static void add_outline(struct page *page, const struct strip *strip, double y)
+{
+    struct page_writer *writer = page->writer;
+    struct pdf_target target = {page->page, (HPDF_REAL)(writer->geometry->height - y + 4)};
+    bool below = strip->outline_level > 2 && writer->section;
+    HPDF_Outline entry =
+        pdf_outline(writer->file, below ? writer->section : NULL, strip->outline, target);
+    if (!below)
+        writer->section = entry;
+}
+
+static void draw_strip(struct page *page, const struct placed *placed)
+{
+    const struct page_geometry *geometry = page->writer->geometry;
+    const struct strip *strip = placed->strip;
+    struct point origin = {geometry->left, placed->y};
+    if (strip->outline)
+        add_outline(page, strip, placed->y);
+    if (strip->top_rule && !placed->begins)
+        pdf_canvas_line(&page->canvas, origin,
+                        (struct point){origin.x + geometry->text_width, origin.y}, hairline_pt,
+                        INK_HAIR);
+    for (size_t i = 0; i < strip->item_count; i++)
+        draw_item(page, &strip->items[i], origin);
+}
+
+static double width_of(const struct page *page, const struct text_style *style, const char *text,
+                       size_t length)
+{
+    return (double)pdf_text_width(page->writer->fonts->resources, style->face, text, length) *
+           style->size_pt / 1000;
+}
+
+/* The longest beginning of text that leaves room for an ellipsis in this width. */
+static size_t fitting_length(const struct page *page, const struct text_style *style,
+                             const char *text, double width)
+{
+    size_t length = strnlen(text, 1000);
+    while (length > 0 && width_of(page, style, text, length) > width) {
+        length--;
+        while (length > 0 && ((unsigned char)text[length] & 0xC0) == 0x80)
+            length--;
+    }
+    return length;
+}
+
+static void draw_running_head(struct page *page, unsigned number, unsigned count)
+{
+    static const struct text_style style = {FACE_REGULAR, 7.5, 0, INK_SOFT};
+    const struct page_geometry *geometry = page->writer->geometry;
+    const struct document *document = page->writer->document;
+    const char *label = arena_print(page->writer->arena, "%s %u %s %u",
+                                    document->page_word ? document->page_word : "", number,
+                                    document->page_word_of ? document->page_word_of : "", count);
+    double label_width = width_of(page, &style, label, strlen(label));
+    struct point at = {geometry->left, geometry->head_baseline};
+    const char *head = document->running_head ? document->running_head : "";
+    double room = geometry->text_width - label_width - mm(5);
+    size_t length = strlen(head);
+    if (width_of(page, &style, head, length) > room) {
+        length = fitting_length(page, &style, head, room - style.size_pt);
+        head = arena_print(page->writer->arena, "%.*s…", (int)length, head);
+        length = strlen(head);
+    }
+    pdf_canvas_text(&page->canvas, at, &style, head, length);
+    at.x = geometry->left + geometry->text_width - label_width;
+    pdf_canvas_text(&page->canvas, at, &style, label, strlen(label));
+}
+
+static void finish_page(struct page *page)
+{
+    pdf_canvas_end(&page->canvas);
+    hash_contents(page->writer, &page->canvas.contents);
+    HPDF_PageAttr attributes = page->page->attr;
+    HPDF_Stream_Write(attributes->contents->stream, (const HPDF_BYTE *)page->canvas.contents.data,
+                      (HPDF_UINT)page->canvas.contents.length);
+    pdf_canvas_release(&page->canvas);
+}
+
+static struct page begin_page(struct page_writer *writer)
+{
+    struct page page = {.writer = writer, .page = HPDF_AddPage(writer->file)};
+    if (!page.page)
+        return page;
+    HPDF_Page_SetWidth(page.page, (HPDF_REAL)writer->geometry->width);
+    HPDF_Page_SetHeight(page.page, (HPDF_REAL)writer->geometry->height);
+    HPDF_Dict_Add(page.page, "Resources", writer->resources);
+    page.canvas = pdf_canvas_begin(writer->fonts, writer->geometry->height, writer->accent);
+    return page;
+}
+
+void pdf_pages_draw(struct page_writer *writer, const struct page_plan *plan)
+{
+    writer->resources = HPDF_Dict_New(writer->file->mmgr);
+    HPDF_Xref_Add(writer->file->xref, writer->resources);
+    size_t next = 0;
+    for (unsigned number = 0; number < plan->page_count; number++) {
+        struct page page = begin_page(writer);
+        if (!page.page)
+            return; /* the library failed; saving says so */
+        draw_running_head(&page, number + 1, plan->page_count);
+        for (; next < plan->count && plan->items[next].page == number; next++)
+            draw_strip(&page, &plan->items[next]);
+        finish_page(&page);
+    }
+}
