@@ -22,7 +22,7 @@ enum { TERMINAL_COLUMNS = 80 };
 
 /* What the options of all commands fill. */
 struct options {
-    bool help, quiet, json, strict, schema, pages;
+    bool help, quiet, json, strict, schema, pages, wait;
     const char *archive, *output, *like, *threads;
 };
 
@@ -56,6 +56,8 @@ static const struct option_row option_rows[] = {
     {"strict", 0, NULL, "exit 1 when there is a warning", OPTION_AT(strict),
      COMMAND_ASSESS | COMMAND_PUBLISH},
     {"threads", 0, "N", "jobs made at the same time, else 2", OPTION_AT(threads), COMMAND_PUBLISH},
+    {"wait", 0, NULL, "wait for another publish into the same folder to end", OPTION_AT(wait),
+     COMMAND_PUBLISH},
     {"pages", 0, NULL, "only the pages over all jobs", OPTION_AT(pages), COMMAND_PUBLISH},
     {"schema", 0, NULL, "JSON Schema (draft-07) for editors", OPTION_AT(schema), COMMAND_FIELDS},
     {"quiet", 'q', NULL, "no notes and no progress", OPTION_AT(quiet), COMMAND_ALL},
@@ -297,6 +299,7 @@ static int command_publish(struct session *session)
         .job_paths = whole ? NULL : (const char *const *)session->operands,
         .job_path_count = whole ? 0 : (size_t)session->operand_count,
         .pages_only = session->options.pages,
+        .wait = session->options.wait,
         .threads = threads ? (unsigned)strtoul(threads, NULL, 10) : 0,
         .listener = tell_job,
         .listener_context = session,
@@ -305,10 +308,16 @@ static int command_publish(struct session *session)
     archive_close(&archive);
     if (result.failure != FILE_OK)
         return system_failure(result.failed_path, result.failure);
-    if (!session->options.quiet)
-        fprintf(stderr, "%zu jobs published into %s, %zu with mistakes left out\n",
-                result.jobs - result.broken, request.output, result.broken);
-    return exit_of(session, result.broken, result.warnings);
+    if (result.busy) {
+        fprintf(stderr, "gridleak: '%s' is being published by process %ld; --wait waits for it\n",
+                request.output, result.holder);
+        return EXIT_SYSTEM;
+    }
+    if (!session->options.quiet && !request.pages_only)
+        fprintf(stderr, "%zu jobs: %zu made, %zu unchanged, %zu left out for mistakes\n",
+                result.jobs, result.jobs - result.broken - result.unchanged, result.unchanged,
+                result.broken);
+    return exit_of(session, result.broken, result.warned);
 }
 
 /* ---- fields, start */

@@ -200,24 +200,39 @@ const char *job_name_of(const char *path, struct arena *arena)
     return arena_text(arena, name, length);
 }
 
-enum file_status job_files_publish(const struct archive *archive, const char *path,
-                                   const char *output, struct arena *arena,
-                                   struct diagnostics *diagnostics, struct buffer *failed)
+static void list_inputs(const struct job_files_request *request, const struct job *job,
+                        struct job_files_result *result)
 {
-    size_t errors_before = diagnostics->errors;
-    const char *name = job_name_of(path, arena);
-    const char *folder = arena_print(arena, "%s/jobs/%s", output, name);
-    struct opened_job opened = job_open(archive, path, arena, diagnostics);
+    result->inputs = arena_array(request->arena, job->photo_count + 1, sizeof *result->inputs);
+    result->inputs[result->input_count++] = request->path;
+    for (size_t i = 0; i < job->photo_count; i++)
+        if (job->photos[i].file)
+            result->inputs[result->input_count++] =
+                photograph_path(job, &job->photos[i], request->arena);
+}
+
+struct job_files_result job_files_publish(const struct job_files_request *request)
+{
+    struct job_files_result result = {0};
+    struct diagnostics *diagnostics = request->diagnostics;
+    struct buffer failed = {0};
+    const char *name = job_name_of(request->path, request->arena);
+    const char *folder = arena_print(request->arena, "%s/jobs/%s", request->output, name);
+    struct opened_job opened =
+        job_open(request->archive, request->path, request->arena, diagnostics);
     struct photographs photographs = {0};
-    if (diagnostics->errors == errors_before)
-        photographs = photographs_read(archive, opened.job, arena, diagnostics);
-    enum file_status status = FILE_OK;
-    if (diagnostics->errors == errors_before) {
-        struct copy_work work = {archive, &opened, &photographs, arena, diagnostics};
-        status = publish_whole(&work, folder, failed);
+    list_inputs(request, opened.job, &result);
+    if (diagnostics->errors == 0)
+        photographs = photographs_read(request->archive, opened.job, request->arena, diagnostics);
+    if (diagnostics->errors == 0) {
+        struct copy_work work = {request->archive, &opened, &photographs, request->arena,
+                                 diagnostics};
+        result.failure = publish_whole(&work, folder, &failed);
     }
     photographs_release(&photographs);
-    if (diagnostics->errors != errors_before && status == FILE_OK)
-        status = lay_broken(folder, name, diagnostics, failed);
-    return status;
+    if (diagnostics->errors != 0 && result.failure == FILE_OK)
+        result.failure = lay_broken(folder, name, diagnostics, &failed);
+    result.failed_path = arena_text(request->arena, failed.data, failed.length);
+    buffer_release(&failed);
+    return result;
 }

@@ -28,13 +28,26 @@ const char *job_name_of(const char *path, struct arena *arena);
 
 enum { JOB_DEFLATE_LEVEL = 1 };
 
+/* One job to be made. archive->pdf must be open. */
+struct job_files_request {
+    const struct archive *archive;
+    const char *path; /* of the job file */
+    const char *output;
+    struct arena *arena; /* everything of this job */
+    struct diagnostics *diagnostics;
+};
+
+struct job_files_result {
+    enum file_status failure; /* FILE_OK, or why `failed_path` could not be written */
+    const char *failed_path;
+    const char **inputs; /* what the files were made from: the job file, its photographs */
+    size_t input_count;
+};
+
 /*
- * Make and write all files of a job below `output`/jobs/<name>/. With errors in the file only
- * summary.json is written, which says so; files of an earlier publish stay. FILE_OK, or what
- * failed, with the path in *failed. archive->pdf must be open.
+ * Make and write all files of a job below output/jobs/<name>/. With errors in the file only
+ * summary.json is written, which says so; files of an earlier publish stay.
  */
-enum file_status job_files_publish(const struct archive *archive, const char *path,
-                                   const char *output, struct arena *arena,
-                                   struct diagnostics *diagnostics, struct buffer *failed);
+struct job_files_result job_files_publish(const struct job_files_request *request);
 
 #endif

@@ -33,6 +33,15 @@ static bool has_parent_step(const char *path)
     return false;
 }
 
+const char *photograph_path(const struct job *job, const struct photo *photo, struct arena *arena)
+{
+    const char *slash = strrchr(job->source.path, '/');
+    if (!slash)
+        return photo->file;
+    return arena_print(arena, "%.*s/%s", (int)(slash - job->source.path), job->source.path,
+                       photo->file);
+}
+
 static bool read_one(const struct archive *archive, const struct job *job,
                      const struct photo *photo, struct picture *picture,
                      struct diagnostics *diagnostics)
@@ -43,11 +52,7 @@ static bool read_one(const struct archive *archive, const struct job *job,
                        "the photograph '%s' is not inside the archive", photo->file);
         return false;
     }
-    const char *slash = strrchr(job->source.path, '/');
-    const char *path =
-        slash ? arena_print(diagnostics->arena, "%.*s/%s", (int)(slash - job->source.path),
-                            job->source.path, photo->file)
-              : photo->file;
+    const char *path = photograph_path(job, photo, diagnostics->arena);
     struct buffer file = {0};
     enum file_status status = file_read(path, PHOTO_BYTES_MAX, &file);
     bool good = false;

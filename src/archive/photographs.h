@@ -17,6 +17,9 @@ struct photographs {
     size_t count;
 };
 
+/* Where a photograph lies: beside the job file. */
+const char *photograph_path(const struct job *job, const struct photo *photo, struct arena *arena);
+
 /*
  * Read all. A photograph that is missing, damaged or outside the archive is a diagnostic (error)
  * at its place in the job file.

@@ -1,41 +1,68 @@
 #include "archive/publish.h"
 
 #include "archive/job_files.h"
+#include "archive/lock.h"
 #include "archive/pages.h"
-#include "base/memory.h"
+#include "archive/setting.h"
+#include "archive/state.h"
 
 #include <pthread.h>
 #include <stdlib.h>
 #include <string.h>
 #include <strings.h>
+#include <unistd.h>
 
 /* One job under way or finished. */
 struct job_work {
-    const char *path;
+    const char *path, *name;
+    const char *twin; /* another job of the same name but for case, NULL: none */
     bool finished;
-    struct arena arena;
+    struct state_job *state; /* what its files were made from; in the publish's own arena */
+    struct arena arena;      /* of the job, given back when it has been told */
     struct diagnostics diagnostics;
-    enum file_status status;
-    struct buffer failed;
+    struct job_files_result files;
 };
 
-/* Shared by the threads; `mutex` guards all but archive and request. */
+/* Shared by the threads; `mutex` guards all but archive, request,
+   setting and lock. */
 struct publish_work {
     const struct archive *archive;
     const struct publish_request *request;
     struct publish_result *result;
     struct arena *arena;
+    char setting[HASH_TEXT_BYTES];
+    struct lock lock;
+    bool named; /* these jobs only */
     pthread_mutex_t mutex;
     struct job_work *jobs;
     size_t count, next, told;
 };
 
-static void keep_failure(struct publish_work *work, const struct job_work *job)
+/* Note what a job was made from, for the next run. Inputs are noted after they were read: one that
+   changed in between is noticed then by its time or, at the latest, by its next change. */
+static void note_state(struct publish_work *work, struct job_work *job)
 {
-    if (job->status == FILE_OK || work->result->failure != FILE_OK)
-        return;
-    work->result->failure = job->status;
-    work->result->failed_path = arena_text(work->arena, job->failed.data, job->failed.length);
+    struct state_job *state = arena_get(work->arena, sizeof *state);
+    state->name = job->name;
+    memcpy(state->setting, work->setting, HASH_TEXT_BYTES);
+    state->broken = job->diagnostics.errors > 0;
+    state->warned = job->diagnostics.warnings > 0;
+    state->inputs = arena_array(work->arena, job->files.input_count, sizeof *state->inputs);
+    for (size_t i = 0; i < job->files.input_count; i++)
+        state->input_count +=
+            state_note_input(job->files.inputs[i], work->arena, &state->inputs[state->input_count]);
+    job->state = state;
+}
+
+static void count_job(struct publish_work *work, struct job_work *job)
+{
+    struct publish_result *result = work->result;
+    result->broken += job->diagnostics.errors > 0;
+    result->warned += job->diagnostics.warnings > 0;
+    if (job->files.failure != FILE_OK && result->failure == FILE_OK) {
+        result->failure = job->files.failure;
+        result->failed_path = arena_copy(work->arena, job->files.failed_path);
+    }
 }
 
 /* Tell of the jobs that are finished, in order, and give their memory back. */
@@ -43,34 +70,54 @@ static void tell_finished(struct publish_work *work)
 {
     for (; work->told < work->count && work->jobs[work->told].finished; work->told++) {
         struct job_work *job = &work->jobs[work->told];
-        struct publish_event event = {job_name_of(job->path, &job->arena), work->told + 1,
-                                      work->count, &job->diagnostics};
+        if (!job->diagnostics.arena)
+            continue; /* unchanged: nothing to tell */
+        struct publish_event event = {job->name, work->told + 1, work->count, &job->diagnostics};
         work->request->listener(&event, work->request->listener_context);
-        work->result->broken += job->diagnostics.errors > 0;
-        work->result->warnings += job->diagnostics.warnings;
-        keep_failure(work, job);
-        buffer_release(&job->failed);
+        count_job(work, job);
+        if (job->files.failure == FILE_OK)
+            note_state(work, job);
         arena_release(&job->arena);
     }
 }
 
 static struct job_work *next_job(struct publish_work *work)
 {
+    struct job_work *job = NULL;
     pthread_mutex_lock(&work->mutex);
-    bool more = work->next < work->count && work->result->failure == FILE_OK;
-    struct job_work *job = more ? &work->jobs[work->next++] : NULL;
+    while (work->next < work->count && work->jobs[work->next].finished)
+        work->next++;
+    if (work->next < work->count && work->result->failure == FILE_OK)
+        job = &work->jobs[work->next++];
     pthread_mutex_unlock(&work->mutex);
     return job;
+}
+
+static void publish_one(const struct publish_work *work, struct job_work *job)
+{
+    job->diagnostics = diagnostics_in(&job->arena);
+    if (job->twin) {
+        const struct source file = {job->path, NULL, 0};
+        diagnostic_add(&job->diagnostics, &file, (struct position){0}, DIAGNOSTIC_JOB_CASE_TWIN,
+                       "rename one of the two", "its number differs from '%s' in case only",
+                       job->twin);
+        return;
+    }
+    struct job_files_request request = {work->archive, job->path, work->request->output,
+                                        &job->arena, &job->diagnostics};
+    if (work->named)
+        lock_job(&work->lock, job->name);
+    job->files = job_files_publish(&request);
+    if (work->named)
+        unlock_job(&work->lock, job->name);
+    diagnostics_sort(&job->diagnostics);
 }
 
 static void *publish_jobs(void *context)
 {
     struct publish_work *work = context;
     for (struct job_work *job; (job = next_job(work));) {
-        job->diagnostics = diagnostics_in(&job->arena);
-        job->status = job_files_publish(work->archive, job->path, work->request->output,
-                                        &job->arena, &job->diagnostics, &job->failed);
-        diagnostics_sort(&job->diagnostics);
+        publish_one(work, job);
         pthread_mutex_lock(&work->mutex);
         job->finished = true;
         tell_finished(work);
@@ -86,28 +133,114 @@ static void run_threads(struct publish_work *work)
     unsigned wanted = work->request->threads ? work->request->threads : 2;
     wanted = wanted > THREADS_MAX ? THREADS_MAX : wanted;
     unsigned started = 0;
+    pthread_mutex_init(&work->mutex, NULL);
     while (started + 1 < wanted && started + 1 < work->count &&
            pthread_create(&threads[started], NULL, publish_jobs, work) == 0)
         started++;
     publish_jobs(work);
     for (unsigned i = 0; i < started; i++)
         pthread_join(threads[i], NULL);
+    tell_finished(work);
+    pthread_mutex_destroy(&work->mutex);
 }
 
-static struct job_work *list_work(const struct archive *archive,
-                                  const struct publish_request *request, struct arena *arena,
-                                  size_t *count)
+static int by_folded_name(const void *a, const void *b)
+{
+    const struct job_work *const *left = a, *const *right = b;
+    return strcasecmp((*left)->name, (*right)->name);
+}
+
+/* Two names that differ in case only would share a folder on some file systems. */
+static void mark_case_twins(struct publish_work *work)
+{
+    struct job_work **sorted = arena_array(work->arena, work->count + 1, sizeof *sorted);
+    for (size_t i = 0; i < work->count; i++)
+        sorted[i] = &work->jobs[i];
+    qsort(sorted, work->count, sizeof *sorted, by_folded_name);
+    for (size_t i = 1; i < work->count; i++)
+        if (strcasecmp(sorted[i - 1]->name, sorted[i]->name) == 0) {
+            sorted[i]->twin = sorted[i - 1]->name;
+            sorted[i - 1]->twin = sorted[i]->name;
+        }
+}
+
+static void list_archive(struct publish_work *work, struct state *old)
 {
     struct job_names names = {0};
-    if (request->job_path_count == 0)
-        archive_job_names(archive->folder, arena, &names);
-    *count = request->job_path_count ? request->job_path_count : names.count;
-    struct job_work *jobs = arena_array(arena, *count, sizeof *jobs);
-    for (size_t i = 0; i < *count; i++)
-        jobs[i].path = request->job_path_count
-                           ? request->job_paths[i]
-                           : arena_print(arena, "%s/%s.yaml", archive->folder, names.names[i]);
-    return jobs;
+    archive_job_names(work->archive->folder, work->arena, &names);
+    work->count = names.count;
+    work->jobs = arena_array(work->arena, names.count, sizeof *work->jobs);
+    for (size_t i = 0; i < names.count; i++) {
+        struct job_work *job = &work->jobs[i];
+        job->name = names.names[i];
+        job->path = arena_print(work->arena, "%s/%s.yaml", work->archive->folder, job->name);
+    }
+    mark_case_twins(work);
+    for (size_t i = 0; i < names.count; i++) {
+        struct job_work *job = &work->jobs[i];
+        struct state_job *state = state_find(old, job->name);
+        bool touched = false;
+        /* A broken file is read again, so that its mistakes are told again. */
+        if (!state || state->broken || !state_is_current(state, work->setting, &touched))
+            continue;
+        const char *summary =
+            arena_print(work->arena, "%s/jobs/%s/summary.json", work->request->output, job->name);
+        if (access(summary, F_OK) != 0)
+            continue;
+        job->finished = true;
+        job->state = state;
+        work->result->unchanged++;
+        work->result->warned += state->warned;
+    }
+}
+
+static void list_named(struct publish_work *work)
+{
+    work->count = work->request->job_path_count;
+    work->jobs = arena_array(work->arena, work->count, sizeof *work->jobs);
+    for (size_t i = 0; i < work->count; i++) {
+        work->jobs[i].path = work->request->job_paths[i];
+        work->jobs[i].name = job_name_of(work->jobs[i].path, work->arena);
+    }
+}
+
+static void fail(struct publish_work *work, enum file_status status, const char *path)
+{
+    if (status == FILE_OK || work->result->failure != FILE_OK)
+        return;
+    work->result->failure = status;
+    work->result->failed_path = arena_copy(work->arena, path);
+}
+
+static void publish_pages(struct publish_work *work)
+{
+    struct buffer failed = {0};
+    enum file_status status = pages_publish(work->archive, work->request->output, &failed);
+    fail(work, status, buffer_string(&failed));
+    buffer_release(&failed);
+}
+
+static void publish_all(struct publish_work *work)
+{
+    struct state old;
+    state_read(work->request->output, &old);
+    list_archive(work, &old);
+    run_threads(work);
+    const struct state_job **jobs = arena_array(work->arena, work->count, sizeof *jobs);
+    for (size_t i = 0; i < work->count; i++)
+        jobs[i] = work->jobs[i].state;
+    if (work->result->failure == FILE_OK)
+        publish_pages(work);
+    /* Also after a failure: what was made need not be made again. */
+    enum file_status status = state_write(work->request->output, jobs, work->count);
+    fail(work, status, work->request->output);
+    state_release(&old);
+}
+
+static void publish_named(struct publish_work *work)
+{
+    list_named(work);
+    run_threads(work);
 }
 
 struct publish_result publish(const struct archive *archive, const struct publish_request *request,
@@ -116,19 +249,26 @@ struct publish_result publish(const struct archive *archive, const struct publis
     struct publish_result result = {0};
     struct publish_work work = {
         .archive = archive, .request = request, .result = &result, .arena = arena};
-    if (!request->pages_only) {
-        pthread_mutex_init(&work.mutex, NULL);
-        work.jobs = list_work(archive, request, arena, &work.count);
-        run_threads(&work);
-        pthread_mutex_destroy(&work.mutex);
-        result.jobs = work.count;
-    }
-    if (request->job_path_count == 0 && result.failure == FILE_OK) {
-        struct buffer failed = {0};
-        result.failure = pages_publish(archive, request->output, &failed);
-        if (result.failure != FILE_OK)
-            result.failed_path = arena_text(arena, failed.data, failed.length);
-        buffer_release(&failed);
-    }
+    work.named = request->job_path_count > 0;
+    fail(&work, folder_make(request->output), request->output);
+    if (result.failure != FILE_OK)
+        return result;
+    enum file_status failure;
+    enum lock_status locked = lock_take(request->output, work.named ? LOCK_SHARED : LOCK_ALONE,
+                                        request->wait, &work.lock, &result.holder, &failure);
+    result.busy = locked == LOCK_BUSY;
+    if (locked == LOCK_FAILED)
+        fail(&work, failure, request->output);
+    if (locked != LOCK_HELD)
+        return result;
+    setting_hash(archive, work.setting);
+    if (work.named)
+        publish_named(&work);
+    else if (request->pages_only)
+        publish_pages(&work);
+    else
+        publish_all(&work);
+    result.jobs = work.count;
+    lock_release(&work.lock);
     return result;
 }

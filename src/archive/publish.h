@@ -19,13 +19,16 @@ struct publish_request {
     const char *const *job_paths; /* these jobs only; count 0: all of the archive */
     size_t job_path_count;
     bool pages_only;
+    bool wait;                 /* for another publish into the same folder to end */
     unsigned threads;          /* 0: two */
     publish_listener listener; /* called from one thread at a time; never NULL */
     void *listener_context;
 };
 
 struct publish_result {
-    size_t jobs, broken, warnings;
+    size_t jobs, unchanged, broken, warned; /* warned: jobs with warnings, unchanged ones too */
+    bool busy;                /* another publish holds the output folder: nothing was done */
+    long holder;              /* its process number, 0: not known */
     enum file_status failure; /* FILE_OK, or the first file that could not be written */
     const char *failed_path;
 };

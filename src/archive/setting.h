@@ -1,0 +1,13 @@
+/*
+ * What every record depends on besides its own job: the program, templates, words, style, fonts and
+ * shop.yaml, in one hash.
+ */
+#ifndef ARCHIVE_SETTING_H
+#define ARCHIVE_SETTING_H
+
+#include "archive/archive.h"
+#include "base/hash.h"
+
+void setting_hash(const struct archive *archive, char hash[HASH_TEXT_BYTES]);
+
+#endif
