@@ -59,8 +59,7 @@ static void choose_step(struct bracket *b, double tolerance)
 bool numeric_root(numeric_function f, const void *context, double low, double high, double *root)
 {
     double f_low = f(low, context), f_high = f(high, context);
-    if (isnan(f_low) || isnan(f_high) ||
-        (f_low != 0 && f_high != 0 && (f_low > 0) == (f_high > 0)))
+    if (isnan(f_low) || isnan(f_high) || (f_low != 0 && f_high != 0 && (f_low > 0) == (f_high > 0)))
         return false;
     double tolerance = 1e-12 * fabs(high - low);
     struct bracket b = {high, f_high, low, f_low, low, f_low, high - low, high - low};
@@ -157,53 +156,122 @@ static double dot(const double *a, const double *b, size_t count)
     return sum;
 }
 
-/*
- * The diagonal of inverse(J'J) from J = Q R, columns scaled to length 1 first, twice
- * orthogonalised: nearly equal columns (Bennett5) would lose everything in J'J. false: the columns
- * are dependent.
- */
-static bool inverse_diagonal(double *jacobian, size_t count, size_t parameter_count,
-                             double *diagonal)
-{
-    double r[NUMERIC_PARAMETERS_MAX][NUMERIC_PARAMETERS_MAX] = {{0}};
-    double inverse[NUMERIC_PARAMETERS_MAX][NUMERIC_PARAMETERS_MAX] = {{0}};
+/* J = Q R: the columns of Q over J, R with the columns' own lengths in it. */
+struct factors {
+    double r[NUMERIC_PARAMETERS_MAX][NUMERIC_PARAMETERS_MAX];
     double length[NUMERIC_PARAMETERS_MAX];
+};
+
+/* What is left of a column of length 1 when it is the sum of others: differences are this coarse.
+ */
+static const double dependent = 1e-9;
+
+/*
+ * Columns are scaled to length 1 first and orthogonalised twice: nearly equal ones (Bennett5) would
+ * lose everything in J'J. false: the columns are dependent.
+ */
+static bool factorise(double *jacobian, size_t count, size_t parameter_count,
+                      struct factors *factors)
+{
+    memset(factors, 0, sizeof *factors);
     for (size_t k = 0; k < parameter_count; k++) {
         double *column = jacobian + k * count;
-        length[k] = sqrt(dot(column, column, count));
-        if (!(length[k] > 0) || !isfinite(length[k]))
+        double length = sqrt(dot(column, column, count));
+        if (!(length > 0) || !isfinite(length))
             return false;
+        factors->length[k] = length;
         for (size_t i = 0; i < count; i++)
-            column[i] /= length[k];
+            column[i] /= length;
         for (int pass = 0; pass < 2; pass++)
             for (size_t j = 0; j < k; j++) {
                 double along = dot(jacobian + j * count, column, count);
-                r[j][k] += along;
+                factors->r[j][k] += along;
                 for (size_t i = 0; i < count; i++)
                     column[i] -= along * jacobian[j * count + i];
             }
-        r[k][k] = sqrt(dot(column, column, count));
-        if (!(r[k][k] > 1e-11))
+        double left = sqrt(dot(column, column, count));
+        if (!(left > dependent))
             return false;
+        factors->r[k][k] = left;
         for (size_t i = 0; i < count; i++)
-            column[i] /= r[k][k];
-    }
-    for (size_t k = 0; k < parameter_count; k++) {
-        inverse[k][k] = 1 / r[k][k];
-        for (size_t j = k; j-- > 0;) {
-            double sum = 0;
-            for (size_t l = j + 1; l <= k; l++)
-                sum -= r[j][l] * inverse[l][k];
-            inverse[j][k] = sum / r[j][j];
-        }
-    }
-    for (size_t j = 0; j < parameter_count; j++) {
-        double sum = 0;
-        for (size_t k = j; k < parameter_count; k++)
-            sum += inverse[j][k] * inverse[j][k];
-        diagonal[j] = sum / (length[j] * length[j]);
+            column[i] /= left;
     }
     return true;
+}
+
+/* solution = inverse(R) * right, lengths undone. */
+static void solve_upper(const struct factors *factors, size_t parameter_count, const double *right,
+                        double *solution)
+{
+    for (size_t j = parameter_count; j-- > 0;) {
+        double sum = right[j];
+        for (size_t k = j + 1; k < parameter_count; k++)
+            sum -= factors->r[j][k] * solution[k];
+        solution[j] = sum / factors->r[j][j];
+    }
+    for (size_t j = 0; j < parameter_count; j++)
+        solution[j] /= factors->length[j];
+}
+
+/* Square roots of the diagonal of inverse(J'J) = inverse(R)*inverse(R)'. */
+static void root_diagonal(const struct factors *factors, size_t parameter_count, double *roots)
+{
+    double squares[NUMERIC_PARAMETERS_MAX] = {0};
+    for (size_t k = 0; k < parameter_count; k++) {
+        double unit[NUMERIC_PARAMETERS_MAX] = {0}, column[NUMERIC_PARAMETERS_MAX];
+        unit[k] = 1;
+        solve_upper(factors, parameter_count, unit, column);
+        for (size_t j = 0; j < parameter_count; j++)
+            squares[j] += column[j] * column[j];
+    }
+    for (size_t j = 0; j < parameter_count; j++)
+        roots[j] = sqrt(squares[j]);
+}
+
+static double sum_of_squares(const struct fit_task *task, const double *parameters, size_t count)
+{
+    double sum = 0;
+    for (size_t i = 0; i < count; i++) {
+        double r = residual(task, i, parameters);
+        sum += r * r;
+    }
+    return sum;
+}
+
+/*
+ * A few Gauss-Newton steps with central differences from where MINPACK stopped: its forward
+ * differences leave the fifth digit open (Lanczos3). A step that does not lessen the sum is not
+ * taken. Leaves the factors at the end point. false: singular.
+ */
+static bool polish(const struct fit_task *task, size_t count, size_t parameter_count,
+                   double *parameters, struct factors *factors)
+{
+    double *jacobian = memory_get_cleared(count * (parameter_count + 1), sizeof *jacobian);
+    double *values = jacobian + count * parameter_count;
+    double sum = sum_of_squares(task, parameters, count);
+    bool regular = false;
+    for (int round = 0; round < 10; round++) {
+        double right[NUMERIC_PARAMETERS_MAX], step[NUMERIC_PARAMETERS_MAX];
+        double moved[NUMERIC_PARAMETERS_MAX];
+        fill_jacobian(task, parameters, parameter_count, count, jacobian);
+        regular = factorise(jacobian, count, parameter_count, factors);
+        if (!regular)
+            break;
+        for (size_t i = 0; i < count; i++)
+            values[i] = residual(task, i, parameters);
+        for (size_t p = 0; p < parameter_count; p++)
+            right[p] = -dot(jacobian + p * count, values, count);
+        solve_upper(factors, parameter_count, right, step);
+        for (size_t p = 0; p < parameter_count; p++)
+            moved[p] = parameters[p] + step[p];
+        double moved_sum = sum_of_squares(task, moved, count);
+        if (!(moved_sum < sum))
+            break;
+        memcpy(parameters, moved, parameter_count * sizeof *moved);
+        sum = moved_sum;
+    }
+    free(jacobian);
+    return regular;
 }
 
 enum numeric_status numeric_least_squares(numeric_model model, const void *context, const double *x,
@@ -219,22 +287,17 @@ enum numeric_status numeric_least_squares(numeric_model model, const void *conte
     memcpy(found.parameters, start, parameter_count * sizeof *start);
     if (!minimise(&task, count, parameter_count, found.parameters))
         return NUMERIC_NOT_CONVERGED;
-    for (size_t i = 0; i < count; i++) {
-        double r = residual(&task, i, found.parameters);
-        found.sum_of_squares += r * r;
-    }
+    struct factors factors;
+    bool regular = polish(&task, count, parameter_count, found.parameters, &factors);
+    found.sum_of_squares = sum_of_squares(&task, found.parameters, count);
     if (!isfinite(found.sum_of_squares))
         return NUMERIC_NOT_CONVERGED;
-    found.residual_sd = sqrt(found.sum_of_squares / (double)found.freedom);
-    double diagonal[NUMERIC_PARAMETERS_MAX];
-    double *jacobian = memory_get_cleared(count * parameter_count, sizeof *jacobian);
-    fill_jacobian(&task, found.parameters, parameter_count, count, jacobian);
-    bool regular = inverse_diagonal(jacobian, count, parameter_count, diagonal);
-    free(jacobian);
     if (!regular)
         return NUMERIC_SINGULAR;
-    for (size_t p = 0; p < parameter_count; p++)
-        found.standard_errors[p] = sqrt(diagonal[p]) * (sigma ? 1 : found.residual_sd);
+    found.residual_sd = sqrt(found.sum_of_squares / (double)found.freedom);
+    root_diagonal(&factors, parameter_count, found.standard_errors);
+    for (size_t p = 0; p < parameter_count && !sigma; p++)
+        found.standard_errors[p] *= found.residual_sd;
     *fit = found;
     return NUMERIC_OK;
 }

@@ -7,8 +7,8 @@
 static const double knee_of_screen = 0.1;
 static const double triode_knee_v = 5;
 static const double bottomed_of_screen = 0.2;
-/* A screen at or below its cathode takes nothing; the floor keeps the ratios finite. */
-static const double least_screen_v = 1e-6;
+/* Near its cathode a screen takes next to nothing; the floor keeps ratio and knee finite. */
+static const double least_screen_v = 0.5;
 
 static const double grid_current_at_zero_a = 15e-6;
 static const double grid_slope_v = 0.23;
@@ -173,7 +173,7 @@ double valve_grid_current(double vgk_v)
 double valve_grid_volts(double emf_v, double ohm)
 {
     double drop_at_zero_v = ohm * grid_current_at_zero_a;
-    if (drop_at_zero_v * exp(fmin(emf_v, 0) / grid_slope_v) < 1e-14 && emf_v <= 0)
+    if (ohm == 0 || (emf_v <= 0 && drop_at_zero_v * exp(emf_v / grid_slope_v) < 1e-14))
         return emf_v;
     double corner_a = valve_grid_current(grid_linear_from_v);
     if (emf_v - grid_linear_from_v >= ohm * corner_a) {
