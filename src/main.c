@@ -5,6 +5,7 @@
 #include "archive/archive.h"
 #include "archive/job_files.h"
 #include "archive/publish.h"
+#include "archive/seal.h"
 #include "base/options.h"
 #include "job/manual.h"
 #include "job/schema.h"
@@ -15,6 +16,7 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+#include <time.h>
 #include <unistd.h>
 
 enum { EXIT_DONE = 0, EXIT_NO = 1, EXIT_INPUT = 2, EXIT_SYSTEM = 3 };
@@ -41,17 +43,20 @@ enum command_bit {
     COMMAND_ASSESS = 1 << 2,
     COMMAND_PUBLISH = 1 << 3,
     COMMAND_FIELDS = 1 << 4,
-    COMMAND_ALL = (1 << 5) - 1
+    COMMAND_SEAL = 1 << 5,
+    COMMAND_PROVE = 1 << 6,
+    COMMAND_ALL = (1 << 7) - 1
 };
 
 #define OPTION_AT(member) offsetof(struct options, member)
 static const struct option_row option_rows[] = {
     {"archive", 'a', "DIR", "the folder that holds shop.yaml; else found from the job file",
-     OPTION_AT(archive), COMMAND_START | COMMAND_SHEET | COMMAND_ASSESS | COMMAND_PUBLISH},
+     OPTION_AT(archive),
+     COMMAND_START | COMMAND_SHEET | COMMAND_ASSESS | COMMAND_PUBLISH | COMMAND_SEAL},
     {"like", 0, "JOB", "keep the chassis' parts of this job, blank its readings", OPTION_AT(like),
      COMMAND_START},
-    {"output", 'o', "PATH", "sheet: a file .html, .pdf or .md; publish: the folder, else output",
-     OPTION_AT(output), COMMAND_SHEET | COMMAND_PUBLISH},
+    {"output", 'o', "PATH", "sheet: a file .html, .pdf or .md; else the output folder, \"output\"",
+     OPTION_AT(output), COMMAND_SHEET | COMMAND_PUBLISH | COMMAND_SEAL},
     {"json", 0, NULL, "one object a job, on one line", OPTION_AT(json), COMMAND_ASSESS},
     {"strict", 0, NULL, "exit 1 when there is a warning", OPTION_AT(strict),
      COMMAND_ASSESS | COMMAND_PUBLISH},
@@ -85,6 +90,19 @@ static const struct command_row command_rows[] = {
      "PDF, the bench sheets, and the list of the archive. A job file with mistakes is told\n"
      "and left out; the others are made.\n",
      COMMAND_PUBLISH},
+    {"seal", "JOB.yaml client|sale [-o DIR]", "set a published copy aside for good",
+     "Copies the client's or the sale copy, as last published, into the archive's folder\n"
+     "sealed/, which no command writes again, and appends a line to seals.txt. The same\n"
+     "line lies in the sealed folder: whoever holds it can show that nothing written before\n"
+     "it has changed since. It cannot show that the shop did not write everything anew\n"
+     "before it handed anything out. To sign a sealed folder:\n"
+     "ssh-keygen -Y sign -f KEY -n gridleak FOLDER/manifest.sha256\n",
+     COMMAND_SEAL},
+    {"prove", "FOLDER", "has anything in a copy been changed?",
+     "Holds every file against manifest.sha256, looks for files added or lost, checks the\n"
+     "record's fingerprint and, inside the archive, the chain of seals.txt. `sha256sum -c\n"
+     "manifest.sha256` checks the files alone. Exit 1 when something differs.\n",
+     COMMAND_PROVE},
     {"fields", "[--schema]", "every key of a job file",
      "Each key with its unit, choices and an example, or a JSON Schema for editors.\n",
      COMMAND_FIELDS},
@@ -320,6 +338,96 @@ static int command_publish(struct session *session)
     return exit_of(session, result.broken, result.warned);
 }
 
+/* ---- seal, prove */
+
+static const char *today(struct arena *arena)
+{
+    time_t now = time(NULL);
+    struct tm parts;
+    char text[sizeof "2031-02-10"];
+    if (!localtime_r(&now, &parts) || strftime(text, sizeof text, "%Y-%m-%d", &parts) == 0)
+        return "0000-00-00";
+    return arena_copy(arena, text);
+}
+
+static int show_seal(const struct seal_result *result)
+{
+    switch (result->status) {
+    case SEAL_DONE:
+        printf("%s\n%s\n", result->folder, result->line);
+        return EXIT_DONE;
+    case SEAL_NOT_PUBLISHED:
+        fprintf(stderr, "gridleak: '%s' is not there: publish first\n", result->folder);
+        return EXIT_INPUT;
+    case SEAL_DIFFERS:
+        fprintf(stderr, "gridleak: '%s' is not as it was published: publish again\n",
+                result->folder);
+        return EXIT_INPUT;
+    case SEAL_CHAIN_BROKEN:
+        fprintf(stderr, "gridleak: '%s' is broken: prove says where\n", result->folder);
+        return EXIT_INPUT;
+    case SEAL_FAILED:
+        return system_failure(result->folder, result->failure);
+    }
+    return EXIT_SYSTEM;
+}
+
+static int command_seal(struct session *session)
+{
+    const char *word = session->operand_count == 2 ? session->operands[1] : "";
+    enum copy copy = strcmp(word, copy_text(COPY_SALE)) == 0 ? COPY_SALE : COPY_CLIENT;
+    if (strcmp(word, copy_text(copy)) != 0) {
+        fputs("gridleak: usage: gridleak seal JOB.yaml client|sale\n", stderr);
+        return EXIT_INPUT;
+    }
+    const char *path = session->operands[0];
+    struct seal_request request = {
+        .archive_folder = session->options.archive ? session->options.archive
+                                                   : archive_folder_of(path, &session->arena),
+        .output = session->options.output ? session->options.output : "output",
+        .job = job_name_of(path, &session->arena),
+        .copy = copy,
+        .date = today(&session->arena),
+    };
+    struct seal_result result = seal(&request, &session->arena);
+    return show_seal(&result);
+}
+
+static void show_difference(const struct proof_difference *difference)
+{
+    static const char *const texts[] = {
+        [PROOF_MANIFEST_MISSING] = "there is no",
+        [PROOF_MANIFEST_UNREADABLE] = "no line of a manifest:",
+        [PROOF_FILE_CHANGED] = "changed:",
+        [PROOF_FILE_LOST] = "lost:",
+        [PROOF_FILE_ADDED] = "added:",
+        [PROOF_FINGERPRINT] = "the fingerprint is not that of findings.json:",
+        [PROOF_SEAL_MANIFEST] = "the manifest is not the one sealed:",
+        [PROOF_SEAL_UNREADABLE] = "no seal line:",
+        [PROOF_CHAIN_LINE] = "the chain breaks:",
+        [PROOF_CHAIN_MISSING] = "the folder's seal is not in its place:",
+    };
+    printf("%s %s", texts[difference->kind], difference->name);
+    if (difference->number)
+        printf(", line %u", difference->number);
+    putchar('\n');
+}
+
+static int command_prove(struct session *session)
+{
+    struct proof proof = prove(session->operands[0], &session->arena);
+    for (size_t i = 0; i < proof.count; i++)
+        show_difference(&proof.differences[i]);
+    printf("%zu files as in the manifest; ", proof.files);
+    if (!proof.seal_line)
+        puts("not sealed");
+    else if (proof.chain_checked)
+        printf("sealed, chain of %u checked\n", proof.chain_lines);
+    else
+        puts("sealed, seals.txt not at hand");
+    return proof.count ? EXIT_NO : EXIT_DONE;
+}
+
 /* ---- fields, start */
 
 static int command_fields(struct session *session)
@@ -357,6 +465,10 @@ static int run(struct session *session, const struct command_row *command)
         return command_sheet(session);
     case COMMAND_PUBLISH:
         return command_publish(session);
+    case COMMAND_SEAL:
+        return command_seal(session);
+    case COMMAND_PROVE:
+        return command_prove(session);
     case COMMAND_START:
     case COMMAND_FIELDS:
     case COMMAND_ALL:
@@ -385,7 +497,8 @@ static void fill_man_page(struct buffer *out)
         .name = "gridleak",
         .version = GRIDLEAK_VERSION,
         .headline = headline,
-        .exit_status = "0 done; 1 the answer is no (--strict and a warning); 2 wrong input\n"
+        .exit_status = "0 done; 1 the answer is no (--strict and a warning, prove with a "
+                       "difference); 2 wrong input\n"
                        "(command line, job, template); 3 the system failed.",
         .files = "shop.yaml marks the archive's folder and holds the shop's policy;\n"
                  "<job>.yaml is a job. Templates and words are looked for in the archive's\n"
