@@ -107,9 +107,19 @@ struct criterion {
     const char *rule; /* of a leakage rule: its name */
 };
 
-/* What the leak does where the part sits: words `effect.<key>`. */
+/*
+ * What the leak does where the part sits: words `effect.<key>`. The keys (value; of):
+ *   grid_volts (V by which the grid rises; V of bias), cathode_current (% rise), anode_watts (W;
+ *   W of the rating), grid_shift (V; V of bias), line_loss (%), line_volts (V), screen_fall (V; V),
+ *   rail_drop (V; V of the rail), part_watts (W), bias_loss (V; V of bias), ht_share (A; A of the
+ *   HT), short_watts (W that a short would put into the primary; unknown: NaN), control_volts (V),
+ *   circuit_ratio (R_L over the circuit's resistance), battery_share (A; A of the drain),
+ * mains_fire (no value), earth_current (A), touch_current (A of all isolators; A allowed),
+ *   discharge_resistor (no value: one is needed besides), pulse_peak (V), shift (V; V allowed),
+ *   linear_ratio (R_L over the resistor that it bridges: no valve row).
+ */
 struct effect {
-    const char *key; /* "grid_rise", "cathode_current", "line_loss" ... */
+    const char *key;
     double value;
     enum unit unit;
     bool at_most;        /* the reading is a bound */
@@ -171,6 +181,7 @@ struct capacitor_findings {
     double exponent, exponent_error; /* I ~ V^b; NaN: not measured */
     bool exponent_warning;
     double theta_k; /* K for a doubling; NaN: read hot */
+    enum source_key theta_source;
     double temperature_factor;
     bool turns_on_temperature;
     double working_c;
@@ -203,6 +214,7 @@ struct capacitor_findings {
 struct stage_phase {
     bool judged;
     enum reason why;
+    const char *missing; /* WHY_MISSING_FACT: the key that is missing */
     struct stage_solution solution;
     double no_leak_cathode_a; /* same resistors, no leaks */
     double grid_cold_v,

@@ -1,0 +1,160 @@
+#include "assess/facts.h"
+
+#include "assess/mains.h"
+#include "assess/temperature.h"
+#include "assess/uncertainty.h"
+#include "assess/verdict.h"
+
+#include <math.h>
+
+static const double pulse_times_peak = 2;
+/* Old electrolytics were sold to -20/+100 %, others without a mark to 20 %. */
+static const double electrolytic_low = -20, electrolytic_high = 100, plain_tolerance = 20;
+
+bool facts_no_reading_passes(const struct job *job, const struct capacitor *part)
+{
+    if (part->pulse)
+        return true;
+    return place_is_mains(part->place) && !mains_class_borne(job, part->place, &part->marked);
+}
+
+static void add(struct judgement *judgement, const struct policy *policy,
+                struct criterion criterion)
+{
+    struct verdict_case judged = {.value = criterion.value,
+                                  .limit = criterion.limit,
+                                  .guard = policy->guard_band * criterion.uncertainty,
+                                  .upper = criterion.upper};
+    criterion.outcome = verdict_of(&judged);
+    if (criterion.outcome == OUTCOME_NOT_JUDGED)
+        criterion.why = WHY_MISSING_FACT;
+    else if (criterion.outcome == OUTCOME_CONDITIONAL_PASS ||
+             criterion.outcome == OUTCOME_CONDITIONAL_FAIL)
+        criterion.why = WHY_WITHIN_UNCERTAINTY;
+    judge_add(judgement, &criterion);
+}
+
+/* ---- capacitance */
+
+static bool capacitance_matters(const struct facts_case *facts)
+{
+    const struct capacitor *part = facts->part;
+    return part->measured.value.set && part->marked.value.set && part->marked.value.value > 0 &&
+           (part->place == PLACE_TUNING || dielectric_is_electrolytic(part->type) ||
+            (place_is_mains(part->place) && !facts_no_reading_passes(facts->job, part)));
+}
+
+/* Expanded, in per cent of the marked value. */
+static double capacitance_u(const struct facts_case *facts)
+{
+    double share = facts->policy->default_accuracy;
+    double absolute_f = 0, measured_f = facts->part->measured.value.value;
+    for (size_t i = 0; i < facts->job->instrument_count; i++) {
+        const struct instrument *instrument = &facts->job->instruments[i];
+        if (instrument->accuracy_set && instrument->accuracy_unit == UNIT_CAPACITANCE) {
+            share = instrument->accuracy_percent / 100;
+            absolute_f = instrument->accuracy_absolute;
+        }
+    }
+    return 100 * 2 * uncertainty_of_accuracy(measured_f, share, absolute_f) /
+           facts->part->marked.value.value;
+}
+
+static void judge_capacitance(const struct facts_case *facts, struct judgement *judgement)
+{
+    const struct marking *marked = &facts->part->marked;
+    bool electrolytic = dielectric_is_electrolytic(facts->part->type);
+    double low = electrolytic ? electrolytic_low : -plain_tolerance;
+    double high = electrolytic ? electrolytic_high : plain_tolerance;
+    enum source_key source =
+        electrolytic ? SOURCE_ELECTROLYTIC_TOLERANCE : SOURCE_CAPACITOR_TOLERANCE;
+    if (marked->tolerance_set) {
+        low = marked->tolerance_low_percent;
+        high = marked->tolerance_high_percent;
+        source = SOURCE_MARKED_TOLERANCE;
+    }
+    double deviation = 100 * (facts->part->measured.value.value / marked->value.value - 1);
+    add(judgement, facts->policy,
+        (struct criterion){.key = CRITERION_CAPACITANCE,
+                           .value = deviation,
+                           .uncertainty = capacitance_u(facts),
+                           .limit = deviation >= 0 ? high : low,
+                           .unit = UNIT_PERCENT,
+                           .upper = deviation >= 0,
+                           .source = source});
+}
+
+/* ---- the mains */
+
+static void judge_class(const struct facts_case *facts, struct judgement *judgement)
+{
+    bool borne = mains_class_borne(facts->job, facts->part->place, &facts->part->marked);
+    judge_add(judgement, &(struct criterion){.key = CRITERION_SAFETY_CLASS,
+                                             .value = NAN,
+                                             .uncertainty = NAN,
+                                             .limit = NAN,
+                                             .outcome = borne ? OUTCOME_PASS : OUTCOME_FAIL,
+                                             .why = borne ? WHY_NONE : WHY_NO_READING_PASSES,
+                                             .source = SOURCE_SAFETY_CLASS});
+}
+
+static void judge_rating(const struct facts_case *facts, struct judgement *judgement)
+{
+    if (!facts->part->marked.rated.set || !facts->job->set.mains.set)
+        return;
+    add(judgement, facts->policy,
+        (struct criterion){.key = CRITERION_RATED_VOLTS,
+                           .value = facts->part->marked.rated.value,
+                           .limit = facts->policy->mains_rise * facts->job->set.mains.value,
+                           .unit = UNIT_VOLTAGE,
+                           .upper = false,
+                           .source = SOURCE_SAFETY_CLASS});
+}
+
+static void judge_touch(const struct facts_case *facts, struct judgement *judgement)
+{
+    if (!facts->job->set.mains.set)
+        return;
+    double rise_v = facts->policy->mains_rise * facts->job->set.mains.value;
+    add(judgement, facts->policy,
+        (struct criterion){.key = CRITERION_TOUCH_CURRENT,
+                           .value = mains_touch_current(rise_v, mains_frequency(facts->job),
+                                                        mains_isolators(facts->job, facts->left),
+                                                        facts->leak_s),
+                           .limit = facts->policy->touch_current_a,
+                           .unit = UNIT_CURRENT,
+                           .upper = true,
+                           .joint = true,
+                           .source = SOURCE_TOUCH_CURRENT});
+}
+
+static void judge_pulse(const struct facts_case *facts, struct judgement *judgement)
+{
+    const struct capacitor *part = facts->part;
+    judge_add(judgement,
+              &(struct criterion){
+                  .key = CRITERION_PULSE_RATING,
+                  .value = part->marked.rated.set ? part->marked.rated.value : NAN,
+                  .uncertainty = NAN,
+                  .limit = part->pulse_peak.set ? pulse_times_peak * part->pulse_peak.value : NAN,
+                  .unit = UNIT_VOLTAGE,
+                  .outcome = OUTCOME_FAIL,
+                  .why = WHY_NO_READING_PASSES,
+                  .source = SOURCE_POLICY});
+}
+
+void facts_judge(const struct facts_case *facts, struct judgement *judgement)
+{
+    if (facts->part->pulse)
+        judge_pulse(facts, judgement);
+    if (place_is_mains(facts->part->place)) {
+        judge_class(facts, judgement);
+        if (!facts_no_reading_passes(facts->job, facts->part)) {
+            judge_rating(facts, judgement);
+            if (place_is_isolator(facts->part->place))
+                judge_touch(facts, judgement);
+        }
+    }
+    if (capacitance_matters(facts))
+        judge_capacitance(facts, judgement);
+}

@@ -1,0 +1,188 @@
+/*
+ * Parts that pass singly may fail together: all of one AVC line, of one group of stages, of one
+ * can. Parts that fail by themselves are taken as replaced. Where the rest fails jointly, each part
+ * that brings at least 1/(2N) of the joint figure is a conditional fail.
+ */
+#include "assess/assessment.h"
+
+#include "assess/verdict.h"
+
+#include <math.h>
+#include <string.h>
+#include <strings.h>
+
+enum joint_kind { JOINT_NONE, JOINT_STAGE, JOINT_LINE, JOINT_CAN };
+
+static enum joint_kind kind_of(const struct place_case *place)
+{
+    if (place->part->place == PLACE_AVC_BYPASS)
+        return JOINT_LINE;
+    if (place->group && !place->linear && !place->screen_as_rail &&
+        (place->part->place == PLACE_COUPLING || place->part->place == PLACE_SCREEN_BYPASS ||
+         place->part->place == PLACE_CATHODE_BYPASS || place->part->place == PLACE_BIAS_BYPASS))
+        return JOINT_STAGE;
+    return place->part->can != NOT_LISTED && place->heat_counts ? JOINT_CAN : JOINT_NONE;
+}
+
+/* Leaks, is judged, and does not fail by itself. */
+static bool takes_part(const struct assessment *assessment, size_t index)
+{
+    const struct part_work *work = &assessment->work[index];
+    return work->leaks && work->place.why == WHY_NONE &&
+           !assessment->capacitors[index].no_reading_passes &&
+           work->final.outcome != OUTCOME_FAIL && work->final.outcome != OUTCOME_CONDITIONAL_FAIL &&
+           work->leak.conductance_s > 0;
+}
+
+static bool together(const struct assessment *assessment, size_t a, size_t b)
+{
+    const struct place_case *one = &assessment->work[a].place, *two = &assessment->work[b].place;
+    enum joint_kind kind = kind_of(one);
+    if (kind != kind_of(two))
+        return false;
+    switch (kind) {
+    case JOINT_STAGE:
+        return one->group == two->group;
+    case JOINT_LINE:
+        return strcasecmp(one->part->line, two->part->line) == 0;
+    case JOINT_CAN:
+        return one->part->can == two->part->can;
+    case JOINT_NONE:
+        return false;
+    }
+    return false;
+}
+
+/* The part's figures with the others in place, each leak moved by `steps` of its uncertainty. */
+static void evaluate_with(const struct assessment *assessment, size_t index, double steps,
+                          struct place_values *values)
+{
+    struct place_case place = assessment->work[index].place;
+    struct stage_circuit circuits[STAGE_GROUP_MAX];
+    enum joint_kind kind = kind_of(&place);
+    if (kind == JOINT_STAGE) {
+        memcpy(circuits, place.circuits, place.group->count * sizeof *circuits);
+        place.circuits = circuits;
+    }
+    for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
+        if (i == index || !takes_part(assessment, i) || !together(assessment, index, i))
+            continue;
+        const struct part_work *other = &assessment->work[i];
+        double leak_s = other->leak.conductance_s + steps * other->leak.standard_s;
+        if (kind == JOINT_STAGE) {
+            struct stage_leak leak = place_leak(&other->place, leak_s);
+            stage_add_leak(place.stages, place.group, circuits, &leak);
+        } else if (kind == JOINT_LINE) {
+            place.line_others_s += leak_s;
+        } else {
+            place.can_others_w += leak_s * other->place.service_v * other->place.service_v;
+        }
+    }
+    const struct leak *own = &assessment->work[index].leak;
+    place_evaluate(&place, own->conductance_s + steps * own->standard_s, values);
+}
+
+static const struct criterion *single_of(const struct judgement *judgement, enum criterion_key key)
+{
+    for (size_t i = 0; i < judgement->count; i++)
+        if (judgement->criteria[i].key == key && !judgement->criteria[i].joint)
+            return &judgement->criteria[i];
+    return NULL;
+}
+
+/* The share of a joint figure that one part brings, by what each does alone. */
+static double share_of(const struct assessment *assessment, size_t index, enum criterion_key key,
+                       size_t *count)
+{
+    double own = 0, all = 0;
+    *count = 0;
+    for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
+        if (!takes_part(assessment, i) || (i != index && !together(assessment, index, i)))
+            continue;
+        ++*count;
+        struct place_values alone, bare;
+        place_evaluate(&assessment->work[i].place, assessment->work[i].leak.conductance_s, &alone);
+        place_evaluate(&assessment->work[i].place, 0, &bare);
+        for (size_t k = 0; k < alone.count && k < bare.count; k++)
+            if (alone.items[k].key == key) {
+                double effect = fmax(alone.items[k].value - bare.items[k].value, 0);
+                all += effect;
+                own = i == index ? effect : own;
+            }
+    }
+    return all > 0 ? own / all : 0;
+}
+
+/*
+ * One joint criterion. Its uncertainty takes all leaks as moving together, which is right where
+ * one instrument read them and an upper figure otherwise; measured resistors add as they do singly.
+ */
+static struct criterion joint_criterion(const struct assessment *assessment, size_t index,
+                                        const struct place_value *at, double moved)
+{
+    const struct part_work *work = &assessment->work[index];
+    const struct criterion *single = single_of(&work->final, at->key);
+    double u = 2 * fabs(moved - at->value);
+    struct criterion criterion = {.key = at->key,
+                                  .value = at->value,
+                                  .uncertainty = single ? fmax(u, single->uncertainty) : u,
+                                  .limit = single ? single->limit : at->limit,
+                                  .unit = at->unit,
+                                  .upper = true,
+                                  .joint = true,
+                                  .source = at->source};
+    struct verdict_case judged = {.value = criterion.value,
+                                  .limit = criterion.limit,
+                                  .guard = assessment->policy->guard_band * criterion.uncertainty,
+                                  .upper = true};
+    criterion.outcome = verdict_of(&judged);
+    criterion.why = WHY_JOINT;
+    if (criterion.outcome == OUTCOME_PASS || criterion.outcome == OUTCOME_NOT_JUDGED) {
+        criterion.why = criterion.outcome == OUTCOME_PASS ? WHY_NONE : WHY_STAGE;
+    } else if (criterion.outcome >= OUTCOME_CONDITIONAL_FAIL) {
+        size_t count;
+        double share = share_of(assessment, index, at->key, &count);
+        criterion.outcome = share >= 1 / (2.0 * (double)count) ? OUTCOME_CONDITIONAL_FAIL
+                                                               : OUTCOME_CONDITIONAL_PASS;
+    }
+    return criterion;
+}
+
+static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
+{
+    struct place_values at, moved;
+    evaluate_with(assessment, index, 0, &at);
+    evaluate_with(assessment, index, 1, &moved);
+    for (size_t i = 0; i < at.count && i < moved.count; i++)
+        if (kind_of(&assessment->work[index].place) != JOINT_CAN ||
+            at.items[i].key == CRITERION_HEAT) {
+            struct criterion criterion =
+                joint_criterion(assessment, index, &at.items[i], moved.items[i].value);
+            /* A reading that is only a bound says how much at most: it cannot fail others. */
+            if (assessment->capacitors[index].test_bound == BOUND_NONE ||
+                criterion.outcome <= OUTCOME_CONDITIONAL_PASS)
+                judge_add(result, &criterion);
+        }
+}
+
+void joint_assess(struct assessment *assessment)
+{
+    size_t count = assessment->job->capacitor_count;
+    struct judgement *results = arena_array(assessment->arena, count + 1, sizeof *results);
+    /* All are judged on the single outcomes before any of them is changed. */
+    for (size_t i = 0; i < count; i++) {
+        results[i] = assessment->work[i].final;
+        bool company = false;
+        for (size_t k = 0; k < count && takes_part(assessment, i) && !company; k++)
+            company = k != i && takes_part(assessment, k) && together(assessment, i, k);
+        if (company)
+            judge_jointly(assessment, i, &results[i]);
+    }
+    for (size_t i = 0; i < count; i++) {
+        assessment->work[i].final = results[i];
+        if (results[i].outcome > assessment->capacitors[i].outcome) {
+            assessment->capacitors[i].outcome = results[i].outcome;
+            assessment->capacitors[i].why = results[i].why;
+        }
+    }
+}

@@ -1,0 +1,313 @@
+/* What a part's place needs, gathered from the job: which facts are missing, at what volts the part
+   works, what it hangs on. */
+#include "assess/place.h"
+
+#include "assess/heat.h"
+#include "assess/temperature.h"
+
+#include <math.h>
+#include <string.h>
+
+static double given_or_nan(const struct quantity *quantity)
+{
+    return quantity->set ? quantity->value : NAN;
+}
+
+/* Ohms as found, and their standard uncertainty when they were measured. */
+static double ohms_of(const struct place_bench *bench, const struct resistance *resistance,
+                      double *u_ohm)
+{
+    double ohm = NAN;
+    bool measured = false;
+    *u_ohm = 0;
+    if (!resistance->set || !job_resistance(bench->job, resistance, PHASE_FOUND, &ohm, &measured))
+        return NAN;
+    if (measured)
+        *u_ohm = resistance_uncertainty(bench->job, bench->policy, ohm);
+    return ohm;
+}
+
+static double rating_of(const struct job *job, const struct resistance *resistance)
+{
+    if (!resistance->set || resistance->resistor == NOT_LISTED)
+        return NAN;
+    return given_or_nan(&job->resistors[resistance->resistor].marked.rated);
+}
+
+/* ---- what the table of places asks for */
+
+enum {
+    NEEDS_STAGE = 1,
+    NEEDS_SOURCE = 2,
+    NEEDS_FEED = 4,
+    NEEDS_CURRENT = 8,
+    NEEDS_CIRCUIT = 16,
+    NEEDS_SHIFT = 32,
+    NEEDS_LINE = 64,
+    NEEDS_PLACE = 128
+};
+
+static const unsigned needs[PLACE_COUNT] = {
+    [PLACE_UNKNOWN] = NEEDS_PLACE,
+    [PLACE_COUPLING] = NEEDS_STAGE | NEEDS_SOURCE,
+    [PLACE_AVC_BYPASS] = NEEDS_LINE | NEEDS_FEED,
+    [PLACE_AVC_FEED] = NEEDS_SOURCE | NEEDS_FEED,
+    [PLACE_SCREEN_BYPASS] = NEEDS_STAGE,
+    [PLACE_DECOUPLING] = NEEDS_FEED | NEEDS_CURRENT,
+    [PLACE_CATHODE_BYPASS] = NEEDS_STAGE,
+    [PLACE_BIAS_BYPASS] = NEEDS_STAGE | NEEDS_FEED,
+    [PLACE_RESERVOIR] = NEEDS_CURRENT,
+    [PLACE_SMOOTHING] = NEEDS_CURRENT,
+    [PLACE_TONE] = NEEDS_STAGE,
+    [PLACE_DETECTOR] = NEEDS_FEED,
+    [PLACE_TUNING] = NEEDS_CIRCUIT,
+    [PLACE_BATTERY_BYPASS] = NEEDS_CURRENT,
+    [PLACE_OTHER] = NEEDS_FEED | NEEDS_SHIFT,
+};
+
+static const char *missing_fact(const struct place_case *place)
+{
+    const struct capacitor *part = place->part;
+    unsigned need = needs[part->place];
+    if (need & NEEDS_PLACE)
+        return "place";
+    if ((need & NEEDS_STAGE) && part->stage_count == 0)
+        return "stage";
+    if ((need & NEEDS_SOURCE) && !part->source_volts.set)
+        return "source";
+    if ((need & NEEDS_LINE) && !part->line)
+        return "line";
+    if ((need & NEEDS_FEED) && isnan(place->feed_ohm))
+        return "feed";
+    if ((need & NEEDS_CURRENT) && !(place->current_a > 0))
+        return "current";
+    if ((need & NEEDS_CIRCUIT) && isnan(place->circuit_ohm))
+        return "circuit";
+    if ((need & NEEDS_SHIFT) && !part->shift.set)
+        return "shift";
+    return NULL;
+}
+
+/* ---- the stage that it sits in */
+
+static bool uses_group(enum place place)
+{
+    return place == PLACE_COUPLING || place == PLACE_SCREEN_BYPASS ||
+           place == PLACE_CATHODE_BYPASS || place == PLACE_BIAS_BYPASS || place == PLACE_TONE;
+}
+
+static bool has_figure(const struct stage_solution *bare)
+{
+    return bare->status == SOLVE_OK || bare->status == SOLVE_BOTTOMED;
+}
+
+/* The resistor that a bypass bridges. */
+static double bridged_ohm(const struct stage_model *model, enum place place, double *u_ohm)
+{
+    enum stage_resistor which = place == PLACE_SCREEN_BYPASS    ? STAGE_SCREEN
+                                : place == PLACE_CATHODE_BYPASS ? STAGE_CATHODE
+                                                                : STAGE_BIAS;
+    *u_ohm = model->resistor_u_ohm[which];
+    return model->ohms[PHASE_FOUND][which];
+}
+
+/* Without a row, or outside the law's stated bounds, a bypass is judged by its ratio. */
+static void judge_linearly(struct place_case *place)
+{
+    if (isnan(place->feed_ohm))
+        place->feed_ohm = bridged_ohm(place->model, place->part->place, &place->feed_u_ohm);
+    place->linear = true;
+    if (isnan(place->feed_ohm)) {
+        place->why = WHY_MISSING_FACT;
+        place->missing = place->part->place == PLACE_SCREEN_BYPASS ? "screen" : "cathode";
+    }
+}
+
+static bool screen_is_rail(const struct place_case *place)
+{
+    double ohm = place->model->ohms[PHASE_FOUND][STAGE_SCREEN];
+    return place->part->place == PLACE_SCREEN_BYPASS &&
+           (isnan(ohm) || ohm < place->policy->screen_dropper_min_ohm);
+}
+
+static void find_stage(struct place_case *place)
+{
+    const struct capacitor *part = place->part;
+    if (part->stage_count == 0)
+        return;
+    place->model = &place->stages->models[part->stages[0]];
+    if (place->model->why == WHY_NONE) {
+        place->group = &place->stages->groups[place->model->group];
+        place->circuits = place->group->circuits[PHASE_FOUND];
+        place->bare = place->group->bare[PHASE_FOUND];
+    }
+    if (!uses_group(part->place) || part->place == PLACE_TONE)
+        return;
+    if (screen_is_rail(place)) {
+        place->screen_as_rail = true;
+        double ohm = place->model->ohms[PHASE_FOUND][STAGE_SCREEN];
+        place->feed_ohm = isnan(ohm) ? 0 : ohm;
+        return;
+    }
+    bool coupling = part->place == PLACE_COUPLING;
+    if (place->model->why != WHY_NONE) {
+        place->why = place->model->why;
+        place->missing = place->model->missing;
+        if (!coupling && place->why == WHY_NO_ROW) {
+            place->why = WHY_NONE;
+            judge_linearly(place);
+        }
+    } else if (coupling && !place->model->grid_leak_known) {
+        place->why = WHY_MISSING_FACT;
+        place->missing = "grid_leak";
+    } else if (!has_figure(&place->bare[place->model->slot])) {
+        if (coupling)
+            place->why = WHY_STAGE;
+        else
+            judge_linearly(place);
+    }
+}
+
+/* The least bias of the part's stages, as designed. */
+static double least_bias(const struct place_case *place)
+{
+    double least = NAN;
+    for (size_t i = 0; i < place->part->stage_count; i++) {
+        const struct stage_model *model = &place->stages->models[place->part->stages[i]];
+        if (model->why != WHY_NONE)
+            continue;
+        const struct stage_solution *bare =
+            &place->stages->groups[model->group].bare[PHASE_DESIGNED][model->slot];
+        if (bare->status != SOLVE_IMPOSSIBLE)
+            least = fmin(least, fabs(bare->grid_v - bare->cathode_v));
+    }
+    return least;
+}
+
+/* ---- service volts */
+
+static double stage_service(const struct stage_model *model, enum place place)
+{
+    const struct stage *stage = model->stage;
+    bool solved = model->why == WHY_NONE;
+    double supply_v = given_or_nan(&stage->supply);
+    if (place == PLACE_SCREEN_BYPASS && !solved)
+        return stage->screen_volts.set ? stage->screen_volts.value : supply_v;
+    if (place == PLACE_TONE && !solved)
+        return supply_v;
+    if (place == PLACE_BIAS_BYPASS && stage->bias == BIAS_FIXED)
+        return fabs(given_or_nan(&stage->bias_volts));
+    return NAN;
+}
+
+static double solved_service(const struct stage_solution *bare, enum place place)
+{
+    if (bare->status == SOLVE_IMPOSSIBLE)
+        return NAN;
+    if (place == PLACE_SCREEN_BYPASS)
+        return bare->screen_v;
+    if (place == PLACE_CATHODE_BYPASS)
+        return bare->cathode_v;
+    return place == PLACE_TONE ? bare->anode_v : fabs(bare->return_v);
+}
+
+static double return_volts(const struct place_case *place)
+{
+    const struct stage_model *model = place->model;
+    if (model && model->why == WHY_NONE)
+        return place->group->bare[PHASE_DESIGNED][model->slot].return_v;
+    if (model && model->stage->bias == BIAS_FIXED && model->stage->bias_volts.set)
+        return model->stage->bias_volts.value;
+    return 0;
+}
+
+/* The highest of the part's stages. */
+static double stages_service(const struct place_case *place)
+{
+    double highest = NAN;
+    for (size_t i = 0; i < place->part->stage_count; i++) {
+        const struct stage_model *model = &place->stages->models[place->part->stages[i]];
+        double volts = stage_service(model, place->part->place);
+        if (isnan(volts) && model->why == WHY_NONE)
+            volts = solved_service(
+                &place->stages->groups[model->group].bare[PHASE_DESIGNED][model->slot],
+                place->part->place);
+        highest = fmax(highest, volts);
+    }
+    return highest;
+}
+
+static double service_volts(const struct place_case *place)
+{
+    const struct capacitor *part = place->part;
+    if (part->service.set)
+        return fabs(part->service.value);
+    if (place_is_mains(part->place))
+        return given_or_nan(&place->job->set.mains);
+    if (part->place == PLACE_COUPLING)
+        return fabs(place->source_v - return_volts(place));
+    if (part->place == PLACE_AVC_FEED)
+        return fabs(place->source_v);
+    return uses_group(part->place) ? stages_service(place) : NAN;
+}
+
+/* ---- electrolytics */
+
+static void find_rule(struct place_case *place)
+{
+    const struct capacitor *part = place->part;
+    const char *text = part->rule.text ? part->rule.text : place->policy->leakage_rule;
+    place->rule_limit_a = NAN;
+    place->rule_status = LEAKAGE_OK;
+    if (!place->heat_counts || !text)
+        return;
+    place->rule_unknown = !leakage_rule_read(text, &place->rule);
+    if (place->rule_unknown || !part->marked.value.set || !part->marked.rated.set)
+        return;
+    place->rule_status = leakage_limit(&place->rule, part->marked.value.value,
+                                       part->marked.rated.value, &place->rule_limit_a);
+}
+
+static double ageing_margin(const struct policy *policy, enum dielectric type)
+{
+    bool ages = type == DIELECTRIC_WAXED_PAPER || type == DIELECTRIC_MOULDED_PAPER;
+    return ages ? policy->ageing_margin_waxed : policy->ageing_margin_other;
+}
+
+struct place_case place_prepare(const struct place_bench *bench, const struct capacitor *part)
+{
+    struct place_case place = {.job = bench->job,
+                               .policy = bench->policy,
+                               .stages = bench->stages,
+                               .part = part,
+                               .source_v = given_or_nan(&part->source_volts),
+                               .current_a = given_or_nan(&part->current),
+                               .bias_v = NAN,
+                               .to_20c = 1};
+    place.feed_ohm = ohms_of(bench, &part->feed, &place.feed_u_ohm);
+    place.circuit_ohm = given_or_nan(&part->circuit);
+    place.source_ohm = ohms_of(bench, &part->source_resistance, &place.source_u_ohm);
+    if (isnan(place.source_ohm))
+        place.source_ohm = 0; /* the cautious default */
+    place.feed_rating_w = rating_of(bench->job, &part->feed);
+    place.heat_limit_w = heat_limit(bench->job, part, bench->policy);
+    place.heat_counts = dielectric_is_electrolytic(part->type);
+    place.margin = ageing_margin(bench->policy, part->type);
+    find_rule(&place);
+    find_stage(&place);
+    if (part->place == PLACE_AVC_FEED || part->place == PLACE_DETECTOR)
+        place.bias_v = least_bias(&place);
+    if (part->place == PLACE_AVC_FEED && part->delay.set)
+        place.bias_v = fmin(place.bias_v, fabs(part->delay.value));
+    if (part->place == PLACE_SCREEN_BYPASS && place.model && place.model->stage->screen_rating.set)
+        place.feed_rating_w = place.model->stage->screen_rating.value;
+    else if (part->place == PLACE_SCREEN_BYPASS && place.model)
+        place.feed_rating_w = rating_of(bench->job, &place.model->stage->screen);
+    place.service_v = service_volts(&place);
+    const char *missing = missing_fact(&place);
+    if (missing || (place.why == WHY_NONE && !(place.service_v > 0))) {
+        place.why = WHY_MISSING_FACT;
+        place.missing = missing ? missing : place_is_mains(part->place) ? "mains" : "service";
+    }
+    return place;
+}

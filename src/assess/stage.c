@@ -1,0 +1,589 @@
+#include "assess/stage.h"
+
+#include "assess/uncertainty.h"
+
+#include <math.h>
+#include <string.h>
+#include <strings.h>
+
+/* Node numbers: resistors by index, windings and capacitors behind them. */
+enum { NODE_NONE = -1, NODE_WINDINGS = 1 << 20, NODE_CAPACITORS = 1 << 21, NODE_STAGES = 1 << 22 };
+/* Stands for a grid leak that the job does not give, where none is needed. */
+static const double no_grid_leak_ohm = 1;
+
+double resistance_uncertainty(const struct job *job, const struct policy *policy, double ohm)
+{
+    for (size_t i = 0; i < job->instrument_count; i++)
+        if (job->instruments[i].accuracy_set &&
+            job->instruments[i].accuracy_unit == UNIT_RESISTANCE)
+            return uncertainty_of_accuracy(ohm, job->instruments[i].accuracy_percent / 100,
+                                           job->instruments[i].accuracy_absolute);
+    return uncertainty_of_accuracy(ohm, policy->default_accuracy, 0);
+}
+
+static int node_of(const struct resistance *resistance)
+{
+    if (!resistance->set)
+        return NODE_NONE;
+    if (resistance->resistor != NOT_LISTED)
+        return resistance->resistor;
+    return resistance->winding != NOT_LISTED ? NODE_WINDINGS + resistance->winding : NODE_NONE;
+}
+
+static const struct resistance *resistor_of(const struct stage *stage, enum stage_resistor which)
+{
+    switch (which) {
+    case STAGE_ANODE:
+        return &stage->anode;
+    case STAGE_SCREEN:
+        return &stage->screen;
+    case STAGE_CATHODE:
+        return &stage->cathode;
+    case STAGE_BIAS:
+        return &stage->bias_resistance;
+    case STAGE_GRID_LEAK:
+        return &stage->grid_leak;
+    case STAGE_RESISTOR_COUNT:
+        break;
+    }
+    return NULL;
+}
+
+static double *circuit_resistor(struct stage_circuit *circuit, enum stage_resistor which)
+{
+    switch (which) {
+    case STAGE_ANODE:
+        return &circuit->anode_ohm;
+    case STAGE_SCREEN:
+        return &circuit->screen_ohm;
+    case STAGE_CATHODE:
+        return &circuit->cathode_ohm;
+    case STAGE_BIAS:
+        return &circuit->bias_ohm;
+    case STAGE_GRID_LEAK:
+        return &circuit->grid_leak_ohm;
+    case STAGE_RESISTOR_COUNT:
+        break;
+    }
+    return NULL;
+}
+
+static int circuit_node(const struct stage_circuit *circuit, enum stage_resistor which)
+{
+    switch (which) {
+    case STAGE_CATHODE:
+        return circuit->cathode_node;
+    case STAGE_SCREEN:
+        return circuit->screen_node;
+    case STAGE_BIAS:
+        return circuit->bias_node;
+    case STAGE_ANODE:
+    case STAGE_GRID_LEAK:
+    case STAGE_RESISTOR_COUNT:
+        break;
+    }
+    return NODE_NONE;
+}
+
+/* ---- which row */
+
+static const char *type_of(const struct job *job, const struct stage *stage)
+{
+    if (stage->valve_type || !stage->valve_ref)
+        return stage->valve_type;
+    for (size_t i = 0; i < job->valve_count; i++)
+        if (strcmp(job->valves[i].ref, stage->valve_ref) == 0)
+            return job->valves[i].type;
+    return NULL;
+}
+
+static double given_or(const struct quantity *quantity, double otherwise)
+{
+    return quantity->set ? quantity->value : otherwise;
+}
+
+/* The row that the job gives, with what it leaves out about the type taken from the book. */
+static struct valve_row given_row(const struct stage *stage, const char *type,
+                                  const struct valve_row *book)
+{
+    const struct given_row *given = &stage->row;
+    enum valve_kind guess = !given->vg2.set               ? VALVE_TRIODE
+                            : stage->use == USE_AMPLIFIER ? VALVE_SMALL_PENTODE
+                                                          : VALVE_OUTPUT_PENTODE;
+    return (struct valve_row){
+        .type = type ? type : "",
+        .kind = book ? book->kind : guess,
+        .name = "given",
+        .va_v = given_or(&given->va, NAN),
+        .vg2_v = given_or(&given->vg2, NAN),
+        .vg1_v = given_or(&given->vg1, NAN),
+        .ia_a = given_or(&given->ia, NAN),
+        .ig2_a = given_or(&given->ig2, NAN),
+        .gm_s = given_or(&given->gm, NAN),
+        .mu = given->vg2.set ? NAN : given_or(&given->mu, NAN),
+        .mu12 = given->vg2.set ? given_or(&given->mu, NAN) : NAN,
+        .ra_ohm = given_or(&given->ra, NAN),
+        .pa_max_w = given_or(&given->pa_max, book ? book->pa_max_w : NAN),
+        .pg2_max_w = given_or(&given->pg2_max, book ? book->pg2_max_w : NAN),
+        .grid_leak_max_fixed_ohm = book ? book->grid_leak_max_fixed_ohm : NAN,
+        .grid_leak_max_cathode_ohm = book ? book->grid_leak_max_cathode_ohm : NAN,
+        .source = given->source.text ? given->source.text : "",
+        .row_trust = TRUST_SEEN,
+        .limits_trust = book ? book->limits_trust : TRUST_SEEN,
+    };
+}
+
+/* A valve with two halves was named without saying which: "ECL82" where the book has its triode. */
+static const char *half_of(const char *type)
+{
+    size_t count, length = strlen(type);
+    const struct valve_row *book = valve_book(&count);
+    for (size_t i = 0; i < count; i++)
+        if (strncasecmp(book[i].type, type, length) == 0 && book[i].type[length] == ' ')
+            return book[i].type;
+    return NULL;
+}
+
+struct builder {
+    const struct job *job;
+    const struct policy *policy;
+    struct arena *arena;
+    struct diagnostics *diagnostics;
+    struct stage_model *models;
+};
+
+static void warn_unknown_valve(const struct builder *builder, const struct stage_model *model)
+{
+    const struct stage *stage = model->stage;
+    struct position at = stage->valve_at.line ? stage->valve_at : stage->at;
+    const char *half = model->valve_type ? half_of(model->valve_type) : NULL;
+    if (!model->valve_type)
+        diagnostic_add(builder->diagnostics, &builder->job->source, at, DIAGNOSTIC_VALVE_UNKNOWN,
+                       "say `valve: V4 6V6GT`", "stage '%s' names no valve", stage->name);
+    else if (half)
+        diagnostic_add(builder->diagnostics, &builder->job->source, at, DIAGNOSTIC_VALVE_AMBIGUOUS,
+                       arena_print(builder->arena, "say which half: %s", half),
+                       "'%s' has more than one system", model->valve_type);
+    else
+        diagnostic_add(builder->diagnostics, &builder->job->source, at, DIAGNOSTIC_VALVE_UNKNOWN,
+                       "give a row of its manual: `row: va 250 V, vg1 -12.5 V, ia 45 mA, gm ...`",
+                       "no row for '%s' in the valve book", model->valve_type);
+}
+
+static const struct valve_row *named_row(const struct builder *builder, const struct stage *stage,
+                                         const struct valve_row *rows, size_t count)
+{
+    for (size_t i = 0; i < count; i++)
+        if (strcasecmp(rows[i].name, stage->row_name) == 0)
+            return &rows[i];
+    const char **names = arena_array(builder->arena, count + 1, sizeof *names);
+    for (size_t i = 0; i < count; i++)
+        names[i] = rows[i].name;
+    const char *near = nearest_word(stage->row_name, names);
+    diagnostic_add(builder->diagnostics, &builder->job->source, stage->at,
+                   DIAGNOSTIC_VALVE_ROW_UNKNOWN,
+                   near ? arena_print(builder->arena, "nearest row: %s", near) : NULL,
+                   "the valve book has no row '%s' of %s", stage->row_name, rows[0].type);
+    return NULL;
+}
+
+static void choose_row(const struct builder *builder, struct stage_model *model)
+{
+    const struct stage *stage = model->stage;
+    size_t count = 0;
+    const struct valve_row *rows =
+        model->valve_type ? valve_rows_of(model->valve_type, &count) : NULL;
+    if (!rows)
+        count = 0;
+    if (stage->row.set) {
+        model->given = given_row(stage, model->valve_type, count ? rows : NULL);
+        model->row = &model->given;
+        return;
+    }
+    if (count == 0) {
+        warn_unknown_valve(builder, model);
+        return;
+    }
+    if (stage->row_name)
+        model->row = named_row(builder, stage, rows, count);
+    if (!model->row)
+        model->row = valve_row_nearest(rows, count, stage->supply.value,
+                                       given_or(&stage->screen_volts, stage->supply.value));
+}
+
+static void fit_row(const struct builder *builder, struct stage_model *model)
+{
+    model->law_status = valve_law_fit(model->row, &model->law);
+    const char *what = NULL;
+    switch (model->law_status) {
+    case LAW_OK:
+        return;
+    case LAW_WARN_MU12:
+        diagnostic_add(builder->diagnostics, &builder->job->source, model->stage->at,
+                       DIAGNOSTIC_VALVE_ROW_DOUBTFUL, NULL,
+                       "row %s of %s: its figures give another screen amplification than printed",
+                       model->row->name, model->row->type);
+        return;
+    case LAW_NO_CURRENT:
+        what = "anode current or volts are missing";
+        break;
+    case LAW_NO_GAIN:
+        what = "neither gm nor mu is given";
+        break;
+    case LAW_IMPOSSIBLE:
+        what = "its figures contradict each other";
+        break;
+    }
+    diagnostic_add(builder->diagnostics, &builder->job->source, model->stage->at,
+                   DIAGNOSTIC_VALVE_ROW_UNUSABLE, NULL, "row %s of %s cannot be used: %s",
+                   model->row->name, model->row->type, what);
+    model->why = WHY_NO_ROW;
+}
+
+/* ---- the circuit */
+
+static const char *missing_key(const struct stage *stage)
+{
+    if (!stage->supply.set)
+        return "supply";
+    switch (stage->bias) {
+    case BIAS_CATHODE:
+        return stage->cathode.set ? NULL : "cathode";
+    case BIAS_FIXED:
+        return stage->bias_volts.set ? NULL : "bias";
+    case BIAS_BACK:
+        return stage->bias_resistance.set ? NULL : "bias";
+    case BIAS_CONTACT:
+        return stage->grid_leak.set ? NULL : "grid_leak";
+    }
+    return NULL;
+}
+
+static void read_resistors(const struct builder *builder, struct stage_model *model)
+{
+    for (int which = 0; which < STAGE_RESISTOR_COUNT; which++) {
+        const struct resistance *resistance = resistor_of(model->stage, which);
+        for (int phase = 0; phase < PHASE_COUNT; phase++) {
+            double ohm = NAN;
+            bool measured = false;
+            if (!resistance->set ||
+                !job_resistance(builder->job, resistance, phase, &ohm, &measured))
+                ohm = NAN;
+            model->ohms[phase][which] = ohm;
+            if (phase == PHASE_FOUND && measured && ohm > 0)
+                model->resistor_u_ohm[which] =
+                    resistance_uncertainty(builder->job, builder->policy, ohm);
+        }
+    }
+}
+
+static double or_zero(double ohm)
+{
+    return isnan(ohm) ? 0 : ohm;
+}
+
+static struct stage_circuit circuit_of(const struct stage_model *model, int own_node,
+                                       enum phase phase)
+{
+    const struct stage *stage = model->stage;
+    const double *ohms = model->ohms[phase];
+    bool back = stage->bias == BIAS_BACK;
+    int bias_node = node_of(&stage->bias_resistance);
+    return (struct stage_circuit){
+        .law = model->law,
+        .supply_v = stage->supply.value,
+        .anode_ohm = or_zero(ohms[STAGE_ANODE]),
+        .screen_supply_v = given_or(&stage->screen_volts, stage->supply.value),
+        .screen_ohm = or_zero(ohms[STAGE_SCREEN]),
+        .cathode_ohm = or_zero(ohms[STAGE_CATHODE]),
+        .grid_leak_ohm = model->grid_leak_known ? ohms[STAGE_GRID_LEAK] : no_grid_leak_ohm,
+        .return_v = stage->bias == BIAS_FIXED ? stage->bias_volts.value : 0,
+        .contact_bias = stage->bias == BIAS_CONTACT,
+        .cathode_node = node_of(&stage->cathode),
+        .screen_node = node_of(&stage->screen),
+        .bias_node = !back                    ? NODE_NONE
+                     : bias_node != NODE_NONE ? bias_node
+                                              : own_node,
+        .bias_ohm = back ? or_zero(ohms[STAGE_BIAS]) : 0,
+        .bias_others_a = back ? given_or(&stage->bias_others, 0) : 0,
+    };
+}
+
+static int stage_named(const struct job *job, const char *name)
+{
+    for (size_t i = 0; name && i < job->stage_count; i++)
+        if (strcmp(job->stages[i].name, name) == 0)
+            return (int)i;
+    return -1;
+}
+
+static void build_model(const struct builder *builder, struct stage_model *model)
+{
+    const struct stage *stage = model->stage;
+    model->valve_type = type_of(builder->job, stage);
+    model->partner = stage_named(builder->job, stage->pushpull_with);
+    model->group = -1;
+    read_resistors(builder, model);
+    model->missing = missing_key(stage);
+    model->grid_leak_known = model->ohms[PHASE_DESIGNED][STAGE_GRID_LEAK] > 0;
+    model->law_status = LAW_NO_CURRENT;
+    choose_row(builder, model);
+    if (model->row)
+        fit_row(builder, model);
+    else
+        model->why = WHY_NO_ROW;
+    if (model->why == WHY_NONE && model->missing)
+        model->why = WHY_MISSING_FACT;
+    model->is_triode = model->row && valve_kind_is_triode(model->row->kind);
+    model->is_output = stage->use == USE_OUTPUT || (stage->use == USE_BY_VALVE && model->row &&
+                                                    valve_kind_is_output(model->row->kind));
+    if (model->why == WHY_NONE)
+        for (int phase = 0; phase < PHASE_COUNT; phase++)
+            model->circuits[phase] =
+                circuit_of(model, NODE_STAGES + (int)(stage - builder->job->stages), phase);
+}
+
+/* ---- groups */
+
+/* Stages that one capacitor bypasses hang on one node, named or not. */
+static void share_nodes(const struct builder *builder)
+{
+    for (size_t i = 0; i < builder->job->capacitor_count; i++) {
+        const struct capacitor *part = &builder->job->capacitors[i];
+        size_t offset =
+            part->place == PLACE_SCREEN_BYPASS    ? offsetof(struct stage_circuit, screen_node)
+            : part->place == PLACE_CATHODE_BYPASS ? offsetof(struct stage_circuit, cathode_node)
+                                                  : 0;
+        if (part->stage_count < 2 || offset == 0)
+            continue;
+        const struct stage_model *first = &builder->models[part->stages[0]];
+        int node = *(const int *)((const char *)&first->circuits[0] + offset);
+        node = node == NODE_NONE ? NODE_CAPACITORS + (int)i : node;
+        for (size_t k = 0; k < part->stage_count; k++)
+            for (int phase = 0; phase < PHASE_COUNT; phase++) {
+                struct stage_model *model = &builder->models[part->stages[k]];
+                int *place = (int *)((char *)&model->circuits[phase] + offset);
+                *place = *place == NODE_NONE ? node : *place;
+            }
+    }
+}
+
+static bool same_node(int a, int b)
+{
+    return a != NODE_NONE && a == b;
+}
+
+static bool hang_together(const struct job *job, const struct stage_model *a,
+                          const struct stage_model *b)
+{
+    const struct stage_circuit *one = &a->circuits[PHASE_FOUND], *two = &b->circuits[PHASE_FOUND];
+    if (same_node(one->cathode_node, two->cathode_node) ||
+        same_node(one->screen_node, two->screen_node) || same_node(one->bias_node, two->bias_node))
+        return true;
+    int index_a = (int)(a->stage - job->stages), index_b = (int)(b->stage - job->stages);
+    return a->partner == index_b || b->partner == index_a;
+}
+
+/* Add to the group all that hangs on its members, breadth first. */
+static void gather(const struct builder *builder, struct stage_group *group, int number)
+{
+    const struct job *job = builder->job;
+    bool refused = false;
+    for (size_t member = 0; member < group->count; member++)
+        for (size_t i = 0; i < job->stage_count; i++) {
+            struct stage_model *other = &builder->models[i];
+            if (other->why != WHY_NONE || other->group != -1 ||
+                !hang_together(job, &builder->models[group->members[member]], other))
+                continue;
+            if (group->count == STAGE_GROUP_MAX) {
+                refused = true;
+                continue;
+            }
+            other->group = number;
+            other->slot = (int)group->count;
+            group->members[group->count++] = (int)i;
+        }
+    if (refused)
+        diagnostic_add(builder->diagnostics, &job->source,
+                       builder->models[group->members[0]].stage->at, DIAGNOSTIC_STAGES_TOO_MANY,
+                       NULL, "more than %d stages hang together; the rest are solved apart",
+                       STAGE_GROUP_MAX);
+}
+
+static void copy_circuits(const struct builder *builder, struct stage_group *group)
+{
+    for (int phase = 0; phase < PHASE_COUNT; phase++)
+        for (size_t i = 0; i < group->count; i++)
+            group->circuits[phase][i] = builder->models[group->members[i]].circuits[phase];
+}
+
+/* Re-anchor on a cathode voltage taken with the leaking parts lifted: the valve's own current is
+   measured then, and the row's currents and slope are scaled alike. */
+static void anchor(const struct builder *builder, struct stage_group *group)
+{
+    for (size_t i = 0; i < group->count; i++) {
+        const struct stage *stage = builder->models[group->members[i]].stage;
+        const struct stage_reading *read = stage->left.parts_lifted ? &stage->left : &stage->found;
+        enum phase phase = stage->left.parts_lifted ? PHASE_LEFT : PHASE_FOUND;
+        double ohm = group->circuits[phase][i].cathode_ohm;
+        if (!read->parts_lifted || !read->cathode.set || read->cathode.value <= 0 || ohm <= 0)
+            continue;
+        for (int round = 0; round < 5; round++) {
+            struct stage_solution solutions[STAGE_GROUP_MAX];
+            struct stage_circuit *circuit = &group->circuits[phase][i];
+            if (stages_solve(group->circuits[phase], group->count, solutions) == SOLVE_IMPOSSIBLE ||
+                solutions[i].cathode_v <= 0)
+                break;
+            double share = solutions[i].cathode_a * ohm / solutions[i].cathode_v;
+            double cathode_v = read->cathode.value;
+            struct valve_currents law = valve_law_currents(
+                &circuit->law, solutions[i].return_v - cathode_v, solutions[i].screen_v - cathode_v,
+                solutions[i].anode_v - cathode_v);
+            if (law.cathode_a <= 0)
+                break;
+            double scale = share * cathode_v / ohm / law.cathode_a;
+            for (int other = 0; other < PHASE_COUNT; other++)
+                group->circuits[other][i].law.ik0_a *= scale;
+        }
+    }
+}
+
+static void solve_bare(struct stage_group *group)
+{
+    for (int phase = 0; phase < PHASE_COUNT; phase++)
+        if (stages_solve(group->circuits[phase], group->count, group->bare[phase]) ==
+            SOLVE_IMPOSSIBLE)
+            for (size_t i = 0; i < group->count; i++)
+                group->bare[phase][i].status = SOLVE_IMPOSSIBLE;
+}
+
+/* One step for each measured resistor; a shared one moves in all stages that share it. */
+static void make_steps(const struct builder *builder, struct stage_group *group)
+{
+    struct stage_step *steps =
+        arena_array(builder->arena, group->count * STAGE_RESISTOR_COUNT, sizeof *steps);
+    for (size_t i = 0; i < group->count; i++)
+        for (int which = 0; which < STAGE_RESISTOR_COUNT; which++) {
+            double u_ohm = builder->models[group->members[i]].resistor_u_ohm[which];
+            int node = circuit_node(&group->circuits[PHASE_FOUND][i], which);
+            bool before = false;
+            for (size_t j = 0; j < i; j++)
+                before = before ||
+                         same_node(node, circuit_node(&group->circuits[PHASE_FOUND][j], which));
+            if (u_ohm <= 0 || before)
+                continue;
+            struct stage_step *step = &steps[group->step_count];
+            memcpy(step->circuits, group->circuits[PHASE_FOUND], sizeof step->circuits);
+            for (size_t j = i; j < group->count; j++)
+                if (j == i ||
+                    same_node(node, circuit_node(&group->circuits[PHASE_FOUND][j], which)))
+                    *circuit_resistor(&step->circuits[j], which) += u_ohm;
+            if (stages_solve(step->circuits, group->count, step->bare) != SOLVE_IMPOSSIBLE)
+                group->step_count++;
+        }
+    group->steps = steps;
+}
+
+struct stage_set stages_prepare(const struct job *job, const struct policy *policy,
+                                struct arena *arena, struct diagnostics *diagnostics)
+{
+    struct builder builder = {job, policy, arena, diagnostics,
+                              arena_array(arena, job->stage_count + 1, sizeof *builder.models)};
+    struct stage_group *groups = arena_array(arena, job->stage_count + 1, sizeof *groups);
+    size_t group_count = 0;
+    for (size_t i = 0; i < job->stage_count; i++) {
+        builder.models[i].stage = &job->stages[i];
+        build_model(&builder, &builder.models[i]);
+    }
+    share_nodes(&builder);
+    for (size_t i = 0; i < job->stage_count; i++) {
+        struct stage_model *model = &builder.models[i];
+        if (model->why != WHY_NONE || model->group != -1)
+            continue;
+        struct stage_group *group = &groups[group_count];
+        model->group = (int)group_count++;
+        group->members[group->count++] = (int)i;
+        gather(&builder, group, model->group);
+        copy_circuits(&builder, group);
+        anchor(&builder, group);
+        solve_bare(group);
+        make_steps(&builder, group);
+    }
+    return (struct stage_set){builder.models, job->stage_count, groups, group_count};
+}
+
+/* ---- leaks */
+
+/* Several sources on one grid are one source of their parallel conductance. */
+static void add_coupling(struct stage_circuit *circuit, const struct stage_leak *leak)
+{
+    double into_s = leak->leak_s / (1 + leak->leak_s * leak->source_ohm);
+    double before_s =
+        circuit->coupling_leak_s / (1 + circuit->coupling_leak_s * circuit->coupling_source_ohm);
+    double total_s = into_s + before_s;
+    if (total_s <= 0)
+        return;
+    circuit->coupling_source_v =
+        (into_s * leak->source_v + before_s * circuit->coupling_source_v) / total_s;
+    circuit->coupling_leak_s = total_s;
+    circuit->coupling_source_ohm = 0;
+}
+
+/* The leak across one node's resistor: the solver counts the largest figure of the stages that
+   share it once, so all of them get it. */
+struct node_leak {
+    size_t leak_offset, node_offset; /* in struct stage_circuit */
+    double leak_s;
+};
+
+static void add_at_node(const struct stage_group *group, struct stage_circuit *circuits, int slot,
+                        const struct node_leak *more, bool done[STAGE_GROUP_MAX])
+{
+    int node = *(const int *)((const char *)&circuits[slot] + more->node_offset);
+    for (size_t i = 0; i < group->count; i++) {
+        char *circuit = (char *)&circuits[i];
+        if (done[i] ||
+            !((int)i == slot || same_node(node, *(const int *)(circuit + more->node_offset))))
+            continue;
+        *(double *)(circuit + more->leak_offset) += more->leak_s;
+        done[i] = true;
+    }
+}
+
+static struct node_leak node_leak_of(const struct stage_leak *leak)
+{
+    struct node_leak at = {.leak_s = leak->leak_s};
+    if (leak->place == PLACE_SCREEN_BYPASS) {
+        at.leak_offset = offsetof(struct stage_circuit, screen_leak_s);
+        at.node_offset = offsetof(struct stage_circuit, screen_node);
+    } else if (leak->place == PLACE_CATHODE_BYPASS) {
+        at.leak_offset = offsetof(struct stage_circuit, cathode_leak_s);
+        at.node_offset = offsetof(struct stage_circuit, cathode_node);
+    } else {
+        at.leak_offset = offsetof(struct stage_circuit, bias_leak_s);
+        at.node_offset = offsetof(struct stage_circuit, bias_node);
+    }
+    return at;
+}
+
+void stage_add_leak(const struct stage_set *set, const struct stage_group *group,
+                    struct stage_circuit *circuits, const struct stage_leak *leak)
+{
+    bool done[STAGE_GROUP_MAX] = {false};
+    struct node_leak at = node_leak_of(leak);
+    for (size_t i = 0; i < leak->stage_count; i++) {
+        const struct stage_model *model = &set->models[leak->stages[i]];
+        if (model->why != WHY_NONE || &set->groups[model->group] != group)
+            continue;
+        struct stage_circuit *circuit = &circuits[model->slot];
+        if (leak->place == PLACE_COUPLING) {
+            add_coupling(circuit, leak);
+        } else if (leak->place == PLACE_TONE) {
+            circuit->anode_leak_s += leak->leak_s;
+        } else {
+            if (leak->place == PLACE_BIAS_BYPASS && leak->feed_ohm > 0)
+                circuit->bias_feed_ohm = leak->feed_ohm;
+            add_at_node(group, circuits, model->slot, &at, done);
+        }
+    }
+}
