@@ -1,5 +1,7 @@
 #include "write/escape.h"
 
+#include "base/utf8.h"
+
 #include <stdbool.h>
 #include <string.h>
 
@@ -37,23 +39,67 @@ void escape_html(struct buffer *out, const char *text)
     buffer_append(out, run, (size_t)(text - run));
 }
 
-/* Signs that begin something in the middle of a line; + - . and digits only do at its start, which
-   a cell never is. */
-static bool is_markup(char c)
+static bool is_letter_or_digit(char c)
 {
-    return c != '\0' && strchr("\\`*_{}[]<>#|~&!", c) != NULL;
+    return (c >= '0' && c <= '9') || (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z');
+}
+
+/* Only where CommonMark would read it: a text full of needless backslashes is hard on the eye. */
+static bool is_markup(const char *text)
+{
+    char next = text[1];
+    switch (*text) {
+    case '\\':
+    case '`':
+    case '*':
+    case '_':
+    case '[':
+    case ']':
+    case '|':
+    case '~':
+        return true;
+    case '&':
+        return is_letter_or_digit(next) || next == '#';
+    case '<':
+        return is_letter_or_digit(next) || next == '/' || next == '!' || next == '?';
+    default:
+        return false;
+    }
+}
+
+/* How many bytes at the beginning of a line would make it a heading, quote, rule or list: they need
+   a backslash before the last of them. */
+static size_t line_markup(const char *text)
+{
+    if (text[0] == '#' || text[0] == '>' || text[0] == '=')
+        return 1;
+    if (text[0] == '+' || text[0] == '-')
+        return text[1] == ' ' || text[1] == '\0' || text[1] == '-' ? 1 : 0;
+    size_t digits = strspn(text, "0123456789");
+    bool item = digits > 0 && (text[digits] == '.' || text[digits] == ')') &&
+                (text[digits + 1] == ' ' || text[digits + 1] == '\0');
+    return item ? digits + 1 : 0;
 }
 
 void escape_markdown(struct buffer *out, const char *text)
 {
-    for (; text && *text; text++) {
+    if (!text)
+        return;
+    size_t beginning = line_markup(text);
+    if (beginning > 0) {
+        buffer_append(out, text, beginning - 1);
+        buffer_byte(out, '\\');
+        buffer_byte(out, text[beginning - 1]);
+        text += beginning;
+    }
+    for (; *text; text++) {
         unsigned char c = (unsigned char)*text;
         if (c == '\n' || c == '\r' || c == '\t') {
             buffer_byte(out, ' ');
         } else if (c < 0x20 || c == 0x7f) {
             buffer_text(out, replacement);
         } else {
-            if (is_markup(*text))
+            if (is_markup(text))
                 buffer_byte(out, '\\');
             buffer_byte(out, *text);
         }
@@ -73,5 +119,26 @@ void escape_css(struct buffer *out, const char *text)
             buffer_byte(out, '\\');
             buffer_hex(out, c < 0x20 || c == 0x7f ? 0xfffd : c, 6);
         }
+    }
+}
+
+void escape_terminal(struct buffer *out, const char *text)
+{
+    if (!text)
+        return;
+    const char *end = text + strlen(text);
+    while (text < end) {
+        const char *start = text;
+        uint32_t sign = utf8_next(&text, end);
+        bool space = sign == '\n' || sign == '\r' || sign == '\t' || sign == 0xa0 ||
+                     sign == 0x2009 || sign == 0x202f;
+        bool control = sign < 0x20 || (sign >= 0x7f && sign < 0xa0) || sign == UTF8_ILL_FORMED ||
+                       (sign >= 0x202a && sign <= 0x202e) || (sign >= 0x2066 && sign <= 0x2069);
+        if (space)
+            buffer_byte(out, ' ');
+        else if (control)
+            buffer_text(out, replacement);
+        else
+            buffer_append(out, start, (size_t)(text - start));
     }
 }

@@ -10,11 +10,15 @@
    become U+FFFD. */
 void escape_html(struct buffer *out, const char *text);
 
-/* For one line of CommonMark inside a table or a paragraph: every sign that could begin markup gets
-   a backslash, line ends become spaces. */
+/* For one line of CommonMark, in a table or at the beginning of a paragraph: signs that would be
+   read as markup get a backslash, line ends become spaces. */
 void escape_markdown(struct buffer *out, const char *text);
 
 /* For the inside of a CSS string. The result holds nothing that HTML would read either. */
 void escape_css(struct buffer *out, const char *text);
+
+/* For a terminal: no byte of it can begin an escape sequence. Control characters of ASCII and of
+   Latin-1 become U+FFFD, no-break and thin spaces ordinary ones, line ends spaces. */
+void escape_terminal(struct buffer *out, const char *text);
 
 #endif

@@ -121,7 +121,7 @@ void flow_lines(struct flow *flow, const struct text_lines *lines,
 /* ---- pages */
 
 struct paginator {
-    const struct flow *flow;
+    struct flow *flow;
     struct page_plan plan;
     double y;
     bool at_top; /* nothing stands on this page yet */
@@ -190,13 +190,36 @@ static void place_long(struct paginator *paginator, size_t from, size_t to)
     }
 }
 
+static void shrink(struct strip *strip, double scale)
+{
+    strip->height *= scale;
+    for (size_t i = 0; i < strip->item_count; i++)
+        if (strip->items[i].kind == ITEM_DRAWING)
+            strip->items[i].drawing.scale *= scale;
+}
+
+/* Whether a drawing among strips from..to could give up `excess` of its height; then it does. */
+static bool shrink_by(struct paginator *paginator, size_t from, size_t to, double excess)
+{
+    for (size_t i = from; i < to; i++) {
+        struct strip *strip = paginator->flow->strips[i];
+        double scale = 1 - excess / strip->height;
+        if (strip->least_scale > 0 && scale >= strip->least_scale) {
+            shrink(strip, scale);
+            return true;
+        }
+    }
+    return false;
+}
+
 static void place_unit(struct paginator *paginator, size_t from, size_t to)
 {
     const struct page_geometry *page = paginator->flow->page;
     const double slack = 0.01;
     if (paginator->flow->strips[from]->page_break && !paginator->at_top)
         next_page(paginator);
-    if (paginator->y + unit_height(paginator, from, to) > page->bottom + slack) {
+    double excess = paginator->y + unit_height(paginator, from, to) - page->bottom;
+    if (excess > slack && !shrink_by(paginator, from, to, excess)) {
         if (unit_height(paginator, from, to) > page->bottom - page->top) {
             place_long(paginator, from, to);
             return;
@@ -208,7 +231,7 @@ static void place_unit(struct paginator *paginator, size_t from, size_t to)
         place(paginator, paginator->flow->strips[i]);
 }
 
-struct page_plan flow_paginate(const struct flow *flow)
+struct page_plan flow_paginate(struct flow *flow)
 {
     struct paginator paginator = {
         .flow = flow, .plan = {.page_count = 1}, .y = flow->page->top, .at_top = true};

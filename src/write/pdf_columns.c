@@ -110,9 +110,7 @@ static struct wish column_wish(struct table_layout *layout, size_t index)
         text = larger(head, widest_text(layout, index, false) + mark_indent * type_table.size);
         return (struct wish){text, text < block * 0.2 ? text : block * 0.2};
     case COLUMN_TEXT:
-        text = 0;
-        if (column->width_percent <= 0)
-            text = widest_text(layout, index, true);
+        text = widest_text(layout, index, true);
         return (struct wish){larger(head, text), larger(least_head, block * 0.06)};
     case COLUMN_BLANK:
         return (struct wish){larger(head, block * 0.08), least_head};
@@ -194,6 +192,15 @@ static void settle(struct table_layout *layout, const struct wish *wishes)
     }
 }
 
+/* A column whose texts fit on one line each is not made narrower than they are. */
+static void keep_unbroken(const struct table_layout *layout, struct wish *wishes)
+{
+    for (size_t i = 0; i < layout->table->column_count; i++)
+        if (is_elastic(layout->table->columns[i].kind) &&
+            wishes[i].natural <= layout->columns[i].width + 1.5)
+            wishes[i].least = larger(wishes[i].least, wishes[i].natural);
+}
+
 void table_columns(struct table_layout *layout)
 {
     const struct table *table = layout->table;
@@ -212,6 +219,7 @@ void table_columns(struct table_layout *layout)
             slots_width(&column->second) + column->second_text > 0 && column->width + 2 >= both;
         wishes[i].least = larger(wishes[i].least, column->beside ? both : 0);
     }
+    keep_unbroken(layout, wishes);
     settle(layout, wishes);
     double x = 0;
     for (size_t i = 0; i < table->column_count; i++) {

@@ -8,12 +8,6 @@
 
 static const struct position nowhere = {0, 0};
 
-static const struct exhibit *exhibit_of(cmark_node *node)
-{
-    return cmark_node_get_type(node) == CMARK_NODE_CUSTOM_BLOCK ? cmark_node_get_user_data(node)
-                                                                : NULL;
-}
-
 static bool is_figure(const struct exhibit *exhibit)
 {
     return exhibit && (exhibit->kind == EXHIBIT_PLOT || exhibit->kind == EXHIBIT_PLATE ||
@@ -27,7 +21,7 @@ static void keep_introduction(struct composer *composer, cmark_node *node, size_
     cmark_node *next = cmark_node_next(node);
     struct flow *flow = &composer->flow;
     if (cmark_node_get_type(node) != CMARK_NODE_PARAGRAPH || !next ||
-        !is_figure(exhibit_of(next)) || flow->count - first > SHORT)
+        !is_figure(document_exhibit(next)) || flow->count - first > SHORT)
         return;
     for (size_t i = first; i < flow->count; i++)
         flow->strips[i]->keep_next = true;
@@ -38,7 +32,7 @@ static void compose_document(struct composer *composer)
     cmark_node *node = cmark_node_first_child(composer->document->root);
     while (node) {
         cmark_node *next = cmark_node_next(node);
-        const struct exhibit *exhibit = exhibit_of(node);
+        const struct exhibit *exhibit = document_exhibit(node);
         size_t first = composer->flow.count;
         if (cmark_node_get_type(node) == CMARK_NODE_HEADING)
             composer->body = type_body;

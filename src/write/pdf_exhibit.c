@@ -1,5 +1,6 @@
 #include "write/pdf_layout.h"
 
+#include <math.h>
 #include <string.h>
 
 static const double figure_text_pt = 370; /* 40 rem of 9.25 pt: captions of figures */
@@ -241,14 +242,25 @@ static void compose_headline(struct composer *composer, const struct headline *h
 
 /* ---- plots and plates */
 
+/* Height of the heading and the introduction that stay with what comes next. */
+static double kept_height(const struct flow *flow)
+{
+    double height = 0;
+    for (size_t i = flow->count; i > 0 && flow->strips[i - 1]->keep_next; i--)
+        height += flow->strips[i - 1]->height + flow->strips[i - 1]->before;
+    return height;
+}
+
 static void compose_plot(struct composer *composer, const char *number, const struct plot *plot)
 {
     const double units = 720;
+    const double least_scale = 0.86 * mm(168) / units; /* its text then is 6.5 pt */
     struct flow *flow = &composer->flow;
     struct drawing *drawing = arena_get(flow->arena, sizeof *drawing);
     *drawing = drawing_of_plot(plot, units, flow->arena);
     double scale = block_width(composer) / units;
-    double room = flow->page->bottom - flow->page->top - 4 * type_caption.leading - mm(2);
+    double room =
+        flow->page->bottom - flow->page->top - kept_height(flow) - 4 * type_caption.leading - mm(6);
     if (drawing->height * scale > room)
         scale = room / drawing->height;
     flow_space(flow, mm(4));
@@ -257,7 +269,7 @@ static void compose_plot(struct composer *composer, const char *number, const st
     item.drawing.drawing = drawing;
     item.drawing.scale = scale;
     strip_item(flow, strip, &item);
-    strip->keep_next = true;
+    strip->least_scale = plot->kind == PLOT_GLANCE ? least_scale / scale : 0;
     flow_space(flow, mm(1.7));
     size_t before = flow->count;
     compose_caption(composer, number, plot->caption, figure_text_pt);
@@ -371,6 +383,13 @@ static void compose_cautions(struct composer *composer, cmark_node *list)
     flow_space(&composer->flow, mm(2.2));
 }
 
+static const double write_on_gap_pt = 9;
+
+static double write_on_share(const struct write_on *item)
+{
+    return item->width > 0 ? item->width : 1;
+}
+
 static double write_on_labels(const struct composer *composer, const struct write_on *item,
                               struct text_style style)
 {
@@ -382,16 +401,18 @@ static double write_on_labels(const struct composer *composer, const struct writ
 static size_t write_on_fitting(const struct composer *composer, const struct write_ons *write_on,
                                size_t from, struct text_style style)
 {
-    const double gap = 9;
-    double used = 0;
+    const double least_blank = mm(13);
+    double labels = 0, shares = 0, least_share = INFINITY;
     size_t to = from;
-    while (to < write_on->count) {
-        const struct write_on *item = &write_on->items[to];
-        double blank = mm(16) * (item->width > 0 ? smaller(item->width, 4) : 1);
-        used += write_on_labels(composer, item, style) + blank + gap;
-        if (used - gap > block_width(composer) && to > from)
+    for (; to < write_on->count; to++) {
+        double share = write_on_share(&write_on->items[to]);
+        labels += write_on_labels(composer, &write_on->items[to], style) +
+                  (to > from ? write_on_gap_pt : 0);
+        shares += share;
+        least_share = smaller(least_share, share);
+        double blank = (block_width(composer) - labels) * least_share / shares;
+        if (blank < least_blank && to > from)
             break;
-        to++;
     }
     return to;
 }
@@ -399,11 +420,10 @@ static size_t write_on_fitting(const struct composer *composer, const struct wri
 static void write_on_line(struct composer *composer, const struct write_ons *write_on, size_t from,
                           size_t to, struct text_style style)
 {
-    const double gap = 9;
-    double labels = gap * (double)(to - from - 1), shares = 0;
+    double labels = write_on_gap_pt * (double)(to - from - 1), shares = 0;
     for (size_t i = from; i < to; i++) {
         labels += write_on_labels(composer, &write_on->items[i], style);
-        shares += write_on->items[i].width > 0 ? write_on->items[i].width : 1;
+        shares += write_on_share(&write_on->items[i]);
     }
     double rest = block_width(composer) - labels;
     rest = rest > 0 ? rest : 0;
@@ -412,10 +432,9 @@ static void write_on_line(struct composer *composer, const struct write_ons *wri
     struct point at = {0, mm(4.6)};
     for (size_t i = from; i < to; i++) {
         const struct write_on *item = &write_on->items[i];
-        double share = item->width > 0 ? item->width : 1;
         strip_text(flow, strip, at, style, item->label);
         at.x += text_width(composer, item->label, style) + 3;
-        double blank = rest * share / shares;
+        double blank = rest * write_on_share(item) / shares;
         strip_rule(flow, strip, (struct point){at.x, at.y + 1.5},
                    (struct point){at.x + blank, at.y + 1.5}, rule_middle_pt, INK_TEXT);
         at.x += blank;
@@ -423,7 +442,7 @@ static void write_on_line(struct composer *composer, const struct write_ons *wri
             strip_text(flow, strip, (struct point){at.x + 3, at.y}, style, item->unit);
             at.x += 3 + text_width(composer, item->unit, style);
         }
-        at.x += gap;
+        at.x += write_on_gap_pt;
     }
 }
 

@@ -44,7 +44,9 @@ static inline struct text_runs runs_in(const struct composer *composer)
 /* A top-level heading, paragraph, list, quotation or code block, nested to any depth. */
 void compose_prose(struct composer *composer, cmark_node *node);
 
-/* "Table 1" 600, then the text: lines of at most `width`. */
+/* "Table 1" 600, then the text: lines of at most `width`; as lines, and set. */
+struct text_lines caption_lines(struct composer *composer, const char *number, const char *text,
+                                double width);
 void compose_caption(struct composer *composer, const char *number, const char *text, double width);
 
 void compose_table(struct composer *composer, const char *number, const struct table *table);

@@ -90,6 +90,28 @@ static uint32_t look_ahead(const char *at, const char *end)
     return at < end ? utf8_next(&at, end) : 0;
 }
 
+/*
+ * Whether a space between a figure and its unit is at `at`: people type it, and it is not the
+ * no-break space that our own figures carry.
+ */
+static bool is_before_unit(uint32_t before, const char *at, const char *end)
+{
+    static const char *const units[] = {"V", "kV", "mV", "A",  "mA",  "µA", "W",  "mW",
+                                        "Ω", "kΩ", "MΩ", "µF", "nF",  "pF", "Hz", "kHz",
+                                        "%", "°C", "K",  "s",  "min", "h",  "mm", "ohm"};
+    if (!((before >= '0' && before <= '9') || before == 0xBD))
+        return false;
+    for (size_t i = 0; i < sizeof units / sizeof units[0]; i++) {
+        size_t length = strlen(units[i]);
+        if ((size_t)(end - at) < length || memcmp(at, units[i], length) != 0)
+            continue;
+        unsigned char next = at + length < end ? (unsigned char)at[length] : ' ';
+        if (next < 0x80 && !(next >= 'a' && next <= 'z') && !(next >= 'A' && next <= 'Z'))
+            return true;
+    }
+    return false;
+}
+
 /* Whether a line may end behind code_point, which is no space. */
 static bool breaks_behind(uint32_t before, uint32_t code_point, uint32_t after)
 {
@@ -179,7 +201,7 @@ static struct spot break_line(struct breaker *breaker, struct spot from)
         while (at.at < end) {
             last = at;
             uint32_t code_point = utf8_next(&at.at, end);
-            if (code_point == ' ') {
+            if (code_point == ' ' && !is_before_unit(before, at.at, end)) {
                 candidate = at;
                 has_candidate = true;
             }
@@ -247,11 +269,12 @@ double text_runs_word_width(const struct text_runs *runs, const struct pdf_resou
         uint32_t before = 0;
         for (const char *at = run->text; at < end;) {
             uint32_t code_point = utf8_next(&at, end);
-            if (code_point != ' ')
+            if (code_point != ' ' || word > 0)
                 word += pdf_character_width(resources, run->style.face, code_point) *
                         run->style.size_pt / 1000;
             widest = word > widest ? word : widest;
-            if (code_point == ' ' || breaks_behind(before, code_point, look_ahead(at, end)))
+            if ((code_point == ' ' && !is_before_unit(before, at, end)) ||
+                breaks_behind(before, code_point, look_ahead(at, end)))
                 word = 0;
             before = code_point;
         }

@@ -3,8 +3,9 @@
  * broken where it must be.
  *
  * A line may end at a space, after a hyphen between letters, and after a dash; never at a no-break
- * space. Spaces at the ends of lines vanish. Line ends and tabs count as spaces; soft hyphens,
- * joiners and direction marks are left out, since there is no shaping.
+ * space, nor between a figure and its unit. Spaces at the ends of lines vanish. Line ends and tabs
+ * count as spaces; soft hyphens, joiners and direction marks are left out, since there is no
+ * shaping.
  */
 #ifndef WRITE_PDF_LINES_H
 #define WRITE_PDF_LINES_H

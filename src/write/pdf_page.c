@@ -1,5 +1,6 @@
 #include "write/pdf_page.h"
 
+#include "base/utf8.h"
 #include "write/pdf_drawing.h"
 #include "write/pdf_object.h"
 
@@ -138,17 +139,22 @@ static double width_of(const struct page *page, const struct text_style *style, 
            style->size_pt / 1000;
 }
 
-/* The longest beginning of text that leaves room for an ellipsis in this width. */
+/* How much of text fits this width: all of it, or less with room for an ellipsis. */
 static size_t fitting_length(const struct page *page, const struct text_style *style,
                              const char *text, double width)
 {
-    size_t length = strnlen(text, 1000);
-    while (length > 0 && width_of(page, style, text, length) > width) {
-        length--;
-        while (length > 0 && ((unsigned char)text[length] & 0xC0) == 0x80)
-            length--;
+    const char *end = text + strlen(text), *fitting = text;
+    double used = 0;
+    for (const char *at = text; at < end;) {
+        uint32_t code_point = utf8_next(&at, end);
+        used += pdf_character_width(page->writer->fonts->resources, style->face, code_point) *
+                style->size_pt / 1000;
+        if (used <= width - style->size_pt)
+            fitting = at;
+        if (used > width)
+            return (size_t)(fitting - text);
     }
-    return length;
+    return (size_t)(end - text);
 }
 
 static void draw_running_head(struct page *page, unsigned number, unsigned count)
@@ -163,9 +169,8 @@ static void draw_running_head(struct page *page, unsigned number, unsigned count
     struct point at = {geometry->left, geometry->head_baseline};
     const char *head = document->running_head ? document->running_head : "";
     double room = geometry->text_width - label_width - mm(5);
-    size_t length = strlen(head);
-    if (width_of(page, &style, head, length) > room) {
-        length = fitting_length(page, &style, head, room - style.size_pt);
+    size_t length = fitting_length(page, &style, head, room);
+    if (head[length]) {
         head = arena_print(page->writer->arena, "%.*s…", (int)length, head);
         length = strlen(head);
     }

@@ -60,14 +60,20 @@ struct strip *compose_row(struct composer *composer, const struct row_box *boxes
     return first;
 }
 
-void compose_caption(struct composer *composer, const char *number, const char *text, double width)
+struct text_lines caption_lines(struct composer *composer, const char *number, const char *text,
+                                double width)
 {
     struct text_runs runs = runs_in(composer);
     text_runs_add(&runs, number, style_of(FACE_SEMIBOLD, type_caption, INK_TEXT));
     if (runs.count > 0)
         text_runs_add(&runs, "  ", style_of(FACE_REGULAR, type_caption, INK_TEXT));
     text_runs_add(&runs, text, style_of(FACE_REGULAR, type_caption, INK_TEXT));
-    struct text_lines lines = text_lines_break(&runs, composer->flow.resources, width);
+    return text_lines_break(&runs, composer->flow.resources, width);
+}
+
+void compose_caption(struct composer *composer, const char *number, const char *text, double width)
+{
+    struct text_lines lines = caption_lines(composer, number, text, width);
     struct text_setting setting = {0, type_caption.leading, type_caption.size};
     flow_lines(&composer->flow, &lines, &setting);
 }

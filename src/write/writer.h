@@ -13,13 +13,18 @@
    tables padded to line up in a pager. */
 void markdown_write(const struct document *document, struct buffer *out);
 
-/* A whole HTML page with its style inside. style: contents of style.css; page: the page template
-   (page.html). The template sees {{language}}, {{title}}, {{author}}, {{subject}}, {{kind}}
-   (record, sheet, page, assessment), {{skip}}, {{footer}}, and the partials {{> style}},
-   {{> page_style}} (accent, paper size, running head) and {{> document}}, each alone on its line.
-   Its mistakes are appended to diagnostics. */
-void html_write(const struct document *document, const char *style, const struct source *page,
-                struct buffer *out, struct diagnostics *diagnostics);
+/* A whole HTML page with its style inside. style: contents of style.css; page_template: contents of
+   page.html, which sees {{language}}, {{title}}, {{author}}, {{subject}}, {{kind}} (record, sheet,
+   page, assessment), {{skip}}, {{footer}}, and the partials {{> style}}, {{> page_style}} (accent,
+   paper, running head) and {{> document}}, each alone on its line. What the template gets wrong is
+   left out here: html_check_page says it. */
+void html_write(const struct document *document, const char *style, const char *page_template,
+                struct buffer *out);
+
+/* The mistakes of a page template, once per process, appended to diagnostics; false: it has some.
+ */
+bool html_check_page(const struct source *page, struct arena *arena,
+                     struct diagnostics *diagnostics);
 
 /* Only the document's body, without page: for pages of the archive. */
 void html_write_body(const struct document *document, struct buffer *out);

@@ -1,0 +1,37 @@
+/*
+ * For the tests of PDFs: faces and pictures of the build that a test program belongs to.
+ */
+#ifndef TESTS_PDF_KIT_H
+#define TESTS_PDF_KIT_H
+
+#include "write/picture.h"
+#include "write/writer.h"
+
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+
+/* BUILD/tests/unit/write/x_test: BUILD/share/gridleak/fonts, where make copies them; else the
+   folders of the Debian packages, linked into one. Belongs to the caller (free). */
+static inline char *pdf_fonts_folder(const char *program)
+{
+    const char *tests = strstr(program, "/tests/unit/");
+    size_t length = tests ? (size_t)(tests - program) : 0;
+    char *folder = malloc(length + 64);
+    sprintf(folder, "%.*s%sshare/gridleak/fonts", (int)length, program, tests ? "/" : "build/");
+    return folder;
+}
+
+static inline struct picture pdf_picture(const char *path)
+{
+    const struct picture_limits limits = {1600, 40000000, 85, 40000000};
+    struct picture picture = {0};
+    enum picture_status status = picture_read(path, &limits, &picture);
+    if (status != PICTURE_OK) {
+        fprintf(stderr, "%s: %s\n", path, picture_status_text(status));
+        exit(1);
+    }
+    return picture;
+}
+
+#endif
