@@ -241,7 +241,8 @@ const char *quantity_hint(struct arena *arena, enum quantity_status status, cons
                    ? NULL
                    : arena_print(arena, "add the unit, as in %s", unit_example(form->unit));
     case QUANTITY_WRONG_UNIT:
-        return arena_print(arena, "a %s is wanted, as in %s", unit_name(form->unit),
+        return arena_print(arena, "%s %s is wanted, as in %s",
+                           form->unit == UNIT_INDUCTANCE ? "an" : "a", unit_name(form->unit),
                            unit_example(form->unit));
     case QUANTITY_COMMA:
         return comma_hint(arena, text);

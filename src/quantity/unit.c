@@ -89,6 +89,7 @@ static const struct unit_spelling spellings[] = {
     ROW("volts", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("Vdc", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("Vac", ANY_CASE, UNIT_VOLTAGE, 0),
+    ROW("V~", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("WV", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("VW", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("WVDC", ANY_CASE, UNIT_VOLTAGE, 0),
