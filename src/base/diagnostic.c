@@ -105,6 +105,15 @@ void diagnostics_sort(struct diagnostics *list)
     }
 }
 
+/* Broken bytes, control characters, and signs that turn the direction of writing. */
+static bool is_unseen(uint32_t code_point)
+{
+    return code_point == UTF8_ILL_FORMED || (code_point < 0x20 && code_point != '\t') ||
+           (code_point >= 0x7F && code_point < 0xA0) ||
+           (code_point >= 0x2028 && code_point <= 0x202E) ||
+           (code_point >= 0x2066 && code_point <= 0x2069) || code_point == 0xFEFF;
+}
+
 /* Show a line with a caret under the column; control and broken bytes as '?', long lines cut. */
 static void format_line(const struct diagnostic *item, struct buffer *buffer)
 {
@@ -116,8 +125,7 @@ static void format_line(const struct diagnostic *item, struct buffer *buffer)
         uint32_t code_point = utf8_next(&cursor, end);
         if (column < first)
             continue;
-        if (code_point == UTF8_ILL_FORMED || (code_point < 0x20 && code_point != '\t') ||
-            code_point == 0x7F)
+        if (is_unseen(code_point))
             code_point = '?';
         utf8_append(buffer, code_point);
         if (column < item->at.column)

@@ -264,16 +264,22 @@ void valves_join(struct reader *reader)
 
 /* ---- photographs ---- */
 
+/* The second of a pair is the later one, unless `when` said so of the first. */
 static void check_pairs(struct reader *reader)
 {
     struct job *job = reader->job;
     for (size_t i = 0; i < job->photo_count; i++) {
         struct photo *photo = (struct photo *)&job->photos[i];
+        const struct photo *first = NULL;
         size_t earlier = 0;
-        for (size_t j = 0; j < i && photo->pair; j++)
-            earlier += job->photos[j].pair == photo->pair;
+        for (size_t j = 0; j < i && photo->pair; j++) {
+            if (job->photos[j].pair != photo->pair)
+                continue;
+            first = first ? first : &job->photos[j];
+            earlier++;
+        }
         if (earlier == 1)
-            photo->after = !job->photos[i - 1].after || job->photos[i - 1].pair != photo->pair;
+            photo->after = !first->after;
         if (earlier > 1)
             reader_tell(reader, photo->at, DIAGNOSTIC_CONTRADICTION, NULL,
                         "a third photograph of pair %u", photo->pair);

@@ -124,7 +124,7 @@ static int choice_read(struct reader *reader, const struct field *field, const s
     const char *near = nearest_word(word, choices);
     const char *list = choice_list(reader->arena, choices);
     reader_tell(reader, line->at, DIAGNOSTIC_UNKNOWN_CHOICE,
-                near && *near ? arena_print(reader->arena, "nearest: %s (of %s)", near, list)
+                near && *near ? arena_print(reader->arena, "nearest: %s", near)
                               : arena_print(reader->arena, "one of: %s", list),
                 "'%s' is no %s", word, field->key);
     return -1;

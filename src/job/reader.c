@@ -27,11 +27,10 @@ const struct job *job_read(const struct source *source, struct arena *arena,
     job->source = *source;
     struct reader reader = {
         .source = source, .arena = arena, .diagnostics = diagnostics, .job = job};
+    size_t errors = diagnostics->errors;
     reader.root = yaml_tree_read(source, arena, diagnostics);
-    if (!reader.root)
-        return job;
-    if (node_is_empty(reader.root)) {
-        if (!reader.root->damaged)
+    if (!reader.root || node_is_empty(reader.root)) {
+        if (diagnostics->errors == errors)
             reader_tell(&reader, (struct position){0}, DIAGNOSTIC_FILE_EMPTY,
                         "gridleak start makes a new job", "the file holds nothing but comments");
     } else if (reader.root->kind != NODE_MAPPING) {

@@ -5,6 +5,8 @@
 
 #include <string.h>
 
+enum { HINT_BYTES_MAX = 120 }; /* a longer line is not typed again for anybody */
+
 /* A line of the file, cut into its parts. */
 struct cut_line {
     const char *start, *end; /* without line end */
@@ -86,18 +88,24 @@ static size_t indent_of(const struct cut_line *line)
     return (size_t)(at - line->start);
 }
 
-/* The line with its value in quotes. */
+/* The line with its value in quotes: in double ones where that spares doubling the single. */
 static const char *quoted(struct arena *arena, const struct cut_line *line)
 {
     struct buffer text = {0};
+    size_t length = (size_t)(line->value_end - line->value);
+    if (length > HINT_BYTES_MAX)
+        return "put the value in quotes, or on lines of its own behind |";
+    bool double_quotes = memchr(line->value, '\'', length) && !memchr(line->value, '"', length) &&
+                         !memchr(line->value, '\\', length);
+    char quote = double_quotes ? '"' : '\'';
     buffer_append(&text, line->body, (size_t)(line->value - line->body));
-    buffer_byte(&text, '\'');
+    buffer_byte(&text, quote);
     for (const char *at = line->value; at < line->value_end; at++) {
-        if (*at == '\'')
-            buffer_byte(&text, '\'');
+        if (*at == quote)
+            buffer_byte(&text, quote);
         buffer_byte(&text, *at);
     }
-    buffer_byte(&text, '\'');
+    buffer_byte(&text, quote);
     const char *hint =
         arena_print(arena, "write it so: %s%s", line->is_item ? "- " : "", buffer_string(&text));
     buffer_release(&text);
@@ -107,7 +115,7 @@ static const char *quoted(struct arena *arena, const struct cut_line *line)
 /* The line as text behind `|`; a list item stays a line and gets quotes. */
 static const char *as_block(struct arena *arena, const struct cut_line *line)
 {
-    if (line->is_item || !line->has_key)
+    if (line->is_item || !line->has_key || line->end - line->value > HINT_BYTES_MAX)
         return quoted(arena, line);
     const char *key_end = trimmed_end(line->body, line->value);
     return arena_print(arena, "write it so: %.*s |\n                   %.*s",
