@@ -37,7 +37,8 @@ struct stage {
     struct trail anode_trail, screen_trail, cathode_trail;
     double screen_low_v, cathode_high_v; /* outer ends of the brackets */
     /* as tried now */
-    double return_v, grid_v, cathode_v, anode_v, screen_v, grid_a;
+    double return_v, return_ohm; /* what the grid leak returns to: e.m.f. and its feed */
+    double grid_v, cathode_v, anode_v, screen_v, grid_a;
     struct valve_currents currents;
 };
 
@@ -168,7 +169,8 @@ static struct feed grid_feed(const struct stage *stage)
 {
     const struct stage_circuit *c = stage->circuit;
     double leak_s = c->coupling_leak_s / (1 + c->coupling_leak_s * c->coupling_source_ohm);
-    double ohm = c->grid_leak_ohm / (1 + c->grid_leak_ohm * leak_s);
+    double return_ohm = c->grid_leak_ohm + stage->return_ohm;
+    double ohm = return_ohm / (1 + return_ohm * leak_s);
     return (struct feed){stage->return_v + ohm * leak_s * (c->coupling_source_v - stage->return_v),
                          ohm};
 }
@@ -217,6 +219,7 @@ static void hold_node(struct stage *stage, const struct group *group, double vol
     switch (group->kind) {
     case GROUP_BIAS:
         stage->return_v = (c->return_v - volts) / (1 + c->bias_feed_ohm * group->leak_s);
+        stage->return_ohm = feed_of(0, c->bias_feed_ohm, group->leak_s).ohm;
         break;
     case GROUP_SCREEN:
         stage->screen_v = volts;
@@ -231,7 +234,8 @@ static double current_into(const struct stage *stage, enum group_kind kind)
 {
     switch (kind) {
     case GROUP_BIAS:
-        return stage->currents.cathode_a + stage->circuit->anode_leak_s * stage->anode_v +
+        return stage->currents.cathode_a + stage->grid_a +
+               stage->circuit->anode_leak_s * stage->anode_v +
                (stage->circuit->law.triode ? 0 : stage->screen_leak_s * stage->screen_v);
     case GROUP_SCREEN:
         return stage->currents.screen_a;
@@ -302,7 +306,9 @@ static void prepare_stage(struct stage *stage, const struct stage_circuit *c)
     stage->anode = feed_of(c->supply_v, c->anode_ohm, c->anode_leak_s);
     stage->screen = feed_of(c->screen_supply_v, c->screen_ohm, c->screen_leak_s);
     stage->cathode = feed_of(0, c->cathode_ohm, c->cathode_leak_s);
-    stage->return_v = c->return_v / (1 + c->bias_feed_ohm * c->bias_leak_s);
+    struct feed bias = feed_of(c->return_v, c->bias_feed_ohm, c->bias_leak_s);
+    stage->return_v = bias.emf_v;
+    stage->return_ohm = bias.ohm;
 
     double grid_v = fmax(fmax(grid_feed(stage).emf_v, c->coupling_source_v), c->return_v);
     double gm_s = law->exponent * law->ik0_a / law->d0_v;
@@ -450,6 +456,9 @@ static struct stage_solution solution_of(const struct stage *stage)
         .grid_a = stage->grid_a,
         .return_v = stage->return_v,
     };
+    double grid_return_ohm = c->grid_leak_ohm + stage->return_ohm;
+    if (stage->return_ohm > 0)
+        s.return_v += stage->return_ohm * (s.grid_v - stage->return_v) / grid_return_ohm;
     s.anode_w = s.anode_a * (s.anode_v - s.cathode_v);
     if (!c->law.triode) {
         s.screen_w = s.screen_a * (s.screen_v - s.cathode_v);
@@ -487,7 +496,7 @@ static void solve_network(const struct stage_circuit *circuits, size_t count,
                           const bool marked[STAGES_MAX], struct stage_solution *solutions)
 {
     struct network network = {.stage_count = 0};
-    size_t place[STAGES_MAX];
+    size_t place[STAGES_MAX] = {0};
     for (size_t i = 0; i < count; i++)
         if (marked[i]) {
             place[network.stage_count] = i;

@@ -8,9 +8,11 @@
  * its leak (and bias_others_a) is the largest figure that any of them gives, counted once. Nested
  * brackets: every unknown is the root of a falling function whose signs at both ends are known.
  *
- * The resistance in the negative HT lead carries the anode and screen feeds of its stages, with
- * the leaks behind them, and bias_others_a. A bias bypass sits at the far end of the grid leak
- * behind bias_feed_ohm; with bias_node < 0 it loads the fixed bias return_v in the same way.
+ * The resistance in the negative HT lead carries the cathode currents of its stages, what their
+ * anodes and screens leak to chassis, and bias_others_a. A coupling leak comes from the HT and
+ * returns to it through the grid leak, past that resistance. A bias bypass sits at the far end of
+ * the grid leak behind bias_feed_ohm; with bias_node < 0 it loads the fixed bias return_v in the
+ * same way. Of a feed that several grids share each stage sees its own grid's current only.
  */
 #ifndef ASSESS_STAGE_SOLVER_H
 #define ASSESS_STAGE_SOLVER_H
@@ -55,7 +57,7 @@ struct stage_solution {
     double anode_a, screen_a, cathode_a, grid_a;
     double anode_w, screen_w; /* dissipation in the valve */
     double screen_resistor_w;
-    double return_v; /* far end of the grid leak, back bias included */
+    double return_v; /* far end of the grid leak, back bias and bias bypass included */
 };
 
 /* Solve `count` stages (1 to 8) that are coupled through their nodes; solutions[i] for circuits[i].

@@ -263,7 +263,7 @@ static void back_bias(void **state)
     c.bias_others_a = 26e-3;
     struct stage_solution s;
     assert_int_equal(stages_solve(&c, 1, &s), SOLVE_OK);
-    assert_relative(s.return_v, -165 * (s.anode_a + s.screen_a + 26e-3), 1e-7);
+    assert_relative(s.return_v, -165 * (s.cathode_a + 26e-3), 1e-7);
     assert_relative(s.grid_v, s.return_v, 1e-6);
     assert_close(s.grid_v, -12.5, 0.1); /* 165 ohm * (49.5 + 26) mA = 12.46 V */
     double without_leak_v = s.return_v;
