@@ -1,0 +1,231 @@
+#include "write/table_text.h"
+
+#include "write/text_width.h"
+
+#include <string.h>
+
+/* A number apart: what stands before the decimal point, behind it, and the unit. */
+struct parts {
+    const char *lead, *tail, *unit, *second;
+};
+
+struct slots {
+    size_t lead, tail, unit, second;
+};
+
+struct composing {
+    const struct table_text_style *style;
+    struct arena *arena;
+};
+
+static size_t columns_of(const char *text)
+{
+    return text_columns(text, strlen(text));
+}
+
+static const char *escaped(const struct composing *composing, const char *open, const char *text,
+                           const char *close)
+{
+    struct buffer out = {0};
+    buffer_text(&out, open);
+    composing->style->escape(&out, text);
+    buffer_text(&out, close);
+    const char *copy = arena_text(composing->arena, out.data, out.length);
+    buffer_release(&out);
+    return copy;
+}
+
+static void append_figures(struct buffer *out, const struct figures *figures)
+{
+    buffer_text(out, figures->bound);
+    buffer_text(out, figures->bound[0] ? " " : "");
+    buffer_text(out, figures->whole);
+}
+
+static struct parts parts_of(const struct composing *composing, const struct cell *cell)
+{
+    struct parts parts = {"", "", "", ""};
+    struct buffer text = {0};
+    const char *open = cell->strong ? composing->style->strong_open : "",
+               *close = cell->strong ? composing->style->strong_close : "";
+    if (cell->figures.whole) {
+        append_figures(&text, &cell->figures);
+        parts.lead = escaped(composing, open, buffer_string(&text), "");
+        parts.tail = escaped(composing, "", cell->figures.fraction, close);
+        parts.unit = escaped(composing, "", cell->figures.unit, "");
+    } else if (cell->text) {
+        parts.lead = escaped(composing, open, cell->text, close);
+    }
+    if (cell->second_figures.whole) {
+        buffer_clear(&text);
+        append_figures(&text, &cell->second_figures);
+        buffer_text(&text, cell->second_figures.fraction);
+        buffer_text(&text, cell->second_figures.unit[0] ? " " : "");
+        buffer_text(&text, cell->second_figures.unit);
+        parts.second = escaped(composing, "", buffer_string(&text), "");
+    } else if (cell->second) {
+        parts.second = escaped(composing, "", cell->second, "");
+    }
+    buffer_release(&text);
+    return parts;
+}
+
+static size_t larger(size_t one, size_t other)
+{
+    return one > other ? one : other;
+}
+
+static struct slots slots_of(const struct composing *composing, const struct table *table,
+                             size_t column)
+{
+    struct slots slots = {0};
+    for (size_t i = 0; i < table->row_count; i++) {
+        const struct cell *cell = &table->rows[i].cells[column];
+        if (table->rows[i].group)
+            continue;
+        struct parts parts = parts_of(composing, cell);
+        /* Words in a number column do not widen its slots. */
+        if (cell->figures.whole) {
+            slots.lead = larger(slots.lead, columns_of(parts.lead));
+            slots.tail = larger(slots.tail, columns_of(parts.tail));
+            slots.unit = larger(slots.unit, columns_of(parts.unit));
+        }
+        slots.second = larger(slots.second, columns_of(parts.second));
+    }
+    return slots;
+}
+
+static void pad(struct buffer *out, size_t columns)
+{
+    for (size_t i = 0; i < columns; i++)
+        buffer_byte(out, ' ');
+}
+
+static void append_slot(struct buffer *out, const char *text, size_t slot, bool right)
+{
+    size_t used = columns_of(text), rest = slot > used ? slot - used : 0;
+    if (right)
+        pad(out, rest);
+    buffer_text(out, text);
+    if (!right)
+        pad(out, rest);
+}
+
+static const char *number_text(const struct composing *composing, const struct cell *cell,
+                               const struct slots *slots)
+{
+    struct parts parts = parts_of(composing, cell);
+    if (!parts.lead[0] && !parts.second[0])
+        return "";
+    struct buffer out = {0};
+    if (cell->figures.whole) {
+        append_slot(&out, parts.lead, slots->lead, true);
+        append_slot(&out, parts.tail, slots->tail, false);
+        if (slots->unit) {
+            buffer_byte(&out, ' ');
+            append_slot(&out, parts.unit, slots->unit, false);
+        }
+    } else {
+        buffer_text(&out, parts.lead);
+    }
+    if (slots->second) {
+        buffer_byte(&out, ' ');
+        append_slot(&out, parts.second, slots->second, true);
+    }
+    const char *text = arena_text(composing->arena, out.data, out.length);
+    buffer_release(&out);
+    return text;
+}
+
+/* Raised figures, so that a ref stays a word for itself. */
+static void append_notes(struct buffer *out, const char *notes)
+{
+    static const char *const raised[] = {"⁰", "¹", "²", "³", "⁴", "⁵", "⁶", "⁷", "⁸", "⁹"};
+    buffer_byte(out, ' ');
+    for (; *notes; notes++) {
+        if (*notes >= '0' && *notes <= '9')
+            buffer_text(out, raised[*notes - '0']);
+        else
+            buffer_byte(out, *notes);
+    }
+}
+
+static const char *words_text(const struct composing *composing, const struct cell *cell,
+                              enum column_kind kind)
+{
+    struct buffer out = {0};
+    bool strong = cell->strong && kind != COLUMN_REF && cell->text && cell->text[0];
+    buffer_text(&out, strong ? composing->style->strong_open : "");
+    composing->style->escape(&out, cell->text);
+    buffer_text(&out, strong ? composing->style->strong_close : "");
+    if (cell->notes)
+        append_notes(&out, cell->notes);
+    bool apart = kind == COLUMN_OUTCOME && composing->style->reasons_apart;
+    if (cell->second && cell->second[0] && !apart) {
+        buffer_text(&out, out.length ? ", " : "");
+        composing->style->escape(&out, cell->second);
+    }
+    const char *text = arena_text(composing->arena, out.data, out.length);
+    buffer_release(&out);
+    return text;
+}
+
+static const char *head_text(const struct composing *composing, const struct column *column)
+{
+    struct buffer out = {0};
+    composing->style->escape(&out, column->head);
+    if (column->unit && column->unit[0]) {
+        buffer_text(&out, out.length ? " " : "");
+        composing->style->escape(&out, column->unit);
+    }
+    const char *text = arena_text(composing->arena, out.data, out.length);
+    buffer_release(&out);
+    return text;
+}
+
+static void compose_column(const struct composing *composing, struct table_text *text,
+                           size_t column)
+{
+    const struct table *table = text->table;
+    enum column_kind kind = table->columns[column].kind;
+    struct slots slots = {0};
+    if (kind == COLUMN_NUMBER)
+        slots = slots_of(composing, table, column);
+    text->heads[column] = head_text(composing, &table->columns[column]);
+    text->widths[column] = columns_of(text->heads[column]);
+    text->aligned_right[column] = kind == COLUMN_NUMBER;
+    for (size_t i = 0; i < table->row_count; i++) {
+        const struct table_row *row = &table->rows[i];
+        const char **cell = &text->cells[i * table->column_count + column];
+        *cell = "";
+        if (row->group) {
+            if (column == 0)
+                *cell = escaped(composing, "", row->cells[0].text, "");
+            continue;
+        }
+        *cell = kind == COLUMN_NUMBER ? number_text(composing, &row->cells[column], &slots)
+                                      : words_text(composing, &row->cells[column], kind);
+        text->widths[column] = larger(text->widths[column], columns_of(*cell));
+    }
+}
+
+struct table_text table_text_of(const struct table *table, const struct table_text_style *style,
+                                struct arena *arena)
+{
+    struct composing composing = {style, arena};
+    size_t columns = table->column_count;
+    struct table_text text = {
+        .table = table,
+        .heads = arena_array(arena, columns, sizeof *text.heads),
+        .cells = arena_array(arena, columns * table->row_count, sizeof *text.cells),
+        .widths = arena_array(arena, columns, sizeof *text.widths),
+        .aligned_right = arena_array(arena, columns, sizeof *text.aligned_right)};
+    for (size_t column = 0; column < columns; column++)
+        compose_column(&composing, &text, column);
+    return text;
+}
+
+const char *table_text_cell(const struct table_text *text, size_t row, size_t column)
+{
+    return text->cells[row * text->table->column_count + column];
+}
