@@ -19,6 +19,15 @@ static bool given(double value)
     return isfinite(value) && value > 0;
 }
 
+/* 1 - exp(-volts/scale), from 0 at the cathode's volts to 1. */
+static double knee(double volts, double scale_v)
+{
+    if (volts <= 0)
+        return 0;
+    double ratio = volts / scale_v;
+    return ratio > 40 ? 1 : -expm1(-ratio); /* beyond 40 a double shows no difference */
+}
+
 static double exponent_m(enum valve_kind kind)
 {
     switch (kind) {
@@ -51,6 +60,7 @@ static enum law_status fit_screen_valve(const struct valve_row *row, struct valv
         return LAW_NO_CURRENT;
     law->vg20_v = row->vg2_v;
     law->q0 = row->ig2_a / row->ia_a;
+    law->knee0 = knee(row->va_v, knee_of_screen * row->vg2_v);
     law->m = exponent_m(row->kind);
     law->ik0_a = row->ia_a + row->ig2_a;
     if (law->without_gm) {
@@ -140,9 +150,11 @@ static struct valve_currents screen_valve_currents(const struct valve_law *law, 
     double screen_v = fmax(vg2_v, least_screen_v);
     double floored_v = fmax(va_v, bottomed_of_screen * screen_v);
     double share = law->q0 * power((screen_v / floored_v) / (law->vg20_v / law->va0_v), law->m);
-    double knee = va_v > 0 ? -expm1(-va_v / (knee_of_screen * screen_v)) : 0;
-    double knee_at_row = -expm1(-law->va0_v / (knee_of_screen * law->vg20_v));
-    currents.anode_a = currents.cathode_a * fmin(1, knee / knee_at_row) / (1 + share);
+    /* No further below the knee than the row itself: nothing is lost (and no exponential needed).
+     */
+    bool past_knee = va_v * law->vg20_v >= law->va0_v * screen_v;
+    double taken = past_knee ? 1 : knee(va_v, knee_of_screen * screen_v) / law->knee0;
+    currents.anode_a = currents.cathode_a * taken / (1 + share);
     currents.screen_a = currents.cathode_a - currents.anode_a;
     return currents;
 }
@@ -153,8 +165,7 @@ struct valve_currents valve_law_currents(const struct valve_law *law, double vg1
     if (!law->triode)
         return screen_valve_currents(law, vg1_v, vg2_v, va_v);
     double drive_v = law->d0_v + (vg1_v - law->vg10_v) + (va_v - law->va0_v) / law->mu;
-    double knee = va_v > 0 ? -expm1(-va_v / triode_knee_v) : 0;
-    double current_a = space_current(law, drive_v) * knee;
+    double current_a = space_current(law, drive_v) * knee(va_v, triode_knee_v);
     return (struct valve_currents){.cathode_a = current_a, .anode_a = current_a};
 }
 

@@ -20,6 +20,7 @@ struct valve_law {
     double mu;                  /* triode */
     double mu12, ka;            /* screen valve */
     double q0, m;               /* screen share */
+    double knee0;               /* screen valve: how far past its knee the row is, of 1 */
     double pa_max_w, pg2_max_w; /* NaN: not known */
     bool without_gm;            /* stated +-30 % */
 };

@@ -89,21 +89,61 @@ const struct valve_row *valve_book(size_t *count)
     return rows;
 }
 
+static bool is_filler(char letter)
+{
+    return letter == ' ' || letter == '-' || letter == '\t';
+}
+
+static char lower(char letter)
+{
+    return (char)(letter >= 'A' && letter <= 'Z' ? letter - 'A' + 'a' : letter);
+}
+
 /* Lower case without spaces and hyphens; "" when it is too long to be any type. */
 static void squeeze(const char *name, char squeezed[KEY_MAX])
 {
     size_t length = 0;
     for (; *name; name++) {
-        if (*name == ' ' || *name == '-' || *name == '\t')
+        if (is_filler(*name))
             continue;
         if (length + 1 == KEY_MAX) {
             length = 0;
             break;
         }
-        char letter = *name;
-        squeezed[length++] = (char)(letter >= 'A' && letter <= 'Z' ? letter - 'A' + 'a' : letter);
+        squeezed[length++] = lower(*name);
     }
     squeezed[length] = '\0';
+}
+
+/* Whether a type of the book begins with the squeezed text; *type moves behind it. */
+static bool begins(const char **type, const char *squeezed)
+{
+    const char *at = *type;
+    for (; *squeezed; at++) {
+        if (is_filler(*at))
+            continue;
+        if (lower(*at) != *squeezed++)
+            return false;
+    }
+    while (is_filler(*at))
+        at++;
+    *type = at;
+    return true;
+}
+
+/* half NULL: any half, but a half there must be. */
+static bool is_type(const char *type, const char *base, const char *half)
+{
+    if (!begins(&type, base))
+        return false;
+    if (half)
+        return begins(&type, half) && *type == '\0';
+    for (size_t i = 0; halves[i][0]; i++) {
+        const char *rest = type;
+        if (begins(&rest, halves[i]) && *rest == '\0')
+            return true;
+    }
+    return false;
 }
 
 /* Cut the suffix off the key's base when it ends with it and something stands before it. */
@@ -136,15 +176,12 @@ static struct valve_key key_of(const char *name)
     return key;
 }
 
-/* The first row of the type with this base and half; half NULL: any, but only one such type. */
+/* The first row of the only type with this base and half. */
 static const struct valve_row *first_row(const char *base, const char *half)
 {
     const struct valve_row *found = NULL;
     for (size_t i = 0; i < ROW_COUNT; i++) {
-        if (i > 0 && strcmp(rows[i].type, rows[i - 1].type) == 0)
-            continue;
-        struct valve_key key = key_of(rows[i].type);
-        if (strcmp(key.base, base) != 0 || (half && strcmp(key.half, half) != 0))
+        if (!is_type(rows[i].type, base, half) || (found && strcmp(found->type, rows[i].type) == 0))
             continue;
         if (found)
             return NULL;
