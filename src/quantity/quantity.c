@@ -2,6 +2,7 @@
 
 #include <math.h>
 #include <string.h>
+#include <strings.h>
 
 /* A number with its unit, before it is compared with what was wanted. */
 struct magnitude {
@@ -75,6 +76,22 @@ static enum quantity_status coded_magnitude(const struct decimal *number, const 
                                                                        : QUANTITY_UNREADABLE;
 }
 
+/* `230 V a.c.`: what kind of volts or current it is says nothing about how many. */
+static const struct unit_spelling *unit_of(const char *unit, const char *end, enum unit wanted)
+{
+    static const char *const kinds[] = {" a.c.", " ac", " d.c.", " dc", " rms", " r.m.s."};
+    const struct unit_spelling *found = unit_find(unit, (size_t)(end - unit), wanted);
+    for (size_t i = 0; found == NULL && i < sizeof kinds / sizeof kinds[0]; i++) {
+        size_t length = strlen(kinds[i]);
+        if ((size_t)(end - unit) <= length || strncasecmp(end - length, kinds[i], length) != 0)
+            continue;
+        found = unit_find(unit, (size_t)(end - unit) - length, wanted);
+        if (found != NULL && found->unit != UNIT_VOLTAGE && found->unit != UNIT_CURRENT)
+            return NULL;
+    }
+    return found;
+}
+
 static enum quantity_status magnitude_part(const char **cursor, const char *end, enum unit wanted,
                                            struct magnitude *magnitude)
 {
@@ -92,7 +109,7 @@ static enum quantity_status magnitude_part(const char **cursor, const char *end,
         magnitude->has_unit = false;
         return decimal_value(&number, 0, &magnitude->value) ? QUANTITY_OK : QUANTITY_UNREADABLE;
     }
-    const struct unit_spelling *spelling = unit_find(unit, (size_t)(last - unit), wanted);
+    const struct unit_spelling *spelling = unit_of(unit, last, wanted);
     if (spelling == NULL || !in_si(&number, spelling, &magnitude->value))
         return QUANTITY_UNREADABLE;
     magnitude->unit = spelling->unit;

@@ -83,7 +83,8 @@ struct quantity_form {
  * ohm; a full stop behind is dropped (`mfd.`). `M` alone is megohm. `mF`, `MF`, `MFD` in any case
  * are microfarads: on old parts they always were, and nobody measures millifarads in a valve set;
  * all but `mfd`, which cannot be mistaken, set *old_unit. `F` is Fahrenheit where a temperature is
- * wanted, else farad. `mc/s` is Mc/s. Times may go on in falling units (`1 h 10 min`).
+ * wanted, else farad. `mc/s` is Mc/s. `a.c.`, `d.c.` or `rms` may follow volts and current; in a
+ * line of values they are words of their own. Times may go on in falling units (`1 h 10 min`).
  *
  * Read all of text[0..length). On QUANTITY_OK *quantity is set (written copied to the arena,
  * `at` left to the caller). *old_unit (may be NULL) tells that `MF` or `MFD` was read as

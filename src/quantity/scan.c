@@ -19,13 +19,21 @@ static bool is_letter(char c)
 static uint32_t peek(const char *cursor, const char *end, const char **behind)
 {
     *behind = cursor;
-    return cursor < end ? utf8_next(behind, end) : 0;
+    if (cursor == end)
+        return 0;
+    if ((unsigned char)*cursor >= 0x80)
+        return utf8_next(behind, end);
+    *behind = cursor + 1;
+    return (uint32_t)*cursor;
 }
 
 const char *scan_spaces(const char *cursor, const char *end)
 {
     const char *behind;
     for (;;) {
+        /* Nearly always a plain letter or digit: no need to decode it. */
+        if (cursor == end || (*cursor > ' ' && *cursor < 0x7F))
+            return cursor;
         uint32_t sign = peek(cursor, end, &behind);
         if (sign != ' ' && sign != '\t' && sign != 0xA0 && sign != 0x2009 && sign != 0x202F)
             return cursor;
@@ -42,8 +50,8 @@ const char *scan_trim_end(const char *start, const char *end)
             cursor = behind;
             continue;
         }
-        utf8_next(&cursor, end);
-        last = cursor;
+        peek(cursor, end, &behind);
+        last = cursor = behind;
     }
     return last;
 }

@@ -25,10 +25,18 @@ static bool is_boundary(const char *cursor, const char *end)
     return cursor == end || is_space_at(cursor, end) || is_separator(cursor, end);
 }
 
+static void skip_character(const char **cursor, const char *end)
+{
+    if ((unsigned char)**cursor < 0x80)
+        ++*cursor;
+    else
+        utf8_next(cursor, end);
+}
+
 static const char *run_end(const char *cursor, const char *end)
 {
     while (!is_boundary(cursor, end))
-        utf8_next(&cursor, end);
+        skip_character(&cursor, end);
     return cursor;
 }
 
@@ -36,7 +44,7 @@ static const char *run_end(const char *cursor, const char *end)
 static const char *letters_end(const char *cursor, const char *end)
 {
     while (!is_boundary(cursor, end) && !is_digit_at(cursor, end))
-        utf8_next(&cursor, end);
+        skip_character(&cursor, end);
     return cursor;
 }
 

@@ -262,6 +262,9 @@ static bool plain_spelling(const char *text, size_t text_length, char *plain)
 
 static bool spelt(const struct unit_spelling *row, const char *plain)
 {
+    /* Most rows differ in their first letter; 0x20 sets the case of ASCII letters apart. */
+    if ((row->text[0] | 0x20) != (plain[0] | 0x20))
+        return false;
     if (row->letters == AS_SPELT)
         return strcmp(row->text, plain) == 0;
     if (row->letters == FIRST_AS_SPELT && row->text[0] != plain[0])

@@ -3,6 +3,7 @@
 #include "quantity/quantity.h"
 
 #include <locale.h>
+#include <stdlib.h>
 #include <string.h>
 
 static enum quantity_status read_as(struct arena *arena, const char *text, enum unit unit,
@@ -87,6 +88,10 @@ static void values_are_read(void **state)
         {"-0.3 uA", UNIT_CURRENT, -0.3e-6},
         {"250 V", UNIT_VOLTAGE, 250},
         {"250V", UNIT_VOLTAGE, 250},
+        {"230 V a.c.", UNIT_VOLTAGE, 230},
+        {"6.3 V AC", UNIT_VOLTAGE, 6.3},
+        {"0.3 A d.c.", UNIT_CURRENT, 0.3},
+        {"310 V~", UNIT_VOLTAGE, 310},
         {"250\xC2\xA0V", UNIT_VOLTAGE, 250},
         {"262.5 volts", UNIT_VOLTAGE, 262.5},
         {"1,5 kV", UNIT_VOLTAGE, 1500},
@@ -198,6 +203,7 @@ static void texts_are_refused(void **state)
         {"", UNIT_VOLTAGE, QUANTITY_UNREADABLE, NULL},
         {"   ", UNIT_VOLTAGE, QUANTITY_UNREADABLE, NULL},
         {"V", UNIT_VOLTAGE, QUANTITY_UNREADABLE, NULL},
+        {"5 ohm a.c.", UNIT_RESISTANCE, QUANTITY_UNREADABLE, NULL},
         {"-", UNIT_VOLTAGE, QUANTITY_UNREADABLE, NULL},
         {"over", UNIT_VOLTAGE, QUANTITY_UNREADABLE, NULL},
         {"400 X", UNIT_VOLTAGE, QUANTITY_UNREADABLE, NULL},
@@ -352,6 +358,37 @@ static void values_are_correctly_rounded(void **state)
     arena_release(&arena);
 }
 
+/* Any decimal figure, against the C library's own conversion in the C locale. */
+static void values_agree_with_the_c_library(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *prefix;
+        int power;
+    } prefixes[] = {{"p", -12}, {"n", -9}, {"u", -6}, {"", 0}};
+    struct arena arena = {0};
+    unsigned long long seed = 1936;
+    for (int round = 0; round < 40000; round++) {
+        char whole[16] = "", decimals[16] = "", text[64], plain[64];
+        seed = seed * 6364136223846793005ull + 1442695040888963407ull;
+        size_t which = seed >> 62;
+        snprintf(whole, sizeof whole, "%llu", (seed >> 20) % 10000000);
+        snprintf(decimals, sizeof decimals, "%.*llu", 1 + (int)(seed >> 58) % 12, seed % 100000);
+        snprintf(text, sizeof text, "%s%s%s %sF", whole, round & 1 ? "." : ",", decimals,
+                 prefixes[which].prefix);
+        snprintf(plain, sizeof plain, "%s.%se%d", whole, decimals, prefixes[which].power);
+        struct quantity quantity = {0};
+        enum quantity_status status = read_as(&arena, text, UNIT_CAPACITANCE, &quantity);
+        if (status == QUANTITY_COMMA && strlen(decimals) == 3 && !(round & 1))
+            continue;
+        assert_int_equal(status, QUANTITY_OK);
+        if (quantity.value != strtod(plain, NULL))
+            print_error("'%s' is %.17g\n", text, quantity.value);
+        assert_true(quantity.value == strtod(plain, NULL));
+    }
+    arena_release(&arena);
+}
+
 static void the_locale_changes_nothing(void **state)
 {
     (void)state;
@@ -472,6 +509,7 @@ int main(void)
         cmocka_unit_test(old_microfarads_are_told),
         cmocka_unit_test(bounds_and_optional_units),
         cmocka_unit_test(values_are_correctly_rounded),
+        cmocka_unit_test(values_agree_with_the_c_library),
         cmocka_unit_test(the_locale_changes_nothing),
         cmocka_unit_test(every_prefix_is_safe),
         cmocka_unit_test(tokens),
