@@ -350,9 +350,3 @@ bool place_is_isolator(enum place place)
     return place == PLACE_AERIAL_ISOLATOR || place == PLACE_EARTH_ISOLATOR ||
            place == PLACE_GRAM_ISOLATOR || place == PLACE_CHASSIS_ISOLATOR;
 }
-
-bool place_is_mains(enum place place)
-{
-    return place == PLACE_ACROSS_MAINS || place == PLACE_MAINS_TO_CHASSIS ||
-           place_is_isolator(place);
-}

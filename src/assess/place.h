@@ -9,6 +9,7 @@
 #define ASSESS_PLACE_H
 
 #include "assess/stage.h"
+#include "job/place_needs.h"
 #include "reference/leakage_rule.h"
 
 enum { PLACE_VALUES_MAX = 10 };
@@ -93,8 +94,7 @@ struct place_limit place_find_limit(const struct place_case *place);
 /* The same limit holds for both: same place, same facts. */
 bool place_same_limit(const struct place_case *a, const struct place_case *b);
 
-/* A part that no reading can pass unless it bears a class: it sits at the mains. */
-bool place_is_mains(enum place place);
+/* Metal that people touch, tied to the mains through the part. */
 bool place_is_isolator(enum place place);
 
 #endif

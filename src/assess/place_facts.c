@@ -4,6 +4,7 @@
 
 #include "assess/heat.h"
 #include "assess/temperature.h"
+#include "job/place_needs.h"
 
 #include <math.h>
 #include <string.h>
@@ -34,58 +35,18 @@ static double rating_of(const struct job *job, const struct resistance *resistan
     return given_or_nan(&job->resistors[resistance->resistor].marked.rated);
 }
 
-/* ---- what the table of places asks for */
-
-enum {
-    NEEDS_STAGE = 1,
-    NEEDS_SOURCE = 2,
-    NEEDS_FEED = 4,
-    NEEDS_CURRENT = 8,
-    NEEDS_CIRCUIT = 16,
-    NEEDS_SHIFT = 32,
-    NEEDS_LINE = 64,
-    NEEDS_PLACE = 128
-};
-
-static const unsigned needs[PLACE_COUNT] = {
-    [PLACE_UNKNOWN] = NEEDS_PLACE,
-    [PLACE_COUPLING] = NEEDS_STAGE | NEEDS_SOURCE,
-    [PLACE_AVC_BYPASS] = NEEDS_LINE | NEEDS_FEED,
-    [PLACE_AVC_FEED] = NEEDS_SOURCE | NEEDS_FEED,
-    [PLACE_SCREEN_BYPASS] = NEEDS_STAGE,
-    [PLACE_DECOUPLING] = NEEDS_FEED | NEEDS_CURRENT,
-    [PLACE_CATHODE_BYPASS] = NEEDS_STAGE,
-    [PLACE_BIAS_BYPASS] = NEEDS_STAGE | NEEDS_FEED,
-    [PLACE_RESERVOIR] = NEEDS_CURRENT,
-    [PLACE_SMOOTHING] = NEEDS_CURRENT,
-    [PLACE_TONE] = NEEDS_STAGE,
-    [PLACE_DETECTOR] = NEEDS_FEED,
-    [PLACE_TUNING] = NEEDS_CIRCUIT,
-    [PLACE_BATTERY_BYPASS] = NEEDS_CURRENT,
-    [PLACE_OTHER] = NEEDS_FEED | NEEDS_SHIFT,
-};
-
+/* The key that is missing: not given, or a ref that gives no figure. */
 static const char *missing_fact(const struct place_case *place)
 {
     const struct capacitor *part = place->part;
-    unsigned need = needs[part->place];
-    if (need & NEEDS_PLACE)
-        return "place";
-    if ((need & NEEDS_STAGE) && part->stage_count == 0)
-        return "stage";
-    if ((need & NEEDS_SOURCE) && !part->source_volts.set)
-        return "source";
-    if ((need & NEEDS_LINE) && !part->line)
-        return "line";
-    if ((need & NEEDS_FEED) && isnan(place->feed_ohm))
+    const char *key = place_missing_key(place->job, part);
+    if (key)
+        return key;
+    if (part->feed.set && isnan(place->feed_ohm))
         return "feed";
-    if ((need & NEEDS_CURRENT) && !(place->current_a > 0))
-        return "current";
-    if ((need & NEEDS_CIRCUIT) && isnan(place->circuit_ohm))
-        return "circuit";
-    if ((need & NEEDS_SHIFT) && !part->shift.set)
-        return "shift";
-    return NULL;
+    bool carries = part->place == PLACE_RESERVOIR || part->place == PLACE_SMOOTHING ||
+                   part->place == PLACE_BATTERY_BYPASS;
+    return carries && !(place->current_a > 0) ? "current" : NULL;
 }
 
 /* ---- the stage that it sits in */
