@@ -417,6 +417,7 @@ static const struct field can_fields[] = {
      .kind = FIELD_CHOICE,
      .offset = IN_CAN(done),
      .choices = action_choices,
+     .start = START_BLANK,
      .text = "what was done; without it the can is open",
      .example = "reformed"},
     {.key = "fitted",

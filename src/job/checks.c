@@ -25,12 +25,12 @@ void quantity_check(struct reader *reader, const struct quantity *quantity, cons
         break;
     case LIMIT_NOT_NEGATIVE:
         bad = quantity->value < 0;
-        must = "not negative";
+        must = "zero or more";
         break;
     }
     if (bad)
         reader_tell(reader, quantity->at, DIAGNOSTIC_VALUE_IMPOSSIBLE, NULL,
-                    "'%s' is impossible: %s is %s", quantity->written, what, must);
+                    "'%s' is impossible: %s must be %s", quantity->written, what, must);
 }
 
 void quantity_check_range(struct reader *reader, const struct quantity *quantity,

@@ -46,7 +46,8 @@ bool reader_line(struct reader *reader, const char *key, const struct node *node
 {
     if (node->kind != NODE_SCALAR) {
         reader_tell(reader, node->at, DIAGNOSTIC_WRONG_SHAPE,
-                    arena_print(reader->arena, "write it so: %s: value", key),
+                    node->style == STYLE_FLOW ? "a value that begins with [ or { stands in quotes"
+                                              : "write it behind the key, on the same line",
                     "'%s' takes one value, no %s", key,
                     node->kind == NODE_MAPPING ? "keys of its own" : "list");
         return false;
@@ -126,7 +127,7 @@ static int choice_read(struct reader *reader, const struct field *field, const s
     reader_tell(reader, line->at, DIAGNOSTIC_UNKNOWN_CHOICE,
                 near && *near ? arena_print(reader->arena, "nearest: %s", near)
                               : arena_print(reader->arena, "one of: %s", list),
-                "'%s' is no %s", word, field->key);
+                "'%s' is no choice for '%s'", word, field->key);
     return -1;
 }
 
@@ -488,11 +489,11 @@ const char *field_value_text(const struct field *field)
     case FIELD_LINES:
         return "list of lines";
     case FIELD_FREE:
-        return "keys of your own";
+        return "keys of your own, each with text";
     case FIELD_RECORD:
-        return "keys";
+        return "keys of its own";
     case FIELD_TABLE:
-        return "keyed records";
+        return "keyed, one below the other";
     case FIELD_LIST:
         return "list of records";
     }

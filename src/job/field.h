@@ -72,7 +72,7 @@ struct field {
     enum field_limit limit;
     double min, max;
     bool required;
-    bool chassis;           /* a fact of this kind of chassis: `start --like` keeps it */
+    bool chassis;           /* a fact of the chassis or the bench: `start --like` keeps it */
     bool choices_are_hints; /* the schema must not refuse other values */
     enum field_start start;
     const char *text;    /* for manual and schema: what it is, in a few words */

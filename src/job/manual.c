@@ -50,6 +50,8 @@ static void value_text(struct buffer *out, const struct field *field)
     bool first = true;
     if (!field->choices) {
         buffer_text(out, field_value_text(field));
+        if (field->record)
+            buffer_print(out, ": see %s", field->record->section);
         return;
     }
     buffer_text(out, "one of: ");
@@ -98,9 +100,12 @@ static void field_plain(struct buffer *out, const struct field *field)
 {
     struct buffer text = {0};
     struct wrap wrap = {out, KEY_WIDTH, 0};
-    buffer_print(out, "  %-*s", KEY_WIDTH - 3, field->key);
-    wrap.column = KEY_WIDTH;
-    buffer_byte(out, ' ');
+    bool is_long = strlen(field->key) > KEY_WIDTH - 3;
+    if (is_long)
+        buffer_print(out, "  %s\n", field->key);
+    else
+        buffer_print(out, "  %-*s", KEY_WIDTH - 2, field->key);
+    wrap.column = is_long ? 0 : KEY_WIDTH;
     buffer_print(&text, "%s%s", field->text, field->required ? " (required)" : "");
     wrap_words(&wrap, buffer_string(&text));
     wrap_end(&wrap);

@@ -388,6 +388,8 @@ static void accent_read(struct reader *reader, const struct field *field, const 
     *(const char **)(void *)((char *)record + field->offset) = colour;
 }
 
+static const char usual_accent[] = "#1b4b6b", usual_accent_dark[] = "#8fc3e6";
+
 static const char *const page_choices[] = {"A4", "Letter", NULL};
 
 static const struct field shop_fields[] = {
@@ -460,8 +462,10 @@ const struct record shop_record = {
 
 struct shop shop_default(void)
 {
-    return (struct shop){
-        .page = PAGE_A4, .accent = "#1b4b6b", .accent_dark = "#8fc3e6", .policy = usual_policy};
+    return (struct shop){.page = PAGE_A4,
+                         .accent = usual_accent,
+                         .accent_dark = usual_accent_dark,
+                         .policy = usual_policy};
 }
 
 /* `accent: #1b4b6b` is an empty value and a comment. */
@@ -472,7 +476,8 @@ static void tell_empty_colours(struct reader *reader)
         const struct node *node = node_child(reader->root, keys[i]);
         if (node && node_is_empty(node) && !node->damaged)
             reader_tell(reader, node->key_at, DIAGNOSTIC_TEXT_CUT,
-                        arena_print(reader->arena, "write it so: %s: '#1b4b6b'", keys[i]),
+                        arena_print(reader->arena, "write it so: %s: '%s'", keys[i],
+                                    i == 0 ? usual_accent : usual_accent_dark),
                         "'%s' is empty: a # begins a comment", keys[i]);
     }
 }

@@ -12,6 +12,7 @@ struct draft {
     struct buffer *out;
     unsigned indent;
     bool comment;
+    bool bare; /* among parts that are kept: blank keys without a comment, which one has read */
 };
 
 static void line_begin(const struct draft *draft)
@@ -43,7 +44,7 @@ static void blank_write(const struct draft *draft, const struct field *field)
         buffer_print(&text, "%s", field->text);
     }
     size_t width = draft->out->length - start;
-    if (text.length <= COMMENT_WIDTH - COMMENT_COLUMN)
+    if (!draft->bare && text.length <= COMMENT_WIDTH - COMMENT_COLUMN)
         buffer_print(draft->out, "%*s# %s",
                      width < COMMENT_COLUMN ? (int)(COMMENT_COLUMN - width) : 2, "",
                      buffer_string(&text));
@@ -199,6 +200,7 @@ static void table_write(struct draft draft, const struct field *field, const str
         buffer_text(draft.out, ":\n");
         struct draft below = draft;
         below.indent += 2;
+        below.bare = true;
         record_write(below, field->record, child);
     }
 }
@@ -246,7 +248,7 @@ void start_write(struct buffer *buffer, const struct start *start, struct arena 
                  struct diagnostics *diagnostics)
 {
     const struct node *like = start->like ? yaml_tree_read(start->like, arena, diagnostics) : NULL;
-    struct draft draft = {buffer, 0, false};
+    struct draft draft = {.out = buffer};
     for (size_t i = 0; i < job_record.field_count; i++) {
         const struct field *field = &job_record.fields[i];
         if (strcmp(field->key, "job") == 0)

@@ -186,8 +186,10 @@ static bool bites_at_start(struct arena *arena, const struct cut_line *line, str
     case '-':
         if (second >= line->value_end || *second != ' ')
             return false;
-        bite->text = "a space after the minus sign makes it a list";
-        bite->hint = with_value(arena, line, "-", after_spaces(second, line->value_end));
+        bite->text = line->has_key ? "a space after the minus sign makes it a list"
+                                   : "two dashes make a list in a list";
+        bite->hint = with_value(arena, line, line->has_key ? "-" : "",
+                                after_spaces(second, line->value_end));
         return true;
     case '&':
     case '*':

@@ -82,13 +82,14 @@ static enum comment_place comment_behind(struct parse *parse, yaml_mark_t mark)
 /* ---- nodes ---- */
 
 static bool refuse_marks(struct parse *parse, const yaml_char_t *anchor, const yaml_char_t *tag,
-                         struct position at)
+                         struct position at, bool of_scalar)
 {
     if (!anchor && !tag)
         return false;
     diagnostic_add(&parse->told, parse->source, at,
                    anchor ? DIAGNOSTIC_YAML_ALIAS : DIAGNOSTIC_YAML_TAG,
-                   yaml_quoted_line_hint(parse->arena, parse->source, at.line),
+                   of_scalar ? yaml_quoted_line_hint(parse->arena, parse->source, at.line)
+                             : "write the keys out wherever they are needed",
                    anchor ? "'&' begins an anchor, which a job file has no use for"
                           : "'!' begins a tag, which a job file has no use for");
     return true;
@@ -108,7 +109,7 @@ static struct node *node_of_key(struct parse *parse, const yaml_event_t *event)
         return NULL;
     }
     struct node *node = arena_get(parse->arena, sizeof *node);
-    refuse_marks(parse, event->data.scalar.anchor, event->data.scalar.tag, at);
+    refuse_marks(parse, event->data.scalar.anchor, event->data.scalar.tag, at, true);
     node->key =
         arena_text(parse->arena, (const char *)event->data.scalar.value, event->data.scalar.length);
     node->key_at = node->at = at;
@@ -182,8 +183,7 @@ static bool take_scalar(struct parse *parse, const yaml_event_t *event)
     if (node->style == STYLE_QUOTED)
         node->at.column++;
     node->damaged =
-        refuse_marks(parse, event->data.scalar.anchor,
-                     plain || event->data.scalar.tag ? event->data.scalar.tag : NULL, node->at);
+        refuse_marks(parse, event->data.scalar.anchor, event->data.scalar.tag, node->at, true);
     node->end_line = (unsigned)event->end_mark.line + 2;
     if (event->data.scalar.length > JOB_PROSE_BYTES_MAX) {
         diagnostic_add(&parse->told, parse->source, node->at, DIAGNOSTIC_TEXT_TOO_LONG, NULL,
@@ -214,11 +214,13 @@ static bool take_start(struct parse *parse, const yaml_event_t *event)
     if (mapping) {
         node->style =
             event->data.mapping_start.style == YAML_FLOW_MAPPING_STYLE ? STYLE_FLOW : STYLE_PLAIN;
-        refuse_marks(parse, event->data.mapping_start.anchor, event->data.mapping_start.tag, at);
+        refuse_marks(parse, event->data.mapping_start.anchor, event->data.mapping_start.tag, at,
+                     false);
     } else {
         node->style =
             event->data.sequence_start.style == YAML_FLOW_SEQUENCE_STYLE ? STYLE_FLOW : STYLE_PLAIN;
-        refuse_marks(parse, event->data.sequence_start.anchor, event->data.sequence_start.tag, at);
+        refuse_marks(parse, event->data.sequence_start.anchor, event->data.sequence_start.tag, at,
+                     false);
     }
     parse->open[parse->depth++] = node;
     parse->newest[parse->depth] = NULL;
