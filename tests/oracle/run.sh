@@ -5,7 +5,7 @@ build=$1
 here=$(dirname "$0")
 work=$build/oracle
 command -v ngspice >/dev/null || { echo "ngspice is not installed" >&2; exit 1; }
-objects="$build/src/assess/stage_solver.o $build/src/assess/valve_law.o
+objects="$build/src/assess/stage_solver.o $build/src/assess/stage_nodes.o $build/src/assess/valve_law.o
     $build/src/reference/valve_book.o $build/src/reference/source.o"
 make -s BUILD="$build" $objects
 rm -rf "$work"

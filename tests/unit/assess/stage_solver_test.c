@@ -422,20 +422,66 @@ static void twenty_thousand_random_stages(void **state)
     assert_true(conducting > 8000); /* the draw is of stages, not of dead ones */
 }
 
-/* The same with up to four stages that share resistors at random. */
-static void five_hundred_random_networks(void **state)
+/* Kirchhoff's law at a resistor that stages share: current through it and what they draw. */
+static void check_shared(const struct stage_circuit *c, const struct stage_solution *s,
+                         size_t count)
+{
+    for (int node = 0; node < 2; node++) {
+        double cathode_a = 0, screen_a = 0, bias_a = 0.01;
+        double cathode_leak_s = 0, screen_leak_s = 0;
+        bool any_shared_screen = false;
+        const struct stage_circuit *cathode = NULL, *screen = NULL, *bias = NULL;
+        double cathode_v = 0, screen_v = 0, bias_v = 0;
+        for (size_t j = 0; j < count; j++) {
+            if (c[j].cathode_node == node) {
+                cathode = cathode ? cathode : &c[j];
+                cathode_v = s[j].cathode_v;
+                cathode_a += s[j].cathode_a;
+                cathode_leak_s = fmax(cathode_leak_s, c[j].cathode_leak_s);
+            }
+            if (c[j].screen_node == node && !c[j].law.triode) {
+                screen = screen ? screen : &c[j];
+                screen_v = s[j].screen_v;
+                screen_a += s[j].screen_a;
+                screen_leak_s = fmax(screen_leak_s, c[j].screen_leak_s);
+            }
+            if (c[j].bias_node == node) {
+                bias = bias ? bias : &c[j];
+                bias_v = c[j].return_v - s[j].return_v;
+                bias_a += s[j].cathode_a + c[j].anode_leak_s * s[j].anode_v;
+                if (!c[j].law.triode)
+                    bias_a += c[j].screen_leak_s * s[j].screen_v;
+                any_shared_screen = any_shared_screen || c[j].screen_node >= 0;
+            }
+        }
+        if (cathode)
+            assert_close(cathode_v, cathode->cathode_ohm * (cathode_a - cathode_leak_s * cathode_v),
+                         1e-7 * (1 + cathode->cathode_ohm * cathode_leak_s));
+        if (screen)
+            assert_close(screen->screen_supply_v - screen_v,
+                         screen->screen_ohm * (screen_a + screen_leak_s * screen_v),
+                         1e-7 * (1 + screen->screen_ohm * screen_leak_s));
+        if (bias && !any_shared_screen) /* whose leak counts once */
+            assert_close(bias_v, bias->bias_ohm * bias_a, 1e-7);
+    }
+}
+
+/* The same with up to six stages that share resistors at random, every one with its root. */
+static void two_thousand_random_networks(void **state)
 {
     (void)state;
     uint64_t seed = 1936;
-    for (int i = 0; i < 500; i++) {
-        struct stage_circuit c[4];
-        struct stage_solution s[4];
-        size_t count = 2 + (size_t)(uniform(&seed) * 3);
+    for (int i = 0; i < 2000; i++) {
+        struct stage_circuit c[6];
+        struct stage_solution s[6];
+        size_t count = 2 + (size_t)(uniform(&seed) * 5);
+        bool with_bias = uniform(&seed) < 0.2, with_screens = !with_bias || uniform(&seed) < 0.5;
         for (size_t j = 0; j < count; j++) {
             c[j] = random_stage(&seed);
             c[j].cathode_node = uniform(&seed) < 0.5 ? (int)(uniform(&seed) * 2) : -1;
-            c[j].screen_node = uniform(&seed) < 0.5 ? 0 : -1;
-            c[j].bias_node = uniform(&seed) < 0.2 ? 0 : -1;
+            c[j].screen_node =
+                with_screens && uniform(&seed) < 0.5 ? (int)(uniform(&seed) * 2) : -1;
+            c[j].bias_node = with_bias ? 0 : -1;
             c[j].bias_ohm = 100;
             c[j].bias_others_a = 0.01;
         }
@@ -444,12 +490,13 @@ static void five_hundred_random_networks(void **state)
             assert_true(isfinite(s[j].anode_a) && isfinite(s[j].cathode_v));
             for (size_t k = 0; k < j; k++) {
                 if (c[j].cathode_node >= 0 && c[j].cathode_node == c[k].cathode_node)
-                    assert_relative(s[j].cathode_v, s[k].cathode_v, 1e-9);
+                    assert_relative(s[j].cathode_v, s[k].cathode_v, 1e-12);
                 if (c[j].bias_node == 0 && c[k].bias_node == 0)
                     assert_close(s[j].return_v - c[j].return_v, s[k].return_v - c[k].return_v,
                                  1e-9);
             }
         }
+        check_shared(c, s, count);
     }
 }
 
@@ -472,7 +519,7 @@ int main(void)
         cmocka_unit_test(shared_dropper),
         cmocka_unit_test(says_where_there_is_no_figure),
         cmocka_unit_test(twenty_thousand_random_stages),
-        cmocka_unit_test(five_hundred_random_networks),
+        cmocka_unit_test(two_thousand_random_networks),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
