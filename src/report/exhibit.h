@@ -86,6 +86,7 @@ struct glance_row {
     const char *outcome;        /* "pass, kept" */
     const char *outcome_narrow; /* "pass" */
     bool strong;
+    bool at_least; /* a bound the other way: arrow to the right */
 };
 struct glance {
     struct glance_row *rows;

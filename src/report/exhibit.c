@@ -1,0 +1,362 @@
+#include "report/composition.h"
+
+#include <stdlib.h>
+#include <string.h>
+
+struct exhibit *exhibit_begin(struct composition *composition, enum exhibit_kind kind,
+                              const char *id)
+{
+    struct exhibit *exhibit = arena_get(composition->arena, sizeof *exhibit);
+    exhibit->kind = kind;
+    exhibit->id = arena_copy(composition->arena, id);
+    return exhibit;
+}
+
+const char *exhibit_number(struct composition *composition, enum numbered kind)
+{
+    static const char *const names[NUMBERED_COUNT] = {"table", "figure", "plate", "sheet"};
+    unsigned number = ++composition->numbers[kind];
+    return phrase(&composition->say, arena_print(composition->arena, "number.%s", names[kind]), "n",
+                  arena_print(composition->arena, "%u", number), NULL);
+}
+
+void exhibit_place(struct composition *composition, const struct exhibit *exhibit)
+{
+    composition->pieces =
+        arena_grow(composition->arena, composition->pieces, composition->piece_count,
+                   &composition->piece_capacity, sizeof *composition->pieces);
+    composition->pieces[composition->piece_count++] =
+        (struct piece){.offset = composition->text->length, .exhibit = exhibit};
+}
+
+/* ---- tables */
+
+struct table_builder table_begin(struct composition *composition, const char *id,
+                                 const struct column_plan *plan, size_t columns)
+{
+    const struct phrasing *say = &composition->say;
+    struct exhibit *exhibit = exhibit_begin(composition, EXHIBIT_TABLE, id);
+    struct table *table = &exhibit->table;
+    table->column_count = columns;
+    table->columns = arena_array(composition->arena, columns, sizeof *table->columns);
+    for (size_t i = 0; i < columns; i++)
+        table->columns[i] = (struct column){
+            .head = plan[i].head ? phrase_in(say, "head", plan[i].head) : "",
+            .unit = plan[i].unit,
+            .label = plan[i].label ? phrase_in(say, "label", plan[i].label) : NULL,
+            .kind = plan[i].kind,
+            .width_percent = plan[i].width_percent,
+            .rank = plan[i].rank,
+        };
+    return (struct table_builder){.composition = composition, .exhibit = exhibit, .table = table};
+}
+
+static struct table_row *new_row(struct table_builder *builder)
+{
+    struct table *table = builder->table;
+    struct arena *arena = builder->composition->arena;
+    table->rows = arena_grow(arena, table->rows, table->row_count, &builder->row_capacity,
+                             sizeof *table->rows);
+    struct table_row *row = &table->rows[table->row_count++];
+    row->group = false;
+    row->cells = arena_array(arena, table->column_count, sizeof *row->cells);
+    return row;
+}
+
+struct cell *table_row(struct table_builder *builder)
+{
+    return new_row(builder)->cells;
+}
+
+void table_group(struct table_builder *builder, const char *text)
+{
+    struct table_row *row = new_row(builder);
+    row->group = true;
+    row->cells[0].text = text;
+}
+
+static size_t note_index(struct table_builder *builder, const char *text)
+{
+    struct table *table = builder->table;
+    for (size_t i = 0; i < table->note_count; i++)
+        if (strcmp(table->notes[i], text) == 0)
+            return i;
+    table->notes = arena_grow(builder->composition->arena, table->notes, table->note_count,
+                              &builder->note_capacity, sizeof *table->notes);
+    table->notes[table->note_count] = text;
+    return table->note_count++;
+}
+
+void table_note(struct table_builder *builder, struct cell *cell, const char *text)
+{
+    if (!text || !*text)
+        return;
+    size_t number = note_index(builder, text) + 1;
+    cell->notes = cell->notes
+                      ? arena_print(builder->composition->arena, "%s %zu", cell->notes, number)
+                      : arena_print(builder->composition->arena, "%zu", number);
+}
+
+void table_place(struct table_builder *builder, enum numbered kind, const char *caption)
+{
+    if (builder->table->row_count == 0)
+        return;
+    builder->table->caption = caption;
+    builder->exhibit->number = exhibit_number(builder->composition, kind);
+    exhibit_place(builder->composition, builder->exhibit);
+}
+
+/* ---- numbers */
+
+double round_figures(double value, unsigned digits, bool up)
+{
+    if (value == 0 || !isfinite(value))
+        return value;
+    double step = pow(10, floor(log10(fabs(value))) + 1 - digits);
+    /* 770 divided by 10 may be a hair above 77: not yet the next figure. */
+    double steps = fabs(value) / step;
+    steps = up ? ceil(steps - 1e-9) : round(steps);
+    return copysign(steps * step, value);
+}
+
+struct figures figures_plain(const struct composition *composition, double value, double scale,
+                             unsigned decimals)
+{
+    if (!isfinite(value))
+        return (struct figures){0};
+    return figures_scaled(composition->arena, value, scale, "", decimals);
+}
+
+struct figures figures_micro(const struct composition *composition, double ampere, unsigned digits)
+{
+    double value = round_figures(ampere, digits, false);
+    return figures_plain(composition, value, 1e-6,
+                         isfinite(value) ? decimals_for(value, 1e-6, digits) : 0);
+}
+
+struct figures figures_unit(const struct composition *composition, double value, enum unit unit,
+                            unsigned digits)
+{
+    if (!isfinite(value))
+        return (struct figures){0};
+    return figures_of(composition->arena, value, unit, digits);
+}
+
+const char *text_unit(const struct composition *composition, double value, enum unit unit,
+                      unsigned digits)
+{
+    return isfinite(value) ? quantity_text(composition->arena, value, unit, digits) : NULL;
+}
+
+const char *text_signed(struct arena *arena, double value, enum unit unit, unsigned digits)
+{
+    const char *text = quantity_text(arena, value, unit, digits);
+    return value > 0 ? arena_print(arena, "+%s", text) : text;
+}
+
+/* As many figures as it takes to show what was typed: 0.02, 0.047, 12.5. */
+static unsigned digits_typed(double value)
+{
+    enum { DIGITS_MAX = 6 };
+    unsigned digits = 1;
+    while (digits < DIGITS_MAX &&
+           fabs(round_figures(value, digits, false) - value) > 1e-9 * fabs(value))
+        digits++;
+    return digits;
+}
+
+struct figures figures_quantity(const struct composition *composition,
+                                const struct quantity *quantity)
+{
+    if (!quantity->set || !isfinite(quantity->value))
+        return (struct figures){0};
+    struct figures figures = figures_of(composition->arena, quantity->value, quantity->unit,
+                                        digits_typed(quantity->value));
+    if (quantity->bound != BOUND_NONE)
+        figures.bound = quantity->bound == BOUND_OVER ? ">" : "<";
+    return figures;
+}
+
+const char *text_quantity(const struct composition *composition, const struct quantity *quantity)
+{
+    struct figures figures = figures_quantity(composition, quantity);
+    return figures.whole ? figures_text(composition->arena, &figures) : NULL;
+}
+
+/* ---- text */
+
+const char *text_join(struct arena *arena, const char *separator, const char *const *texts,
+                      size_t count)
+{
+    struct buffer joined = {0};
+    for (size_t i = 0; i < count; i++) {
+        if (!texts[i] || !*texts[i])
+            continue;
+        if (joined.length)
+            buffer_text(&joined, separator);
+        buffer_text(&joined, texts[i]);
+    }
+    const char *text = joined.length ? arena_text(arena, joined.data, joined.length) : NULL;
+    buffer_release(&joined);
+    return text;
+}
+
+const char *text_sentence(struct arena *arena, const char *text)
+{
+    char *copy = arena_copy(arena, text);
+    if (copy && copy[0] >= 'a' && copy[0] <= 'z')
+        copy[0] = (char)(copy[0] - 'a' + 'A');
+    return copy;
+}
+
+static const char *class_text(const struct composition *composition, const struct marking *marking)
+{
+    if (marking->safety_class == CLASS_NONE)
+        return NULL;
+    const char *key = marking->class_count == 2 ? "part.two_classes" : "part.class";
+    return phrase(&composition->say, key, "class", safety_class_text(marking->safety_class), NULL);
+}
+
+static const char *rated_text(const struct composition *composition, const struct marking *marking)
+{
+    const char *rated = text_quantity(composition, &marking->rated);
+    return rated && marking->rated_ac ? phrase(&composition->say, "part.ac", "volts", rated, NULL)
+                                      : rated;
+}
+
+const char *text_marking(const struct composition *composition, const struct marking *marking)
+{
+    if (!marking->set)
+        return NULL;
+    if (!marking->value.set)
+        return marking->written;
+    const char *parts[] = {
+        marking->type == DIELECTRIC_UNKNOWN
+            ? NULL
+            : phrase_in(&composition->say, "type", dielectric_text(marking->type)),
+        marking->other_words,
+        class_text(composition, marking),
+        text_quantity(composition, &marking->value),
+        rated_text(composition, marking),
+    };
+    return text_join(composition->arena, " ", parts, sizeof parts / sizeof *parts);
+}
+
+const char *date_text(const struct date *date)
+{
+    return date->set ? date->written : NULL;
+}
+
+/* ---- parts */
+
+enum mark mark_of(enum outcome outcome)
+{
+    switch (outcome) {
+    case OUTCOME_PASS:
+        return MARK_PASS;
+    case OUTCOME_CONDITIONAL_PASS:
+        return MARK_CONDITIONAL_PASS;
+    case OUTCOME_NOT_JUDGED:
+        return MARK_NOT_JUDGED;
+    case OUTCOME_CONDITIONAL_FAIL:
+        return MARK_CONDITIONAL_FAIL;
+    case OUTCOME_FAIL:
+        return MARK_FAIL;
+    case OUTCOME_COUNT:
+        break;
+    }
+    return MARK_NONE;
+}
+
+static unsigned place_rank(enum place place)
+{
+    return place == PLACE_UNKNOWN ? PLACE_COUNT : (unsigned)place;
+}
+
+const size_t *capacitors_by_place(const struct composition *composition)
+{
+    size_t count = composition->findings->capacitor_count, found = 0;
+    size_t *order = arena_array(composition->arena, count + 1, sizeof *order);
+    for (unsigned rank = 0; rank <= PLACE_COUNT; rank++)
+        for (size_t i = 0; i < count; i++)
+            if (place_rank(composition->findings->capacitors[i].part->place) == rank)
+                order[found++] = i;
+    return order;
+}
+
+static const struct can *can_of(const struct composition *composition, size_t index)
+{
+    int can = composition->findings->capacitors[index].part->can;
+    return can == NOT_LISTED ? NULL : &composition->job->cans[can];
+}
+
+enum action capacitor_done(const struct composition *composition, size_t index)
+{
+    const struct can *can = can_of(composition, index);
+    enum action own = composition->findings->capacitors[index].part->done;
+    return can && own == DONE_OPEN ? can->done : own;
+}
+
+enum origin capacitor_was(const struct composition *composition, size_t index)
+{
+    const struct can *can = can_of(composition, index);
+    return can ? can->was : composition->findings->capacitors[index].part->was;
+}
+
+const struct instrument *reading_instrument(const struct job *job, const struct reading *reading)
+{
+    return reading->instrument >= 0 && (size_t)reading->instrument < job->instrument_count
+               ? &job->instruments[reading->instrument]
+               : NULL;
+}
+
+double reading_current(const struct reading *reading)
+{
+    if (!reading->value.set)
+        return NAN;
+    if (reading->value.unit == UNIT_RESISTANCE)
+        return reading->value.value > 0 ? reading->set_volts.value / reading->value.value : NAN;
+    return reading->value.value;
+}
+
+/* ---- exhibits without content of their own */
+
+void exhibit_contents(struct composition *composition, size_t index)
+{
+    (void)index;
+    exhibit_place(composition, exhibit_begin(composition, EXHIBIT_CONTENTS, "contents"));
+}
+
+static void place_silent(struct composition *composition, enum exhibit_kind kind, const char *name)
+{
+    const char *id = arena_print(composition->arena, "%s-%zu", name, composition->piece_count + 1);
+    exhibit_place(composition, exhibit_begin(composition, kind, id));
+}
+
+void exhibit_page_break(struct composition *composition, size_t index)
+{
+    (void)index;
+    place_silent(composition, EXHIBIT_PAGE_BREAK, "page-break");
+}
+
+void exhibit_small(struct composition *composition, size_t index)
+{
+    (void)index;
+    place_silent(composition, EXHIBIT_SMALL, "small");
+}
+
+void exhibit_two_columns(struct composition *composition, size_t index)
+{
+    (void)index;
+    place_silent(composition, EXHIBIT_CAUTIONS, "two-columns");
+}
+
+void exhibit_fingerprint(struct composition *composition, size_t index)
+{
+    (void)index;
+    if (!composition->findings->fingerprint)
+        return;
+    struct exhibit *exhibit = exhibit_begin(composition, EXHIBIT_FINGERPRINT, "sha-256");
+    exhibit->fingerprint.text = composition->findings->fingerprint;
+    exhibit_place(composition, exhibit);
+}

@@ -1,0 +1,145 @@
+/* The leakage table: every capacitor by its place, against its own limit. */
+#include "report/leakage_notes.h"
+#include "report/phrases.h"
+
+enum {
+    COLUMN_OF_REF,
+    COLUMN_OF_MARKED,
+    COLUMN_OF_VOLTS,
+    COLUMN_OF_SOAK,
+    COLUMN_OF_LEAKAGE,
+    COLUMN_OF_LIMIT,
+    COLUMN_OF_EFFECT,
+    COLUMN_OF_OUTCOME,
+    COLUMN_OF_DONE,
+    LEAKAGE_COLUMNS
+};
+
+static const struct column_plan plan[LEAKAGE_COLUMNS] = {
+    [COLUMN_OF_REF] = {"ref", NULL, NULL, COLUMN_REF, 6.2, 1},
+    [COLUMN_OF_MARKED] = {"marked", NULL, "marked", COLUMN_NUMBER, 15.3, 2},
+    [COLUMN_OF_VOLTS] = {"tested_at", NULL, "tested_at", COLUMN_NUMBER, 6.8, 2},
+    [COLUMN_OF_SOAK] = {"soak", NULL, "soak", COLUMN_NUMBER, 7.8, 2},
+    [COLUMN_OF_LEAKAGE] = {"leakage", "µA", NULL, COLUMN_NUMBER, 8.4, 1},
+    [COLUMN_OF_LIMIT] = {"limit", "µA", NULL, COLUMN_NUMBER, 8.8, 1},
+    [COLUMN_OF_EFFECT] = {"effect", NULL, NULL, COLUMN_TEXT, 20.2, 3},
+    [COLUMN_OF_OUTCOME] = {"outcome", NULL, NULL, COLUMN_OUTCOME, 15.6, 1},
+    [COLUMN_OF_DONE] = {"done", NULL, NULL, COLUMN_TEXT, 10.9, 3},
+};
+
+static void set_marked(const struct composition *composition, struct cell *cell,
+                       const struct marking *marked)
+{
+    if (marked->value.set)
+        cell->figures = figures_quantity(composition, &marked->value);
+    else
+        cell->text = marked->written;
+    if (marked->rated.set)
+        cell->second_figures = figures_quantity(composition, &marked->rated);
+}
+
+/* Three figures, but none finer than the instrument shows. */
+static struct figures leakage_figures(const struct composition *composition,
+                                      const struct capacitor_findings *part)
+{
+    double value = round_figures(part->test_leakage_a, 3, false);
+    if (!isfinite(value))
+        return (struct figures){0};
+    unsigned decimals = decimals_for(value, 1e-6, 3);
+    const struct instrument *instrument =
+        part->deciding < 0
+            ? NULL
+            : reading_instrument(composition->job, part->readings[part->deciding].reading);
+    if (instrument && instrument->resolution.set && instrument->resolution.unit == UNIT_CURRENT &&
+        instrument->resolution.value > 0) {
+        unsigned finest = decimals_for(instrument->resolution.value, 1e-6, 1);
+        decimals = decimals < finest ? decimals : finest;
+    }
+    struct figures figures = figures_plain(composition, value, 1e-6, decimals);
+    if (part->test_bound != BOUND_NONE)
+        figures.bound = part->test_bound == BOUND_UNDER ? "<" : ">";
+    return figures;
+}
+
+static const char *effect_cell_text(const struct composition *composition,
+                                    const struct capacitor_findings *part)
+{
+    if (part->effect_count == 0)
+        return part->no_reading_passes
+                   ? phrase_in(&composition->say, "short", place_text(part->part->place))
+                   : NULL;
+    const char **texts = arena_array(composition->arena, part->effect_count, sizeof *texts);
+    for (size_t i = 0; i < part->effect_count; i++)
+        texts[i] = part->effects[i].text;
+    return text_join(composition->arena, "; ", texts, part->effect_count);
+}
+
+static const char *reason_under(const struct composition *composition,
+                                const struct capacitor_findings *part)
+{
+    if (part->outcome == OUTCOME_PASS || part->why == WHY_NONE)
+        return NULL;
+    return phrase_in(&composition->say, "reason", reason_text(part->why));
+}
+
+static void set_reading(const struct composition *composition, struct cell *cells,
+                        const struct capacitor_findings *part)
+{
+    if (part->deciding < 0)
+        return;
+    cells[COLUMN_OF_VOLTS].figures = figures_unit(composition, part->test_v, UNIT_VOLTAGE, 3);
+    cells[COLUMN_OF_SOAK].figures = figures_unit(composition, part->test_s, UNIT_TIME, 2);
+    cells[COLUMN_OF_LEAKAGE].figures = leakage_figures(composition, part);
+    cells[COLUMN_OF_LIMIT].figures = figures_micro(composition, part->test_limit_a, 2);
+    cells[COLUMN_OF_LEAKAGE].strong = part->outcome == OUTCOME_FAIL && !part->no_reading_passes;
+}
+
+static void add_part(struct table_builder *builder, size_t index)
+{
+    const struct composition *composition = builder->composition;
+    const struct capacitor_findings *part = &composition->findings->capacitors[index];
+    enum action done = capacitor_done(composition, index);
+    struct cell *cells = table_row(builder);
+    cells[COLUMN_OF_REF].text = part->part->ref;
+    set_marked(composition, &cells[COLUMN_OF_MARKED], &part->part->marked);
+    set_reading(composition, cells, part);
+    cells[COLUMN_OF_EFFECT].text = effect_cell_text(composition, part);
+    cells[COLUMN_OF_OUTCOME] = (struct cell){
+        .text = phrase_in(&composition->say, "outcome", outcome_text(part->outcome)),
+        .second = reason_under(composition, part),
+        .mark = mark_of(part->outcome),
+        .strong = part->outcome == OUTCOME_FAIL,
+    };
+    cells[COLUMN_OF_DONE].text =
+        phrase_in(&composition->say, "done", done == DONE_OPEN ? "open" : action_text(done));
+    leakage_notes(builder, &cells[COLUMN_OF_REF], index);
+}
+
+static const char *caption(const struct composition *composition)
+{
+    const struct policy *policy = &composition->shop->policy;
+    const char *margin = NULL;
+    for (size_t i = 0; i < composition->findings->capacitor_count && !margin; i++)
+        if (composition->findings->capacitors[i].ageing_margin > 1)
+            margin = quantity_text(composition->arena, policy->ageing_margin_waxed, UNIT_NONE, 2);
+    return phrase(&composition->say, "caption.leakage", "bench",
+                  text_unit(composition, composition->findings->bench_c, UNIT_TEMPERATURE, 2),
+                  "working",
+                  text_unit(composition, composition->findings->working_c, UNIT_TEMPERATURE, 2),
+                  "margin", margin, NULL);
+}
+
+void exhibit_leakage(struct composition *composition, size_t index)
+{
+    (void)index;
+    const struct findings *findings = composition->findings;
+    struct table_builder builder = table_begin(composition, "leakage", plan, LEAKAGE_COLUMNS);
+    const size_t *order = capacitors_by_place(composition);
+    for (size_t i = 0; i < findings->capacitor_count; i++) {
+        enum place place = findings->capacitors[order[i]].part->place;
+        if (i == 0 || findings->capacitors[order[i - 1]].part->place != place)
+            table_group(&builder, phrase_in(&composition->say, "place", place_text(place)));
+        add_part(&builder, order[i]);
+    }
+    table_place(&builder, NUMBERED_TABLE, caption(composition));
+}

@@ -1,0 +1,159 @@
+/* Registers: resistors, windings, switches and controls, valves. */
+#include "report/composition.h"
+
+/* What was done and what is there now, for the last column. */
+static const char *done_text_of(const struct composition *composition, enum action done,
+                                enum origin was)
+{
+    const struct phrasing *say = &composition->say;
+    const char *parts[] = {
+        phrase_in(say, "done", done == DONE_OPEN ? "open" : action_text(done)),
+        was == WAS_ORIGINAL ? NULL : phrase_in(say, "origin", origin_text(was)),
+    };
+    return text_join(composition->arena, "; ", parts, 2);
+}
+
+/* "+12 %": measured against marked; NULL when either is missing or a bound. */
+static const char *change_text(const struct composition *composition,
+                               const struct quantity *measured, const struct quantity *marked)
+{
+    if (!measured->set || measured->bound != BOUND_NONE || !marked->set || marked->value == 0)
+        return NULL;
+    double percent = 100 * (measured->value / marked->value - 1);
+    return text_signed(composition->arena, fabs(percent) < 0.5 ? 0 : percent, UNIT_PERCENT,
+                       fabs(percent) < 10 ? 1 : 2);
+}
+
+static const char *tolerance_text(const struct composition *composition,
+                                  const struct marking *marked)
+{
+    if (!marked->tolerance_set)
+        return NULL;
+    const char *high =
+        quantity_text(composition->arena, marked->tolerance_high_percent, UNIT_PERCENT, 2);
+    if (marked->tolerance_low_percent == -marked->tolerance_high_percent)
+        return arena_print(composition->arena, "±%s", high);
+    return arena_print(
+        composition->arena, "%s/+%s",
+        quantity_text(composition->arena, marked->tolerance_low_percent, UNIT_PERCENT, 2), high);
+}
+
+static bool out_of_tolerance(const struct quantity *measured, const struct marking *marked)
+{
+    if (!measured->set || !marked->value.set || !marked->tolerance_set)
+        return false;
+    double percent = 100 * (measured->value / marked->value.value - 1);
+    return percent > marked->tolerance_high_percent || percent < marked->tolerance_low_percent;
+}
+
+void exhibit_resistors(struct composition *composition, size_t index)
+{
+    (void)index;
+    static const struct column_plan plan[] = {
+        {"ref", NULL, NULL, COLUMN_REF, 9, 1},
+        {"marked", NULL, "marked", COLUMN_NUMBER, 14, 1},
+        {"rating", NULL, "rating", COLUMN_NUMBER, 10, 2},
+        {"tolerance", NULL, "tolerance", COLUMN_TEXT, 11, 2},
+        {"measured", NULL, "measured", COLUMN_NUMBER, 14, 1},
+        {"change", NULL, "change", COLUMN_TEXT, 10, 2},
+        {"done", NULL, NULL, COLUMN_TEXT, 32, 1},
+    };
+    struct table_builder builder =
+        table_begin(composition, "resistors", plan, sizeof plan / sizeof *plan);
+    builder.table->lined = true;
+    for (size_t i = 0; i < composition->job->resistor_count; i++) {
+        const struct resistor *part = &composition->job->resistors[i];
+        bool outside = out_of_tolerance(&part->measured, &part->marked);
+        struct cell *cells = table_row(&builder);
+        cells[0].text = part->ref;
+        cells[1].figures = figures_quantity(composition, &part->marked.value);
+        cells[2].figures = figures_quantity(composition, &part->marked.rated);
+        cells[3].text = tolerance_text(composition, &part->marked);
+        cells[4].figures = figures_quantity(composition, &part->measured);
+        cells[5].text = change_text(composition, &part->measured, &part->marked.value);
+        cells[5].strong = cells[4].strong = outside;
+        cells[6].text = done_text_of(composition, part->done, part->was);
+        if (outside && (part->done == DONE_KEPT || part->done == DONE_OPEN))
+            table_note(&builder, &cells[0],
+                       phrase(&composition->say, "note.resistor_outside", "reason",
+                              part->reason.text, NULL));
+        table_note(&builder, &cells[0], part->note.text);
+    }
+    table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.resistors", NULL));
+}
+
+void exhibit_windings(struct composition *composition, size_t index)
+{
+    (void)index;
+    static const struct column_plan plan[] = {
+        {"ref", NULL, NULL, COLUMN_REF, 12, 1},
+        {"marked", NULL, "marked", COLUMN_NUMBER, 15, 1},
+        {"measured", NULL, "measured", COLUMN_NUMBER, 15, 1},
+        {"insulation", NULL, "insulation", COLUMN_NUMBER, 16, 2},
+        {"done", NULL, NULL, COLUMN_TEXT, 42, 1},
+    };
+    struct table_builder builder =
+        table_begin(composition, "windings", plan, sizeof plan / sizeof *plan);
+    builder.table->lined = true;
+    for (size_t i = 0; i < composition->job->winding_count; i++) {
+        const struct winding *part = &composition->job->windings[i];
+        struct cell *cells = table_row(&builder);
+        cells[0].text = part->ref;
+        cells[1].figures = figures_quantity(composition, &part->marked.value);
+        cells[2].figures = figures_quantity(composition, &part->measured);
+        cells[3].figures = figures_quantity(composition, &part->insulation);
+        cells[4].text = done_text_of(composition, part->done, part->was);
+        const char *warm = text_quantity(composition, &part->temperature);
+        if (warm)
+            table_note(&builder, &cells[2],
+                       phrase(&composition->say, "note.winding_warm", "temperature", warm, NULL));
+        table_note(&builder, &cells[0], part->note.text);
+    }
+    table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.windings", NULL));
+}
+
+void exhibit_controls(struct composition *composition, size_t index)
+{
+    (void)index;
+    static const struct column_plan plan[] = {
+        {"ref", NULL, NULL, COLUMN_REF, 16, 1},
+        {"what", NULL, "what", COLUMN_TEXT, 42, 1},
+        {"done", NULL, "done", COLUMN_TEXT, 42, 1},
+    };
+    struct table_builder builder =
+        table_begin(composition, "controls", plan, sizeof plan / sizeof *plan);
+    builder.table->lined = builder.table->text_only = true;
+    for (size_t i = 0; i < composition->job->control_count; i++) {
+        const struct control *part = &composition->job->controls[i];
+        struct cell *cells = table_row(&builder);
+        cells[0].text = part->ref;
+        cells[1].text = part->what.text;
+        cells[2].text = done_text_of(composition, part->done, part->was);
+    }
+    table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.controls", NULL));
+}
+
+void exhibit_valves(struct composition *composition, size_t index)
+{
+    (void)index;
+    static const struct column_plan plan[] = {
+        {"ref", NULL, NULL, COLUMN_REF, 12, 1},
+        {"valve_type", NULL, "valve_type", COLUMN_TEXT, 18, 1},
+        {"maker", NULL, "maker", COLUMN_TEXT, 20, 1},
+        {"tested", NULL, "tested", COLUMN_TEXT, 22, 1},
+        {"done", NULL, "done", COLUMN_TEXT, 28, 1},
+    };
+    struct table_builder builder =
+        table_begin(composition, "valves", plan, sizeof plan / sizeof *plan);
+    builder.table->lined = builder.table->text_only = true;
+    for (size_t i = 0; i < composition->job->valve_count; i++) {
+        const struct valve *part = &composition->job->valves[i];
+        struct cell *cells = table_row(&builder);
+        cells[0].text = part->ref;
+        cells[1].text = part->type;
+        cells[2].text = part->maker;
+        cells[3].text = part->tested.text;
+        cells[4].text = done_text_of(composition, part->done, part->was);
+    }
+    table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.valves", NULL));
+}

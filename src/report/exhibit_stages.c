@@ -1,0 +1,200 @@
+/* A stage as designed, found and left, beside what the set itself showed. */
+#include "report/composition.h"
+
+enum {
+    STAGE_LABEL,
+    STAGE_UNIT,
+    STAGE_PHASES,
+    STAGE_SET_FOUND = STAGE_PHASES + PHASE_COUNT,
+    STAGE_SET_LEFT,
+    STAGE_RATING,
+    STAGE_COLUMNS
+};
+
+static const struct column_plan plan[STAGE_COLUMNS] = {
+    [STAGE_LABEL] = {NULL, NULL, NULL, COLUMN_TEXT, 22, 1},
+    [STAGE_UNIT] = {NULL, NULL, NULL, COLUMN_TEXT, 6, 1},
+    [STAGE_PHASES + PHASE_DESIGNED] = {"designed", NULL, "designed", COLUMN_NUMBER, 12, 2},
+    [STAGE_PHASES + PHASE_FOUND] = {"found", NULL, "found", COLUMN_NUMBER, 12, 1},
+    [STAGE_PHASES + PHASE_LEFT] = {"left", NULL, "left", COLUMN_NUMBER, 12, 1},
+    [STAGE_SET_FOUND] = {"found_at_the_set", NULL, "found_at_the_set", COLUMN_NUMBER, 12, 2},
+    [STAGE_SET_LEFT] = {"left_at_the_set", NULL, "left_at_the_set", COLUMN_NUMBER, 12, 2},
+    [STAGE_RATING] = {"rating", NULL, "rating", COLUMN_NUMBER, 12, 2},
+};
+
+enum stage_row_kind { ROW_VOLTS, ROW_CURRENT, ROW_POWER };
+
+/* One row: where its figure is in the solution and in what the set showed. */
+static const struct stage_row {
+    const char *key; /* of `stage_row.` */
+    enum stage_row_kind kind;
+    size_t solution; /* offset of the double in struct stage_solution */
+    size_t at_set;   /* offset of the struct quantity in struct stage_reading */
+    bool set_shows;
+} rows[] = {
+    {"grid", ROW_VOLTS, offsetof(struct stage_solution, grid_v),
+     offsetof(struct stage_reading, grid), true},
+    {"cathode", ROW_VOLTS, offsetof(struct stage_solution, cathode_v),
+     offsetof(struct stage_reading, cathode), true},
+    {"anode", ROW_VOLTS, offsetof(struct stage_solution, anode_v),
+     offsetof(struct stage_reading, anode), true},
+    {"screen", ROW_VOLTS, offsetof(struct stage_solution, screen_v),
+     offsetof(struct stage_reading, screen), true},
+    {"anode_current", ROW_CURRENT, offsetof(struct stage_solution, anode_a), 0, false},
+    {"screen_current", ROW_CURRENT, offsetof(struct stage_solution, screen_a), 0, false},
+    {"cathode_current", ROW_CURRENT, offsetof(struct stage_solution, cathode_a), 0, false},
+    {"anode_dissipation", ROW_POWER, offsetof(struct stage_solution, anode_w), 0, false},
+    {"screen_dissipation", ROW_POWER, offsetof(struct stage_solution, screen_w), 0, false},
+};
+enum { ROW_ANODE_DISSIPATION = 7, ROW_SCREEN_DISSIPATION = 8 };
+
+static double solution_value(const struct stage_phase *phase, const struct stage_row *row)
+{
+    if (!phase->judged)
+        return NAN;
+    return *(const double *)(const void *)((const char *)&phase->solution + row->solution);
+}
+
+static const struct quantity *set_value(const struct stage_reading *reading,
+                                        const struct stage_row *row)
+{
+    return (const struct quantity *)(const void *)((const char *)reading + row->at_set);
+}
+
+static double row_scale(const struct stage_row *row)
+{
+    return row->kind == ROW_CURRENT ? 1e-3 : 1;
+}
+
+/* One count of decimals for the whole row, so that its figures compare: that of its largest. */
+static unsigned row_decimals(const struct stage_findings *stage, const struct stage_row *row)
+{
+    double largest = 0;
+    for (int phase = 0; phase < PHASE_COUNT; phase++) {
+        double value = solution_value(&stage->phases[phase], row);
+        if (isfinite(value) && fabs(value) > largest)
+            largest = fabs(value);
+    }
+    double shown = largest / row_scale(row);
+    if (row->kind == ROW_POWER)
+        return 1;
+    return shown >= 100 ? 0 : shown >= 20 ? 1 : row->kind == ROW_CURRENT && shown >= 3 ? 1 : 2;
+}
+
+static double rating_of(const struct stage_findings *stage, size_t row)
+{
+    return row == ROW_ANODE_DISSIPATION    ? stage->anode_max_w
+           : row == ROW_SCREEN_DISSIPATION ? stage->screen_max_w
+                                           : NAN;
+}
+
+static bool row_is_empty(const struct stage_findings *stage, const struct stage_row *row)
+{
+    for (int phase = 0; phase < PHASE_COUNT; phase++)
+        if (isfinite(solution_value(&stage->phases[phase], row)))
+            return false;
+    return !row->set_shows || (!set_value(&stage->stage->found, row)->set &&
+                               !set_value(&stage->stage->left, row)->set);
+}
+
+static void set_at_set(const struct composition *composition, struct cell *cell,
+                       const struct quantity *quantity)
+{
+    if (quantity->set)
+        cell->figures =
+            figures_plain(composition, quantity->value, 1, fabs(quantity->value) >= 100 ? 0 : 1);
+}
+
+static void add_row(struct table_builder *builder, const struct stage_findings *stage, size_t index)
+{
+    static const char *const units[] = {"V", "mA", "W"};
+    const struct composition *composition = builder->composition;
+    const struct stage_row *row = &rows[index];
+    if (row_is_empty(stage, row))
+        return;
+    struct cell *cells = table_row(builder);
+    unsigned decimals = row_decimals(stage, row);
+    double rating = rating_of(stage, index);
+    cells[STAGE_LABEL].text = phrase_in(&composition->say, "stage_row", row->key);
+    cells[STAGE_UNIT].text = units[row->kind];
+    for (int phase = 0; phase < PHASE_COUNT; phase++) {
+        double value = solution_value(&stage->phases[phase], row);
+        struct cell *cell = &cells[STAGE_PHASES + phase];
+        cell->figures = figures_plain(composition, value, row_scale(row), decimals);
+        cell->strong = isfinite(value) && isfinite(rating) && value > rating;
+    }
+    if (row->set_shows) {
+        set_at_set(composition, &cells[STAGE_SET_FOUND], set_value(&stage->stage->found, row));
+        set_at_set(composition, &cells[STAGE_SET_LEFT], set_value(&stage->stage->left, row));
+    }
+    cells[STAGE_RATING].figures = figures_plain(composition, rating, 1, 1);
+}
+
+static const char *stage_title(const struct composition *composition, const struct stage *stage)
+{
+    const char *parts[] = {stage->valve_ref, stage->valve_type};
+    return text_join(composition->arena, ", ", parts, 2);
+}
+
+static const char *grid_current_note(const struct composition *composition,
+                                     const struct stage_findings *stage)
+{
+    if (!stage->grid_current_advice || !isfinite(stage->grid_current_a))
+        return NULL;
+    return phrase(&composition->say, "stage.grid_current", "current",
+                  quantity_text(composition->arena, stage->grid_current_a, UNIT_CURRENT, 2), NULL);
+}
+
+static bool exceeds_rating(const struct stage_findings *stage)
+{
+    for (int phase = 0; phase < PHASE_COUNT; phase++)
+        for (size_t row = ROW_ANODE_DISSIPATION; row <= ROW_SCREEN_DISSIPATION; row++)
+            if (solution_value(&stage->phases[phase], &rows[row]) > rating_of(stage, row))
+                return true;
+    return false;
+}
+
+/* Why phases have no figure; NULL when all have. */
+static const char *not_judged_note(const struct composition *composition,
+                                   const struct stage_findings *stage)
+{
+    for (int phase = 0; phase < PHASE_COUNT; phase++)
+        if (!stage->phases[phase].judged)
+            return phrase(&composition->say, "stage.not_judged", "why",
+                          phrase(&composition->say,
+                                 arena_print(composition->arena, "why.%s",
+                                             reason_text(stage->phases[phase].why)),
+                                 "valve", stage->stage->valve_type, NULL),
+                          NULL);
+    return NULL;
+}
+
+static const char *remark(const struct composition *composition, const struct stage_findings *stage)
+{
+    const struct phrasing *say = &composition->say;
+    const char *sentences[] = {
+        exceeds_rating(stage) ? phrase(say, "stage.bold", NULL) : NULL,
+        stage->near_rating ? phrase(say, "stage.near_rating", NULL) : NULL,
+        not_judged_note(composition, stage),
+        stage->law_status == LAW_WARN_MU12 ? phrase(say, "stage.mu12", NULL) : NULL,
+        grid_current_note(composition, stage),
+        phrase(say, "stage.book_valve", NULL),
+    };
+    return text_join(composition->arena, " ", sentences, sizeof sentences / sizeof *sentences);
+}
+
+void exhibit_stage(struct composition *composition, size_t index)
+{
+    if (index >= composition->findings->stage_count)
+        return;
+    const struct stage_findings *stage = &composition->findings->stages[index];
+    struct table_builder builder = table_begin(
+        composition, arena_print(composition->arena, "stage-%zu", index + 1), plan, STAGE_COLUMNS);
+    builder.table->lined = true;
+    for (size_t i = 0; i < sizeof rows / sizeof *rows; i++)
+        add_row(&builder, stage, i);
+    builder.table->remark = remark(composition, stage);
+    table_place(&builder, NUMBERED_TABLE,
+                phrase(&composition->say, "caption.stage", "stage", stage->stage->name, "valve",
+                       stage_title(composition, stage->stage), NULL));
+}

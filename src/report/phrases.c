@@ -1,0 +1,155 @@
+#include "report/phrases.h"
+
+#include "report/composition.h"
+
+#include <string.h>
+
+static const char *quantity_or_null(struct arena *arena, double value, enum unit unit,
+                                    unsigned digits)
+{
+    return isfinite(value) ? quantity_text(arena, value, unit, digits) : NULL;
+}
+
+/* ---- effects */
+
+static const char *effect_phrase(const struct phrasing *say, const struct effect *effect)
+{
+    struct arena *arena = say->arena;
+    const char *key = arena_print(arena, "effect.%s", effect->key);
+    const char *amount = quantity_or_null(arena, effect->value, effect->unit, 2);
+    if (!amount)
+        return phrase(say, key, "subject", effect->subject, NULL);
+    const char *change = text_signed(arena, effect->value, effect->unit, 2);
+    if (effect->at_most) {
+        amount = phrase(say, "effect_bound", "amount", amount, NULL);
+        change = phrase(say, "effect_bound", "amount", change, NULL);
+    }
+    double share = effect->of > 0 ? 100 * effect->value / effect->of : NAN;
+    return phrase(say, key, "amount", amount, "change", change, "of",
+                  quantity_or_null(arena, effect->of, effect->unit, 3), "share",
+                  quantity_or_null(arena, share, UNIT_PERCENT, 2), "subject", effect->subject,
+                  NULL);
+}
+
+/* ---- reasons */
+
+const char *criterion_phrase(const struct phrasing *say, const struct criterion *criterion)
+{
+    struct mustache_value *values = mustache_map(say->arena);
+    mustache_set_text(say->arena, values, "value",
+                      quantity_or_null(say->arena, criterion->value, criterion->unit, 2));
+    mustache_set_text(say->arena, values, "limit",
+                      quantity_or_null(say->arena, criterion->limit, criterion->unit, 2));
+    mustache_set_text(say->arena, values, "rule", criterion->rule);
+    mustache_set_flag(say->arena, values, "joint", criterion->joint);
+    return phrase_of(say, arena_print(say->arena, "over.%s", criterion_key_text(criterion->key)),
+                     values);
+}
+
+const struct criterion *criterion_deciding(const struct capacitor_findings *part)
+{
+    for (size_t i = 0; i < part->criterion_count; i++)
+        if (part->criteria[i].outcome == part->outcome)
+            return &part->criteria[i];
+    return NULL;
+}
+
+static const char *resolution_text(const struct phrasing *say, const struct job *job,
+                                   const struct capacitor_findings *part)
+{
+    if (part->deciding < 0)
+        return NULL;
+    const struct instrument *instrument =
+        reading_instrument(job, part->readings[part->deciding].reading);
+    if (!instrument || !instrument->resolution.set)
+        return NULL;
+    return quantity_text(say->arena, instrument->resolution.value, instrument->resolution.unit, 2);
+}
+
+struct mustache_value *part_values(const struct phrasing *say, const struct job *job,
+                                   const struct capacitor_findings *part)
+{
+    struct arena *arena = say->arena;
+    struct mustache_value *values = mustache_map(arena);
+    mustache_set_text(arena, values, "missing", part->missing);
+    mustache_set_text(arena, values, "volts",
+                      quantity_or_null(arena, part->sheet_voltage_v, UNIT_VOLTAGE, 3));
+    mustache_set_text(arena, values, "tested",
+                      quantity_or_null(arena, part->test_v, UNIT_VOLTAGE, 3));
+    mustache_set_text(arena, values, "service",
+                      quantity_or_null(arena, part->service_v, UNIT_VOLTAGE, 3));
+    mustache_set_text(arena, values, "soak",
+                      quantity_or_null(arena, part->sheet_soak_s, UNIT_TIME, 2));
+    mustache_set_text(arena, values, "wait",
+                      quantity_or_null(arena, part->absorption.wait_until_s, UNIT_TIME, 2));
+    mustache_set_text(arena, values, "limit",
+                      quantity_or_null(arena, part->test_limit_a, UNIT_CURRENT, 2));
+    mustache_set_text(arena, values, "margin",
+                      quantity_or_null(arena, part->ageing_margin, UNIT_NONE, 2));
+    mustache_set_text(arena, values, "working",
+                      quantity_or_null(arena, part->working_c, UNIT_TEMPERATURE, 2));
+    mustache_set_text(arena, values, "hot",
+                      quantity_or_null(arena, part->test_c, UNIT_TEMPERATURE, 2));
+    mustache_set_text(arena, values, "exponent",
+                      quantity_or_null(arena, part->exponent, UNIT_NONE, 2));
+    mustache_set_text(arena, values, "resolution", resolution_text(say, job, part));
+    mustache_set_text(arena, values, "marked",
+                      part->part->marked.rated.set ? part->part->marked.rated.written : NULL);
+    if (part->class_needed != CLASS_NONE)
+        mustache_set_text(arena, values, "class", safety_class_text(part->class_needed));
+    if (part->part->stage_count && job->stage_count > (size_t)part->part->stages[0])
+        mustache_set_text(arena, values, "valve", job->stages[part->part->stages[0]].valve_type);
+    return values;
+}
+
+static const char *why_phrase(const struct phrasing *say, const struct job *job,
+                              const struct capacitor_findings *part)
+{
+    if (part->outcome == OUTCOME_PASS)
+        return NULL;
+    bool figure_first = part->why == WHY_NONE || part->why == WHY_WITHIN_UNCERTAINTY;
+    const struct criterion *criterion = figure_first ? criterion_deciding(part) : NULL;
+    if (criterion)
+        return criterion_phrase(say, criterion);
+    if (part->why == WHY_NONE)
+        return NULL;
+    const char *key = arena_print(say->arena, "why.%s", reason_text(part->why));
+    return phrase_of(say, key, part_values(say, job, part));
+}
+
+static const char *advice_phrase(const struct phrasing *say, const struct job *job,
+                                 const struct capacitor_findings *part)
+{
+    if (part->advice == ADVICE_NONE)
+        return NULL;
+    struct mustache_value *values = part_values(say, job, part);
+    if (part->advice == ADVICE_MEASURE_AGAIN && part->why != WHY_NONE) {
+        const char *key = arena_print(say->arena, "again.%s", reason_text(part->why));
+        mustache_set_text(say->arena, values, "how", phrase_of(say, key, values));
+    }
+    return phrase_of(say, arena_print(say->arena, "advice.%s", advice_text(part->advice)), values);
+}
+
+static void explain_part(struct capacitor_findings *part, const struct phrasing *say,
+                         const struct job *job)
+{
+    struct effect *effects = arena_array(say->arena, part->effect_count, sizeof *effects);
+    for (size_t i = 0; i < part->effect_count; i++) {
+        effects[i] = part->effects[i];
+        effects[i].text = effect_phrase(say, &effects[i]);
+    }
+    part->effects = effects;
+    part->why_text = why_phrase(say, job, part);
+    part->advice_text = advice_phrase(say, job, part);
+}
+
+void report_explain(struct findings *findings, const struct words *words, struct arena *arena)
+{
+    struct phrasing say = {words, arena, NULL};
+    struct capacitor_findings *parts = arena_array(arena, findings->capacitor_count, sizeof *parts);
+    for (size_t i = 0; i < findings->capacitor_count; i++) {
+        parts[i] = findings->capacitors[i];
+        explain_part(&parts[i], &say, findings->job);
+    }
+    findings->capacitors = parts;
+}
