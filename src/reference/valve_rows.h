@@ -236,8 +236,8 @@ VALVE("845", POWER_TRIODE, "A1-1250", 1250, NONE, -195, 80, NONE, NONE, 5.3, NON
       NONE, NONE, SEEN, RECALLED, false, "transcribed maker sheet (RCA 845)")
 VALVE("6V6GT triode-conn", POWER_TRIODE, "A1-250", 250, NONE, -12.5, 49.5, NONE, 5, 9.8, NONE, 1960,
       12, NONE, NONE, NONE, SEEN, RECALLED, false, "transcribed maker sheet (RCA/JJ)")
-VALVE("6V6GT triode-conn", POWER_TRIODE, "cut-off", 250, NONE, -36, 0.5, NONE, NONE, 9.8, NONE, NONE,
-      12, NONE, NONE, NONE, SEEN, RECALLED, false, "transcribed maker sheet")
+VALVE("6V6GT triode-conn", POWER_TRIODE, "cut-off", 250, NONE, -36, 0.5, NONE, NONE, 9.8, NONE,
+      NONE, 12, NONE, NONE, NONE, SEEN, RECALLED, false, "transcribed maker sheet")
 VALVE("6F6 triode-conn", POWER_TRIODE, "A1-250", 250, NONE, -20, 31, NONE, 2.6, 6.8, NONE, 2600, 10,
       NONE, NONE, NONE, SEEN, RECALLED, false,
       "RCA RC series; a textbook's 41*(Va+7*Vg)^1.41 uA gives 31.0 mA")
