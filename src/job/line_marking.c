@@ -84,13 +84,25 @@ static struct span without_plus_minus(struct span span, bool *both)
     return span;
 }
 
+/* `-20` in front of `+100 %`: the sign of per cent stands behind the second. */
+static bool is_first_limit(struct marking_reader *reader, struct span span)
+{
+    struct quantity_form form = {.unit = UNIT_NONE};
+    struct quantity quantity;
+    return has_sign(span) && reader->next < reader->count &&
+           has_sign(token_span(reader, reader->next)) &&
+           quantity_read(reader->line->arena, span.start, span.length, &form, &quantity, NULL) ==
+               QUANTITY_OK;
+}
+
+/* span is the token before `next`. */
 static bool is_tolerance(struct marking_reader *reader, struct span span)
 {
     bool both;
     struct span number = without_plus_minus(span, &both);
     struct quantity_form form = {.unit = UNIT_PERCENT};
     struct quantity quantity;
-    return both || limits_stroke(number) != NULL ||
+    return both || limits_stroke(number) != NULL || is_first_limit(reader, span) ||
            quantity_read(reader->line->arena, number.start, number.length, &form, &quantity,
                          NULL) == QUANTITY_OK;
 }
@@ -128,7 +140,7 @@ static bool take_tolerance(struct marking_reader *reader, struct span span)
         return one_limit(reader, span, first, true) && one_limit(reader, span, last, false);
     }
     if (!both && has_sign(number))
-        return one_limit(reader, span, number, false);
+        return one_limit(reader, span, number, is_first_limit(reader, span));
     struct quantity_form form = {.unit = UNIT_PERCENT};
     struct quantity percent = {0};
     return line_take_quantity(reader->line, number, &form, &percent) &&
@@ -160,12 +172,32 @@ static bool unit_says_ac(struct span span)
     return span_is(unit, "vac") || span_is(unit, "rms") || unit.start[unit.length - 1] == '~';
 }
 
+static const char *const no_rating[] = {"test",  "tested", "surge",  "peak",
+                                        "flash", "proof",  "flash.", NULL};
+
+/* The volts that the token at `index` says; 0: none. */
+static double volts_at(const struct marking_reader *reader, size_t index)
+{
+    struct quantity_form form = {.unit = UNIT_VOLTAGE};
+    struct quantity volts = {0};
+    struct span span = token_span(reader, index);
+    enum quantity_status status =
+        quantity_read(reader->line->arena, span.start, span.length, &form, &volts, NULL);
+    return status == QUANTITY_OK ? volts.value : 0;
+}
+
+/* Whether `test` behind these volts speaks of them. In `400 V test 1000 V` it speaks of the second,
+   since a part is tested above its rating. */
+static bool test_word_follows(const struct marking_reader *reader, double volts)
+{
+    return next_is(reader, no_rating) && !reader->tokens[reader->next].after_comma &&
+           volts_at(reader, reader->next + 1) <= volts;
+}
+
 /* Words behind the volts: a test or surge voltage is no rating, a.c. is kept, d.c. goes by. */
 static bool take_volts(struct marking_reader *reader, struct span span,
                        const struct quantity *volts)
 {
-    static const char *const no_rating[] = {"test",  "tested", "surge",  "peak",
-                                            "flash", "proof",  "flash.", NULL};
     static const char *const ac_words[] = {"a.c.", "a.c", "ac", "~", "rms", "r.m.s.", NULL};
     static const char *const dc_words[] = {"d.c.", "d.c",     "dc", "wkg",    "wkg.",
                                            "w",    "working", "wv", "d.c.w.", NULL};
@@ -177,7 +209,7 @@ static bool take_volts(struct marking_reader *reader, struct span span,
             break;
         reader->next++;
     }
-    if (next_is(reader, no_rating)) {
+    if (test_word_follows(reader, volts->value)) {
         add_words(reader, span);
         add_words(reader, token_span(reader, reader->next++));
         return true;
@@ -197,13 +229,25 @@ static bool take_capacitor_value(struct marking_reader *reader, struct span span
                                           : wrong_unit(reader, span);
 }
 
+/* Always false. */
+static bool better_hint(struct marking_reader *reader, struct span span)
+{
+    struct line_problem *problem = &reader->line->problem;
+    bool several = memchr(span.start + 1, '+', span.length - 1) != NULL ||
+                   memchr(span.start + 1, '-', span.length - 1) != NULL;
+    if (problem->code == DIAGNOSTIC_QUANTITY_UNREADABLE)
+        problem->hint = several ? "each section is a capacitor of its own; a can holds them"
+                                : kind_hint(reader->kind);
+    return false;
+}
+
 static bool take_value(struct marking_reader *reader, struct span span)
 {
     struct quantity_form form = {.unit = UNIT_COUNT,
                                  .bare_m_refused = reader->kind == MARKING_RESISTOR};
     struct quantity quantity = {0};
     if (!line_take_quantity(reader->line, span, &form, &quantity))
-        return false;
+        return better_hint(reader, span);
     bool other = quantity.unit == UNIT_TEMPERATURE ||
                  (quantity.unit == UNIT_VOLTAGE && reader->kind == MARKING_RESISTOR);
     if (other) { /* `105 C` on a modern part, the limiting volts of a resistor */
@@ -255,7 +299,7 @@ static bool take_class(struct marking_reader *reader, struct span span, enum saf
 /* `class`, or `two`, `2`, `2 x` before a class: how many tokens of that stand at `next`. */
 static size_t before_class(const struct marking_reader *reader, unsigned *class_count)
 {
-    static const char *const two[] = {"two", "2", "pair", NULL};
+    static const char *const two[] = {"two", "2", "2x", "2\xC3\x97", "pair", NULL};
     static const char *const between[] = {"x", "\xC3\x97", "class", "of", NULL};
     enum safety_class class;
     size_t at = reader->next;
@@ -313,6 +357,14 @@ static bool take_word(struct marking_reader *reader, struct span span)
     static const char *const series[] = {"series", NULL};
     if (reader->marking.class_count == 2 && span_is(span, "in") && next_is(reader, series)) {
         reader->next++;
+        return true;
+    }
+    if (reader->kind == MARKING_CAPACITOR && span_is(span, "class"))
+        return line_fail(reader->line, span, DIAGNOSTIC_UNKNOWN_CHOICE,
+                         "write class X1, X2, Y1 or Y2", "no safety class behind 'class'");
+    if (span_is_any(span, no_rating) && volts_at(reader, reader->next) != 0) {
+        add_words(reader, span);
+        add_words(reader, token_span(reader, reader->next++));
         return true;
     }
     if (is_coded_value(reader, span)) /* `p33`, `R47` */

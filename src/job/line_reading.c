@@ -95,8 +95,11 @@ static bool take_number(struct reading_reader *reader, struct span span)
     struct quantity quantity = {0};
     if (is_date(span))
         return take_date(reader, span);
-    if (!line_take_quantity(reader->line, span, &form, &quantity))
+    if (!line_take_quantity(reader->line, span, &form, &quantity)) {
+        if (reader->line->problem.code == DIAGNOSTIC_QUANTITY_UNREADABLE)
+            reader->line->problem.hint = reading_hint;
         return false;
+    }
     if (quantity.unit == UNIT_VOLTAGE)
         return set_volts(reader, span, &quantity);
     if (quantity.unit == UNIT_TIME)
@@ -177,6 +180,20 @@ static bool take_circuit(struct reading_reader *reader, struct span span)
     return true;
 }
 
+static bool unknown_word(struct reading_reader *reader, struct span span)
+{
+    static const char *const endless[] = {"infinity", "infinite",     "inf",
+                                          "open",     "\xE2\x88\x9E", NULL};
+    const char *nearest = nearest_word(line_written(reader->line, span), reading_words);
+    const char *hint =
+        span_is_any(span, endless) ? "write over and the end of the scale, as in over 2000 M"
+        : nearest != NULL
+            ? arena_print(reader->line->arena, "nearest word: %s", nearest)
+            : "words here: found, reformed, left, hot 45 C, in circuit, by INSTRUMENT";
+    return line_fail(reader->line, span, DIAGNOSTIC_UNKNOWN_CHOICE, hint, "unknown word '%s'",
+                     line_quote(reader->line, span));
+}
+
 static bool take_word(struct reading_reader *reader, struct span span)
 {
     if (span_is(span, "hot"))
@@ -191,12 +208,7 @@ static bool take_word(struct reading_reader *reader, struct span span)
         return take_circuit(reader, span);
     if (span_is(span, "by"))
         return take_instrument(reader, span);
-    const char *nearest = nearest_word(line_written(reader->line, span), reading_words);
-    return line_fail(reader->line, span, DIAGNOSTIC_UNKNOWN_CHOICE,
-                     nearest != NULL
-                         ? arena_print(reader->line->arena, "nearest word: %s", nearest)
-                         : "words here: found, reformed, left, hot 45 C, in circuit, by INSTRUMENT",
-                     "unknown word '%s'", line_quote(reader->line, span));
+    return unknown_word(reader, span);
 }
 
 static bool segment_read(struct reading_reader *reader, struct span segment)

@@ -250,7 +250,6 @@ const char *quantity_hint(struct arena *arena, enum quantity_status status, cons
     struct cut cut;
     switch (status) {
     case QUANTITY_OK:
-        return NULL;
     case QUANTITY_UNREADABLE:
         return NULL;
     case QUANTITY_NO_UNIT:

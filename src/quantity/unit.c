@@ -276,7 +276,7 @@ const struct unit_spelling *unit_find(const char *text, size_t length, enum unit
 {
     static const char *const inch_words[] = {"in", "inch", "inches", "\""};
     char plain[SPELLING_BYTES];
-    if (length == 0 || length > 3 * SPELLING_BYTES || !plain_spelling(text, length, plain))
+    if (length == 0 || length > (size_t)3 * SPELLING_BYTES || !plain_spelling(text, length, plain))
         return NULL;
     if (wanted == UNIT_TEMPERATURE && strcmp(plain, "F") == 0)
         return &fahrenheit;

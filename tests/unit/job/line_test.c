@@ -99,6 +99,7 @@ static void readings_are_refused(void **state)
         {"100 V 60 s 1.1 uA hot 45 V", DIAGNOSTIC_UNIT_WRONG, "45 V", "temperature"},
         {"100 V 60 s 1.1 uA refomed", DIAGNOSTIC_UNKNOWN_CHOICE, "refomed",
          "nearest word: reformed"},
+        {"100 V 60 s infinity", DIAGNOSTIC_UNKNOWN_CHOICE, "infinity", "over 2000 M"},
         {"100 V 60 s 1.1 uA in cabinet", DIAGNOSTIC_UNKNOWN_CHOICE, "in", "in circuit"},
         {"100 V 60 s 1.1 uA by brigde", DIAGNOSTIC_REF_UNKNOWN, "brigde", "bridge"},
         {"100 V 60 s 1.1 uA by", DIAGNOSTIC_REF_UNKNOWN, "by", NULL},
@@ -108,7 +109,7 @@ static void readings_are_refused(void **state)
         {"over 100 V 60 s 1.1 uA", DIAGNOSTIC_VALUE_IMPOSSIBLE, "over 100 V", NULL},
         {"100 V -60 s 1.1 uA", DIAGNOSTIC_VALUE_IMPOSSIBLE, "-60 s", NULL},
         {"100 V 60 s 0 M", DIAGNOSTIC_VALUE_IMPOSSIBLE, "0 M", NULL},
-        {"100 V,60 s 1 uA", DIAGNOSTIC_QUANTITY_UNREADABLE, "100 V,60", NULL},
+        {"100 V,60 s 1 uA", DIAGNOSTIC_QUANTITY_UNREADABLE, "100 V,60", "100 V 60 s 1.1 uA"},
         {"100 V 60 s 0.1 uF", DIAGNOSTIC_UNIT_WRONG, "0.1 uF", "100 V 60 s 1.1 uA"},
     };
     struct arena arena = {0};
