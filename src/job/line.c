@@ -1,7 +1,5 @@
 #include "job/line_scan.h"
 
-#include "base/utf8.h"
-
 #include <string.h>
 #include <strings.h>
 
@@ -14,10 +12,9 @@ struct position line_position(const struct line *line, size_t offset)
 {
     struct position at = line->at;
     const char *cursor = line->text, *end = line->text + offset;
-    while (cursor < end) {
-        utf8_next(&cursor, line->text + line->length);
-        at.column++;
-    }
+    /* One column for each byte that does not continue a character. */
+    for (; cursor < end; cursor++)
+        at.column += ((unsigned char)*cursor & 0xC0) != 0x80;
     return at;
 }
 
@@ -120,6 +117,16 @@ bool line_fail(struct line *line, struct span span, enum diagnostic_code code, c
                                           .hint = hint};
     va_end(arguments);
     return false;
+}
+
+bool line_too_long(struct line *line)
+{
+    struct span all = line_span(line);
+    if (all.length <= LINE_BYTES_MAX)
+        return false;
+    line_fail(line, (struct span){all.start, 1}, DIAGNOSTIC_TEXT_TOO_LONG,
+              "split it over several lines", "this line has more than %d bytes", LINE_BYTES_MAX);
+    return true;
 }
 
 static const char *article(enum unit unit)

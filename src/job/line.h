@@ -8,12 +8,15 @@
  * Every function: true, and the result is complete; or false, `line->problem` says why, and the
  * result is untouched (named values and value slots: those before the mistake are set). Every
  * struct quantity, date ... of a result has its `written` (owned by the arena) and its `at`.
- * Words are compared without regard to case. Text that is empty or only spaces is a mistake.
+ * Words are compared without regard to case. Text that is empty or only spaces is a mistake, and so
+ * is a line of several facts with more than LINE_BYTES_MAX bytes.
  */
 #ifndef JOB_LINE_H
 #define JOB_LINE_H
 
 #include "job/job.h"
+
+enum { LINE_BYTES_MAX = 4096 };
 
 /* What is wrong, at text[offset .. offset + length). length >= 1 unless the text is empty. */
 struct line_problem {

@@ -6,6 +6,8 @@
 
 bool line_list(struct line *line, enum unit unit, const double **values, size_t *count)
 {
+    if (line_too_long(line))
+        return false;
     struct quantity_form form = {.unit = unit};
     double *items = NULL;
     size_t found = 0, capacity = 0, offset = 0;
@@ -83,6 +85,8 @@ static bool refs_between_commas(struct line *line, struct name_list *list)
 
 bool line_refs(struct line *line, const struct line_name **refs, size_t *count)
 {
+    if (line_too_long(line))
+        return false;
     struct name_list list = {0};
     bool commas = memchr(line->text, ',', line->length) != NULL;
     if (!(commas ? refs_between_commas(line, &list) : refs_between_spaces(line, &list)))
@@ -97,6 +101,8 @@ bool line_refs(struct line *line, const struct line_name **refs, size_t *count)
 
 bool line_names(struct line *line, const struct line_name **names, size_t *count)
 {
+    if (line_too_long(line))
+        return false;
     struct name_list list = {0};
     size_t offset = 0;
     struct span segment;
@@ -189,6 +195,8 @@ static bool number_value(struct line *line, const struct named_value *row, struc
 
 bool line_named_values(struct line *line, const struct named_value *names, size_t name_count)
 {
+    if (line_too_long(line))
+        return false;
     size_t offset = 0, found = 0;
     struct span segment;
     bool *seen = arena_array(line->arena, name_count + 1, sizeof *seen);

@@ -421,6 +421,8 @@ static bool cut_tokens(struct marking_reader *reader)
 
 bool line_marking(struct line *line, enum marking_kind kind, bool fitted, struct marking *marking)
 {
+    if (line_too_long(line))
+        return false;
     struct span all = line_span(line);
     struct marking_reader reader = {
         .line = line,

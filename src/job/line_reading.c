@@ -231,6 +231,8 @@ static bool segment_read(struct reading_reader *reader, struct span segment)
 bool line_readings(struct line *line, const struct reading_form *form,
                    const struct reading **readings, size_t *count)
 {
+    if (line_too_long(line))
+        return false;
     struct reading *items = NULL;
     struct reading last = {
         .line = form->line, .state = form->state, .instrument = form->instrument};

@@ -33,6 +33,9 @@ bool line_segment_next(const struct line *line, size_t *offset, struct span *seg
 bool line_fail(struct line *line, struct span span, enum diagnostic_code code, const char *hint,
                const char *format, ...) __attribute__((format(printf, 5, 6)));
 
+/* Whether a line of several facts is too long to be one, with the problem set. */
+bool line_too_long(struct line *line);
+
 /* The same for what quantity_read refused; problem and hint follow from the status. */
 bool line_fail_quantity(struct line *line, struct span span, enum quantity_status status,
                         const struct quantity_form *form);

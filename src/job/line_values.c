@@ -66,6 +66,8 @@ static bool words_into_slot(struct line *line, struct span span, const struct va
 
 bool line_values(struct line *line, const struct value_slot *slots, size_t slot_count)
 {
+    if (line_too_long(line))
+        return false;
     const char *cursor = line->text, *end = line->text + line->length;
     struct quantity_token token;
     bool more = quantity_token_next(&cursor, end, &token);
@@ -137,6 +139,8 @@ static bool take_measured(struct line *line, struct span span, struct measured_c
 
 bool line_measured_capacitor(struct line *line, struct measured_capacitor *measured)
 {
+    if (line_too_long(line))
+        return false;
     struct span all = line_span(line);
     struct measured_capacitor read = {.set = true,
                                       .written = line_written(line, all),
@@ -254,6 +258,8 @@ static struct span without_sign(struct span span)
 
 bool line_accuracy(struct line *line, struct accuracy *accuracy)
 {
+    if (line_too_long(line))
+        return false;
     struct accuracy read = {0};
     struct span rest = without_sign(line_span(line));
     do {

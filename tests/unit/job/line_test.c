@@ -461,6 +461,26 @@ static void dates_and_sizes(void **state)
     arena_release(&arena);
 }
 
+static void long_lines_are_refused(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    static char text[LINE_BYTES_MAX + 8];
+    const double *values = NULL;
+    size_t count = 0;
+    memset(text, ' ', sizeof text);
+    for (size_t i = 0; i + 5 <= LINE_BYTES_MAX; i += 5)
+        memcpy(text + i, "5 V, ", 5);
+    struct line line = line_of(&arena, text, LINE_BYTES_MAX, start);
+    assert_true(line_list(&line, UNIT_VOLTAGE, &values, &count));
+    assert_int_equal(count, LINE_BYTES_MAX / 5);
+    memcpy(text + LINE_BYTES_MAX, "5 V, 5 V", 8);
+    line = line_of(&arena, text, sizeof text, start);
+    assert_false(line_list(&line, UNIT_VOLTAGE, &values, &count));
+    assert_refused(&line, &(struct refusal){"", DIAGNOSTIC_TEXT_TOO_LONG, "5", "several lines"});
+    arena_release(&arena);
+}
+
 /* Any bytes whatever: an answer, and a problem that lies inside the text. */
 static void any_text_is_safe(void **state)
 {
@@ -528,6 +548,7 @@ int main(void)
         cmocka_unit_test(accuracies),
         cmocka_unit_test(lists),
         cmocka_unit_test(dates_and_sizes),
+        cmocka_unit_test(long_lines_are_refused),
         cmocka_unit_test(any_text_is_safe),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
