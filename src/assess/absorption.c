@@ -33,32 +33,38 @@ static double decay_basis(enum decay_law law, double time_s, double shape)
     return NAN;
 }
 
+/* Readings with what every trial of a shape needs again. */
+struct series {
+    const struct absorption_reading *readings;
+    size_t count;
+    double *weights, *basis;
+};
+
 /* I_s and A for a given shape: a weighted straight line. false: the readings do not tell them
    apart. */
-static bool fit_line(struct decay *decay, const struct absorption_reading *readings, size_t count)
+static bool fit_line(struct decay *decay, const struct series *series)
 {
     double w = 0, wx = 0, wy = 0, wxx = 0, wxy = 0;
-    for (size_t i = 0; i < count; i++) {
-        double weight = pow(readings[i].sigma_a, -2);
-        w += weight;
-        wx += weight * decay_basis(decay->law, readings[i].time_s, decay->shape);
-        wy += weight * readings[i].current_a;
+    for (size_t i = 0; i < series->count; i++) {
+        series->basis[i] = decay_basis(decay->law, series->readings[i].time_s, decay->shape);
+        w += series->weights[i];
+        wx += series->weights[i] * series->basis[i];
+        wy += series->weights[i] * series->readings[i].current_a;
     }
-    for (size_t i = 0; i < count; i++) {
-        double weight = pow(readings[i].sigma_a, -2);
-        double x = decay_basis(decay->law, readings[i].time_s, decay->shape) - wx / w;
-        wxx += weight * x * x;
-        wxy += weight * x * (readings[i].current_a - wy / w);
+    for (size_t i = 0; i < series->count; i++) {
+        double x = series->basis[i] - wx / w;
+        wxx += series->weights[i] * x * x;
+        wxy += series->weights[i] * x * (series->readings[i].current_a - wy / w);
     }
     if (!(wxx > 0) || !isfinite(wxx))
         return false;
     decay->amplitude_a = wxy / wxx;
     decay->steady_a = (wy - decay->amplitude_a * wx) / w;
     decay->chi2 = 0;
-    for (size_t i = 0; i < count; i++) {
-        double r = (readings[i].current_a - decay_current(decay, readings[i].time_s)) /
-                   readings[i].sigma_a;
-        decay->chi2 += r * r;
+    for (size_t i = 0; i < series->count; i++) {
+        double r =
+            series->readings[i].current_a - decay->steady_a - decay->amplitude_a * series->basis[i];
+        decay->chi2 += series->weights[i] * r * r;
     }
     return isfinite(decay->chi2);
 }
@@ -130,30 +136,46 @@ static bool refine(struct decay *decay, const struct absorption_reading *reading
     return true;
 }
 
+/* The place of the grid with the least chi^2; *best is set when any fits. */
+static size_t search_grid(enum decay_law law, const struct series *series, struct decay *best)
+{
+    double first_s = series->readings[0].time_s;
+    double last_s = series->readings[series->count - 1].time_s;
+    size_t best_place = 0;
+    for (size_t place = 0; place < grid_size(law); place++) {
+        struct decay trial = {.fitted = true,
+                              .law = law,
+                              .freedom = series->count - 3,
+                              .steady_error_a = NAN,
+                              .shape = grid_shape(law, place, first_s, last_s)};
+        if (fit_line(&trial, series) && trial.chi2 < best->chi2) {
+            *best = trial;
+            best_place = place;
+        }
+    }
+    return best_place;
+}
+
 struct decay decay_fit(enum decay_law law, const struct absorption_reading *readings, size_t count)
 {
     struct decay best = {.law = law, .chi2 = INFINITY};
     if (count <= 3)
         return best;
-    double first_s = readings[0].time_s, last_s = readings[count - 1].time_s;
-    size_t size = grid_size(law), best_place = 0;
-    for (size_t place = 0; place < size; place++) {
-        struct decay trial = {.fitted = true, .law = law, .freedom = count - 3};
-        trial.shape = grid_shape(law, place, first_s, last_s);
-        if (fit_line(&trial, readings, count) && trial.chi2 < best.chi2) {
-            best = trial;
-            best_place = place;
-        }
-    }
+    double *space = memory_get_cleared(2 * count, sizeof *space);
+    struct series series = {readings, count, space, space + count};
+    for (size_t i = 0; i < count; i++)
+        series.weights[i] = 1 / (readings[i].sigma_a * readings[i].sigma_a);
+    size_t place = search_grid(law, &series, &best);
+    free(space);
     if (!best.fitted)
         return best;
-    best.steady_error_a = NAN;
-    double low = grid_shape(law, 0, first_s, last_s),
-           high = grid_shape(law, size - 1, first_s, last_s);
-    best.at_end = best_place == 0 || best_place + 1 == size;
+    size_t last = grid_size(law) - 1;
+    double first_s = readings[0].time_s, last_s = readings[count - 1].time_s;
+    best.at_end = place == 0 || place == last;
     if (!best.at_end) {
         refine(&best, readings, count);
-        best.at_end = best.shape <= low || best.shape >= high;
+        best.at_end = best.shape <= grid_shape(law, 0, first_s, last_s) ||
+                      best.shape >= grid_shape(law, last, first_s, last_s);
     }
     return best;
 }
