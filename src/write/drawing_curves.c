@@ -146,7 +146,7 @@ static void draw_linear_time(struct sketch *sketch, const struct layout *layout,
                              const struct panel *panel)
 {
     double width = panel->right - panel->left, range = panel->time.high;
-    double step = clock_step(range, (unsigned)fmax(width / 80, 1));
+    double step = clock_step(range, (unsigned)fmax(width / (layout->narrow ? 50 : 80), 1));
     struct time_unit unit = unit_of_step(step);
     int last = (int)floor(range / step + 1e-9);
     for (int i = 0; i <= last; i++) {

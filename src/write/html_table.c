@@ -1,4 +1,6 @@
-/* Tables in HTML: the decimal point in one line on a page, folded lines on a phone. */
+/* Tables in HTML: the decimal point in one line on a page, folded lines on a phone. No ARIA roles:
+   browsers keep those of table elements whatever their display is, and HTML forbids saying them
+   again. */
 #include "write/html_parts.h"
 
 #include "write/text_width.h"
@@ -191,8 +193,6 @@ static void write_cell(const struct table_writing *writing, const struct cell *c
     bool words = here->kind == COLUMN_NUMBER && !cell->figures.whole && cell->text;
     bool head = here->kind == COLUMN_REF;
     html_raw(html, head ? "<th scope=\"row\"" : "<td");
-    if (writing->folded)
-        html_raw(html, head ? " role=\"rowheader\"" : " role=\"cell\"");
     write_classes(writing, column, words);
     if (span > 1) {
         html_raw(html, " colspan=\"");
@@ -217,9 +217,7 @@ static void write_cell(const struct table_writing *writing, const struct cell *c
 static void write_group_row(const struct table_writing *writing, const struct table_row *row)
 {
     struct html *html = writing->html;
-    html_raw(html, writing->folded ? "<tr class=\"place\" role=\"row\"><th scope=\"rowgroup\" "
-                                     "role=\"rowheader\" colspan=\""
-                                   : "<tr class=\"place\"><th scope=\"rowgroup\" colspan=\"");
+    html_raw(html, "<tr class=\"place\"><th scope=\"rowgroup\" colspan=\"");
     buffer_decimal(html->out, (long long)writing->table->column_count);
     html_raw(html, "\">");
     html_text(html, row->cells[0].text);
@@ -228,7 +226,7 @@ static void write_group_row(const struct table_writing *writing, const struct ta
 
 static void write_row(const struct table_writing *writing, const struct table_row *row)
 {
-    html_raw(writing->html, writing->folded ? "<tr role=\"row\">" : "<tr>");
+    html_raw(writing->html, "<tr>");
     for (size_t column = 0; column < writing->table->column_count;) {
         size_t span = span_of(writing->table, row->cells, column);
         write_cell(writing, &row->cells[column], column, span);
@@ -241,14 +239,12 @@ static void write_body(const struct table_writing *writing)
 {
     struct html *html = writing->html;
     const struct table *table = writing->table;
-    const char *role = writing->folded ? " role=\"rowgroup\">\n" : ">\n";
     bool open = false;
     for (size_t i = 0; i < table->row_count; i++) {
         const struct table_row *row = &table->rows[i];
         if (row->group || !open) {
             html_raw(html, open ? "</tbody><tbody" : "<tbody");
-            html_raw(html, row->group ? " class=\"group\"" : "");
-            html_raw(html, role);
+            html_raw(html, row->group ? " class=\"group\">\n" : ">\n");
             open = true;
         }
         if (row->group)
@@ -263,13 +259,11 @@ static void write_body(const struct table_writing *writing)
 static void write_head(const struct table_writing *writing)
 {
     struct html *html = writing->html;
-    html_raw(html, writing->folded ? "<thead role=\"rowgroup\"><tr role=\"row\">" : "<thead><tr>");
+    html_raw(html, "<thead><tr>");
     for (size_t i = 0; i < writing->table->column_count; i++) {
         const struct column *column = &writing->table->columns[i];
         bool named = column->head[0] || (column->unit && column->unit[0]);
         html_raw(html, named ? "<th scope=\"col\"" : "<td");
-        if (writing->folded)
-            html_raw(html, named ? " role=\"columnheader\"" : " role=\"cell\"");
         write_classes(writing, i, false);
         html_raw(html, ">");
         html_text(html, column->head);
@@ -381,9 +375,15 @@ void html_table(struct html *html, const struct exhibit *exhibit)
              table->row_count <= 12 ? "<div class=\"exhibit keep\"" : "<div class=\"exhibit\"");
     html_raw(html, " id=\"");
     html_text(html, exhibit->id);
-    html_raw(html, "\"><table class=\"");
+    html_raw(html, "\"");
+    if (!writing.folded) { /* a phone scrolls it sideways: the keyboard must reach it */
+        html_raw(html, " tabindex=\"0\" role=\"group\" aria-label=\"");
+        html_text(html, exhibit->number ? exhibit->number : table->caption);
+        html_raw(html, "\"");
+    }
+    html_raw(html, "><table class=\"");
     write_table_classes(&writing);
-    html_raw(html, writing.folded ? "\" role=\"table\">" : "\">");
+    html_raw(html, "\">");
     if (exhibit->number || table->caption) {
         html_raw(html, "<caption>");
         html_caption(html, exhibit, table->caption);

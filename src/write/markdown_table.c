@@ -91,7 +91,7 @@ static void measure_groups(struct table_writing *writing)
 
 void markdown_table(const struct table *table, struct buffer *out)
 {
-    static const struct table_text_style style = {escape_markdown, "**", "**"};
+    static const struct table_text_style style = {escape_markdown, "**", "**", false};
     struct arena scratch = {0};
     struct table_writing writing = {.text = table_text_of(table, &style, &scratch), .out = out};
     const char *group = "";

@@ -102,7 +102,7 @@ static struct wish column_wish(struct table_layout *layout, size_t index)
     case COLUMN_NUMBER:
         measure_numbers(layout, index);
         text = number_width(&layout->columns[index]);
-        return (struct wish){larger(head, text), larger(least_head, text)};
+        return (struct wish){larger(head, text), larger(least_head - head_reach_pt, text)};
     case COLUMN_REF:
         text = larger(head, widest_text(layout, index, true));
         return (struct wish){text, text < block * 0.35 ? text : block * 0.35};

@@ -259,27 +259,3 @@ double text_runs_width(const struct text_runs *runs, const struct pdf_resources 
                  runs->items[i].style.size_pt / 1000;
     return width;
 }
-
-double text_runs_word_width(const struct text_runs *runs, const struct pdf_resources *resources)
-{
-    double widest = 0, word = 0;
-    for (size_t i = 0; i < runs->count; i++) {
-        const struct text_run *run = &runs->items[i];
-        const char *end = run->text + run->length;
-        uint32_t before = 0;
-        for (const char *at = run->text; at < end;) {
-            uint32_t code_point = utf8_next(&at, end);
-            if (code_point != ' ' || word > 0)
-                word += pdf_character_width(resources, run->style.face, code_point) *
-                        run->style.size_pt / 1000;
-            widest = word > widest ? word : widest;
-            if ((code_point == ' ' && !is_before_unit(before, at, end)) ||
-                breaks_behind(before, code_point, look_ahead(at, end)))
-                word = 0;
-            before = code_point;
-        }
-        if (run->line_end)
-            word = 0;
-    }
-    return widest;
-}

@@ -55,8 +55,7 @@ struct text_lines {
 struct text_lines text_lines_break(const struct text_runs *runs,
                                    const struct pdf_resources *resources, double width);
 
-/* Width of the whole as one line, and of the widest piece that is not broken. */
+/* Width of the whole as one line. */
 double text_runs_width(const struct text_runs *runs, const struct pdf_resources *resources);
-double text_runs_word_width(const struct text_runs *runs, const struct pdf_resources *resources);
 
 #endif

@@ -4,11 +4,12 @@
 
 enum { LEVELS_MAX = 6, LABEL_MAX = 24 };
 
-static const double indent_pt = 12;
+static const double indent_pt = 12, label_gap_pt = 3, least_width_pt = 100;
 
 struct level {
     bool ordered, tight;
     unsigned next; /* number of the next item */
+    double indent; /* of its items' text */
 };
 
 /* State of the walk over one top-level node: counters instead of recursion. */
@@ -50,8 +51,13 @@ static void add_code(struct prose_walk *prose, const char *text)
 
 static double indent_of(const struct prose_walk *prose)
 {
-    unsigned depth = prose->list_depth + prose->quote_depth;
-    return indent_pt * (depth < LEVELS_MAX ? depth : LEVELS_MAX);
+    double indent = 0;
+    for (unsigned i = 0; i < prose->list_depth && i < LEVELS_MAX; i++)
+        indent += prose->levels[i].indent;
+    unsigned quotes = prose->quote_depth < LEVELS_MAX ? prose->quote_depth : LEVELS_MAX;
+    indent += indent_pt * quotes;
+    double most = prose->composer->measure - least_width_pt;
+    return indent < most ? indent : most;
 }
 
 static struct level *level_of(struct prose_walk *prose)
@@ -72,14 +78,15 @@ static void put_label(struct prose_walk *prose, struct strip *strip)
         return;
     struct composer *composer = prose->composer;
     struct text_style style = style_of(FACE_REGULAR, composer->body, INK_TEXT);
-    struct point at = {indent_of(prose) - indent_pt,
+    struct point at = {indent_of(prose) - level_of(prose)->indent,
                        line_baseline(composer->body.leading, style.size_pt)};
     if (prose->label[0] >= '0' && prose->label[0] <= '9') {
         double width = (double)pdf_text_width(composer->flow.resources, style.face, prose->label,
                                               strlen(prose->label)) *
                        style.size_pt / 1000;
-        at.x = indent_of(prose) - 3 - width;
+        at.x = indent_of(prose) - label_gap_pt - width;
     }
+    at.x = at.x > 0 ? at.x : 0;
     const char *label = arena_copy(composer->flow.arena, prose->label);
     strip_text(&composer->flow, strip, at, style, label);
     prose->label[0] = 0;
@@ -195,14 +202,34 @@ static void emit_break(struct prose_walk *prose)
     flow_space(flow, mm(2.2));
 }
 
+/* Room for a list's last number; deep lists share what the levels above left. */
+static double list_indent(const struct prose_walk *prose, cmark_node *list)
+{
+    if (cmark_node_get_list_type(list) != CMARK_ORDERED_LIST)
+        return indent_pt;
+    unsigned last = (unsigned)cmark_node_get_list_start(list);
+    for (cmark_node *item = cmark_node_first_child(list); item; item = cmark_node_next(item))
+        last++;
+    char label[LABEL_MAX];
+    int length = snprintf(label, sizeof label, "%u.", last);
+    double width = (double)pdf_text_width(prose->composer->flow.resources, FACE_REGULAR, label,
+                                          (size_t)length) *
+                       prose->composer->body.size / 1000 +
+                   label_gap_pt;
+    return width > indent_pt ? width : indent_pt;
+}
+
 static void enter_list(struct prose_walk *prose, cmark_node *node)
 {
     prose->list_depth++;
     int start = cmark_node_get_list_start(node);
+    if (prose->list_depth > LEVELS_MAX)
+        start = 1;
     *level_of(prose) = (struct level){
         .ordered = cmark_node_get_list_type(node) == CMARK_ORDERED_LIST,
         .tight = cmark_node_get_list_tight(node) != 0,
         .next = start > 0 ? (unsigned)start : 0,
+        .indent = list_indent(prose, node),
     };
 }
 

@@ -101,8 +101,9 @@ static struct text_lines head_lines(const struct table_layout *layout, size_t in
         text_runs_add(&runs, column->unit, style_of(FACE_REGULAR, type_unit, INK_SOFT));
     else
         text_runs_add(&runs, column->head, style_of(FACE_SEMIBOLD, type_table, INK_TEXT));
+    bool overhangs = column->kind == COLUMN_NUMBER && index > 0;
     return text_lines_break(&runs, layout->composer->flow.resources,
-                            layout->columns[index].width + 0.5);
+                            layout->columns[index].width + (overhangs ? head_reach_pt + 0.1 : 0.5));
 }
 
 static void put_head_line(struct table_layout *layout, struct strip *strip, size_t index,

@@ -4,9 +4,10 @@
 
 #include "write/pdf_layout.h"
 
-/* Space right of a column's contents, extra space left of text behind numbers, and left of what is
-   written in. */
-static const double column_gap_pt = 4.6, after_number_pt = 7, blank_pad_pt = 2.8;
+/* Space right of a column's contents, what more there is left of text behind numbers, and the space
+   left of what is written in; a number's head may reach into the gap at its left. */
+static const double column_gap_pt = 4.6, head_reach_pt = 2.4, after_number_pt = 4,
+                    blank_pad_pt = 2.8;
 
 /* The widest parts of a column's numbers: slots in which they stand. */
 struct number_slots {
