@@ -11,7 +11,8 @@ struct token {
     size_t length;
     size_t behind; /* SECTION, INVERTED: index of the first token behind it */
     bool standalone;
-    size_t indent;
+    const char *indent; /* standalone PARTIAL: the white space before it */
+    size_t indent_length;
     struct position at;
 };
 
@@ -221,7 +222,8 @@ static void parse(struct parser *parser)
         take_tag(parser, &tag, at);
         if (alone && tag.sign == '>' && parser->tokens.count > count) {
             parser->tokens.items[count].standalone = true;
-            parser->tokens.items[count].indent = (size_t)(tag.start - line_start);
+            parser->tokens.items[count].indent = line_start;
+            parser->tokens.items[count].indent_length = (size_t)(tag.start - line_start);
         }
     }
     if (parser->cursor < parser->end)
@@ -302,17 +304,17 @@ static bool is_true(const struct mustache_value *value)
 static void render_source(struct renderer *renderer, const struct source *source,
                           const struct mustache_value *values);
 
-/* A partial's text with the indent of its tag before each line, as the spec wants. */
+/* A partial's text with the indent of its tag before each line that is not empty. */
 static const struct source *indented(struct renderer *renderer, const struct source *source,
-                                     size_t indent)
+                                     const struct token *token)
 {
-    if (indent == 0)
+    if (token->indent_length == 0)
         return source;
     struct buffer text = {0};
     bool line_begins = true;
     for (size_t i = 0; i < source->length; i++) {
-        for (size_t n = 0; line_begins && n < indent; n++)
-            buffer_byte(&text, ' ');
+        if (line_begins && source->text[i] != '\n')
+            buffer_append(&text, token->indent, token->indent_length);
         line_begins = source->text[i] == '\n';
         buffer_byte(&text, source->text[i]);
     }
@@ -338,7 +340,7 @@ static void render_partial(struct renderer *renderer, const struct source *sourc
     struct mustache_partial partial = {
         .name = token->text,
         .standalone = token->standalone,
-        .indent = token->indent,
+        .indent = token->indent_length,
         .template = source,
         .at = token->at,
         .context = &renderer->context,
@@ -360,7 +362,7 @@ static void render_partial(struct renderer *renderer, const struct source *sourc
             break;
         }
         renderer->depth++;
-        render_source(renderer, indented(renderer, found, token->indent), NULL);
+        render_source(renderer, indented(renderer, found, token), NULL);
         renderer->depth--;
         break;
     case MUSTACHE_PARTIAL_DONE:
