@@ -81,17 +81,24 @@ static enum comment_place comment_behind(struct parse *parse, yaml_mark_t mark)
 
 /* ---- nodes ---- */
 
+/* Of the text that is parsed: the source may hold bytes that no message can. */
+static const char *quoted_line(struct parse *parse, unsigned line)
+{
+    const struct source parsed = {parse->source->path, parse->text,
+                                  (size_t)(parse->end - parse->text)};
+    return yaml_quoted_line_hint(parse->arena, &parsed, line);
+}
+
 static bool refuse_marks(struct parse *parse, const yaml_char_t *anchor, const yaml_char_t *tag,
                          struct position at, bool of_scalar)
 {
     if (!anchor && !tag)
         return false;
-    diagnostic_add(&parse->told, parse->source, at,
-                   anchor ? DIAGNOSTIC_YAML_ALIAS : DIAGNOSTIC_YAML_TAG,
-                   of_scalar ? yaml_quoted_line_hint(parse->arena, parse->source, at.line)
-                             : "write the keys out wherever they are needed",
-                   anchor ? "'&' begins an anchor, which a job file has no use for"
-                          : "'!' begins a tag, which a job file has no use for");
+    diagnostic_add(
+        &parse->told, parse->source, at, anchor ? DIAGNOSTIC_YAML_ALIAS : DIAGNOSTIC_YAML_TAG,
+        of_scalar ? quoted_line(parse, at.line) : "write the keys out wherever they are needed",
+        anchor ? "'&' begins an anchor, which a job file has no use for"
+               : "'!' begins a tag, which a job file has no use for");
     return true;
 }
 
@@ -124,17 +131,17 @@ static void tell_duplicate(struct parse *parse, const struct node *node, const s
                    "the key '%s' is here twice", node->key);
 }
 
-/* Hang the node below the mapping or sequence that is open. */
-static bool attach(struct parse *parse, struct node *node)
+/* Hang the node below the mapping or sequence that is open; not so a second of its key. */
+static bool attach(struct parse *parse, struct node *node, bool first)
 {
     if (++parse->key_count > JOB_KEYS_MAX)
         return stop_for_good(
             parse, DIAGNOSTIC_YAML_TOO_MANY_KEYS, node->at,
             arena_print(parse->arena, "more than %d keys and list items", JOB_KEYS_MAX));
-    if (parse->depth == 0) {
+    if (parse->depth == 0)
         parse->root = node;
+    if (parse->depth == 0 || !first)
         return true;
-    }
     struct node *parent = parse->open[parse->depth - 1];
     struct node *newest = parse->newest[parse->depth];
     if (newest) {
@@ -148,22 +155,23 @@ static bool attach(struct parse *parse, struct node *node)
     return true;
 }
 
-/* The node that an event begins: the one whose key was just read, or a new one. NULL: stop. */
+/* The node that an event begins: the one whose key was just read, or a new one. NULL: stop. Of a
+   key that is there twice the first counts; the second is parsed, but hangs nowhere. */
 static struct node *node_begin(struct parse *parse, const yaml_event_t *event)
 {
     struct node *node = parse->waiting;
+    const struct node *before = NULL;
     parse->waiting = NULL;
     if (node) {
-        const struct node *before =
-            yaml_keys_put(&parse->keys, parse->arena, parse->open[parse->depth - 1], node);
-        if (before)
-            tell_duplicate(parse, node, before);
+        before = yaml_keys_put(&parse->keys, parse->arena, parse->open[parse->depth - 1], node);
     } else {
         node = arena_get(parse->arena, sizeof *node);
         node->text = "";
     }
     node->at = position_of(event->start_mark);
-    return attach(parse, node) ? node : NULL;
+    if (before)
+        tell_duplicate(parse, node, before);
+    return attach(parse, node, before == NULL) ? node : NULL;
 }
 
 static bool wants_key(const struct parse *parse)
@@ -243,7 +251,7 @@ static bool take_alias(struct parse *parse, const yaml_event_t *event)
     if (!node)
         return false;
     diagnostic_add(&parse->told, parse->source, node->at, DIAGNOSTIC_YAML_ALIAS,
-                   yaml_quoted_line_hint(parse->arena, parse->source, node->at.line),
+                   quoted_line(parse, node->at.line),
                    "'*' begins an alias, which a job file has no use for");
     node->damaged = true;
     node->end_line = node->at.line + 1;

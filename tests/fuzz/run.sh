@@ -1,0 +1,17 @@
+#!/bin/sh
+# run.sh BUILD: the reader on changed files, under AddressSanitizer and UBSan, for FUZZ_SECONDS
+# (default 10) from FUZZ_SEED (default 1).
+set -eu
+root=$(cd "$(dirname "$0")/../.." && pwd)
+build=$(cd "$1" && pwd)/fuzz
+sanitize="-fsanitize=address,undefined -fno-sanitize-recover=undefined"
+mkdir -p "$build"
+cd "$root"
+libraries="$build/libjob.a $build/libreference.a $build/libquantity.a $build/libbase.a"
+make -s BUILD="$build" EXTRA="$sanitize" $libraries >&2
+# shellcheck disable=SC2086
+${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc tests/fuzz/reader_fuzz.c $libraries \
+    -lyaml -lnettle -lm -o "$build/reader_fuzz"
+cd "$build"
+./reader_fuzz "${FUZZ_SECONDS:-10}" "${FUZZ_SEED:-1}" "$root"/tests/golden/diagnostics/*.yaml \
+    $(find "$root/jobs-example" -name '*.yaml')
