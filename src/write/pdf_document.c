@@ -87,6 +87,9 @@ static void describe(HPDF_Doc file, const struct document *document)
     info.created = (struct pdf_time){
         .year = document->date.year, .month = document->date.month, .day = document->date.day};
     pdf_archive_describe(file, &info);
+    if (document->language && *document->language)
+        HPDF_Dict_Add(file->catalog, "Lang",
+                      pdf_text_string(file, document->language, strlen(document->language)));
 }
 
 static double hex_pair(const char *text)

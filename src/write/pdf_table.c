@@ -216,7 +216,8 @@ static void box_of_words(const struct table_layout *layout, const struct table_r
                is_empty(&row->cells[last + 1]))
             last++;
         const struct column_layout *end = &layout->columns[last];
-        box->width = end->x + end->width - column->x;
+        box->x += after_number_pt;
+        box->width = end->x + end->width - box->x;
     }
     box->lines = text_lines_break(&runs, layout->composer->flow.resources, box->width);
 }
@@ -396,30 +397,32 @@ static void compose_cells(struct table_layout *layout, const struct table_row *r
         put_verticals(layout, composer->flow.strips[i]);
 }
 
-static void put_group_text(struct table_layout *layout, struct strip *strip, const char *text)
+/* A strip with a group's words; rarely more than one line. */
+static void fill_group(struct table_layout *layout, struct strip *strip, const char *text)
 {
+    enum { LINES_MAX = 8 };
     struct text_runs runs = runs_in(layout->composer);
     text_runs_add(&runs, text, cell_style(FACE_REGULAR, INK_SOFT));
     struct text_lines lines = text_lines_break(&runs, layout->composer->flow.resources,
                                                layout->composer->flow.page->text_width);
-    if (lines.count == 0)
-        return;
-    double baseline = group_pad_pt + line_baseline(type_table.leading, type_table.size);
-    strip_line(&layout->composer->flow, strip, &lines.items[0], (struct point){0, baseline});
+    double y = group_pad_pt;
+    for (size_t i = 0; i < lines.count && i < LINES_MAX; i++, y += type_table.leading)
+        strip_line(&layout->composer->flow, strip, &lines.items[i],
+                   (struct point){0, y + line_baseline(type_table.leading, type_table.size)});
+    strip->height = y + 0.5;
 }
 
 static void compose_group(struct table_layout *layout, const struct table_row *row, bool first)
 {
     struct flow *flow = &layout->composer->flow;
     const char *text = row->cells[0].text ? row->cells[0].text : "";
-    double height = group_pad_pt + type_table.leading + 0.5;
     flow->continued = NULL;
-    struct strip *strip = flow_strip(flow, height);
+    struct strip *strip = flow_strip(flow, 0);
     strip->top_rule = !first;
-    put_group_text(layout, strip, text);
+    fill_group(layout, strip, text);
     const char *word = layout->composer->document->continued;
-    struct strip *continued = flow_loose_strip(flow, height);
-    put_group_text(layout, continued, arena_print(flow->arena, "%s %s", text, word ? word : ""));
+    struct strip *continued = flow_loose_strip(flow, 0);
+    fill_group(layout, continued, arena_print(flow->arena, "%s %s", text, word ? word : ""));
     flow->continued = continued;
 }
 

@@ -7,7 +7,8 @@
 #include "sample_document.h"
 
 #include "base/file.h"
-#include "base/memory.h"
+
+#include <pthread.h>
 
 static struct pdf_resources *resources;
 
@@ -281,6 +282,37 @@ static void test_resources_that_are_missing(void **state)
     arena_release(&arena);
 }
 
+static void *make_in_thread(void *argument)
+{
+    struct arena arena = {0};
+    struct document *document = sample_document(&arena, 1);
+    struct made made = make(document);
+    struct buffer *file = argument;
+    if (made.good)
+        buffer_append(file, made.file.data, made.file.length);
+    made_release(&made);
+    sample_document_release(document);
+    arena_release(&arena);
+    return NULL;
+}
+
+/* Resources are only read: run under helgrind as well. */
+static void test_two_threads_share_the_resources(void **state)
+{
+    (void)state;
+    pthread_t threads[2];
+    struct buffer files[2] = {{0}};
+    for (size_t i = 0; i < 2; i++)
+        assert_int_equal(pthread_create(&threads[i], NULL, make_in_thread, &files[i]), 0);
+    for (size_t i = 0; i < 2; i++)
+        pthread_join(threads[i], NULL);
+    assert_true(files[0].length > 10000);
+    assert_int_equal(files[0].length, files[1].length);
+    assert_memory_equal(files[0].data, files[1].data, files[0].length);
+    buffer_release(&files[0]);
+    buffer_release(&files[1]);
+}
+
 static void test_awkward_text(void **state)
 {
     (void)state;
@@ -344,6 +376,7 @@ int main(int argc, char **argv)
         cmocka_unit_test(test_missing_signs_are_told),
         cmocka_unit_test(test_failure_leaves_the_buffer),
         cmocka_unit_test(test_resources_that_are_missing),
+        cmocka_unit_test(test_two_threads_share_the_resources),
         cmocka_unit_test(test_awkward_text),
     };
     struct arena arena = {0};
