@@ -199,6 +199,44 @@ static void check_capacitors(struct reader *reader)
     }
 }
 
+/* ---- what was done ---- */
+
+static bool node_says(const struct node *node, const char *key, const char *text)
+{
+    const struct node *child = node_child(node, key);
+    return child && child->kind == NODE_SCALAR && strcasecmp(child->text, text) == 0;
+}
+
+static void check_done(struct reader *reader, const struct node *node)
+{
+    static const char *const staying[] = {"kept", "kept untested", "reformed"};
+    const struct node *fitted = node_child(node, "fitted");
+    for (size_t i = 0; i < FIELD_COUNT_OF(staying); i++) {
+        if (!node_says(node, "done", staying[i]))
+            continue;
+        if (fitted && !node_is_empty(fitted))
+            reader_tell(reader, fitted->key_at, DIAGNOSTIC_CONTRADICTION,
+                        "'fitted' goes with replaced, restuffed or disconnected",
+                        "%s is %s, and something else was fitted", node->key, staying[i]);
+        if (node_says(node, "was", "missing"))
+            reader_tell(reader, node_child(node, "done")->key_at, DIAGNOSTIC_CONTRADICTION, NULL,
+                        "%s was missing, and is %s", node->key, staying[i]);
+    }
+}
+
+static void check_all_done(struct reader *reader)
+{
+    static const char *const sections[] = {"cans",     "capacitors", "resistors",
+                                           "windings", "controls",   "valves"};
+    for (size_t i = 0; i < FIELD_COUNT_OF(sections); i++) {
+        const struct node *section = node_child(reader->root, sections[i]);
+        if (!section || section->kind != NODE_MAPPING)
+            continue;
+        for (const struct node *node = section->first; node; node = node->next)
+            check_done(reader, node);
+    }
+}
+
 /* ---- stages and valves ---- */
 
 static void check_pushpull(struct reader *reader)
@@ -222,13 +260,9 @@ static void check_pushpull(struct reader *reader)
 /* The type of the whole valve: `ECL82 triode` is half of an ECL82. */
 static const char *whole_type(struct arena *arena, const char *type)
 {
-    static const char *const halves[] = {"triode", "pentode", "tetrode", "heptode",
-                                         "hexode", "diode",   "a",       "b"};
     const char *space = strrchr(type, ' ');
-    for (size_t i = 0; i < FIELD_COUNT_OF(halves) && space; i++) {
-        if (strcasecmp(space + 1, halves[i]) == 0)
-            return arena_text(arena, type, (size_t)(space - type));
-    }
+    if (space && valve_is_half(space + 1))
+        return arena_text(arena, type, (size_t)(space - type));
     return type;
 }
 
@@ -291,6 +325,7 @@ void job_check(struct reader *reader)
     check_number(reader);
     check_dates(reader);
     check_capacitors(reader);
+    check_all_done(reader);
     check_pushpull(reader);
     check_pairs(reader);
 }

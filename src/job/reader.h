@@ -92,6 +92,9 @@ void quantity_check(struct reader *reader, const struct quantity *quantity, cons
 void quantity_check_range(struct reader *reader, const struct quantity *quantity,
                           const struct field *field);
 
+/* `triode` of `ECL82 triode`: a word for half of a valve. In stage_fields.c. */
+bool valve_is_half(const char *word);
+
 /* The valves' types, said once in a stage or under `valves`. */
 void valves_join(struct reader *reader);
 

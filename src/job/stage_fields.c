@@ -25,44 +25,52 @@ static bool is_valve_ref(const char *text)
            strlen(text + 1 + digits) <= 1;
 }
 
-/* One word alone is a ref when it is listed or looks like one; else the type. */
+bool valve_is_half(const char *word)
+{
+    static const char *const halves[] = {"triode", "pentode", "tetrode", "heptode",
+                                         "hexode", "diode",   "a",       "b"};
+    for (size_t i = 0; i < FIELD_COUNT_OF(halves); i++) {
+        if (strcasecmp(word, halves[i]) == 0)
+            return true;
+    }
+    return false;
+}
+
+/* The first word is a ref when it is listed under valves or looks like one. Else `6V6 GT`, `EL 84`
+   and `ECL82 triode` are types, and `PL1 EL84` begins with a ref of another kind. */
+static bool begins_with_ref(const struct reader *reader, const char *word, const char *rest)
+{
+    const struct ref_entry *entry = ref_find(reader, word);
+    if ((entry && entry->kind == REF_VALVE) || is_valve_ref(word))
+        return true;
+    bool is_type = (word[0] >= '0' && word[0] <= '9') || !strpbrk(word, "0123456789");
+    return *rest && !is_type && !valve_is_half(rest);
+}
+
 static void valve_resolve(struct reader *reader, const struct node *node, void *target)
 {
     struct stage *stage = target;
-    (void)node;
-    const struct ref_entry *entry = ref_find(reader, stage->valve_ref);
-    if ((entry && entry->kind == REF_VALVE) || is_valve_ref(stage->valve_ref))
+    struct line line;
+    if (!reader_line(reader, "valve", node, &line))
         return;
-    stage->valve_type = stage->valve_ref;
-    stage->valve_ref = NULL;
+    const char *whole = arena_text(reader->arena, line.text, line.length);
+    size_t length = strcspn(whole, " ");
+    const char *word = arena_text(reader->arena, whole, length);
+    const char *rest = whole + length + strspn(whole + length, " ");
+    stage->valve_at = line.at;
+    if (begins_with_ref(reader, word, rest)) {
+        stage->valve_ref = word;
+        stage->valve_type = *rest ? rest : NULL;
+    } else {
+        stage->valve_type = whole;
+    }
 }
 
 static void valve_read(struct reader *reader, const struct field *field, const struct node *node,
                        void *record)
 {
-    struct stage *stage = record;
-    struct line line;
-    if (!reader_line(reader, field->key, node, &line))
-        return;
-    const char *space = memchr(line.text, ' ', line.length);
-    stage->valve_at = line.at;
-    if (!space) {
-        stage->valve_ref = arena_text(reader->arena, line.text, line.length);
-        reader_later(reader, valve_resolve, node, stage);
-        return;
-    }
-    const char *type = space;
-    while (*type == ' ')
-        type++;
-    stage->valve_type = arena_text(reader->arena, type, line.length - (size_t)(type - line.text));
-    stage->valve_ref = arena_text(reader->arena, line.text, (size_t)(space - line.text));
-    if (is_valve_ref(stage->valve_ref))
-        return;
-    /* `6V6 GT`: no ref before it. `PL1 EL84` has one, by any name. */
-    if (stage->valve_ref[0] >= '0' && stage->valve_ref[0] <= '9') {
-        stage->valve_type = arena_text(reader->arena, line.text, line.length);
-        stage->valve_ref = NULL;
-    }
+    (void)field;
+    reader_later(reader, valve_resolve, node, record);
 }
 
 /* ---- row ---- */

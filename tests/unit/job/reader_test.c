@@ -6,6 +6,7 @@
 #include "reading.h"
 
 #include <stdlib.h>
+#include <strings.h>
 
 static const char whole[] =
     "job: 1\n"
@@ -299,6 +300,42 @@ static void test_names_of_files(void **state)
     }
 }
 
+/* A valve's ref and type, however they are said. */
+static void test_valves(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *text, *ref, *type;
+    } rows[] = {
+        {"V4 6V6GT", "V4", "6V6GT"},
+        {"V3 ECL82 triode", "V3", "ECL82 triode"},
+        {"V2a ECC83", "V2a", "ECC83"},
+        {"6V6 GT", NULL, "6V6 GT"},
+        {"EL 84", NULL, "EL 84"},
+        {"EL84", NULL, "EL84"},
+        {"ECL82 triode", NULL, "ECL82 triode"},
+        {"PL1 EL84", "PL1", "EL84"},
+        {"out 6V6", "OUT", "6V6"},
+        {"V9", "V9", "EM80"},
+    };
+    for (size_t i = 0; i < sizeof rows / sizeof *rows; i++) {
+        char text[200];
+        struct reading_of_text reading;
+        snprintf(text, sizeof text,
+                 "job: 1\nset: {maker: x}\nstages: {a: {valve: %s}}\n"
+                 "valves: {OUT: {done: kept}, V9: {type: EM80}}\n",
+                 rows[i].text);
+        read_text(&reading, text);
+        assert_int_equal(reading.diagnostics.count, 0);
+        const struct stage *stage = &reading.job->stages[0];
+        assert_string_equal(stage->valve_type, rows[i].type);
+        assert_int_equal(stage->valve_ref != NULL, rows[i].ref != NULL);
+        if (rows[i].ref)
+            assert_true(strcasecmp(stage->valve_ref, rows[i].ref) == 0);
+        reading_release(&reading);
+    }
+}
+
 /* The input is never written to. */
 static void test_text_untouched(void **state)
 {
@@ -325,6 +362,7 @@ int main(void)
         cmocka_unit_test(test_silence_about_damage),
         cmocka_unit_test(test_names_of_files),
         cmocka_unit_test(test_text_untouched),
+        cmocka_unit_test(test_valves),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
