@@ -1,0 +1,195 @@
+/* Stages of a job: rows, circuits, phases, what the set itself showed. */
+#include "bench.h"
+
+#define ROW_6V6                                                                                    \
+    "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+
+static const struct stage_findings *stage(const struct bench *bench, const char *name)
+{
+    for (size_t i = 0; i < bench->findings->stage_count; i++)
+        if (strcmp(bench->findings->stages[i].stage->name, name) == 0)
+            return &bench->findings->stages[i];
+    fail_msg("no stage %s", name);
+    return NULL;
+}
+
+static void test_designed_found_left(void **state)
+{
+    (void)state;
+    struct bench bench;
+    /* 6V6GT with load and dropper (agrees with ngspice): HT 300, R_a 300, R_g2 10 k, R_k 253, R_g
+       470 k, 90 V through 20.1 M: V_g 2.0564, V_k 13.239, I_a 48.029, I_g2 4.2989 mA; no
+       leak 44.793, 4.0390, V_k 12.354. */
+    bench_assess(&bench, HEAD METER
+                 "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
+                 "    supply: 300 V\n    anode: 300 ohm\n    screen: 300 V 10k\n"
+                 "    cathode: 253 ohm\n    grid_leak: 470k\n"
+                 "    measured:\n      found: grid 2.0 V, cathode 13.2 V\n"
+                 "capacitors:\n  C1:\n    type: paper\n    marked: 0.02 uF 400 V\n"
+                 "    place: coupling\n    stage: output\n    source: 90 V\n    readings:\n"
+                 "      - 90 V 60 s 20.1 M\n      - 90 V 60 s over 90000 M left\n"
+                 "    done: restuffed\n    fitted: polypropylene 0.022 uF 630 V\n");
+    const struct stage_findings *found = stage(&bench, "output");
+    const struct stage_solution *designed = &found->phases[PHASE_DESIGNED].solution;
+    const struct stage_solution *leaking = &found->phases[PHASE_FOUND].solution;
+    assert_relative(designed->anode_a, 44.793e-3, 5e-5);
+    assert_relative(designed->cathode_v, 12.354, 5e-5);
+    assert_relative(leaking->grid_v, 2.0564, 2e-4);
+    assert_relative(leaking->anode_a, 48.029e-3, 5e-5);
+    assert_relative(leaking->screen_a, 4.2989e-3, 5e-5);
+    /* left: the new part's own reading, as good as none */
+    assert_relative(found->phases[PHASE_LEFT].solution.cathode_v, 12.354, 1e-3);
+    assert_true(found->row_given);
+    assert_true(found->is_output);
+    assert_true(isnan(found->grid_current_a)); /* explained */
+    bench_release(&bench);
+}
+
+static void test_contact_bias(void **state)
+{
+    (void)state;
+    struct bench bench;
+    /* 12AX7, 250 V, 220 k, 10 M: V_g -1.125 V; with 100 V through 1 G: -0.993 V (computed). */
+    bench_assess(
+        &bench, HEAD METER
+        "stages:\n  af:\n    valve: V2 12AX7\n    row: va 250 V, vg1 -2 V, ia 1.2 mA, "
+        "gm 1.6 mA/V, mu 100\n    supply: 250 V\n    anode: 220k\n    bias: contact\n"
+        "    grid_leak: 10 meg\ncapacitors:\n  C1:\n    type: paper\n"
+        "    marked: 0.01 uF 400 V\n    place: coupling\n    stage: af\n    source: 100 V\n"
+        "    readings:\n      - 100 V 60 s 1000 M\n");
+    const struct stage_findings *af = stage(&bench, "af");
+    assert_close(af->phases[PHASE_DESIGNED].solution.grid_v, -1.125, 0.002);
+    assert_close(af->phases[PHASE_FOUND].solution.grid_v, -0.993, 0.002);
+    assert_false(af->is_output);
+    /* 0.132 V of 1.125 V is 11.7 %: over 10 % */
+    assert_int_equal(bench.findings->capacitors[0].outcome, OUTCOME_FAIL);
+    bench_release(&bench);
+}
+
+static void test_valves_by_name(void **state)
+{
+    (void)state;
+    struct bench bench;
+    bench_assess(
+        &bench, HEAD METER
+        "stages:\n"
+        "  a:\n    valve: V1 ECL82\n    supply: 200 V\n    cathode: 2k\n"
+        "  b:\n    valve: V1 ECL82 triode\n    supply: 200 V\n    cathode: 2k\n"
+        "  c:\n    valve: V2 6V6GT\n    row: A1-251\n    supply: 250 V\n    cathode: 250 ohm\n"
+        "  d:\n    valve: V3 6v6 gt\n    supply: 250 V\n    cathode: 250 ohm\n"
+        "  e:\n    valve: V4 6ZZ9\n    supply: 250 V\n    cathode: 250 ohm\n"
+        "  f:\n    valve: V5\n    supply: 250 V\n    cathode: 1k\n"
+        "  g:\n    valve: V6 6V6GT\n    row: va 250 V, vg2 250 V\n    supply: 250 V\n"
+        "    cathode: 250 ohm\n"
+        "  h:\n    valve: V7 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, "
+        "ig2 4.5 mA\n    supply: 250 V\n    cathode: 250 ohm\n"
+        "valves:\n  V5: {type: 12AX7, tested: 80 %, done: kept}\n");
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_AMBIGUOUS), 1);
+    assert_null(stage(&bench, "a")->row_name);
+    assert_non_null(stage(&bench, "b")->row_name);
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_ROW_UNKNOWN), 1);
+    assert_non_null(stage(&bench, "c")->row_name); /* the nearest instead */
+    assert_non_null(stage(&bench, "d")->row_name);
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_UNKNOWN), 1);      /* 6ZZ9 */
+    assert_true(stage(&bench, "f")->phases[PHASE_DESIGNED].judged);          /* type under valves */
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_ROW_UNUSABLE), 2); /* g, h */
+    assert_int_equal(stage(&bench, "g")->phases[PHASE_DESIGNED].why, WHY_NO_ROW);
+    bench_release(&bench);
+}
+
+static void test_grid_current_is_what_leakage_leaves(void **state)
+{
+    (void)state;
+    struct bench bench;
+    bench_assess(
+        &bench,
+        HEAD "instruments:\n  leakage:\n    accuracy: 1 % + 0.001 uA\n    resolution: 0.001 uA\n"
+             "  volts:\n    accuracy: 1 % + 0.01 V\n    input: 10 meg\n"
+             "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
+             "    supply: 262.5 V\n    cathode: 252.5 ohm\n    grid_leak: 470k\n"
+             "    measured:\n      found: grid 4.0 V\n"
+             "capacitors:\n  C1:\n    type: paper\n    marked: 0.02 uF 400 V\n"
+             "    place: coupling\n    stage: output\n    source: 100 V\n    readings:\n"
+             "      - 100 V 60 s 46.53 M\n");
+    const struct stage_findings *output = stage(&bench, "output");
+    /* 100 V through 46.53 M into 470 k is 1.00 V, read 0.955 V through 470 k || 10 M = 448.9 k; 4.0
+       V leaves 3.045 V, 6.78 uA. */
+    assert_true(output->grid_current_advice);
+    assert_relative(output->grid_current_a, 6.78e-6, 0.003);
+    assert_true(output->grid_current_error_a < 0.2e-6);
+    assert_true(output->near_rating); /* 45 mA at 250 V is 11.25 W of 12 W */
+    bench_release(&bench);
+}
+
+static void test_anchor_on_a_lifted_cathode_voltage(void **state)
+{
+    (void)state;
+    struct bench bench;
+    bench_assess(&bench, HEAD METER "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
+                                    "    supply: 262.5 V\n    cathode: 252.5 ohm\n"
+                                    "    grid_leak: 470k\n    measured:\n"
+                                    "      found: cathode 10.1 V, lifted\n");
+    /* The valve's own 10.1 V/252.5 ohm = 40 mA. */
+    assert_relative(stage(&bench, "output")->phases[PHASE_FOUND].solution.cathode_a, 40e-3, 1e-3);
+    bench_release(&bench);
+}
+
+static void test_measured_resistors_and_joint_leaks(void **state)
+{
+    (void)state;
+    struct bench bench;
+    bench_assess(&bench, HEAD METER
+                 "resistors:\n  R1: {marked: 250 ohm 1 W, measured: 300 ohm, done: replaced, "
+                 "fitted: 250 ohm 2 W}\n  R2: {marked: 470k, measured: 520k, done: kept}\n"
+                 "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
+                 "    supply: 262.5 V\n    cathode: R1\n    grid_leak: R2\ncapacitors:\n"
+                 "  C1:\n    type: paper\n    marked: 0.02 uF 400 V\n    place: coupling\n"
+                 "    stage: output\n    source: 100 V\n    readings:\n      - 100 V 60 s 32 M\n"
+                 "  C2:\n    type: paper\n    marked: 25 uF 25 V\n    place: cathode bypass\n"
+                 "    stage: output\n    readings:\n      - 15 V 60 s 6 mA\n");
+    const struct stage_findings *output = stage(&bench, "output");
+    assert_true(output->phases[PHASE_FOUND].no_leak_cathode_a <
+                output->phases[PHASE_DESIGNED].no_leak_cathode_a);
+    assert_relative(output->phases[PHASE_LEFT].no_leak_cathode_a,
+                    output->phases[PHASE_DESIGNED].no_leak_cathode_a, 1e-9);
+    const struct capacitor_findings *part = bench_part(&bench, "C1");
+    const struct criterion *single = bench_criterion(part, CRITERION_CATHODE_CURRENT, false);
+    const struct criterion *joint = bench_criterion(part, CRITERION_CATHODE_CURRENT, true);
+    assert_non_null(single);
+    assert_non_null(joint);
+    assert_true(joint->value > single->value);
+    /* two measured resistors, 3 % each, count besides the meter */
+    assert_true(single->uncertainty > 0.01 * single->value);
+    bench_release(&bench);
+}
+
+static void test_more_than_eight_on_one_resistor(void **state)
+{
+    (void)state;
+    char text[8192];
+    struct bench bench;
+    int length = snprintf(text, sizeof text,
+                          HEAD "resistors:\n  R1: {marked: 10 ohm 5 W, done: kept}\nstages:\n");
+    for (int i = 0; i < 10; i++)
+        length += snprintf(text + length, sizeof text - (size_t)length,
+                           "  s%d:\n    valve: V%d 6V6GT\n    supply: 250 V\n    cathode: R1\n", i,
+                           i + 1);
+    bench_assess(&bench, text);
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_STAGES_TOO_MANY), 1);
+    assert_true(stage(&bench, "s9")->phases[PHASE_DESIGNED].judged);
+    bench_release(&bench);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(test_designed_found_left),
+        cmocka_unit_test(test_contact_bias),
+        cmocka_unit_test(test_valves_by_name),
+        cmocka_unit_test(test_grid_current_is_what_leakage_leaves),
+        cmocka_unit_test(test_anchor_on_a_lifted_cathode_voltage),
+        cmocka_unit_test(test_measured_resistors_and_joint_leaks),
+        cmocka_unit_test(test_more_than_eight_on_one_resistor),
+    };
+    return cmocka_run_group_tests(tests, NULL, NULL);
+}
