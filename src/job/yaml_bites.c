@@ -281,10 +281,11 @@ static bool bites(const struct bite_search *search, const struct cut_line *line,
 
 bool yaml_bite_find(const struct bite_search *search, struct bite *bite)
 {
-    const char *cursor = search->text, *end = search->text + search->length;
+    const char *cursor = search->text + search->from, *end = search->text + search->length;
     bool in_block = false;
     size_t block_indent = 0;
-    for (unsigned number = 1; cursor < end && number <= search->last_line; number++) {
+    for (unsigned number = search->from_line; cursor < end && number <= search->last_line;
+         number++) {
         const char *stop = memchr(cursor, '\n', (size_t)(end - cursor));
         stop = stop ? stop : end;
         const char *line_end = stop > cursor && stop[-1] == '\r' ? stop - 1 : stop;

@@ -27,13 +27,16 @@ struct bite {
     size_t blank_to;   /* or, without a key, the whole line */
 };
 
-/* The first bite in text[from..) on or before last_line; false: none. Texts are the arena's. */
+/* Where to look: from the start of a line that is not inside a block of text. */
 struct bite_search {
-    struct arena *arena;
+    struct arena *arena; /* owns the texts of a bite */
     const char *text;
     size_t length;
+    size_t from;
+    unsigned from_line; /* number of the line at `from`, from 1 */
     unsigned last_line;
 };
+/* The first bite up to last_line; false: none. */
 bool yaml_bite_find(const struct bite_search *search, struct bite *bite);
 
 /* The bite of one value that libyaml accepted but that means something else: `*R12`, `&x`, `!x`. */

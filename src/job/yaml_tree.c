@@ -81,14 +81,20 @@ static bool blank_bites(struct repair *repair, unsigned last_line)
 {
     bool any = false;
     struct bite bite;
+    struct bite_search search = {
+        .arena = repair->arena, .length = repair->length, .from_line = 1, .last_line = last_line};
     while (repair->damage_count < DAMAGE_MAX) {
-        struct bite_search search = {repair->arena, repair->text, repair->length, last_line};
+        search.text = repair->text; /* the copy, from the first repair on */
         if (!yaml_bite_find(&search, &bite))
             break;
         diagnostic_add(repair->diagnostics, repair->source, bite.at, DIAGNOSTIC_YAML_NOTATION,
                        bite.hint, "%s", bite.text);
         blank(repair, bite.blank_from, bite.blank_to, bite.at.line);
         any = true;
+        search.from = bite.blank_to;
+        while (search.from < search.length && repair->text[search.from++] != '\n')
+            continue;
+        search.from_line = bite.at.line + 1;
     }
     return any;
 }

@@ -145,6 +145,28 @@ static void test_bounds(void **state)
     }
 }
 
+/* A key that is there twice is found among thousands, whatever the mapping; the first counts. */
+static void test_duplicates(void **state)
+{
+    (void)state;
+    struct buffer text = {0};
+    struct tree tree;
+    buffer_text(&text, "a:\n");
+    for (int i = 0; i < 4000; i++)
+        buffer_print(&text, "  k%d: {x: %d}\n", i, i);
+    buffer_text(&text, "  k7: {x: other}\nb: {k7: 1}\nA: 1\n");
+    struct source source = source_of(buffer_string(&text));
+    tree_read(&tree, &source);
+    assert_int_equal(tree.diagnostics.count, 1);
+    assert_int_equal(tree.diagnostics.items[0].code, DIAGNOSTIC_DUPLICATE_KEY);
+    assert_int_equal(tree.diagnostics.items[0].at.line, 4002);
+    const struct node *table = node_child(tree.root, "a");
+    assert_int_equal(table->count, 4000);
+    assert_string_equal(node_child(node_child(table, "k7"), "x")->text, "7");
+    arena_release(&tree.arena);
+    buffer_release(&text);
+}
+
 /* 31 levels under the root mapping are allowed. */
 static void test_depth_allowed(void **state)
 {
@@ -202,6 +224,7 @@ int main(void)
         cmocka_unit_test(test_bounds),
         cmocka_unit_test(test_depth_allowed),
         cmocka_unit_test(test_scalars_round_trip),
+        cmocka_unit_test(test_duplicates),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
