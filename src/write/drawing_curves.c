@@ -17,7 +17,8 @@ struct layout {
     struct panel panels[PANELS];
     size_t panel_count;
     struct scale current, volts;
-    double floor; /* y of the time axis */
+    double floor;                      /* y of the time axis */
+    double limit_left, limit_baseline; /* of the limit's words when they stand in a panel */
     bool has_volts, limit_shown;
 };
 
@@ -274,10 +275,23 @@ static void draw_frame(struct sketch *sketch, const struct layout *layout)
 
 /* ---- limit */
 
-static void draw_limit(struct sketch *sketch, const struct layout *layout)
+/* The words above the line at the right edge, below it where that would leave the panel. */
+static void draw_limit_in_panel(struct sketch *sketch, struct layout *layout, double y, double edge)
 {
     const struct curves *curves = layout->curves;
-    struct lettering word = {.text_class = TEXT_LIMIT, .small = layout->narrow};
+    struct lettering word = {.text_class = TEXT_LIMIT, .anchor = ANCHOR_END, .small = true};
+    const char *text = curves->limit_text ? arena_print(sketch->arena, "%s %s", curves->limit_word,
+                                                        curves->limit_text)
+                                          : curves->limit_word;
+    layout->limit_baseline = y - 5 < layout->current.to + 6 ? y + 13 : y - 5;
+    layout->limit_left = edge - lettering_width(text, word);
+    sketch_text(sketch, (struct point){edge, layout->limit_baseline}, text, word);
+}
+
+static void draw_limit(struct sketch *sketch, struct layout *layout)
+{
+    const struct curves *curves = layout->curves;
+    struct lettering word = {.text_class = TEXT_LIMIT};
     if (!(curves->limit > 0))
         return;
     double y = scale_at(&layout->current, curves->limit);
@@ -287,18 +301,13 @@ static void draw_limit(struct sketch *sketch, const struct layout *layout)
     else
         sketch_arrow(sketch, (struct point){right - 3, y + 12}, (struct point){right - 3, y});
     if (layout->narrow) {
-        word.anchor = ANCHOR_END;
-        const char *text = curves->limit_text ? arena_print(sketch->arena, "%s %s",
-                                                            curves->limit_word, curves->limit_text)
-                                              : curves->limit_word;
-        double edge = layout->limit_shown ? right : right - 9;
-        /* Above the line, below it where that would leave the panel. */
-        double baseline = y - 5 < layout->current.to + 6 ? y + 13 : y - 5;
-        sketch_text(sketch, (struct point){edge, baseline}, text, word);
+        draw_limit_in_panel(sketch, layout, y, layout->limit_shown ? right : right - 9);
         return;
     }
-    sketch_text(sketch, (struct point){right + 6, y - 1}, curves->limit_word, word);
-    sketch_text(sketch, (struct point){right + 6, y + 12}, curves->limit_text, word);
+    /* Beside the line's end, lifted where the labels of the time axis are near. */
+    double baseline = fmin(y - 1, layout->current.from - 9);
+    sketch_text(sketch, (struct point){right + 6, baseline}, curves->limit_word, word);
+    sketch_text(sketch, (struct point){right + 6, baseline + 13}, curves->limit_text, word);
 }
 
 /* ---- curves */
@@ -382,17 +391,28 @@ static void draw_fit(struct sketch *sketch, const struct layout *layout, const s
     sketch_path(sketch, points, curve->fit_count, LINE_CURVE);
 }
 
-/* Above or below the reading: where neither the limit line nor the panel's edge is near. */
-static double deciding_baseline(const struct layout *layout, struct point at)
+static bool clear_of_limit(const struct layout *layout, double right, double baseline)
 {
-    double below = at.y + 17, above = at.y - 9;
-    if (below > layout->current.from - 2)
-        return above;
-    if (!layout->limit_shown)
-        return below;
-    double limit = scale_at(&layout->current, layout->curves->limit);
-    bool met = limit > at.y && limit < below + 4;
-    return met && above - 9 > layout->current.to ? above : below;
+    double top = baseline - 9;
+    bool words = layout->limit_baseline > 0 && right > layout->limit_left &&
+                 fabs(layout->limit_baseline - baseline) < 11;
+    double line = scale_at(&layout->current, layout->curves->limit);
+    bool crossed = layout->limit_shown && line > top - 2 && line < baseline + 3;
+    return !words && !crossed;
+}
+
+/* Below the reading or above it, further off where the limit is in the way. */
+static double deciding_baseline(const struct layout *layout, struct point at, double right)
+{
+    const double offsets[] = {17, -9, 31, -23, 45, -37};
+    double otherwise = at.y - 9;
+    for (int i = 0; i < 6; i++) {
+        double baseline = at.y + offsets[i];
+        bool inside = baseline <= layout->current.from - 2 && baseline - 9 >= layout->current.to;
+        if (inside && clear_of_limit(layout, right, baseline))
+            return baseline;
+    }
+    return otherwise;
 }
 
 static void draw_readings(struct sketch *sketch, const struct layout *layout,
@@ -411,7 +431,7 @@ static void draw_readings(struct sketch *sketch, const struct layout *layout,
             .text_class = TEXT_STRONG, .anchor = ANCHOR_MIDDLE, .small = layout->narrow};
         double half = lettering_width(layout->curves->deciding_text, value) / 2, x = at.x;
         x = fmax(fmin(x, panel->right - half), panel->left + half + 2);
-        sketch_text(sketch, (struct point){x, deciding_baseline(layout, at)},
+        sketch_text(sketch, (struct point){x, deciding_baseline(layout, at, x + half)},
                     layout->curves->deciding_text, value);
     }
 }

@@ -225,7 +225,7 @@ static void draw_ratio(struct sketch *sketch, const struct layout *layout,
     if (row->at_most || row->ratio < layout->scale.low)
         sketch_arrow(sketch, (struct point){at.x - edge, middle},
                      (struct point){at.x - edge - 9, middle});
-    else if (row->ratio > layout->scale.high)
+    else if (row->at_least || row->ratio > layout->scale.high)
         sketch_arrow(sketch, (struct point){at.x + edge, middle},
                      (struct point){at.x + edge + 9, middle});
     sketch_mark(sketch, row->mark, at);

@@ -48,6 +48,8 @@ static void draw_scale(char *line, const struct glance_row *row)
     line[at] = mark_letter(row->mark);
     if (row->at_most && at > 0)
         line[at - 1] = '<';
+    if (row->at_least && at + 1 < SCALE)
+        line[at + 1] = '>';
 }
 
 /* "1/1000  1/100   1/10    limit   10 ×    100 ×", each label from its decade on. */

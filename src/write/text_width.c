@@ -39,8 +39,8 @@ static unsigned advance_of(uint32_t code_point, bool semibold)
     for (size_t i = 0; i < sizeof signs / sizeof signs[0]; i++)
         if (signs[i].code_point == code_point)
             return semibold ? signs[i].semibold : signs[i].regular;
-    /* Lower-case letters with accents: the widest plain ones but m. */
-    return code_point >= 0xdf && code_point < 0x180 ? 700 : WIDE;
+    /* Small letters with accents are as wide as those without; all but the ligature. */
+    return code_point >= 0xe0 && code_point <= 0xff && code_point != 0xe6 ? 640 : WIDE;
 }
 
 unsigned text_width_milli(const char *text, bool semibold)
