@@ -1,8 +1,6 @@
 #include "write/json_pieces.h"
 
 #include <math.h>
-#include <stdio.h>
-#include <stdlib.h>
 #include <string.h>
 
 void json_string(struct buffer *out, const char *text)
@@ -33,25 +31,6 @@ void json_string(struct buffer *out, const char *text)
     }
     buffer_append(out, plain, strlen(plain));
     buffer_byte(out, '"');
-}
-
-void json_number(struct buffer *out, double value)
-{
-    if (!isfinite(value)) {
-        buffer_text(out, "null");
-        return;
-    }
-    if (value == rint(value) && fabs(value) < 1e15) {
-        buffer_decimal(out, (long long)value);
-        return;
-    }
-    char text[32];
-    for (int digits = 15; digits <= 17; digits++) {
-        snprintf(text, sizeof text, "%.*g", digits, value);
-        if (digits == 17 || strtod(text, NULL) == value)
-            break;
-    }
-    buffer_text(out, text);
 }
 
 static void comma(struct buffer *out)

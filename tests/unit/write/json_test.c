@@ -8,7 +8,7 @@
 static void test_numbers_read_back_the_same(void **state)
 {
     (void)state;
-    /* shortest forms: what Python 3 prints for the same double */
+    /* shortest digits: those that Python 3 prints for the same double */
     static const struct {
         double value;
         const char *text;
@@ -17,23 +17,23 @@ static void test_numbers_read_back_the_same(void **state)
         {1, "1"},
         {-3, "-3"},
         {0.1, "0.1"},
-        {2.4e-6, "2.4e-06"},
+        {2.4e-6, "2.4e-6"},
         {1.0 / 3, "0.3333333333333333"},
         {0.1 + 0.2, "0.30000000000000004"},
-        {1e22, "1e+22"},
+        {1e22, "1e22"},
         {1e-320, "1e-320"},
         {5e-324, "5e-324"},
-        {1.7976931348623157e308, "1.7976931348623157e+308"},
-        {9007199254740993e3, "9.007199254740992e+18"},
+        {1.7976931348623157e308, "1.7976931348623157e308"},
+        {9007199254740993e3, "9.007199254740993e18"},
         {123456.789, "123456.789"},
-        {4.7e-9, "4.7e-09"},
+        {4.7e-9, "4.7e-9"},
     };
     struct buffer out = {0};
     for (size_t i = 0; i < sizeof rows / sizeof rows[0]; i++) {
         buffer_clear(&out);
         json_number(&out, rows[i].value);
         assert_true(strtod(buffer_string(&out), NULL) == rows[i].value);
-        assert_true(strlen(buffer_string(&out)) <= strlen(rows[i].text));
+        assert_string_equal(buffer_string(&out), rows[i].text);
     }
     /* a walk over doubles of all sizes */
     unsigned long long bits = 88172645463325252ULL;
@@ -135,7 +135,7 @@ static void test_findings(void **state)
         "\"year_first\":1951",
         "\"name\":\"Zacharias Quill\"",
         "\"ref\":\"C1\"",
-        "\"value_f\":2e-08",
+        "\"value_f\":2e-8",
         "\"rated_v\":400",
         "\"bound\":\"under\"",
         "\"price\":\"12.50\"",
