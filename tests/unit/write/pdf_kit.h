@@ -11,8 +11,8 @@
 #include <stdlib.h>
 #include <string.h>
 
-/* BUILD/tests/unit/write/x_test: BUILD/share/gridleak/fonts, where make copies them; else the
-   folders of the Debian packages, linked into one. Belongs to the caller (free). */
+/* Of BUILD/tests/unit/write/x_test: BUILD/share/gridleak/fonts, where make copies the fonts.
+   Belongs to the caller (free). */
 static inline char *pdf_fonts_folder(const char *program)
 {
     const char *tests = strstr(program, "/tests/unit/");
