@@ -92,18 +92,20 @@ void escape_markdown(struct buffer *out, const char *text)
         buffer_byte(out, text[beginning - 1]);
         text += beginning;
     }
+    const char *run = text;
     for (; *text; text++) {
         unsigned char c = (unsigned char)*text;
-        if (c == '\n' || c == '\r' || c == '\t') {
+        bool control = c < 0x20 || c == 0x7f;
+        if (!control && !is_markup(text))
+            continue;
+        buffer_append(out, run, (size_t)(text - run));
+        run = control ? text + 1 : text;
+        if (c == '\n' || c == '\r' || c == '\t')
             buffer_byte(out, ' ');
-        } else if (c < 0x20 || c == 0x7f) {
-            buffer_text(out, replacement);
-        } else {
-            if (is_markup(text))
-                buffer_byte(out, '\\');
-            buffer_byte(out, *text);
-        }
+        else
+            buffer_text(out, control ? replacement : "\\");
     }
+    buffer_append(out, run, (size_t)(text - run));
 }
 
 void escape_css(struct buffer *out, const char *text)
@@ -129,6 +131,12 @@ void escape_terminal(struct buffer *out, const char *text)
     const char *end = text + strlen(text);
     while (text < end) {
         const char *start = text;
+        while (*text >= 0x20 && *text < 0x7f)
+            text++;
+        buffer_append(out, start, (size_t)(text - start));
+        if (text == end)
+            break;
+        start = text;
         uint32_t sign = utf8_next(&text, end);
         bool space = sign == '\n' || sign == '\r' || sign == '\t' || sign == 0xa0 ||
                      sign == 0x2009 || sign == 0x202f;

@@ -20,9 +20,25 @@ static const char file_rules[] =
     ".ci2{stroke:#55595c;stroke-width:.9}.band{fill:#cfdde7}.bar{fill:#1a1b1c}"
     ".mk{stroke:#1a1b1c;stroke-width:1.15;fill:#fdfdfb}.in{fill:#1a1b1c}.hollow{fill:none}";
 
+/* One decimal at most. Drawings are mostly coordinates: this is the hot path of a page. */
 static void coordinate(struct buffer *out, double value)
 {
-    buffer_fixed(out, value, 1);
+    char digits[24];
+    char *end = digits + sizeof digits, *start = end;
+    long tenths = (long)(value * 10 + (value < 0 ? -0.5 : 0.5));
+    unsigned long rest = tenths < 0 ? 0 - (unsigned long)tenths : (unsigned long)tenths;
+    if (rest % 10 != 0) {
+        *--start = (char)('0' + rest % 10);
+        *--start = '.';
+    }
+    rest /= 10;
+    do {
+        *--start = (char)('0' + rest % 10);
+        rest /= 10;
+    } while (rest);
+    if (tenths < 0)
+        *--start = '-';
+    buffer_append(out, start, (size_t)(end - start));
 }
 
 static const char *line_name(enum line_class line)

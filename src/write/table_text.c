@@ -26,6 +26,8 @@ static size_t columns_of(const char *text)
 static const char *escaped(const struct composing *composing, const char *open, const char *text,
                            const char *close)
 {
+    if (!text || (!text[0] && !open[0] && !close[0]))
+        return "";
     struct buffer out = {0};
     buffer_text(&out, open);
     composing->style->escape(&out, text);
@@ -75,24 +77,15 @@ static size_t larger(size_t one, size_t other)
     return one > other ? one : other;
 }
 
-static struct slots slots_of(const struct composing *composing, const struct table *table,
-                             size_t column)
+static void widen(struct slots *slots, const struct parts *parts, bool number)
 {
-    struct slots slots = {0};
-    for (size_t i = 0; i < table->row_count; i++) {
-        const struct cell *cell = &table->rows[i].cells[column];
-        if (table->rows[i].group)
-            continue;
-        struct parts parts = parts_of(composing, cell);
-        /* Words in a number column do not widen its slots. */
-        if (cell->figures.whole) {
-            slots.lead = larger(slots.lead, columns_of(parts.lead));
-            slots.tail = larger(slots.tail, columns_of(parts.tail));
-            slots.unit = larger(slots.unit, columns_of(parts.unit));
-        }
-        slots.second = larger(slots.second, columns_of(parts.second));
+    /* Words in a number column do not widen its slots. */
+    if (number) {
+        slots->lead = larger(slots->lead, columns_of(parts->lead));
+        slots->tail = larger(slots->tail, columns_of(parts->tail));
+        slots->unit = larger(slots->unit, columns_of(parts->unit));
     }
-    return slots;
+    slots->second = larger(slots->second, columns_of(parts->second));
 }
 
 static void pad(struct buffer *out, size_t columns)
@@ -111,26 +104,25 @@ static void append_slot(struct buffer *out, const char *text, size_t slot, bool 
         pad(out, rest);
 }
 
-static const char *number_text(const struct composing *composing, const struct cell *cell,
-                               const struct slots *slots)
+static const char *number_text(const struct composing *composing, const struct parts *parts,
+                               bool number, const struct slots *slots)
 {
-    struct parts parts = parts_of(composing, cell);
-    if (!parts.lead[0] && !parts.second[0])
+    if (!parts->lead[0] && !parts->second[0])
         return "";
     struct buffer out = {0};
-    if (cell->figures.whole) {
-        append_slot(&out, parts.lead, slots->lead, true);
-        append_slot(&out, parts.tail, slots->tail, false);
+    if (number) {
+        append_slot(&out, parts->lead, slots->lead, true);
+        append_slot(&out, parts->tail, slots->tail, false);
         if (slots->unit) {
             buffer_byte(&out, ' ');
-            append_slot(&out, parts.unit, slots->unit, false);
+            append_slot(&out, parts->unit, slots->unit, false);
         }
     } else {
-        buffer_text(&out, parts.lead);
+        buffer_text(&out, parts->lead);
     }
     if (slots->second) {
         buffer_byte(&out, ' ');
-        append_slot(&out, parts.second, slots->second, true);
+        append_slot(&out, parts->second, slots->second, true);
     }
     const char *text = arena_text(composing->arena, out.data, out.length);
     buffer_release(&out);
@@ -183,29 +175,49 @@ static const char *head_text(const struct composing *composing, const struct col
     return text;
 }
 
+static const char **cell_at(struct table_text *text, size_t row, size_t column)
+{
+    return &text->cells[row * text->table->column_count + column];
+}
+
+static void compose_numbers(const struct composing *composing, struct table_text *text,
+                            size_t column)
+{
+    const struct table *table = text->table;
+    struct parts *parts = arena_array(composing->arena, table->row_count, sizeof *parts);
+    struct slots slots = {0};
+    for (size_t i = 0; i < table->row_count; i++) {
+        const struct cell *cell = &table->rows[i].cells[column];
+        if (table->rows[i].group)
+            continue;
+        parts[i] = parts_of(composing, cell);
+        widen(&slots, &parts[i], cell->figures.whole != NULL);
+    }
+    for (size_t i = 0; i < table->row_count; i++)
+        if (!table->rows[i].group)
+            *cell_at(text, i, column) = number_text(
+                composing, &parts[i], table->rows[i].cells[column].figures.whole, &slots);
+}
+
 static void compose_column(const struct composing *composing, struct table_text *text,
                            size_t column)
 {
     const struct table *table = text->table;
     enum column_kind kind = table->columns[column].kind;
-    struct slots slots = {0};
-    if (kind == COLUMN_NUMBER)
-        slots = slots_of(composing, table, column);
     text->heads[column] = head_text(composing, &table->columns[column]);
     text->widths[column] = columns_of(text->heads[column]);
     text->aligned_right[column] = kind == COLUMN_NUMBER;
+    if (kind == COLUMN_NUMBER)
+        compose_numbers(composing, text, column);
     for (size_t i = 0; i < table->row_count; i++) {
-        const struct table_row *row = &table->rows[i];
-        const char **cell = &text->cells[i * table->column_count + column];
-        *cell = "";
-        if (row->group) {
-            if (column == 0)
-                *cell = escaped(composing, "", row->cells[0].text, "");
-            continue;
-        }
-        *cell = kind == COLUMN_NUMBER ? number_text(composing, &row->cells[column], &slots)
-                                      : words_text(composing, &row->cells[column], kind);
-        text->widths[column] = larger(text->widths[column], columns_of(*cell));
+        const struct cell *cell = &table->rows[i].cells[column];
+        const char **made = cell_at(text, i, column);
+        if (table->rows[i].group)
+            *made = column == 0 ? escaped(composing, "", cell->text, "") : "";
+        else if (kind != COLUMN_NUMBER)
+            *made = words_text(composing, cell, kind);
+        if (!table->rows[i].group)
+            text->widths[column] = larger(text->widths[column], columns_of(*made));
     }
 }
 
