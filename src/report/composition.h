@@ -69,6 +69,8 @@ struct cell *table_row(struct table_builder *builder);
 void table_group(struct table_builder *builder, const char *text);
 /* Note `text` for a cell: equal notes share their number. NULL: none. */
 void table_note(struct table_builder *builder, struct cell *cell, const char *text);
+/* Take out columns in which no cell says anything, but the first and those to be written in. */
+void table_drop_empty(struct table_builder *builder);
 /* Number it, give it its caption and place it; a table without rows is dropped. */
 void table_place(struct table_builder *builder, enum numbered kind, const char *caption);
 
@@ -81,12 +83,19 @@ struct figures figures_unit(const struct composition *composition, double value,
                             unsigned digits);
 const char *text_unit(const struct composition *composition, double value, enum unit unit,
                       unsigned digits);
+/* The same for values that were set, not measured: 50 V and 45 °C without idle zeros. */
+const char *text_set(struct arena *arena, double value, enum unit unit, unsigned digits);
+/* Leakage is given in µA everywhere, so that text, table and plot compare. NaN gives NULL. */
+const char *text_micro(struct arena *arena, double ampere, unsigned digits);
 /* "+2.4 V", "−5 %", "0 %". */
 const char *text_signed(struct arena *arena, double value, enum unit unit, unsigned digits);
 /* A quantity of the job with the figures that were typed, bound included: "> 100 MΩ". */
 struct figures figures_quantity(const struct composition *composition,
                                 const struct quantity *quantity);
 const char *text_quantity(const struct composition *composition, const struct quantity *quantity);
+/* Volts with the figures that were typed, a tenth at most. */
+struct figures figures_volts(const struct composition *composition,
+                             const struct quantity *quantity);
 /* value with only its first `digits` figures kept; up: rounded away from zero. */
 double round_figures(double value, unsigned digits, bool up);
 
@@ -97,10 +106,17 @@ const char *text_marking(const struct composition *composition, const struct mar
 /* Words joined with ", " and the like, NULL and "" left out. */
 const char *text_join(struct arena *arena, const char *separator, const char *const *texts,
                       size_t count);
-/* "Fail" for "fail": the first letter of a sentence. */
+/* A sentence of a text as typed: its first letter; its full stop. NULL stays NULL. */
 const char *text_sentence(struct arena *arena, const char *text);
+const char *text_stopped(struct arena *arena, const char *text);
+/* "0.02 uA" as typed, with its sign: "0.02 µA". */
+const char *text_with_micro(struct arena *arena, const char *text);
 
 /* ---- what several exhibits ask of a part */
+
+/* The deciding reading in µA: three figures, none finer than the instrument shows; the bound. */
+struct figures leakage_figures(const struct composition *composition,
+                               const struct capacitor_findings *part);
 
 enum mark mark_of(enum outcome outcome);
 const char *date_text(const struct date *date);

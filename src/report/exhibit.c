@@ -97,6 +97,49 @@ void table_note(struct table_builder *builder, struct cell *cell, const char *te
                       : arena_print(builder->composition->arena, "%zu", number);
 }
 
+static bool cell_is_empty(const struct cell *cell)
+{
+    return (!cell->text || !*cell->text) && !cell->figures.whole && !cell->second &&
+           !cell->second_figures.whole && !cell->notes;
+}
+
+static bool column_is_empty(const struct table *table, size_t column)
+{
+    if (column == 0 || table->columns[column].kind == COLUMN_BLANK)
+        return false;
+    for (size_t i = 0; i < table->row_count; i++)
+        if (!table->rows[i].group && !cell_is_empty(&table->rows[i].cells[column]))
+            return false;
+    return true;
+}
+
+static void drop_column(struct table *table, size_t column)
+{
+    size_t behind = table->column_count - column - 1;
+    memmove(&table->columns[column], &table->columns[column + 1], behind * sizeof *table->columns);
+    for (size_t i = 0; i < table->row_count; i++) {
+        struct cell *cells = table->rows[i].cells;
+        memmove(&cells[column], &cells[column + 1], behind * sizeof *cells);
+    }
+    table->column_count--;
+}
+
+void table_drop_empty(struct table_builder *builder)
+{
+    struct table *table = builder->table;
+    double before = 0, after = 0;
+    for (size_t i = table->column_count; i > 0; i--) {
+        double width = table->columns[i - 1].width_percent;
+        bool empty = column_is_empty(table, i - 1);
+        before += width;
+        after += empty ? 0 : width;
+        if (empty)
+            drop_column(table, i - 1);
+    }
+    for (size_t i = 0; i < table->column_count && after > 0; i++)
+        table->columns[i].width_percent *= before / after;
+}
+
 void table_place(struct table_builder *builder, enum numbered kind, const char *caption)
 {
     if (builder->table->row_count == 0)
@@ -134,18 +177,44 @@ struct figures figures_micro(const struct composition *composition, double amper
                          isfinite(value) ? decimals_for(value, 1e-6, digits) : 0);
 }
 
+/* As many figures as it takes to show the value to `most` figures: 0.02, 0.047, 12.5. */
+static unsigned digits_needed(double value, unsigned most)
+{
+    unsigned digits = 1;
+    double wanted = round_figures(value, most, false);
+    while (digits < most &&
+           fabs(round_figures(value, digits, false) - wanted) > 1e-9 * fabs(wanted))
+        digits++;
+    return digits;
+}
+
 struct figures figures_unit(const struct composition *composition, double value, enum unit unit,
                             unsigned digits)
 {
     if (!isfinite(value))
         return (struct figures){0};
-    return figures_of(composition->arena, value, unit, digits);
+    return figures_of(composition->arena, value, unit, digits_needed(value, digits));
+}
+
+const char *text_set(struct arena *arena, double value, enum unit unit, unsigned digits)
+{
+    return isfinite(value) ? quantity_text(arena, value, unit, digits_needed(value, digits)) : NULL;
 }
 
 const char *text_unit(const struct composition *composition, double value, enum unit unit,
                       unsigned digits)
 {
-    return isfinite(value) ? quantity_text(composition->arena, value, unit, digits) : NULL;
+    return text_set(composition->arena, value, unit, digits);
+}
+
+const char *text_micro(struct arena *arena, double ampere, unsigned digits)
+{
+    if (!isfinite(ampere))
+        return NULL;
+    double value = round_figures(ampere, digits, false);
+    struct figures figures =
+        figures_scaled(arena, value, 1e-6, "µA", decimals_for(value, 1e-6, digits));
+    return figures_text(arena, &figures);
 }
 
 const char *text_signed(struct arena *arena, double value, enum unit unit, unsigned digits)
@@ -154,24 +223,30 @@ const char *text_signed(struct arena *arena, double value, enum unit unit, unsig
     return value > 0 ? arena_print(arena, "+%s", text) : text;
 }
 
-/* As many figures as it takes to show what was typed: 0.02, 0.047, 12.5. */
-static unsigned digits_typed(double value)
-{
-    enum { DIGITS_MAX = 6 };
-    unsigned digits = 1;
-    while (digits < DIGITS_MAX &&
-           fabs(round_figures(value, digits, false) - value) > 1e-9 * fabs(value))
-        digits++;
-    return digits;
-}
-
 struct figures figures_quantity(const struct composition *composition,
                                 const struct quantity *quantity)
 {
     if (!quantity->set || !isfinite(quantity->value))
         return (struct figures){0};
-    struct figures figures = figures_of(composition->arena, quantity->value, quantity->unit,
-                                        digits_typed(quantity->value));
+    enum { DIGITS_TYPED = 6 };
+    unsigned digits = digits_needed(quantity->value, DIGITS_TYPED);
+    struct figures figures =
+        quantity->unit == UNIT_CURRENT && fabs(quantity->value) < 1e-3
+            ? figures_scaled(composition->arena, quantity->value, 1e-6, "µA",
+                             decimals_for(quantity->value, 1e-6, digits))
+            : figures_of(composition->arena, quantity->value, quantity->unit, digits);
+    if (quantity->bound != BOUND_NONE)
+        figures.bound = quantity->bound == BOUND_OVER ? ">" : "<";
+    return figures;
+}
+
+struct figures figures_volts(const struct composition *composition, const struct quantity *quantity)
+{
+    if (!quantity->set || !isfinite(quantity->value))
+        return (struct figures){0};
+    bool whole =
+        fabs(quantity->value) >= 100 || fabs(quantity->value - round(quantity->value)) < 0.05;
+    struct figures figures = figures_plain(composition, quantity->value, 1, whole ? 0 : 1);
     if (quantity->bound != BOUND_NONE)
         figures.bound = quantity->bound == BOUND_OVER ? ">" : "<";
     return figures;
@@ -207,6 +282,29 @@ const char *text_sentence(struct arena *arena, const char *text)
     if (copy && copy[0] >= 'a' && copy[0] <= 'z')
         copy[0] = (char)(copy[0] - 'a' + 'A');
     return copy;
+}
+
+const char *text_stopped(struct arena *arena, const char *text)
+{
+    size_t length = text ? strlen(text) : 0;
+    if (length == 0 || strchr(".!?", text[length - 1]))
+        return text;
+    return arena_print(arena, "%s.", text);
+}
+
+const char *text_with_micro(struct arena *arena, const char *text)
+{
+    struct buffer signs = {0};
+    for (const char *at = text; *at; at++) {
+        bool unit_begins = at > text && (at[-1] == ' ' || (at[-1] >= '0' && at[-1] <= '9'));
+        if (*at == 'u' && unit_begins && (at[1] == 'A' || at[1] == 'F' || at[1] == 'V'))
+            buffer_text(&signs, "µ");
+        else
+            buffer_byte(&signs, *at);
+    }
+    const char *shown = arena_text(arena, signs.data, signs.length);
+    buffer_release(&signs);
+    return shown;
 }
 
 static const char *class_text(const struct composition *composition, const struct marking *marking)

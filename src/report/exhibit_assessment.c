@@ -7,17 +7,6 @@ static const struct column_plan part_plan[] = {
     {"outcome", NULL, NULL, COLUMN_OUTCOME, 22, 1}, {"advice", NULL, NULL, COLUMN_TEXT, 18, 3},
 };
 
-static struct figures read_figures(const struct composition *composition,
-                                   const struct capacitor_findings *part)
-{
-    if (part->deciding < 0)
-        return (struct figures){0};
-    struct figures figures = figures_micro(composition, part->test_leakage_a, 2);
-    if (figures.whole && part->test_bound != BOUND_NONE)
-        figures.bound = part->test_bound == BOUND_UNDER ? "<" : ">";
-    return figures;
-}
-
 static const char *effects_text(const struct composition *composition,
                                 const struct capacitor_findings *part)
 {
@@ -35,8 +24,9 @@ static void add_part(struct table_builder *builder, size_t index)
     double limit_a = part->deciding < 0 ? part->sheet_limit_a : part->test_limit_a;
     struct cell *cells = table_row(builder);
     cells[0].text = part->part->ref;
-    cells[1].figures = read_figures(composition, part);
-    cells[2].figures = figures_micro(composition, limit_a, 2);
+    cells[1].figures = leakage_figures(composition, part);
+    if (!part->no_reading_passes)
+        cells[2].figures = figures_micro(composition, limit_a, 2);
     cells[3].text = effects_text(composition, part);
     cells[4] = (struct cell){
         .text = phrase_in(say, "outcome", outcome_text(part->outcome)),

@@ -106,7 +106,7 @@ static void set_limit(const struct composition *composition, struct curves *curv
     if (!isfinite(limit_a) || limit_a <= 0)
         return;
     curves->limit = limit_a;
-    curves->limit_text = quantity_text(composition->arena, limit_a, UNIT_CURRENT, 2);
+    curves->limit_text = text_micro(composition->arena, limit_a, 2);
 }
 
 static const char *fit_sentence(const struct composition *composition,
@@ -115,10 +115,9 @@ static const char *fit_sentence(const struct composition *composition,
     const struct phrasing *say = &composition->say;
     if (absorption->status != ABSORPTION_RESOLVED)
         return phrase(say, "soak.not_resolved", NULL);
-    return phrase(
-        say, "soak.resolved", "steady",
-        quantity_text(composition->arena, absorption->steady_a, UNIT_CURRENT, 2), "error",
-        quantity_text(composition->arena, 2 * absorption->steady_error_a, UNIT_CURRENT, 1), NULL);
+    return phrase(say, "soak.resolved", "steady",
+                  text_micro(composition->arena, absorption->steady_a, 2), "error",
+                  text_micro(composition->arena, 2 * absorption->steady_error_a, 1), NULL);
 }
 
 static void place_soak(struct composition *composition, size_t index)
@@ -143,7 +142,7 @@ static void place_soak(struct composition *composition, size_t index)
         panel->x_max_s = fmax(panel->x_max_s, curve->points[i].x_s);
         add_number(&numbers, NULL, part->test_v, curve->points[i].x_s, curve->points[i].y);
     }
-    curves->deciding_text = text_unit(composition, part->test_leakage_a, UNIT_CURRENT, 2);
+    curves->deciding_text = text_micro(composition->arena, part->test_leakage_a, 3);
     exhibit->plot.numbers = numbers.table;
     exhibit->plot.title = phrase(&composition->say, "soak.title", "ref", part->part->ref, NULL);
     exhibit->plot.caption = phrase(&composition->say, "caption.soak", "ref", part->part->ref,
@@ -255,7 +254,7 @@ static void add_after_rest(const struct composition *composition, const struct r
         return;
     struct curve_point *decides = &last->points[last->point_count - 1];
     decides->deciding = true;
-    curves->deciding_text = quantity_text(composition->arena, decides->y, UNIT_CURRENT, 2);
+    curves->deciding_text = text_micro(composition->arena, decides->y, 2);
 }
 
 void exhibit_reform_curves(struct composition *composition, size_t index)
@@ -285,8 +284,8 @@ void exhibit_reform_curves(struct composition *composition, size_t index)
     exhibit->plot.caption =
         phrase(&composition->say, "caption.reform", "ref", part->part->ref, "marked",
                text_marking(composition, &part->part->marked), "limiter",
-               limiter > 0 ? quantity_text(composition->arena, limiter, UNIT_RESISTANCE, 3) : NULL,
-               "date", date_text(&reform->date), NULL);
+               limiter > 0 ? text_unit(composition, limiter, UNIT_RESISTANCE, 3) : NULL, "date",
+               date_text(&reform->date), NULL);
     exhibit->number = exhibit_number(composition, NUMBERED_FIGURE);
     exhibit_place(composition, exhibit);
 }

@@ -38,27 +38,41 @@ static void set_marked(const struct composition *composition, struct cell *cell,
         cell->second_figures = figures_quantity(composition, &marked->rated);
 }
 
+/* A bound is what the instrument's range ends at: as few figures as it takes, rounded up. */
+static struct figures bound_figures(const struct composition *composition,
+                                    const struct capacitor_findings *part)
+{
+    bool under = part->test_bound == BOUND_UNDER;
+    struct quantity quantity = {.set = true,
+                                .value = round_figures(part->test_leakage_a, 2, under),
+                                .unit = UNIT_CURRENT,
+                                .bound = part->test_bound};
+    struct figures figures = figures_quantity(composition, &quantity);
+    if (fabs(quantity.value) >= 1e-3)
+        figures = figures_micro(composition, quantity.value, 2);
+    figures.bound = under ? "<" : ">";
+    figures.unit = "";
+    return figures;
+}
+
 /* Three figures, but none finer than the instrument shows. */
-static struct figures leakage_figures(const struct composition *composition,
-                                      const struct capacitor_findings *part)
+struct figures leakage_figures(const struct composition *composition,
+                               const struct capacitor_findings *part)
 {
     double value = round_figures(part->test_leakage_a, 3, false);
-    if (!isfinite(value))
+    if (!isfinite(value) || part->deciding < 0)
         return (struct figures){0};
+    if (part->test_bound != BOUND_NONE)
+        return bound_figures(composition, part);
     unsigned decimals = decimals_for(value, 1e-6, 3);
     const struct instrument *instrument =
-        part->deciding < 0
-            ? NULL
-            : reading_instrument(composition->job, part->readings[part->deciding].reading);
+        reading_instrument(composition->job, part->readings[part->deciding].reading);
     if (instrument && instrument->resolution.set && instrument->resolution.unit == UNIT_CURRENT &&
         instrument->resolution.value > 0) {
         unsigned finest = decimals_for(instrument->resolution.value, 1e-6, 1);
         decimals = decimals < finest ? decimals : finest;
     }
-    struct figures figures = figures_plain(composition, value, 1e-6, decimals);
-    if (part->test_bound != BOUND_NONE)
-        figures.bound = part->test_bound == BOUND_UNDER ? "<" : ">";
-    return figures;
+    return figures_plain(composition, value, 1e-6, decimals);
 }
 
 static const char *effect_cell_text(const struct composition *composition,
@@ -121,7 +135,7 @@ static const char *caption(const struct composition *composition)
     const char *margin = NULL;
     for (size_t i = 0; i < composition->findings->capacitor_count && !margin; i++)
         if (composition->findings->capacitors[i].ageing_margin > 1)
-            margin = quantity_text(composition->arena, policy->ageing_margin_waxed, UNIT_NONE, 2);
+            margin = text_unit(composition, policy->ageing_margin_waxed, UNIT_NONE, 2);
     return phrase(&composition->say, "caption.leakage", "bench",
                   text_unit(composition, composition->findings->bench_c, UNIT_TEMPERATURE, 2),
                   "working",

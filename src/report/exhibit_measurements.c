@@ -1,15 +1,6 @@
 /* Voltages, performance and safety measurements, as they were written down. */
 #include "report/composition.h"
 
-/* Volts in one unit a column: tenths below 100 V. */
-static void set_volts(const struct composition *composition, struct cell *cell,
-                      const struct quantity *quantity)
-{
-    if (quantity->set)
-        cell->figures =
-            figures_plain(composition, quantity->value, 1, fabs(quantity->value) < 100 ? 1 : 0);
-}
-
 void exhibit_voltages(struct composition *composition, size_t index)
 {
     (void)index;
@@ -27,12 +18,13 @@ void exhibit_voltages(struct composition *composition, size_t index)
         const struct voltage_point *point = &voltages->points[i];
         struct cell *cells = table_row(&builder);
         cells[0].text = point->name;
-        set_volts(composition, &cells[1], &point->sheet);
-        set_volts(composition, &cells[2], &point->found);
-        set_volts(composition, &cells[3], &point->left);
+        cells[1].figures = figures_volts(composition, &point->sheet);
+        cells[2].figures = figures_volts(composition, &point->found);
+        cells[3].figures = figures_volts(composition, &point->left);
     }
+    table_drop_empty(&builder);
     builder.table->remark = phrase(&composition->say, "voltages.remark", "meter",
-                                   voltages->meter.set ? voltages->meter.written : NULL, NULL);
+                                   text_quantity(composition, &voltages->meter), NULL);
     table_place(&builder, NUMBERED_TABLE,
                 phrase(&composition->say, "caption.voltages", "sheet_mains",
                        text_quantity(composition, &voltages->sheet_mains), "found_mains",
@@ -62,6 +54,7 @@ void exhibit_performance(struct composition *composition, size_t index)
         cells[2].text = row->left.set ? NULL : row->written_left;
         cells[3].text = row->conditions.text;
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.performance", NULL));
 }
 
@@ -91,5 +84,6 @@ void exhibit_safety(struct composition *composition, size_t index)
         cells[2].figures = figures_quantity(composition, &row->second);
         cells[3].text = text_join(composition->arena, ", ", conditions, 3);
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.safety", NULL));
 }

@@ -187,7 +187,7 @@ static const char *accuracy_text(const struct composition *composition,
                                  const struct instrument *instrument)
 {
     if (instrument->accuracy_set)
-        return instrument->accuracy_written;
+        return text_with_micro(composition->arena, instrument->accuracy_written);
     struct quantity usual = {.set = true,
                              .value = 100 * composition->shop->policy.default_accuracy,
                              .unit = UNIT_PERCENT};
@@ -243,5 +243,6 @@ void exhibit_instruments(struct composition *composition, size_t index)
                             ? instrument->compared.written
                             : phrase(&composition->say, "instrument.never_compared", NULL);
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.instruments", NULL));
 }

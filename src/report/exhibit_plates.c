@@ -1,6 +1,8 @@
 /* Plates: photographs, the same view before and after side by side. */
 #include "report/composition.h"
 
+#include <string.h>
+
 static bool has_picture(const struct composition *composition, size_t photo)
 {
     return composition->pictures && composition->pictures[photo].file;
@@ -62,9 +64,12 @@ static const char *caption(const struct composition *composition, size_t first, 
     const char *dates[] = {date_text(&photo->taken), other ? date_text(&other->taken) : NULL};
     const char *taken =
         text_join(composition->arena, phrase(&composition->say, "plate.and", NULL), dates, 2);
+    char *shows = arena_copy(composition->arena, photo->shows.text);
+    size_t length = shows ? strlen(shows) : 0;
+    if (length && shows[length - 1] == '.')
+        shows[length - 1] = '\0';
     return phrase(&composition->say, "caption.plate", "shows",
-                  photo->shows.text ? text_sentence(composition->arena, photo->shows.text) : NULL,
-                  "taken", taken, NULL);
+                  text_sentence(composition->arena, shows), "taken", taken, NULL);
 }
 
 void exhibit_plates(struct composition *composition, size_t index)

@@ -76,9 +76,12 @@ void exhibit_resistors(struct composition *composition, size_t index)
         if (outside && (part->done == DONE_KEPT || part->done == DONE_OPEN))
             table_note(&builder, &cells[0],
                        phrase(&composition->say, "note.resistor_outside", "reason",
-                              part->reason.text, NULL));
-        table_note(&builder, &cells[0], part->note.text);
+                              text_stopped(composition->arena, part->reason.text), NULL));
+        table_note(
+            &builder, &cells[0],
+            text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.resistors", NULL));
 }
 
@@ -107,8 +110,11 @@ void exhibit_windings(struct composition *composition, size_t index)
         if (warm)
             table_note(&builder, &cells[2],
                        phrase(&composition->say, "note.winding_warm", "temperature", warm, NULL));
-        table_note(&builder, &cells[0], part->note.text);
+        table_note(
+            &builder, &cells[0],
+            text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.windings", NULL));
 }
 
@@ -130,6 +136,7 @@ void exhibit_controls(struct composition *composition, size_t index)
         cells[1].text = part->what.text;
         cells[2].text = done_text_of(composition, part->done, part->was);
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.controls", NULL));
 }
 
@@ -155,5 +162,6 @@ void exhibit_valves(struct composition *composition, size_t index)
         cells[3].text = part->tested.text;
         cells[4].text = done_text_of(composition, part->done, part->was);
     }
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.valves", NULL));
 }

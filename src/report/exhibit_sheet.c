@@ -74,8 +74,7 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
     if (isfinite(part->sheet_series_max_ohm) && !part->no_reading_passes)
         table_note(builder, cell,
                    phrase(say, "sheet.series_max", "ohm",
-                          quantity_text(composition->arena, part->sheet_series_max_ohm,
-                                        UNIT_RESISTANCE, 2),
+                          text_unit(composition, part->sheet_series_max_ohm, UNIT_RESISTANCE, 2),
                           NULL));
 }
 

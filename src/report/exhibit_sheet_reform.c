@@ -88,13 +88,20 @@ static const struct column_plan step_plan[] = {
 };
 _Static_assert(sizeof step_plan / sizeof *step_plan == 3 + REFORM_BLANKS, "eight blanks a step");
 
+/* The sheet's limit brought to the volts that the deciding test is made at. Between service and
+   test volts leakage is taken in proportion (at or above service volts); below them the sheet's own
+   figures stand. */
 static const char *reform_remark(const struct composition *composition,
-                                 const struct capacitor_findings *part)
+                                 struct capacitor_findings part, const struct reform_plan *plan)
 {
+    if (part.sheet_voltage_v >= part.service_v && plan->end_v >= part.service_v) {
+        part.sheet_limit_a *= plan->end_v / part.sheet_voltage_v;
+        part.sheet_voltage_v = plan->end_v;
+    }
     return phrase(&composition->say, "sheet.reform_remark", "limit",
-                  text_unit(composition, part->sheet_limit_a, UNIT_CURRENT, 2), "volts",
-                  text_unit(composition, part->sheet_voltage_v, UNIT_VOLTAGE, 3), "series",
-                  text_unit(composition, part->sheet_series_max_ohm, UNIT_RESISTANCE, 2), NULL);
+                  text_micro(composition->arena, part.sheet_limit_a, 2), "volts",
+                  text_unit(composition, part.sheet_voltage_v, UNIT_VOLTAGE, 3), "series",
+                  text_unit(composition, part.sheet_series_max_ohm, UNIT_RESISTANCE, 2), NULL);
 }
 
 void exhibit_sheet_reform(struct composition *composition, size_t index)
@@ -118,7 +125,7 @@ void exhibit_sheet_reform(struct composition *composition, size_t index)
     struct cell *rest = table_row(&builder);
     rest[0].text = phrase(&composition->say, "sheet.after_rest", NULL);
     rest[1].figures = figures_unit(composition, plan.end_v, UNIT_VOLTAGE, 3);
-    builder.table->remark = reform_remark(composition, part);
+    builder.table->remark = reform_remark(composition, *part, &plan);
     table_place(&builder, NUMBERED_SHEET,
                 phrase(&composition->say, "caption.sheet_reform", "ref", part->part->ref, NULL));
 }
@@ -147,10 +154,9 @@ void exhibit_sheet_bleed(struct composition *composition, size_t index)
         cells[0].text = composition->findings->capacitors[i].part->ref;
         cells[1].figures = figures_plain(composition, plan.end_v, 1, 0);
         cells[2].figures = figures_plain(composition, plan.energy_j, 1, 1);
-        cells[3].text =
-            arena_print(composition->arena, "%s %s",
-                        quantity_text(composition->arena, plan.bleed_ohm, UNIT_RESISTANCE, 2),
-                        quantity_text(composition->arena, plan.bleed_w, UNIT_POWER, 2));
+        cells[3].text = arena_print(composition->arena, "%s %s",
+                                    text_unit(composition, plan.bleed_ohm, UNIT_RESISTANCE, 2),
+                                    text_unit(composition, plan.bleed_w, UNIT_POWER, 2));
         cells[4].figures = figures_plain(composition, plan.bleed_s, 1, 1);
     }
     table_place(&builder, NUMBERED_SHEET, phrase(&composition->say, "caption.sheet_bleed", NULL));

@@ -50,7 +50,9 @@ enum { ROW_ANODE_DISSIPATION = 7, ROW_SCREEN_DISSIPATION = 8 };
 
 static double solution_value(const struct stage_phase *phase, const struct stage_row *row)
 {
-    if (!phase->judged)
+    bool screen = row->solution == offsetof(struct stage_solution, screen_a) ||
+                  row->solution == offsetof(struct stage_solution, screen_w);
+    if (!phase->judged || (screen && isnan(phase->solution.screen_v)))
         return NAN;
     return *(const double *)(const void *)((const char *)&phase->solution + row->solution);
 }
@@ -78,7 +80,7 @@ static unsigned row_decimals(const struct stage_findings *stage, const struct st
     double shown = largest / row_scale(row);
     if (row->kind == ROW_POWER)
         return 1;
-    return shown >= 100 ? 0 : shown >= 20 ? 1 : row->kind == ROW_CURRENT && shown >= 3 ? 1 : 2;
+    return shown >= 100 ? 0 : shown >= 10 ? 1 : row->kind == ROW_CURRENT && shown >= 3 ? 1 : 2;
 }
 
 static double rating_of(const struct stage_findings *stage, size_t row)
@@ -95,14 +97,6 @@ static bool row_is_empty(const struct stage_findings *stage, const struct stage_
             return false;
     return !row->set_shows || (!set_value(&stage->stage->found, row)->set &&
                                !set_value(&stage->stage->left, row)->set);
-}
-
-static void set_at_set(const struct composition *composition, struct cell *cell,
-                       const struct quantity *quantity)
-{
-    if (quantity->set)
-        cell->figures =
-            figures_plain(composition, quantity->value, 1, fabs(quantity->value) >= 100 ? 0 : 1);
 }
 
 static void add_row(struct table_builder *builder, const struct stage_findings *stage, size_t index)
@@ -124,8 +118,10 @@ static void add_row(struct table_builder *builder, const struct stage_findings *
         cell->strong = isfinite(value) && isfinite(rating) && value > rating;
     }
     if (row->set_shows) {
-        set_at_set(composition, &cells[STAGE_SET_FOUND], set_value(&stage->stage->found, row));
-        set_at_set(composition, &cells[STAGE_SET_LEFT], set_value(&stage->stage->left, row));
+        cells[STAGE_SET_FOUND].figures =
+            figures_volts(composition, set_value(&stage->stage->found, row));
+        cells[STAGE_SET_LEFT].figures =
+            figures_volts(composition, set_value(&stage->stage->left, row));
     }
     cells[STAGE_RATING].figures = figures_plain(composition, rating, 1, 1);
 }
@@ -194,6 +190,7 @@ void exhibit_stage(struct composition *composition, size_t index)
     for (size_t i = 0; i < sizeof rows / sizeof *rows; i++)
         add_row(&builder, stage, i);
     builder.table->remark = remark(composition, stage);
+    table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE,
                 phrase(&composition->say, "caption.stage", "stage", stage->stage->name, "valve",
                        stage_title(composition, stage->stage), NULL));

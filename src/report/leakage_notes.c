@@ -2,6 +2,8 @@
 
 #include "report/phrases.h"
 
+#include <string.h>
+
 /* One condition and the phrase `note.<key>` that tells it. */
 typedef bool condition(const struct composition *composition, size_t index);
 
@@ -147,15 +149,26 @@ static const char *rule_note(const struct composition *composition, size_t index
     struct buffer others = {0};
     for (size_t i = 0; i < part->other_rule_count; i++) {
         const struct criterion *other = &part->other_rules[i];
-        if (isfinite(other->limit) && other->rule)
-            buffer_print(&others, "%s%s %s", others.length ? ", " : "", other->rule,
-                         quantity_text(arena, other->limit, UNIT_CURRENT, 2));
+        if (isfinite(other->limit) && other->rule && strcmp(other->rule, used->rule) != 0)
+            buffer_print(&others, "%s%s (%s)", others.length ? ", " : "",
+                         text_micro(arena, other->limit, 2), text_with_micro(arena, other->rule));
     }
     const char *list = others.length ? arena_text(arena, others.data, others.length) : NULL;
     buffer_release(&others);
-    return phrase(&composition->say, "note.rule", "rule", used->rule, "limit",
-                  text_unit(composition, used->limit, UNIT_CURRENT, 2), "marked",
+    return phrase(&composition->say, "note.rule", "rule", text_with_micro(arena, used->rule),
+                  "limit", text_micro(arena, used->limit, 2), "marked",
                   text_marking(composition, &part->part->marked), "others", list, NULL);
+}
+
+/* A part may fail by another figure than its leakage: the table alone would not show why. */
+static const char *other_figure_note(const struct composition *composition, size_t index)
+{
+    const struct capacitor_findings *part = part_of(composition, index);
+    bool failed = part->outcome == OUTCOME_FAIL || part->outcome == OUTCOME_CONDITIONAL_FAIL;
+    bool by_leakage = part->test_leakage_a > part->test_limit_a;
+    if (!failed || by_leakage || part->why != WHY_NONE || !part->why_text)
+        return NULL;
+    return text_stopped(composition->arena, text_sentence(composition->arena, part->why_text));
 }
 
 static const char *against_advice_note(const struct composition *composition, size_t index)
@@ -166,7 +179,7 @@ static const char *against_advice_note(const struct composition *composition, si
     return phrase(
         &composition->say, "note.against_advice", "advice", part->advice_text, "done",
         phrase_in(&composition->say, "done", action_text(capacitor_done(composition, index))),
-        "reason", part->part->reason.text, NULL);
+        "reason", text_stopped(composition->arena, part->part->reason.text), NULL);
 }
 
 void leakage_notes(struct table_builder *builder, struct cell *cell, size_t index)
@@ -179,6 +192,9 @@ void leakage_notes(struct table_builder *builder, struct cell *cell, size_t inde
                        phrase_of(&composition->say, notes[i].key,
                                  part_values(&composition->say, composition->job, part)));
     table_note(builder, cell, rule_note(composition, index));
+    table_note(builder, cell, other_figure_note(composition, index));
     table_note(builder, cell, against_advice_note(composition, index));
-    table_note(builder, cell, part->part->note.text);
+    table_note(
+        builder, cell,
+        text_stopped(composition->arena, text_sentence(composition->arena, part->part->note.text)));
 }

@@ -3,6 +3,7 @@
 #include "report/composition.h"
 
 #include <string.h>
+#include <strings.h>
 
 static const char *quantity_or_null(struct arena *arena, double value, enum unit unit,
                                     unsigned digits)
@@ -12,23 +13,66 @@ static const char *quantity_or_null(struct arena *arena, double value, enum unit
 
 /* ---- effects */
 
+/* Below this a figure says no more than "none to speak of"; it is given as a bound. */
+static double least_shown(enum unit unit)
+{
+    return unit == UNIT_PERCENT                           ? 0.1
+           : unit == UNIT_VOLTAGE || unit == UNIT_CURRENT ? 1e-3
+           : unit == UNIT_POWER                           ? 1e-4
+                                                          : 0;
+}
+
+/* A ratio beyond this is as good as none: the circuit cannot tell. */
+#define RATIO_MOST 1000.0
+
+struct shown_figure {
+    double value;
+    const char *bound; /* key of the phrase around it; NULL: the figure itself */
+};
+
+static struct shown_figure shown(double value, enum unit unit, bool at_most)
+{
+    bool ratio = unit == UNIT_NONE; /* insulation over resistance: a leak of at most is a ratio of
+                                       at least */
+    double least = least_shown(unit);
+    if (ratio && value > RATIO_MOST)
+        return (struct shown_figure){RATIO_MOST, "effect_bound.over"};
+    if (ratio)
+        return (struct shown_figure){value, at_most ? "effect_bound.over" : NULL};
+    if (fabs(value) < least)
+        return (struct shown_figure){value < 0 ? -least : least, "effect_bound.under"};
+    return (struct shown_figure){value, at_most ? "effect_bound.under" : NULL};
+}
+
+static const char *figure_phrase(const struct phrasing *say, double value, enum unit unit,
+                                 bool at_most, bool with_sign)
+{
+    if (!isfinite(value))
+        return NULL;
+    struct shown_figure figure = shown(value, unit, at_most);
+    const char *text = figure.bound ? text_set(say->arena, figure.value, unit, 2)
+                                    : quantity_text(say->arena, figure.value, unit, 2);
+    if (with_sign && figure.value > 0)
+        text = arena_print(say->arena, "+%s", text);
+    return figure.bound ? phrase(say, figure.bound, "amount", text, NULL) : text;
+}
+
+/* The line that every set has needs no name. */
+static const char *subject_text(const struct effect *effect)
+{
+    return effect->subject && strcasecmp(effect->subject, "avc") == 0 ? NULL : effect->subject;
+}
+
 static const char *effect_phrase(const struct phrasing *say, const struct effect *effect)
 {
     struct arena *arena = say->arena;
-    const char *key = arena_print(arena, "effect.%s", effect->key);
-    const char *amount = quantity_or_null(arena, effect->value, effect->unit, 2);
-    if (!amount)
-        return phrase(say, key, "subject", effect->subject, NULL);
-    const char *change = text_signed(arena, effect->value, effect->unit, 2);
-    if (effect->at_most) {
-        amount = phrase(say, "effect_bound", "amount", amount, NULL);
-        change = phrase(say, "effect_bound", "amount", change, NULL);
-    }
     double share = effect->of > 0 ? 100 * effect->value / effect->of : NAN;
-    return phrase(say, key, "amount", amount, "change", change, "of",
-                  quantity_or_null(arena, effect->of, effect->unit, 3), "share",
-                  quantity_or_null(arena, share, UNIT_PERCENT, 2), "subject", effect->subject,
-                  NULL);
+    return phrase(say, arena_print(arena, "effect.%s", effect->key), "amount",
+                  figure_phrase(say, effect->value, effect->unit, effect->at_most, false), "change",
+                  figure_phrase(say, effect->value, effect->unit, effect->at_most, true), "of",
+                  text_set(arena, effect->of, effect->unit, 3), "share",
+                  figure_phrase(say, share, UNIT_PERCENT, effect->at_most, false), "subject",
+                  subject_text(effect), NULL);
 }
 
 /* ---- reasons */
@@ -40,7 +84,8 @@ const char *criterion_phrase(const struct phrasing *say, const struct criterion 
                       quantity_or_null(say->arena, criterion->value, criterion->unit, 2));
     mustache_set_text(say->arena, values, "limit",
                       quantity_or_null(say->arena, criterion->limit, criterion->unit, 2));
-    mustache_set_text(say->arena, values, "rule", criterion->rule);
+    mustache_set_text(say->arena, values, "rule",
+                      criterion->rule ? text_with_micro(say->arena, criterion->rule) : NULL);
     mustache_set_flag(say->arena, values, "joint", criterion->joint);
     return phrase_of(say, arena_print(say->arena, "over.%s", criterion_key_text(criterion->key)),
                      values);
@@ -63,7 +108,9 @@ static const char *resolution_text(const struct phrasing *say, const struct job 
         reading_instrument(job, part->readings[part->deciding].reading);
     if (!instrument || !instrument->resolution.set)
         return NULL;
-    return quantity_text(say->arena, instrument->resolution.value, instrument->resolution.unit, 2);
+    if (instrument->resolution.unit == UNIT_CURRENT)
+        return text_micro(say->arena, instrument->resolution.value, 1);
+    return text_set(say->arena, instrument->resolution.value, instrument->resolution.unit, 2);
 }
 
 struct mustache_value *part_values(const struct phrasing *say, const struct job *job,
@@ -73,28 +120,25 @@ struct mustache_value *part_values(const struct phrasing *say, const struct job 
     struct mustache_value *values = mustache_map(arena);
     mustache_set_text(arena, values, "missing", part->missing);
     mustache_set_text(arena, values, "volts",
-                      quantity_or_null(arena, part->sheet_voltage_v, UNIT_VOLTAGE, 3));
-    mustache_set_text(arena, values, "tested",
-                      quantity_or_null(arena, part->test_v, UNIT_VOLTAGE, 3));
-    mustache_set_text(arena, values, "service",
-                      quantity_or_null(arena, part->service_v, UNIT_VOLTAGE, 3));
-    mustache_set_text(arena, values, "soak",
-                      quantity_or_null(arena, part->sheet_soak_s, UNIT_TIME, 2));
+                      text_set(arena, part->sheet_voltage_v, UNIT_VOLTAGE, 3));
+    mustache_set_text(arena, values, "tested", text_set(arena, part->test_v, UNIT_VOLTAGE, 3));
+    mustache_set_text(arena, values, "service", text_set(arena, part->service_v, UNIT_VOLTAGE, 3));
+    mustache_set_text(arena, values, "soak", text_set(arena, part->sheet_soak_s, UNIT_TIME, 2));
     mustache_set_text(arena, values, "wait",
-                      quantity_or_null(arena, part->absorption.wait_until_s, UNIT_TIME, 2));
-    mustache_set_text(arena, values, "limit",
-                      quantity_or_null(arena, part->test_limit_a, UNIT_CURRENT, 2));
-    mustache_set_text(arena, values, "margin",
-                      quantity_or_null(arena, part->ageing_margin, UNIT_NONE, 2));
+                      text_set(arena, part->absorption.wait_until_s, UNIT_TIME, 2));
+    mustache_set_text(arena, values, "limit", text_micro(arena, part->test_limit_a, 2));
+    mustache_set_text(arena, values, "margin", text_set(arena, part->ageing_margin, UNIT_NONE, 2));
     mustache_set_text(arena, values, "working",
-                      quantity_or_null(arena, part->working_c, UNIT_TEMPERATURE, 2));
-    mustache_set_text(arena, values, "hot",
-                      quantity_or_null(arena, part->test_c, UNIT_TEMPERATURE, 2));
-    mustache_set_text(arena, values, "exponent",
-                      quantity_or_null(arena, part->exponent, UNIT_NONE, 2));
+                      text_set(arena, part->working_c, UNIT_TEMPERATURE, 2));
+    mustache_set_text(arena, values, "hot", text_set(arena, part->test_c, UNIT_TEMPERATURE, 2));
+    mustache_set_text(arena, values, "exponent", text_set(arena, part->exponent, UNIT_NONE, 2));
     mustache_set_text(arena, values, "resolution", resolution_text(say, job, part));
     mustache_set_text(arena, values, "marked",
                       part->part->marked.rated.set ? part->part->marked.rated.written : NULL);
+    const struct criterion *criterion =
+        part->outcome == OUTCOME_PASS ? NULL : criterion_deciding(part);
+    if (criterion)
+        mustache_set_text(arena, values, "figure", criterion_phrase(say, criterion));
     if (part->class_needed != CLASS_NONE)
         mustache_set_text(arena, values, "class", safety_class_text(part->class_needed));
     if (part->part->stage_count && job->stage_count > (size_t)part->part->stages[0])

@@ -52,9 +52,24 @@ static const char *fold(struct arena *arena, const char *text, bool keep_lines)
     return copy;
 }
 
-static bool is_word_byte(char c)
+/* A letter or digit of any script begins here. */
+static bool is_word_at(const char *at)
 {
-    return (c >= 'a' && c <= 'z') || (c >= '0' && c <= '9') || ((unsigned char)c & 0x80) != 0;
+    utf8proc_int32_t code_point;
+    if (utf8proc_iterate((const utf8proc_uint8_t *)at, -1, &code_point) <= 0)
+        return false;
+    utf8proc_category_t category = utf8proc_category(code_point);
+    return category <= UTF8PROC_CATEGORY_NO && category != UTF8PROC_CATEGORY_CN;
+}
+
+static bool is_word_before(const char *text, const char *at)
+{
+    if (at == text)
+        return false;
+    at--;
+    while (at > text && ((unsigned char)*at & 0xC0) == 0x80)
+        at--;
+    return is_word_at(at);
 }
 
 static bool is_gap(char c)
@@ -85,8 +100,9 @@ static const char *find_words(const char *text, const char *wanted)
         size_t length = match_at(at, wanted);
         if (length == 0)
             continue;
-        bool begins = at == text || !is_word_byte(at[-1]) || !is_word_byte(*wanted);
-        bool ends = !is_word_byte(at[length]) || !is_word_byte(at[length - 1]);
+        const char *end = at + length;
+        bool begins = !is_word_before(text, at) || !is_word_at(at);
+        bool ends = !is_word_at(end) || !is_word_before(at, end);
         if (begins && ends)
             return at;
     }
@@ -113,7 +129,7 @@ static void want_name(struct search *search, const char *name)
 {
     const char *folded = fold(search->arena, name, false);
     const char *end = folded + strlen(folded);
-    while (end > folded && !is_word_byte(end[-1]))
+    while (end > folded && !is_word_before(folded, end))
         end--;
     const char *last = end;
     while (last > folded && !is_gap(last[-1]))

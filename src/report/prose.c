@@ -84,11 +84,21 @@ static struct position position_in(struct position at, cmark_node *node)
     return at;
 }
 
+/* An opening and a closing tag of one line are one mistake. */
+static bool is_told(const struct diagnostics *list, const struct source *source, struct position at,
+                    enum diagnostic_code code)
+{
+    const struct diagnostic *last = list->count ? &list->items[list->count - 1] : NULL;
+    return last && last->code == code && last->path == source->path && last->at.line == at.line;
+}
+
 static void warn(struct composition *composition, const struct source *source, struct position at,
                  cmark_node *node)
 {
     struct diagnostics *list = composition->diagnostics;
     at = position_in(at, node);
+    if (is_html(node) && is_told(list, source, at, DIAGNOSTIC_RAW_HTML_DROPPED))
+        return;
     if (is_html(node))
         diagnostic_add(list, source, at, DIAGNOSTIC_RAW_HTML_DROPPED,
                        "write it in Markdown, or put a backslash before the <",

@@ -290,6 +290,19 @@ static const char *row_text(const struct composition *composition,
     return text_join(composition->arena, ", ", figures, sizeof figures / sizeof *figures);
 }
 
+/* Why a stage has no figures at all; NULL: it has some. */
+static const char *unjudged_text(const struct composition *composition,
+                                 const struct stage_findings *stage)
+{
+    for (int phase = 0; phase < PHASE_COUNT; phase++)
+        if (stage->phases[phase].judged)
+            return NULL;
+    return phrase(
+        &composition->say,
+        arena_print(composition->arena, "why.%s", reason_text(stage->phases[PHASE_DESIGNED].why)),
+        "valve", stage->stage->valve_type, NULL);
+}
+
 static void put_stages(const struct filler *root)
 {
     struct mustache_value *list = mustache_list(root->arena);
@@ -301,6 +314,7 @@ static void put_stages(const struct filler *root)
         put(&item, "valve", stage->stage->valve_type);
         put(&item, "valve_ref", stage->stage->valve_ref);
         put(&item, "row", row_text(root->composition, stage));
+        put(&item, "unjudged", unjudged_text(root->composition, stage));
         put_flag(&item, "without_gm", stage->row && isnan(stage->row->gm_s));
         mustache_push(root->arena, list, item.map);
     }
