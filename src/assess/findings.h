@@ -255,6 +255,28 @@ struct originality {
     bool of_the_parts_listed; /* some kind has neither a full list nor counts */
 };
 
+/* A part that is there at this visit and was at the earlier one. NaN: not on both sides. */
+enum visit_kind { VISIT_CAPACITOR, VISIT_RESISTOR, VISIT_WINDING };
+struct visit_change {
+    enum visit_kind kind;
+    const char *ref;
+    enum action done_then;      /* at the earlier visit */
+    int capacitor;              /* index into job->capacitors, NOT_LISTED for other kinds */
+    double test_v;              /* V of both readings */
+    double then_a, now_a;       /* A, as read */
+    enum bound then_bound, now_bound;
+    double then_s, now_s;       /* s, soak of each; NaN: not said */
+    double then_value, now_value; /* F or ohm, measured */
+};
+struct visit_changes {
+    const char *earlier; /* its job number */
+    const char *then_date, *now_date; /* returned then, received now; NULL: not given */
+    double years;        /* between them; NaN: not known */
+    double then_c, now_c; /* C of the bench; NaN: not given */
+    const struct visit_change *items;
+    size_t count;
+};
+
 struct findings {
     const char *program; /* version */
     enum copy copy;
@@ -267,6 +289,7 @@ struct findings {
     const struct stage_findings *stages; /* one for each of job->stages */
     size_t stage_count;
     struct originality originality;
+    const struct visit_changes *since; /* the earlier visit; NULL: none, or it cannot be read */
     const char *fingerprint; /* SHA-256 in hex of this copy's findings.json; NULL: not yet */
     const struct diagnostics *diagnostics;
 };

@@ -16,7 +16,7 @@ struct judge_case {
     const struct leak *leak;
     enum bound bound;
     bool may_fail;   /* soaked long enough */
-    bool instrument; /* U at the limit exceeds the policy's share of it */
+    bool instrument; /* U at the limit exceeds the policy's share of it; a clear fail stands */
     bool waiting;    /* the fit says that absorption still runs, and falls below the limit */
     bool falling;    /* electrolytic: still falling, or not known to be level */
 };

@@ -4,6 +4,8 @@
 #include <string.h>
 
 static const double percent = 100;
+/* Common practice where no valve row says more. */
+static const double linear_ratio = 20;
 
 static void add_value(struct place_values *values, struct place_value value)
 {
@@ -166,8 +168,8 @@ static void evaluate_screen(const struct place_case *place, double leak_s,
         return;
     }
     if (place->linear) {
-        add_ratio(values, CRITERION_LINEAR_RATIO, leak_s, place->feed_ohm,
-                  place->policy->tuning_resistance_ratio, SOURCE_TWENTY_TIMES);
+        add_ratio(values, CRITERION_LINEAR_RATIO, leak_s, place->feed_ohm, linear_ratio,
+                  SOURCE_TWENTY_TIMES);
         return;
     }
     struct stage_solution with[STAGE_GROUP_MAX];
@@ -195,8 +197,8 @@ static void evaluate_cathode(const struct place_case *place, double leak_s,
                              struct place_values *values)
 {
     if (place->linear) {
-        add_ratio(values, CRITERION_LINEAR_RATIO, leak_s, place->feed_ohm,
-                  place->policy->tuning_resistance_ratio, SOURCE_TWENTY_TIMES);
+        add_ratio(values, CRITERION_LINEAR_RATIO, leak_s, place->feed_ohm, linear_ratio,
+                  SOURCE_TWENTY_TIMES);
         return;
     }
     struct stage_solution with[STAGE_GROUP_MAX];

@@ -345,25 +345,29 @@ static void build_model(const struct builder *builder, struct stage_model *model
 
 /* ---- groups */
 
+/* The node that a bypass at this place sits on. */
+static int *bypassed_node(struct stage_circuit *circuit, enum place place)
+{
+    if (place == PLACE_SCREEN_BYPASS)
+        return &circuit->screen_node;
+    return place == PLACE_CATHODE_BYPASS ? &circuit->cathode_node : &circuit->bias_node;
+}
+
 /* Stages that one capacitor bypasses hang on one node, named or not. */
 static void share_nodes(const struct builder *builder)
 {
     for (size_t i = 0; i < builder->job->capacitor_count; i++) {
         const struct capacitor *part = &builder->job->capacitors[i];
-        size_t offset =
-            part->place == PLACE_SCREEN_BYPASS    ? offsetof(struct stage_circuit, screen_node)
-            : part->place == PLACE_CATHODE_BYPASS ? offsetof(struct stage_circuit, cathode_node)
-                                                  : 0;
-        if (part->stage_count < 2 || offset == 0)
+        if (part->stage_count < 2 ||
+            (part->place != PLACE_SCREEN_BYPASS && part->place != PLACE_CATHODE_BYPASS))
             continue;
-        const struct stage_model *first = &builder->models[part->stages[0]];
-        int node = *(const int *)((const char *)&first->circuits[0] + offset);
+        int node = *bypassed_node(&builder->models[part->stages[0]].circuits[0], part->place);
         node = node == NODE_NONE ? NODE_CAPACITORS + (int)i : node;
         for (size_t k = 0; k < part->stage_count; k++)
             for (int phase = 0; phase < PHASE_COUNT; phase++) {
-                struct stage_model *model = &builder->models[part->stages[k]];
-                int *place = (int *)((char *)&model->circuits[phase] + offset);
-                *place = *place == NODE_NONE ? node : *place;
+                struct stage_circuit *circuit = &builder->models[part->stages[k]].circuits[phase];
+                int *own = bypassed_node(circuit, part->place);
+                *own = *own == NODE_NONE ? node : *own;
             }
     }
 }
@@ -531,46 +535,28 @@ static void add_coupling(struct stage_circuit *circuit, const struct stage_leak 
 
 /* The leak across one node's resistor: the solver counts the largest figure of the stages that
    share it once, so all of them get it. */
-struct node_leak {
-    size_t leak_offset, node_offset; /* in struct stage_circuit */
-    double leak_s;
-};
-
-static void add_at_node(const struct stage_group *group, struct stage_circuit *circuits, int slot,
-                        const struct node_leak *more, bool done[STAGE_GROUP_MAX])
+static double *node_leak(struct stage_circuit *circuit, enum place place)
 {
-    int node = *(const int *)((const char *)&circuits[slot] + more->node_offset);
-    for (size_t i = 0; i < group->count; i++) {
-        char *circuit = (char *)&circuits[i];
-        if (done[i] ||
-            !((int)i == slot || same_node(node, *(const int *)(circuit + more->node_offset))))
-            continue;
-        *(double *)(circuit + more->leak_offset) += more->leak_s;
-        done[i] = true;
-    }
+    if (place == PLACE_SCREEN_BYPASS)
+        return &circuit->screen_leak_s;
+    return place == PLACE_CATHODE_BYPASS ? &circuit->cathode_leak_s : &circuit->bias_leak_s;
 }
 
-static struct node_leak node_leak_of(const struct stage_leak *leak)
+static void add_at_node(const struct stage_group *group, struct stage_circuit *circuits, int slot,
+                        const struct stage_leak *leak, bool done[STAGE_GROUP_MAX])
 {
-    struct node_leak at = {.leak_s = leak->leak_s};
-    if (leak->place == PLACE_SCREEN_BYPASS) {
-        at.leak_offset = offsetof(struct stage_circuit, screen_leak_s);
-        at.node_offset = offsetof(struct stage_circuit, screen_node);
-    } else if (leak->place == PLACE_CATHODE_BYPASS) {
-        at.leak_offset = offsetof(struct stage_circuit, cathode_leak_s);
-        at.node_offset = offsetof(struct stage_circuit, cathode_node);
-    } else {
-        at.leak_offset = offsetof(struct stage_circuit, bias_leak_s);
-        at.node_offset = offsetof(struct stage_circuit, bias_node);
-    }
-    return at;
+    int node = *bypassed_node(&circuits[slot], leak->place);
+    for (int i = 0; i < (int)group->count; i++)
+        if (!done[i] && (i == slot || same_node(node, *bypassed_node(&circuits[i], leak->place)))) {
+            *node_leak(&circuits[i], leak->place) += leak->leak_s;
+            done[i] = true;
+        }
 }
 
 void stage_add_leak(const struct stage_set *set, const struct stage_group *group,
                     struct stage_circuit *circuits, const struct stage_leak *leak)
 {
     bool done[STAGE_GROUP_MAX] = {false};
-    struct node_leak at = node_leak_of(leak);
     for (size_t i = 0; i < leak->stage_count; i++) {
         const struct stage_model *model = &set->models[leak->stages[i]];
         if (model->why != WHY_NONE || &set->groups[model->group] != group)
@@ -583,7 +569,7 @@ void stage_add_leak(const struct stage_set *set, const struct stage_group *group
         } else {
             if (leak->place == PLACE_BIAS_BYPASS && leak->feed_ohm > 0)
                 circuit->bias_feed_ohm = leak->feed_ohm;
-            add_at_node(group, circuits, model->slot, &at, done);
+            add_at_node(group, circuits, model->slot, leak, done);
         }
     }
 }

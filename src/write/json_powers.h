@@ -2,6 +2,7 @@
  * Powers of ten as 64-bit significands: 10^exponent10 = significand * 2^exponent2, rounded to
  * nearest, every eighth power. Exact arithmetic made them; included by json_number.c only.
  */
+/* clang-format off */
 {0xFA8FD5A0081C0288U, -1220, -348},
 {0xBAAEE17FA23EBF76U, -1193, -340},
 {0x8B16FB203055AC76U, -1166, -332},
