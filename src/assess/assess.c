@@ -69,7 +69,7 @@ static void other_rules(struct assessment *assessment, size_t index)
     const struct place_case *place = &assessment->work[index].place;
     struct capacitor_findings *part = &assessment->capacitors[index];
     const struct marking *marked = &part->part->marked;
-    if (!place->heat_counts || !marked->value.set || !marked->rated.set)
+    if (!place->electrolytic || !marked->value.set || !marked->rated.set)
         return;
     size_t count;
     const struct leakage_rule *rules = leakage_rules(&count);
@@ -127,7 +127,7 @@ static void warn_electrolytic(struct assessment *assessment, size_t index)
     const struct place_case *place = &assessment->work[index].place;
     const struct capacitor *part = assessment->capacitors[index].part;
     struct arena *arena = assessment->arena;
-    if (!place->heat_counts)
+    if (!place->electrolytic)
         return;
     if (part->service.set && part->service.value < 0)
         warn(assessment, part->service.at, DIAGNOSTIC_ELECTROLYTIC_REVERSED,

@@ -21,7 +21,7 @@ static enum joint_kind kind_of(const struct place_case *place)
         (place->part->place == PLACE_COUPLING || place->part->place == PLACE_SCREEN_BYPASS ||
          place->part->place == PLACE_CATHODE_BYPASS || place->part->place == PLACE_BIAS_BYPASS))
         return JOINT_STAGE;
-    return place->part->can != NOT_LISTED && place->heat_counts ? JOINT_CAN : JOINT_NONE;
+    return place->part->can != NOT_LISTED && place->electrolytic ? JOINT_CAN : JOINT_NONE;
 }
 
 /* Leaks, is judged, and does not fail by itself. */

@@ -408,11 +408,13 @@ static void set_limits(struct assessment *assessment, size_t index)
         known = assessment->work[i].place.why == WHY_NONE &&
                 !assessment->capacitors[i].no_reading_passes &&
                 place_same_limit(&assessment->work[i].place, &work->place);
-        if (known)
+        if (known) {
             work->limit = assessment->work[i].limit;
+            work->place.heat_counts = assessment->work[i].place.heat_counts;
+        }
     }
     if (!known)
-        work->limit = place_find_limit(&work->place);
+        work->limit = place_set_limit(&work->place);
     part->limit_none = work->limit.none;
     part->limit_is_heat = work->limit.heat;
     part->limit_a = work->limit.leak_s * part->service_v;

@@ -338,7 +338,7 @@ void place_evaluate(const struct place_case *place, double leak_s, struct place_
         has_heat = has_heat || values->items[i].key == CRITERION_HEAT;
     if (!has_heat)
         add_heat(place, leak_s, values);
-    if (!isnan(place->rule_limit_a))
+    if (place->electrolytic && !isnan(place->rule_limit_a))
         add_value(values, (struct place_value){.key = CRITERION_LEAKAGE_RULE,
                                                .value = leak_s * place->service_v * place->to_20c,
                                                .limit = place->rule_limit_a,

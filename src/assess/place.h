@@ -44,7 +44,8 @@ struct place_case {
     double current_a;
     double bias_v;       /* least bias that the leak works against; NaN */
     double heat_limit_w; /* of the part */
-    bool heat_counts;    /* electrolytic: heat and rule are judged wherever it sits */
+    bool electrolytic;   /* leakage rule and heat are judged wherever it sits */
+    bool heat_counts;    /* heat is judged: an electrolytic, or nothing else limits the leak */
     double margin;       /* ageing */
     struct leakage_rule rule;
     bool rule_unknown; /* the job or the shop names no rule that is known */
@@ -90,6 +91,9 @@ struct place_limit {
     size_t count;
 };
 struct place_limit place_find_limit(const struct place_case *place);
+
+/* Find it and, where only heat limits the leak, have heat judged too. */
+struct place_limit place_set_limit(struct place_case *place);
 
 /* The same limit holds for both: same place, same facts. */
 bool place_same_limit(const struct place_case *a, const struct place_case *b);

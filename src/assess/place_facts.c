@@ -220,7 +220,7 @@ static void find_rule(struct place_case *place)
     const char *text = part->rule.text ? part->rule.text : place->policy->leakage_rule;
     place->rule_limit_a = NAN;
     place->rule_status = LEAKAGE_OK;
-    if (!place->heat_counts || !text)
+    if (!place->electrolytic || !text)
         return;
     place->rule_unknown = !leakage_rule_read(text, &place->rule);
     if (place->rule_unknown || !part->marked.value.set || !part->marked.rated.set)
@@ -252,7 +252,7 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
         place.source_ohm = 0; /* the cautious default */
     place.feed_rating_w = rating_of(bench->job, &part->feed);
     place.heat_limit_w = heat_limit(bench->job, part, bench->policy);
-    place.heat_counts = dielectric_is_electrolytic(part->type);
+    place.electrolytic = place.heat_counts = dielectric_is_electrolytic(part->type);
     place.margin = ageing_margin(bench->policy, part->type);
     find_rule(&place);
     find_stage(&place);

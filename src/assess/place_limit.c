@@ -74,10 +74,13 @@ static void margin_limits(const struct place_case *place, const struct search *s
     }
 }
 
-static struct place_limit heat_limit_of(const struct place_case *place, struct place_limit limit)
+/* No figure of the place ever fails: heat in the part is judged instead. */
+static struct place_limit heat_limit_of(const struct place_case *place)
 {
+    struct place_case with_heat = *place;
+    with_heat.heat_counts = true;
+    struct place_limit limit = place_find_limit(&with_heat);
     limit.heat = true;
-    limit.leak_s = place->heat_limit_w / (place->service_v * place->service_v);
     return limit;
 }
 
@@ -98,8 +101,8 @@ struct place_limit place_find_limit(const struct place_case *place)
     if (usable == 0)
         return limit;
     struct search search = {place, &bare, 0};
-    if (use_of(&search, most_s) < 1)
-        return heat_limit_of(place, limit);
+    if (use_of(&search, most_s) < 1 && !place->heat_counts)
+        return heat_limit_of(place);
     double start_s = 1e-9, use = use_of(&search, start_s);
     limit.leak_s = root_of(&search, fmin(fmax(start_s / fmax(use, 1e-6), least_s), most_s));
     if (place->margin != 1) {
@@ -107,6 +110,13 @@ struct place_limit place_find_limit(const struct place_case *place)
         limit.leak_s /= place->margin;
         margin_limits(place, &search, &limit);
     }
+    return limit;
+}
+
+struct place_limit place_set_limit(struct place_case *place)
+{
+    struct place_limit limit = place_find_limit(place);
+    place->heat_counts = place->heat_counts || limit.heat;
     return limit;
 }
 
@@ -119,7 +129,7 @@ bool place_same_limit(const struct place_case *a, const struct place_case *b)
 {
     if (a->part->place != b->part->place || a->model != b->model || a->group != b->group ||
         a->part->stage_count != b->part->stage_count || a->linear != b->linear ||
-        a->screen_as_rail != b->screen_as_rail || a->heat_counts != b->heat_counts ||
+        a->screen_as_rail != b->screen_as_rail || a->electrolytic != b->electrolytic ||
         a->part->plug_side != b->part->plug_side)
         return false;
     for (size_t i = 0; i < a->part->stage_count; i++)

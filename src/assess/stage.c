@@ -10,6 +10,8 @@
 enum { NODE_NONE = -1, NODE_WINDINGS = 1 << 20, NODE_CAPACITORS = 1 << 21, NODE_STAGES = 1 << 22 };
 /* Stands for a grid leak that the job does not give, where none is needed. */
 static const double no_grid_leak_ohm = 1;
+/* Small-signal valves draw less at their row. */
+static const double output_from_a = 15e-3;
 
 double resistance_uncertainty(const struct job *job, const struct policy *policy, double ohm)
 {
@@ -102,17 +104,25 @@ static double given_or(const struct quantity *quantity, double otherwise)
     return quantity->set ? quantity->value : otherwise;
 }
 
+/* A type that the book does not know is an output valve when its stage is one, or by its current.
+ */
+static enum valve_kind guessed_kind(const struct stage *stage)
+{
+    bool output = stage->use == USE_OUTPUT ||
+                  (stage->use == USE_BY_VALVE && stage->row.ia.value >= output_from_a);
+    if (stage->row.vg2.set)
+        return output ? VALVE_OUTPUT_PENTODE : VALVE_SMALL_PENTODE;
+    return output ? VALVE_POWER_TRIODE : VALVE_TRIODE;
+}
+
 /* The row that the job gives, with what it leaves out about the type taken from the book. */
 static struct valve_row given_row(const struct stage *stage, const char *type,
                                   const struct valve_row *book)
 {
     const struct given_row *given = &stage->row;
-    enum valve_kind guess = !given->vg2.set               ? VALVE_TRIODE
-                            : stage->use == USE_AMPLIFIER ? VALVE_SMALL_PENTODE
-                                                          : VALVE_OUTPUT_PENTODE;
     return (struct valve_row){
         .type = type ? type : "",
-        .kind = book ? book->kind : guess,
+        .kind = book ? book->kind : guessed_kind(stage),
         .name = "given",
         .va_v = given_or(&given->va, NAN),
         .vg2_v = given_or(&given->vg2, NAN),

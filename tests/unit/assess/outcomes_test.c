@@ -21,29 +21,50 @@ static void test_time(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
-        "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 5 s 80 "
-                                                              "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 5 s 20 uA\n" BYPASS("C3", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n" BYPASS(
-                                                                  "C4", "paper",
-                                                                  "0.1 uF 400 V") "    readings:\n "
-                                                                                  "     - 100 V 80 "
-                                                                                  "uA\n" BYPASS("C"
-                                                                                                "5",
-                                                                                                "pa"
-                                                                                                "pe"
-                                                                                                "r",
-                                                                                                "0."
-                                                                                                "1 "
-                                                                                                "uF"
-                                                                                                " 4"
-                                                                                                "00"
-                                                                                                " "
-                                                                                                "V") "    readings:\n      - 100 V 60 s 4 uA, 5 min 8 uA\n" BYPASS("C6",
-                                                                                                                                                                   "paper",
-                                                                                                                                                                   "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA, 5 min 2 uA\n" BYPASS("C7",
-                                                                                                                                                                                                                                                 "paper",
-                                                                                                                                                                                                                                                 "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 5 s 70 uA hot 20 C\n");
+    bench_assess(&bench, HEAD METER "capacitors:\n" BYPASS(
+                             "C1",
+                             "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 5 s 80 "
+                                                      "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 5 s 20 uA\n" BYPASS("C3", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n" BYPASS(
+                                                          "C4", "paper",
+                                                          "0.1 uF 400 V") "    readings:\n "
+                                                                          "     - 100 V 80 "
+                                                                          "uA\n" BYPASS(
+                                                                              "C"
+                                                                              "5",
+                                                                              "pa"
+                                                                              "pe"
+                                                                              "r",
+                                                                              "0."
+                                                                              "1 "
+                                                                              "uF"
+                                                                              " 4"
+                                                                              "00"
+                                                                              " "
+                                                                              "V") "    "
+                                                                                   "readings:\n    "
+                                                                                   "  - 100 V 60 s "
+                                                                                   "4 uA, 5 min 8 "
+                                                                                   "uA\n" BYPASS("C"
+                                                                                                 "6",
+                                                                                                 "p"
+                                                                                                 "a"
+                                                                                                 "p"
+                                                                                                 "e"
+                                                                                                 "r",
+                                                                                                 "0"
+                                                                                                 "."
+                                                                                                 "1"
+                                                                                                 " "
+                                                                                                 "u"
+                                                                                                 "F"
+                                                                                                 " "
+                                                                                                 "4"
+                                                                                                 "0"
+                                                                                                 "0"
+                                                                                                 " "
+                                                                                                 "V") "    readings:\n      - 100 V 60 s 1 uA, 5 min 2 uA\n" BYPASS("C7",
+                                                                                                                                                                    "paper",
+                                                                                                                                                                    "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 5 s 70 uA hot 20 C\n");
     expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_TOO_EARLY);
     expect(&bench, "C2", OUTCOME_PASS, WHY_NONE); /* an early reading may pass */
     expect(&bench, "C3", OUTCOME_FAIL, WHY_NONE);
@@ -81,18 +102,56 @@ static void test_volts(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
-        "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") "    readings:\n      - 25 V 60 s 2 "
-                                                              "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 25 V 60 s 20 uA\n" BYPASS("C3", "paper", "0.1 uF 400 V") "    readings:\n      - 200 V 60 s 80 uA\n" BYPASS(
-                                                                  "C4", "paper",
-                                                                  "0.1 uF 150 V") "    readings:\n "
-                                                                                  "     - 200 V 60 "
-                                                                                  "s 1 uA\n" BYPASS("C5",
-                                                                                                    "paper",
-                                                                                                    "0.1 uF 50 V") "    readings:\n      - 50 V 60 s 1 uA\n" BYPASS("C6",
-                                                                                                                                                                    "paper",
-                                                                                                                                                                    "0.1 uF 400 V") "    readings:\n      - 50 V 60 s 1 uA\n      - 100 V 60 s 4 uA\n");
+    bench_assess(&bench, HEAD METER "capacitors:\n" BYPASS(
+                             "C1",
+                             "paper", "0.1 uF 400 V") "    readings:\n      - 25 V 60 s 2 "
+                                                      "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 25 V 60 s 20 uA\n" BYPASS(
+                                                          "C3", "paper",
+                                                          "0.1 uF 400 V") "    readings:\n      - "
+                                                                          "200 V 60 s 80 "
+                                                                          "uA\n" BYPASS("C4",
+                                                                                        "paper",
+                                                                                        "0.1 uF "
+                                                                                        "150 V") " "
+                                                                                                 " "
+                                                                                                 " "
+                                                                                                 " "
+                                                                                                 "r"
+                                                                                                 "e"
+                                                                                                 "a"
+                                                                                                 "d"
+                                                                                                 "i"
+                                                                                                 "n"
+                                                                                                 "g"
+                                                                                                 "s"
+                                                                                                 ":"
+                                                                                                 "\n "
+                                                                                                 " "
+                                                                                                 " "
+                                                                                                 " "
+                                                                                                 " "
+                                                                                                 " "
+                                                                                                 "-"
+                                                                                                 " "
+                                                                                                 "2"
+                                                                                                 "0"
+                                                                                                 "0"
+                                                                                                 " "
+                                                                                                 "V"
+                                                                                                 " "
+                                                                                                 "6"
+                                                                                                 "0"
+                                                                                                 " "
+                                                                                                 "s"
+                                                                                                 " "
+                                                                                                 "1"
+                                                                                                 " "
+                                                                                                 "u"
+                                                                                                 "A"
+                                                                                                 "\n" BYPASS("C5", "paper", "0.1 uF 50 V") "    readings:\n      - 50 V 60 s 1 uA\n" BYPASS(
+                                                                                                     "C6",
+                                                                                                     "paper",
+                                                                                                     "0.1 uF 400 V") "    readings:\n      - 50 V 60 s 1 uA\n      - 100 V 60 s 4 uA\n");
     expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_VOLTS_TOO_LOW);
     assert_true(bench_part(&bench, "C1")->readings[0].service_lower_bound);
     expect(&bench, "C2", OUTCOME_FAIL, WHY_NONE); /* 80 uA at least */
@@ -119,16 +178,15 @@ static void test_temperature_and_ageing(void **state)
         "conditions:\n  bench: 20 C\n  working: 45 C\n" METER "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA\n" BYPASS(
             "C2", "paper",
             "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA\n      - 100 V 60 s 5 uA hot "
-                            "45 C\n" BYPASS("C3", "waxed paper", "0.1 uF 400 V")
-                                BYPASS(
-                                    "C4", "paper",
-                                    "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 7.5 "
-                                                    "uA\n" BYPASS("C5", "polyester",
-                                                                  "0.1 uF 400 V") "    near_heat: "
-                                                                                  "yes\n    "
-                                                                                  "readings:\n     "
-                                                                                  " - 100 V 60 s 1 "
-                                                                                  "uA\n");
+                            "45 C\n" BYPASS("C3", "waxed paper", "0.1 uF 400 V") BYPASS(
+                                "C4", "paper",
+                                "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 7.5 "
+                                                "uA\n" BYPASS("C5", "polyester",
+                                                              "0.1 uF 400 V") "    near_heat: "
+                                                                              "yes\n    "
+                                                                              "readings:\n     "
+                                                                              " - 100 V 60 s 1 "
+                                                                              "uA\n");
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* 2^(25/10) = 5.657 */
     assert_relative(part->leakage_warm_a, 5.657e-6, 1e-3);
@@ -152,29 +210,39 @@ static void test_instrument_and_bounds(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD
-                 "instruments:\n  leakage:\n    accuracy: 2 % + 50 uA\n    resolution: 1 uA\n"
-                 "  fine:\n    accuracy: 1 %\n    resolution: 0.01 uA\n"
-                 "capacitors:\n" BYPASS(
-                     "C1", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 "
-                                                    "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 "r"
-                                                                                                 "e"
-                                                                                                 "a"
-                                                                                                 "d"
-                                                                                                 "i"
-                                                                                                 "n"
-                                                                                                 "g"
-                                                                                                 "s"
-                                                                                                 ":"
-                                                                                                 "\n      - 100 V 60 s over 2000 M by fine\n" BYPASS("C3",
-                                                                                                                                                     "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s under 200 uA by fine\n" BYPASS("C4",
-                                                                                                                                                                                                                                                "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s over 200 uA by fine\n" BYPASS("C5", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 49.9 uA by fine\n" BYPASS("C6", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 50.1 uA by fine\n" BYPASS("C7",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "paper",
-                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                                  "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA by fine in circuit\n");
+    bench_assess(
+        &bench,
+        HEAD "instruments:\n  leakage:\n    accuracy: 2 % + 50 uA\n    resolution: 1 uA\n"
+             "  fine:\n    accuracy: 1 %\n    resolution: 0.01 uA\n"
+             "capacitors:\n" BYPASS(
+                 "C1", "paper",
+                 "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 "
+                                 "uA\n" BYPASS(
+                                     "C2", "paper",
+                                     "0.1 uF 400 V") " "
+                                                     " "
+                                                     " "
+                                                     " "
+                                                     "r"
+                                                     "e"
+                                                     "a"
+                                                     "d"
+                                                     "i"
+                                                     "n"
+                                                     "g"
+                                                     "s"
+                                                     ":"
+                                                     "\n      - 100 V 60 s over 2000 M by "
+                                                     "fine\n" BYPASS("C3", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s under 200 uA by fine\n" BYPASS("C4", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s over 200 uA by fine\n" BYPASS(
+                                                         "C5", "paper",
+                                                         "0.1 uF 400 V") "    readings:\n      - "
+                                                                         "100 V 60 s 49.9 uA by "
+                                                                         "fine\n" BYPASS("C6",
+                                                                                         "paper",
+                                                                                         "0.1 uF "
+                                                                                         "400 V") "    readings:\n      - 100 V 60 s 50.1 uA by fine\n" BYPASS("C7",
+                                                                                                                                                               "paper",
+                                                                                                                                                               "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA by fine in circuit\n");
     /* 50 uA/sqrt(3)*2 is more than half of 50 uA */
     expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
     assert_true(bench_part(&bench, "C1")->sheet_not_with_this_meter);
@@ -198,89 +266,113 @@ static void test_electrolytics(void **state)
     struct bench bench;
     bench_assess(
         &bench,
-        HEAD METER "cans:\n  CAN1:\n    holds: C7 C8\n    seen: above\n    done: reformed\n"
-                   "capacitors:\n" CAN("C1", "20 uF 450 V") "    readings:\n      - 300 V 60 s 4 "
-                                                            "mA, 5 min 2 mA\n" CAN("C2", "20 uF "
-                                                                                         "450 V") "    readings:\n      - 300 V 60 s 2 mA, 5 min 2 mA\n" CAN("C3", "20 uF 450 V") "    readings:\n      - 300 V 60 s 2 mA\n" CAN(
-                                                                "C4",
-                                                                "20 uF 450 V") "    readings:\n    "
-                                                                               "  - 300 V 60 s 0.1 "
-                                                                               "mA, 5 min 0.1 "
-                                                                               "mA\n" CAN("C5",
-                                                                                          "20 uF "
-                                                                                          "450 V") "    rule: 0.01 CV or 3 uA\n    measured: 15 uF\n" CAN("C6",
-                                                                                                                                                          "20 uF 475 V") "    rule: nobody's\n" CAN("C7",
-                                                                                                                                                                                                    "16 uF 450 V")
-                                                                                   CAN("C8",
-                                                                                       "16 uF 450 "
-                                                                                       "V") "reform"
-                                                                                            "s:\n  "
-                                                                                            "- "
-                                                                                            "capaci"
-                                                                                            "tor: "
-                                                                                            "C7\n  "
-                                                                                            "  "
-                                                                                            "date: "
-                                                                                            "2031-"
-                                                                                            "02-"
-                                                                                            "10\n  "
-                                                                                            "  "
-                                                                                            "limite"
-                                                                                            "r: "
-                                                                                            "47k\n "
+        HEAD
+            METER "cans:\n  CAN1:\n    holds: C7 C8\n    seen: above\n    done: reformed\n"
+                  "capacitors:\n" CAN(
+                      "C1",
+                      "20 uF 450 V") "    readings:\n      - 300 V 60 s 4 "
+                                     "mA, 5 min 2 mA\n" CAN(
+                                         "C2",
+                                         "20 uF "
+                                         "450 V") "    readings:\n      - 300 V 60 s 2 mA, 5 min 2 "
+                                                  "mA\n" CAN("C3",
+                                                             "20 uF 450 V") "    readings:\n      "
+                                                                            "- 300 V 60 s 2 "
+                                                                            "mA\n" CAN("C4",
+                                                                                       "20 uF 450 "
+                                                                                       "V") "    "
+                                                                                            "readin"
+                                                                                            "gs:\n "
                                                                                             "   "
-                                                                                            "log:\n"
-                                                                                            "      "
-                                                                                            "- 50 "
-                                                                                            "V 30 "
-                                                                                            "s 170 "
-                                                                                            "uA, 5 "
-                                                                                            "min "
-                                                                                            "21 "
-                                                                                            "uA\n  "
-                                                                                            "  "
-                                                                                            "rest: "
-                                                                                            "12 h\n"
-                                                                                            "    "
-                                                                                            "after_"
-                                                                                            "rest: "
-                                                                                            "300 V "
-                                                                                            "5 min "
-                                                                                            "0.4 "
-                                                                                            "mA\n"
                                                                                             "  - "
-                                                                                            "capaci"
-                                                                                            "tor: "
-                                                                                            "C8\n  "
-                                                                                            "  "
-                                                                                            "date: "
-                                                                                            "2031-"
-                                                                                            "02-"
-                                                                                            "10\n  "
-                                                                                            "  "
-                                                                                            "limite"
-                                                                                            "r: "
-                                                                                            "47k\n "
-                                                                                            "   "
-                                                                                            "log:\n"
-                                                                                            "      "
-                                                                                            "- 50 "
-                                                                                            "V 30 "
-                                                                                            "s 170 "
-                                                                                            "uA, 5 "
-                                                                                            "min "
-                                                                                            "21 "
-                                                                                            "uA\n  "
-                                                                                            "  "
-                                                                                            "rest: "
-                                                                                            "12 h\n"
-                                                                                            "    "
-                                                                                            "after_"
-                                                                                            "rest: "
                                                                                             "300 V "
-                                                                                            "5 min "
-                                                                                            "0.6 "
-                                                                                            "mA\n");
+                                                                                            "60 s "
+                                                                                            "0.1 "
+                                                                                            "mA, 5 "
+                                                                                            "min "
+                                                                                            "0.1 "
+                                                                                            "mA"
+                                                                                            "\n" CAN(
+                                                                                                "C"
+                                                                                                "5",
+                                                                                                "20"
+                                                                                                " u"
+                                                                                                "F "
+                                                                                                "45"
+                                                                                                "0 "
+                                                                                                "V") "    rule: 0.01 CV or 3 uA\n    measured: 15 uF\n" CAN("C6",
+                                                                                                                                                            "20 uF 475 V") "    rule: nobody's\n" CAN("C7",
+                                                                                                                                                                                                      "16 uF 450 V")
+                                                                                                CAN("C8",
+                                                                                                    "16 uF 450 "
+                                                                                                    "V") "reform"
+                                                                                                         "s:\n  "
+                                                                                                         "- "
+                                                                                                         "capaci"
+                                                                                                         "tor: "
+                                                                                                         "C7\n  "
+                                                                                                         "  "
+                                                                                                         "date: "
+                                                                                                         "2031-"
+                                                                                                         "02-"
+                                                                                                         "10\n  "
+                                                                                                         "  "
+                                                                                                         "limite"
+                                                                                                         "r: "
+                                                                                                         "47k\n "
+                                                                                                         "   "
+                                                                                                         "log:\n"
+                                                                                                         "      "
+                                                                                                         "- 50 "
+                                                                                                         "V 30 "
+                                                                                                         "s 170 "
+                                                                                                         "uA, 5 "
+                                                                                                         "min "
+                                                                                                         "21 "
+                                                                                                         "uA\n  "
+                                                                                                         "  "
+                                                                                                         "rest: "
+                                                                                                         "12 h\n"
+                                                                                                         "    "
+                                                                                                         "after_"
+                                                                                                         "rest: "
+                                                                                                         "300 V "
+                                                                                                         "5 min "
+                                                                                                         "0.4 "
+                                                                                                         "mA\n"
+                                                                                                         "  - "
+                                                                                                         "capaci"
+                                                                                                         "tor: "
+                                                                                                         "C8\n  "
+                                                                                                         "  "
+                                                                                                         "date: "
+                                                                                                         "2031-"
+                                                                                                         "02-"
+                                                                                                         "10\n  "
+                                                                                                         "  "
+                                                                                                         "limite"
+                                                                                                         "r: "
+                                                                                                         "47k\n "
+                                                                                                         "   "
+                                                                                                         "log:\n"
+                                                                                                         "      "
+                                                                                                         "- 50 "
+                                                                                                         "V 30 "
+                                                                                                         "s 170 "
+                                                                                                         "uA, 5 "
+                                                                                                         "min "
+                                                                                                         "21 "
+                                                                                                         "uA\n  "
+                                                                                                         "  "
+                                                                                                         "rest: "
+                                                                                                         "12 h\n"
+                                                                                                         "    "
+                                                                                                         "after_"
+                                                                                                         "rest: "
+                                                                                                         "300 V "
+                                                                                                         "5 min "
+                                                                                                         "0.6 "
+                                                                                                         "mA\n");
     /* heat of a tubular: 0.05 W at 300 V is 167 uA, less than 2 % of 60 mA and than JAN-C-62 (1.1
      * mA) */
     assert_relative(bench_part(&bench, "C4")->limit_a, 0.05 / 300, 1e-4);
@@ -332,30 +424,43 @@ static void test_what_was_done(void **state)
     (void)state;
     struct bench bench;
     bench_assess(
-        &bench, HEAD METER
-        "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s "
-                                                              "80 uA\n    done: kept\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n    done: kept\n    reason: a museum set\n" BYPASS(
-                                                                  "C3", "paper",
-                                                                  "0.1 uF 400 V") "    readings:\n "
-                                                                                  "     - 100 V 60 "
-                                                                                  "s 1 uA\n    "
-                                                                                  "done: replaced\n"
-                                                                                  "    fitted: "
-                                                                                  "polypropylene "
-                                                                                  "0.1 uF 630 "
-                                                                                  "V\n" BYPASS("C4", "paper", "0.1 uF 400 V") "    done: replaced\n    fitted: polypropylene 0.1 uF 630 V\n    age: period\n" BYPASS(
-                                                                                      "C5", "paper",
-                                                                                      "0.1 uF 400 "
-                                                                                      "V") "    "
-                                                                                           "done: "
-                                                                                           "kept"
-                                                                                           "\n" BYPASS("C6",
-                                                                                                       "paper",
-                                                                                                       "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 60 s 0.01 uA left\n"
-                                                                                                                       "    done: restuffed\n    fitted: polypropylene 0.1 uF 630 V\n" BYPASS(
-                                                                                                                           "C7",
-                                                                                                                           "paper",
-                                                                                                                           "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 60 s 1 uA left\n    done: kept\n");
+        &bench, HEAD METER "capacitors:\n" BYPASS(
+                    "C1", "paper",
+                    "0.1 uF 400 V") "    readings:\n      - 100 V 60 s "
+                                    "80 uA\n    done: kept\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n    done: kept\n    reason: a museum set\n" BYPASS(
+                                        "C3", "paper",
+                                        "0.1 uF 400 V") "    readings:\n "
+                                                        "     - 100 V 60 "
+                                                        "s 1 uA\n    "
+                                                        "done: replaced\n"
+                                                        "    fitted: "
+                                                        "polypropylene "
+                                                        "0.1 uF 630 "
+                                                        "V\n" BYPASS("C4", "paper", "0.1 uF 400 V") "    done: replaced\n    fitted: polypropylene 0.1 uF 630 V\n    age: period\n" BYPASS(
+                                                            "C5", "paper",
+                                                            "0.1 uF 400 "
+                                                            "V") "    "
+                                                                 "done: "
+                                                                 "kept"
+                                                                 "\n" BYPASS(
+                                                                     "C6", "paper",
+                                                                     "0.1 uF 400 V") "    "
+                                                                                     "readings:\n  "
+                                                                                     "    - 100 V "
+                                                                                     "60 s 80 uA\n "
+                                                                                     "     - 100 V "
+                                                                                     "60 s 0.01 uA "
+                                                                                     "left\n"
+                                                                                     "    done: "
+                                                                                     "restuffed\n  "
+                                                                                     "  fitted: "
+                                                                                     "polypropylene"
+                                                                                     " 0.1 uF 630 "
+                                                                                     "V\n" BYPASS(
+                                                                                         "C7",
+                                                                                         "paper",
+                                                                                         "0.1 uF "
+                                                                                         "400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 60 s 1 uA left\n    done: kept\n");
     assert_true(bench_part(&bench, "C1")->against_advice);
     assert_true(bench_part(&bench, "C2")->against_advice);
     assert_true(bench_part(&bench, "C3")->against_advice);               /* passed, yet replaced */
@@ -408,6 +513,25 @@ static void test_bench_sheet(void **state)
     bench_release(&bench);
 }
 
+static void test_only_heat_limits(void **state)
+{
+    (void)state;
+    struct bench bench;
+    /* 2 uF across 10 ohm of a cathode: no leak up to 1 mS matters; 0.02 W at 10 V is 2 mA, of waxed
+       paper half. */
+    bench_assess(&bench, HEAD METER
+                 "capacitors:\n"
+                 "  C1:\n    type: waxed paper\n    marked: 2 uF 50 V\n    place: other\n"
+                 "    feed: 10 ohm\n    shift: 5 V\n    service: 10 V\n    readings:\n"
+                 "      - 10 V 60 s 1.5 mA\n");
+    const struct capacitor_findings *part = bench_part(&bench, "C1");
+    assert_true(part->limit_is_heat);
+    assert_relative(part->limit_a, 1e-3, 1e-4);
+    assert_non_null(bench_criterion(part, CRITERION_HEAT, false));
+    assert_int_equal(part->outcome, OUTCOME_FAIL);
+    bench_release(&bench);
+}
+
 static void test_impossible_reading(void **state)
 {
     (void)state;
@@ -452,6 +576,7 @@ int main(void)
         cmocka_unit_test(test_warnings_of_electrolytics),
         cmocka_unit_test(test_what_was_done),
         cmocka_unit_test(test_bench_sheet),
+        cmocka_unit_test(test_only_heat_limits),
         cmocka_unit_test(test_impossible_reading),
         cmocka_unit_test(test_copies),
     };
