@@ -148,14 +148,21 @@ static struct criterion joint_criterion(const struct assessment *assessment, siz
     return criterion;
 }
 
+/* A can heats as one; what a rule allows a part is its own; the rest belongs to line or stage. */
+static bool is_joint_figure(enum joint_kind kind, enum criterion_key key)
+{
+    if (kind == JOINT_CAN || key == CRITERION_HEAT)
+        return kind == JOINT_CAN && key == CRITERION_HEAT;
+    return key != CRITERION_LEAKAGE_RULE;
+}
+
 static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
 {
     struct place_values at, moved;
     evaluate_with(assessment, index, 0, &at);
     evaluate_with(assessment, index, 1, &moved);
     for (size_t i = 0; i < at.count && i < moved.count; i++)
-        if (kind_of(&assessment->work[index].place) != JOINT_CAN ||
-            at.items[i].key == CRITERION_HEAT) {
+        if (is_joint_figure(kind_of(&assessment->work[index].place), at.items[i].key)) {
             struct criterion criterion =
                 joint_criterion(assessment, index, &at.items[i], moved.items[i].value);
             /* A reading that is only a bound says how much at most: it cannot fail others. */

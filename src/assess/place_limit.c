@@ -74,13 +74,20 @@ static void margin_limits(const struct place_case *place, const struct search *s
     }
 }
 
-/* No figure of the place ever fails: heat in the part is judged instead. */
+/* No figure of the place ever fails: heat in the part is judged instead, whatever the leak. */
 static struct place_limit heat_limit_of(const struct place_case *place)
 {
     struct place_case with_heat = *place;
     with_heat.heat_counts = true;
-    struct place_limit limit = place_find_limit(&with_heat);
-    limit.heat = true;
+    struct place_values bare;
+    place_evaluate(&with_heat, 0, &bare);
+    double heat_s = place->heat_limit_w / (place->service_v * place->service_v);
+    struct place_limit limit = {
+        .leak_s = heat_s / place->margin, .heat = true, .count = bare.count};
+    for (size_t i = 0; i < bare.count; i++) {
+        double room = bare.items[i].limit - bare.items[i].value;
+        limit.limits[i] = room > 0 ? bare.items[i].value + room / place->margin : NAN;
+    }
     return limit;
 }
 
