@@ -2,7 +2,6 @@
 
 #include "job/yaml_tree.h"
 
-#include <stdarg.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -151,15 +150,12 @@ const char *phrase_of(const struct phrasing *phrasing, const char *key,
     return filled;
 }
 
-const char *phrase(const struct phrasing *phrasing, const char *key, ...)
+const char *phrase_list(const struct phrasing *phrasing, const char *const *key_and_pairs)
 {
     struct mustache_value *values = mustache_map(phrasing->arena);
-    va_list pairs;
-    va_start(pairs, key);
-    for (const char *name; (name = va_arg(pairs, const char *)) != NULL;)
-        mustache_set_text(phrasing->arena, values, name, va_arg(pairs, const char *));
-    va_end(pairs);
-    return phrase_of(phrasing, key, values);
+    for (const char *const *pair = key_and_pairs + 1; pair[0]; pair += 2)
+        mustache_set_text(phrasing->arena, values, pair[0], pair[1]);
+    return phrase_of(phrasing, key_and_pairs[0], values);
 }
 
 const char *phrase_in(const struct phrasing *phrasing, const char *group, const char *name)

@@ -32,11 +32,12 @@ struct phrasing {
 };
 
 /*
- * The phrase of a key, filled, as plain text. Behind the key pairs of name and text, ended by NULL;
- * a NULL text is a name that is absent. A missing key is a template error, and the key itself is
- * returned, so that it is seen.
+ * The phrase of a key, filled, as plain text: phrase(&say, "headline.n_of_m", "n", kept, "m", of,
+ * NULL). Behind the key pairs of name and text, ended by NULL; a NULL text is a name that is
+ * absent. A missing key is a template error, and the key itself is returned, so that it is seen.
  */
-const char *phrase(const struct phrasing *phrasing, const char *key, ...) __attribute__((sentinel));
+#define phrase(phrasing, ...) phrase_list((phrasing), (const char *const[]){__VA_ARGS__})
+const char *phrase_list(const struct phrasing *phrasing, const char *const *key_and_pairs);
 
 /* The same from a map. values NULL: none. */
 const char *phrase_of(const struct phrasing *phrasing, const char *key,
