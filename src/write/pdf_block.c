@@ -132,7 +132,8 @@ static void put(struct paginator *paginator, const struct strip *strip, bool beg
     struct page_plan *plan = &paginator->plan;
     plan->items = arena_grow(paginator->flow->arena, plan->items, plan->count, &plan->capacity,
                              sizeof *plan->items);
-    plan->items[plan->count++] = (struct placed){strip, plan->page_count - 1, paginator->y, begins};
+    plan->items[plan->count++] =
+        (struct placed){strip, plan->page_count - 1, paginator->y, begins, false};
     paginator->y += strip->height;
 }
 
@@ -157,6 +158,9 @@ static double needed(const struct paginator *paginator, const struct strip *stri
 static void place(struct paginator *paginator, const struct strip *strip)
 {
     bool begins = paginator->at_top;
+    struct page_plan *plan = &paginator->plan;
+    if (begins && strip->head && plan->count > 0)
+        plan->items[plan->count - 1].ends = plan->items[plan->count - 1].strip->head == strip->head;
     if (!begins)
         paginator->y += strip->before;
     else if (strip->head)

@@ -125,6 +125,7 @@ struct placed {
     unsigned page; /* from 0 */
     double y;      /* from the page's top */
     bool begins;   /* the page, or follows a repeated head */
+    bool ends;     /* the table goes on on the next page */
 };
 
 struct page_plan {

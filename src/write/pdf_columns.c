@@ -102,7 +102,7 @@ static struct wish column_wish(struct table_layout *layout, size_t index)
     case COLUMN_NUMBER:
         measure_numbers(layout, index);
         text = number_width(&layout->columns[index]);
-        return (struct wish){larger(head, text), larger(least_head - head_reach_pt, text)};
+        return (struct wish){larger(head, text), text};
     case COLUMN_REF:
         text = larger(head, widest_text(layout, index, true));
         return (struct wish){text, text < block * 0.35 ? text : block * 0.35};
@@ -195,10 +195,16 @@ static void settle(struct table_layout *layout, const struct wish *wishes)
 /* A column whose texts fit on one line each is not made narrower than they are. */
 static void keep_unbroken(const struct table_layout *layout, struct wish *wishes)
 {
-    for (size_t i = 0; i < layout->table->column_count; i++)
-        if (is_elastic(layout->table->columns[i].kind) &&
-            wishes[i].natural <= layout->columns[i].width + 1.5)
+    const double nearly_pt = 5; /* a column of numbers grows by this for its head, no more */
+    for (size_t i = 0; i < layout->table->column_count; i++) {
+        const struct column *column = &layout->table->columns[i];
+        double width = layout->columns[i].width;
+        double head = head_width(layout, column) - head_reach_pt;
+        if (is_elastic(column->kind) && wishes[i].natural <= width + 1.5)
             wishes[i].least = larger(wishes[i].least, wishes[i].natural);
+        else if (column->kind == COLUMN_NUMBER && head <= width + nearly_pt)
+            wishes[i].least = larger(wishes[i].least, head);
+    }
 }
 
 void table_columns(struct table_layout *layout)

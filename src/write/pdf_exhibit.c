@@ -350,6 +350,22 @@ static double strips_height(const struct flow *flow, size_t from, size_t to)
     return height;
 }
 
+/* Before which strip, the first of an item, the second column begins so that both are short. */
+static size_t balanced_break(const struct flow *column)
+{
+    double all = strips_height(column, 0, column->count), above = 0, best = all;
+    size_t middle = column->count;
+    for (size_t i = 0; i < column->count; i++) {
+        double higher = above > all - above ? above : all - above;
+        if (column->strips[i]->before > 0 && higher < best) {
+            best = higher;
+            middle = i;
+        }
+        above += column->strips[i]->before + column->strips[i]->height;
+    }
+    return middle;
+}
+
 /* The list set twice as narrow, its items shared out between two columns. */
 static void compose_cautions(struct composer *composer, cmark_node *list)
 {
@@ -368,13 +384,7 @@ static void compose_cautions(struct composer *composer, cmark_node *list)
         compose_prose(composer, list); /* no short list: set as any other */
         return;
     }
-    size_t middle = 0;
-    double height = 0;
-    while (middle < column->count &&
-           (height < all / 2 - 1 || column->strips[middle]->before <= 0)) {
-        height += column->strips[middle]->before + column->strips[middle]->height;
-        middle++;
-    }
+    size_t middle = balanced_break(column);
     struct strip *strip = flow_strip(&composer->flow, 0);
     double left = overlay_strips(composer, strip, column, 0, middle, 0);
     double right =

@@ -117,6 +117,14 @@ static void add_outline(struct page *page, const struct strip *strip, double y)
         writer->section = entry;
 }
 
+static void draw_hairline(struct page *page, double y)
+{
+    const struct page_geometry *geometry = page->writer->geometry;
+    pdf_canvas_line(&page->canvas, (struct point){geometry->left, y},
+                    (struct point){geometry->left + geometry->text_width, y}, hairline_pt,
+                    INK_HAIR);
+}
+
 static void draw_strip(struct page *page, const struct placed *placed)
 {
     const struct page_geometry *geometry = page->writer->geometry;
@@ -125,9 +133,9 @@ static void draw_strip(struct page *page, const struct placed *placed)
     if (strip->outline)
         add_outline(page, strip, placed->y);
     if (strip->top_rule && !placed->begins)
-        pdf_canvas_line(&page->canvas, origin,
-                        (struct point){origin.x + geometry->text_width, origin.y}, hairline_pt,
-                        INK_HAIR);
+        draw_hairline(page, placed->y);
+    if (placed->ends)
+        draw_hairline(page, placed->y + strip->height);
     for (size_t i = 0; i < strip->item_count; i++)
         draw_item(page, &strip->items[i], origin);
 }

@@ -481,16 +481,26 @@ static size_t plain_rows(const struct table *table)
     return count;
 }
 
-/* Short tables stay whole; of long ones the head with two rows, and the last two with the notes. */
-static void keep_rows(struct flow *flow, size_t first, size_t head, size_t last, size_t rows)
+/* The strips of a table: its first, the head, the last row. */
+struct table_strips {
+    size_t first, head, last;
+};
+
+/*
+ * Short tables stay whole; of long ones the head with two rows, and the last two with the notes. A
+ * bench sheet rather has all its rows on one page, and the notes on the next.
+ */
+static void keep_rows(struct flow *flow, const struct table *table,
+                      const struct table_strips *strips)
 {
-    size_t first_end = rows <= KEPT_ROWS ? last : head + 2;
-    for (size_t i = first; i < last && i <= first_end; i++)
+    bool whole = plain_rows(table) <= KEPT_ROWS;
+    size_t end = whole ? strips->last : strips->head + 2;
+    for (size_t i = strips->first; i < strips->last && i <= end; i++)
         flow->strips[i]->keep_next = true;
-    if (last > head + 1)
-        flow->strips[last - 1]->keep_next = true;
-    if (last + 1 < flow->count)
-        flow->strips[last]->keep_next = true;
+    if (strips->last > strips->head + 1)
+        flow->strips[strips->last - 1]->keep_next = true;
+    if (strips->last + 1 < flow->count && !table->write_in)
+        flow->strips[strips->last]->keep_next = true;
 }
 
 void compose_table(struct composer *composer, const char *number, const struct table *table)
@@ -515,6 +525,6 @@ void compose_table(struct composer *composer, const char *number, const struct t
     strip_rule(flow, strip, (struct point){0, strip->height},
                (struct point){flow->page->text_width, strip->height}, rule_heavy_pt, INK_TEXT);
     compose_notes(&layout);
-    keep_rows(flow, first, head, last, plain_rows(table));
+    keep_rows(flow, table, &(struct table_strips){first, head, last});
     flow_space(flow, mm(5));
 }
