@@ -3,6 +3,7 @@
 #include <dirent.h>
 #include <stdlib.h>
 #include <string.h>
+#include <sys/stat.h>
 
 enum { PIECE_BYTES_MAX = 64 << 20 };
 
@@ -23,7 +24,18 @@ static void add_file(struct buffer *all, const char *name, const char *path)
     buffer_release(&contents);
 }
 
-static void add_folder(struct buffer *all, const char *folder)
+/* The program and the fonts are megabytes that only an installation changes: size and time do. */
+static void add_stamp(struct buffer *all, const char *name, const char *path)
+{
+    struct stat about = {0};
+    if (stat(path, &about) == 0)
+        buffer_print(all, "%s %lld %lld.%09ld\n", name, (long long)about.st_size,
+                     (long long)about.st_mtim.tv_sec, about.st_mtim.tv_nsec);
+}
+
+typedef void (*add_one)(struct buffer *all, const char *name, const char *path);
+
+static void add_folder(struct buffer *all, const char *folder, add_one add)
 {
     struct arena arena = {0};
     const char **names = NULL;
@@ -40,7 +52,7 @@ static void add_folder(struct buffer *all, const char *folder)
     if (count)
         qsort(names, count, sizeof *names, by_text);
     for (size_t i = 0; i < count; i++)
-        add_file(all, names[i], arena_print(&arena, "%s/%s", folder, names[i]));
+        add(all, names[i], arena_print(&arena, "%s/%s", folder, names[i]));
     arena_release(&arena);
 }
 
@@ -48,13 +60,14 @@ void setting_hash(const struct archive *archive, char hash[HASH_TEXT_BYTES])
 {
     struct arena arena = {0};
     struct buffer all = {0};
-    add_file(&all, "program", "/proc/self/exe");
+    buffer_text(&all, GRIDLEAK_VERSION);
+    add_stamp(&all, "program", "/proc/self/exe");
     add_file(&all, "shop.yaml", arena_print(&arena, "%s/shop.yaml", archive->folder));
     if (archive->shop->logo)
         add_file(&all, "logo", arena_print(&arena, "%s/%s", archive->folder, archive->shop->logo));
-    add_folder(&all, arena_print(&arena, "%s/templates", archive->folder));
-    add_folder(&all, arena_print(&arena, "%s/templates", archive->share_folder));
-    add_folder(&all, arena_print(&arena, "%s/fonts", archive->share_folder));
+    add_folder(&all, arena_print(&arena, "%s/templates", archive->folder), add_file);
+    add_folder(&all, arena_print(&arena, "%s/templates", archive->share_folder), add_file);
+    add_folder(&all, arena_print(&arena, "%s/fonts", archive->share_folder), add_stamp);
     struct hash sum = hash_of(all.data, all.length);
     hash_text(&sum, hash);
     buffer_release(&all);
