@@ -8,6 +8,7 @@
 #include <math.h>
 
 static const double pulse_times_peak = 2;
+static const double published_touch_a = 0.5e-3;
 /* Old electrolytics were sold to -20/+100 %, others without a mark to 20 %. */
 static const double electrolytic_low = -20, electrolytic_high = 100, plain_tolerance = 20;
 
@@ -108,7 +109,7 @@ static void judge_rating(const struct facts_case *facts, struct judgement *judge
                            .limit = facts->policy->mains_rise * facts->job->set.mains.value,
                            .unit = UNIT_VOLTAGE,
                            .upper = false,
-                           .source = SOURCE_SAFETY_CLASS});
+                           .source = SOURCE_POLICY});
 }
 
 static void judge_touch(const struct facts_case *facts, struct judgement *judgement)
@@ -117,15 +118,16 @@ static void judge_touch(const struct facts_case *facts, struct judgement *judgem
         return;
     double rise_v = facts->policy->mains_rise * facts->job->set.mains.value;
     add(judgement, facts->policy,
-        (struct criterion){.key = CRITERION_TOUCH_CURRENT,
-                           .value = mains_touch_current(rise_v, mains_frequency(facts->job),
-                                                        mains_isolators(facts->job, facts->left),
-                                                        facts->leak_s),
-                           .limit = facts->policy->touch_current_a,
-                           .unit = UNIT_CURRENT,
-                           .upper = true,
-                           .joint = true,
-                           .source = SOURCE_TOUCH_CURRENT});
+        (struct criterion){
+            .key = CRITERION_TOUCH_CURRENT,
+            .value = mains_touch_current(rise_v, mains_frequency(facts->job),
+                                         mains_isolators(facts->job, facts->left), facts->leak_s),
+            .limit = facts->policy->touch_current_a,
+            .unit = UNIT_CURRENT,
+            .upper = true,
+            .joint = true,
+            .source = facts->policy->touch_current_a == published_touch_a ? SOURCE_TOUCH_CURRENT
+                                                                          : SOURCE_POLICY});
 }
 
 static void judge_pulse(const struct facts_case *facts, struct judgement *judgement)

@@ -16,12 +16,21 @@ double heat_surface(const struct dimensions *size)
                 size->height_m * size->length_m);
 }
 
+static const struct dimensions *case_of(const struct job *job, const struct capacitor *part)
+{
+    if (part->case_size.set || part->can == NOT_LISTED)
+        return &part->case_size;
+    return &job->cans[part->can].case_size;
+}
+
+bool heat_is_derived(const struct job *job, const struct capacitor *part)
+{
+    return heat_surface(case_of(job, part)) > 0;
+}
+
 double heat_limit(const struct job *job, const struct capacitor *part, const struct policy *policy)
 {
-    const struct dimensions *size = &part->case_size;
-    if (!size->set && part->can != NOT_LISTED)
-        size = &job->cans[part->can].case_size;
-    double surface_m2 = heat_surface(size);
+    double surface_m2 = heat_surface(case_of(job, part));
     if (surface_m2 > 0)
         return temperature_doubling(part->type).theta_k * cooling_w_per_m2_k * surface_m2 /
                (4 * M_E * M_LN2);

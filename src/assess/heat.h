@@ -15,4 +15,7 @@ double heat_surface(const struct dimensions *size);
    which self-heating runs away. Without a case size the policy's figure (paper, can, tubular). */
 double heat_limit(const struct job *job, const struct capacitor *part, const struct policy *policy);
 
+/* Whether a case size is known, so that the limit is derived and not the policy's. */
+bool heat_is_derived(const struct job *job, const struct capacitor *part);
+
 #endif

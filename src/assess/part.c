@@ -59,6 +59,20 @@ static size_t count_readings(const struct assessment *assessment, size_t index)
     return count;
 }
 
+/* Once a part. */
+static void warn_above_marked(struct assessment *assessment, struct capacitor_findings *part,
+                              const struct reading *reading)
+{
+    const struct marking *marked = &part->part->marked;
+    if (!marked->rated.set || marked->rated_ac || part->tested_above_marked ||
+        !reading->set_volts.set || reading->set_volts.value <= marked->rated.value)
+        return;
+    part->tested_above_marked = true;
+    diagnostic_add(assessment->diagnostics, &assessment->job->source, reading->at,
+                   DIAGNOSTIC_TESTED_ABOVE_MARKED, NULL, "%s tested at %g V, marked %g V",
+                   part->part->ref, reading->set_volts.value, marked->rated.value);
+}
+
 static void add_reading(struct assessment *assessment, size_t index, const struct reading *reading,
                         int run)
 {
@@ -75,13 +89,7 @@ static void add_reading(struct assessment *assessment, size_t index, const struc
                        DIAGNOSTIC_READING_IMPOSSIBLE,
                        "check the volts, the current and the tester's `series`",
                        "more current than the tester's series resistance lets pass");
-    if (part->part->marked.rated.set && !part->part->marked.rated_ac &&
-        reading->set_volts.value > part->part->marked.rated.value && !part->tested_above_marked) {
-        part->tested_above_marked = true;
-        diagnostic_add(assessment->diagnostics, &assessment->job->source, reading->at,
-                       DIAGNOSTIC_TESTED_ABOVE_MARKED, NULL, "%s tested at %g V, marked %g V",
-                       part->part->ref, reading->set_volts.value, part->part->marked.rated.value);
-    }
+    warn_above_marked(assessment, part, reading);
 }
 
 static void collect(struct assessment *assessment, size_t index)
@@ -95,7 +103,11 @@ static void collect(struct assessment *assessment, size_t index)
         add_reading(assessment, index, &part->readings[i], (int)part->readings[i].line);
     for (size_t i = 0; i < assessment->job->reform_count; i++) {
         const struct reform *reform = &assessment->job->reforms[i];
-        for (size_t k = 0; reform->capacitor == (int)index && k < reform->after_rest_count; k++)
+        if (reform->capacitor != (int)index)
+            continue;
+        for (size_t k = 0; k < reform->log_count; k++)
+            warn_above_marked(assessment, &assessment->capacitors[index], &reform->log[k]);
+        for (size_t k = 0; k < reform->after_rest_count; k++)
             add_reading(assessment, index, &reform->after_rest[k],
                         RUNS_OF_A_LOG * (int)(i + 1) + (int)reform->after_rest[k].line);
     }
@@ -345,8 +357,7 @@ static void judge_unread(const struct assessment *assessment, size_t index, bool
     struct facts_case facts = {assessment->job, assessment->policy, part->part, 0, left};
     *judgement = (struct judgement){0};
     facts_judge(&facts, judgement);
-    if (judgement->count > 0 && judgement->outcome >= OUTCOME_NOT_JUDGED &&
-        judgement->outcome != OUTCOME_NOT_JUDGED)
+    if (judgement->count > 0 && judgement->outcome > OUTCOME_NOT_JUDGED)
         return;
     judgement->outcome = OUTCOME_NOT_JUDGED;
     judgement->why = part->reading_count > 0 ? WHY_NOT_LIFTED : WHY_NO_READING;

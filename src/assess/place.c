@@ -39,7 +39,7 @@ static void add_heat(const struct place_case *place, double leak_s, struct place
                                                     place->can_others_w,
                                            .limit = place->heat_limit_w,
                                            .unit = UNIT_POWER,
-                                           .source = SOURCE_SELF_HEATING});
+                                           .source = place->heat_source});
 }
 
 /* R_L >= ratio * R, held as R/R_L <= 1/ratio so that it rises with the leak. */

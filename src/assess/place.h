@@ -44,9 +44,10 @@ struct place_case {
     double current_a;
     double bias_v;       /* least bias that the leak works against; NaN */
     double heat_limit_w; /* of the part */
-    bool electrolytic;   /* leakage rule and heat are judged wherever it sits */
-    bool heat_counts;    /* heat is judged: an electrolytic, or nothing else limits the leak */
-    double margin;       /* ageing */
+    enum source_key heat_source;
+    bool electrolytic; /* leakage rule and heat are judged wherever it sits */
+    bool heat_counts;  /* heat is judged: an electrolytic, or nothing else limits the leak */
+    double margin;     /* ageing */
     struct leakage_rule rule;
     bool rule_unknown; /* the job or the shop names no rule that is known */
     enum leakage_status rule_status;

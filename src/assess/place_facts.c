@@ -252,6 +252,7 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
         place.source_ohm = 0; /* the cautious default */
     place.feed_rating_w = rating_of(bench->job, &part->feed);
     place.heat_limit_w = heat_limit(bench->job, part, bench->policy);
+    place.heat_source = heat_is_derived(bench->job, part) ? SOURCE_SELF_HEATING : SOURCE_POLICY;
     place.electrolytic = place.heat_counts = dielectric_is_electrolytic(part->type);
     place.margin = ageing_margin(bench->policy, part->type);
     find_rule(&place);

@@ -456,8 +456,9 @@ static void anchor(const struct builder *builder, struct stage_group *group)
             if (law.cathode_a <= 0)
                 break;
             double scale = share * cathode_v / ohm / law.cathode_a;
-            for (int other = 0; other < PHASE_COUNT; other++)
-                group->circuits[other][i].law.ik0_a *= scale;
+            /* The stage as designed keeps the book's valve. */
+            group->circuits[PHASE_FOUND][i].law.ik0_a *= scale;
+            group->circuits[PHASE_LEFT][i].law.ik0_a *= scale;
         }
     }
 }
