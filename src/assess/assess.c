@@ -129,9 +129,10 @@ static void warn_electrolytic(struct assessment *assessment, size_t index)
     struct arena *arena = assessment->arena;
     if (!place->electrolytic)
         return;
-    if (part->service.set && part->service.value < 0)
-        warn(assessment, part->service.at, DIAGNOSTIC_ELECTROLYTIC_REVERSED,
-             arena_print(arena, "%s is an electrolytic with reverse volts in service", part->ref));
+    if (place->reversed)
+        warn(assessment, part->source_at.line ? part->source_at : part->at,
+             DIAGNOSTIC_ELECTROLYTIC_REVERSED,
+             arena_print(arena, "%s is an electrolytic with its grid above its source", part->ref));
     if (place->rule_unknown)
         warn(assessment, part->rule.text ? part->rule.at : part->at, DIAGNOSTIC_RULE_UNKNOWN,
              arena_print(arena, "no leakage rule '%s'",

@@ -37,6 +37,7 @@ struct place_case {
     enum reason why;     /* WHY_NONE: judged by its leak */
     const char *missing; /* WHY_MISSING_FACT: the key */
     double service_v;    /* highest d.c. in service; NaN: unknown */
+    bool reversed;       /* coupling: the grid's return is above the source */
     double source_v, source_ohm;
     double feed_ohm, circuit_ohm;
     double source_u_ohm, feed_u_ohm, circuit_u_ohm; /* standard; 0: not measured */

@@ -266,6 +266,7 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
     else if (part->place == PLACE_SCREEN_BYPASS && place.model)
         place.feed_rating_w = rating_of(bench->job, &place.model->stage->screen);
     place.service_v = service_volts(&place);
+    place.reversed = part->place == PLACE_COUPLING && place.source_v < return_volts(&place);
     const char *missing = missing_fact(&place);
     if (missing || (place.why == WHY_NONE && !(place.service_v > 0))) {
         place.why = WHY_MISSING_FACT;

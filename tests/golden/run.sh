@@ -10,11 +10,14 @@ root=$(cd "$here/../.." && pwd)
 build=$(cd "$1" && pwd)
 work=$build/tests/golden
 mkdir -p "$work"
-make -s -C "$root" BUILD="$build" "$build/libjob.a" "$build/libreference.a" "$build/libquantity.a" \
+make -s -C "$root" BUILD="$build" "$build/libassess.a" "$build/libjob.a" "$build/libreference.a" "$build/libquantity.a" \
     "$build/libbase.a" >&2
 ${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g ${EXTRA:-} -I"$root/src" "$root/tests/golden/read_job.c" \
     "$build/libjob.a" "$build/libreference.a" "$build/libquantity.a" "$build/libbase.a" \
     -lyaml -lm -o "$work/read_job"
+${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g ${EXTRA:-} -I"$root/src" "$root/tests/golden/assess_job.c" \
+    "$build/libassess.a" "$build/libjob.a" "$build/libreference.a" "$build/libquantity.a" \
+    "$build/libbase.a" -lyaml -lcminpack -lm -o "$work/assess_job"
 
 bad=0
 count=0
@@ -26,6 +29,18 @@ for source in *.yaml *.make missing-file.none; do
     *) "$work/read_job" "$name.yaml" ;;
     esac >"$work/$name.out"
     rm -f "$work/$name.yaml"
+    count=$((count + 1))
+    if [ "${UPDATE:-}" ]; then
+        cp "$work/$name.out" "$name.expected"
+    elif ! diff -u "$name.expected" "$work/$name.out"; then
+        bad=$((bad + 1))
+    fi
+done
+# What the assessment says about jobs that are well written: assessment/.
+cd "$root/tests/golden/assessment"
+for source in *.yaml; do
+    name=${source%.*}
+    "$work/assess_job" "$source" >"$work/$name.out"
     count=$((count + 1))
     if [ "${UPDATE:-}" ]; then
         cp "$work/$name.out" "$name.expected"
