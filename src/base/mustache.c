@@ -457,7 +457,12 @@ static void render_source(struct renderer *renderer, const struct source *source
 bool mustache_render(const struct source *source, const struct mustache_value *values,
                      const struct mustache_target *target, struct buffer *out)
 {
-    struct renderer renderer = {.target = target, .out = out};
+    struct renderer renderer; /* the stack of contexts is large and need not be cleared */
+    renderer.target = target;
+    renderer.context.count = 0;
+    renderer.out = out;
+    renderer.depth = 0;
+    renderer.failed = renderer.stopped = false;
     render_source(&renderer, source, values);
     return !renderer.failed;
 }

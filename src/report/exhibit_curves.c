@@ -271,7 +271,8 @@ void exhibit_reform_curves(struct composition *composition, size_t index)
     struct curves *curves = &exhibit->plot.curves;
     double limiter = limiter_ohm(composition, reform);
     begin_curves(composition, curves);
-    set_limit(composition, curves, part->bench_limit_a);
+    set_limit(composition, curves,
+              isfinite(part->test_limit_a) ? part->test_limit_a : part->bench_limit_a);
     curves->panels[curves->panel_count++] =
         panel_of(composition, reform->log, reform->log_count, true);
     add_step_volts(composition, reform->log, reform->log_count, &curves->panels[0]);

@@ -44,35 +44,49 @@ static struct shown_figure shown(double value, enum unit unit, bool at_most)
     return (struct shown_figure){value, at_most ? "effect_bound.under" : NULL};
 }
 
+enum sign { SIGN_NONE, SIGN_RISE, SIGN_FALL };
+
 static const char *figure_phrase(const struct phrasing *say, double value, enum unit unit,
-                                 bool at_most, bool with_sign)
+                                 bool at_most, enum sign sign)
 {
     if (!isfinite(value))
         return NULL;
     struct shown_figure figure = shown(value, unit, at_most);
     const char *text = figure.bound ? text_set(say->arena, figure.value, unit, 2)
                                     : quantity_text(say->arena, figure.value, unit, 2);
-    if (with_sign && figure.value > 0)
-        text = arena_print(say->arena, "+%s", text);
+    if (sign != SIGN_NONE && figure.value > 0)
+        text = arena_print(say->arena, "%s%s", sign == SIGN_RISE ? "+" : "−", text);
     return figure.bound ? phrase(say, figure.bound, "amount", text, NULL) : text;
 }
 
-/* The line that every set has needs no name. */
-static const char *subject_text(const struct effect *effect)
+/* An AVC line is named where the set has several. */
+static bool has_several_lines(const struct job *job)
 {
-    return effect->subject && strcasecmp(effect->subject, "avc") == 0 ? NULL : effect->subject;
+    const char *first = NULL;
+    for (size_t i = 0; i < job->capacitor_count; i++) {
+        const char *line = job->capacitors[i].line;
+        if (line && first && strcasecmp(line, first) != 0)
+            return true;
+        first = first ? first : line;
+    }
+    return false;
 }
 
-static const char *effect_phrase(const struct phrasing *say, const struct effect *effect)
+static const char *effect_phrase(const struct phrasing *say, const struct job *job,
+                                 const struct effect *effect)
 {
     struct arena *arena = say->arena;
+    enum unit unit = effect->unit;
+    bool at_most = effect->at_most;
+    bool of_line = strncmp(effect->key, "line_", 5) == 0;
     double share = effect->of > 0 ? 100 * effect->value / effect->of : NAN;
     return phrase(say, arena_print(arena, "effect.%s", effect->key), "amount",
-                  figure_phrase(say, effect->value, effect->unit, effect->at_most, false), "change",
-                  figure_phrase(say, effect->value, effect->unit, effect->at_most, true), "of",
-                  text_set(arena, effect->of, effect->unit, 3), "share",
-                  figure_phrase(say, share, UNIT_PERCENT, effect->at_most, false), "subject",
-                  subject_text(effect), NULL);
+                  figure_phrase(say, effect->value, unit, at_most, SIGN_NONE), "rise",
+                  figure_phrase(say, effect->value, unit, at_most, SIGN_RISE), "fall",
+                  figure_phrase(say, effect->value, unit, at_most, SIGN_FALL), "of",
+                  text_set(arena, effect->of, unit, 3), "share",
+                  figure_phrase(say, share, UNIT_PERCENT, at_most, SIGN_NONE), "subject",
+                  of_line && !has_several_lines(job) ? NULL : effect->subject, NULL);
 }
 
 /* ---- reasons */
@@ -180,7 +194,7 @@ static void explain_part(struct capacitor_findings *part, const struct phrasing 
     struct effect *effects = arena_array(say->arena, part->effect_count, sizeof *effects);
     for (size_t i = 0; i < part->effect_count; i++) {
         effects[i] = part->effects[i];
-        effects[i].text = effect_phrase(say, &effects[i]);
+        effects[i].text = effect_phrase(say, job, &effects[i]);
     }
     part->effects = effects;
     part->why_text = why_phrase(say, job, part);

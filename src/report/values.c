@@ -155,6 +155,14 @@ const struct prose *composition_prose(const struct composition *composition, con
     return NULL;
 }
 
+static bool prose_present(const struct job *job, const char *name)
+{
+    for (size_t i = 0; i < PROSE_FIELDS; i++)
+        if (strcmp(prose_fields[i].name, name) == 0)
+            return prose_field(job, i) != NULL;
+    return false;
+}
+
 static bool uses_rule(const struct findings *findings)
 {
     for (size_t i = 0; i < findings->capacitor_count; i++)
@@ -172,6 +180,7 @@ static void put_sections(const struct filler *root)
     struct filler has = fill(root->composition);
     for (size_t i = 0; i < PROSE_FIELDS; i++)
         put_flag(&has, prose_fields[i].name, prose_field(job, i) != NULL);
+    put_flag(&has, "agreement", prose_present(job, "plan") || prose_present(job, "approvals"));
     put_flag(&has, "capacitors", job->capacitor_count > 0);
     put_flag(&has, "many_capacitors", job->capacitor_count > LARGE_SET);
     put_flag(&has, "soak_curves", has_soak_curves(composition));
