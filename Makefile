@@ -38,7 +38,17 @@ TEMPLATES = $(wildcard templates/*)
 SHARE_FILES = $(patsubst templates/%,$(SHARE)/templates/%,$(TEMPLATES)) \
     $(patsubst %,$(SHARE)/fonts/%.ttf,$(FONTS)) $(SHARE)/fonts/sRGB.icc
 
-all: $(BUILD)/gridleak $(SHARE_FILES)
+all: $(BUILD)/gridleak $(SHARE_FILES) man schema
+
+man: $(BUILD)/gridleak.1
+$(BUILD)/gridleak.1: $(BUILD)/gridleak
+	@$< --man-page >$@
+
+# For editors: the YAML language server reads it.
+schema: $(SHARE)/job.schema.json
+$(SHARE)/job.schema.json: $(BUILD)/gridleak
+	@mkdir -p $(@D)
+	@$< fields --schema >$@
 
 $(BUILD)/gridleak: $(BUILD)/src/main.o $(call libraries_from,archive)
 	@echo "  link    $@"
@@ -111,6 +121,8 @@ install: all
 	install -m 755 $(BUILD)/gridleak $(DESTDIR)$(PREFIX)/bin/gridleak
 	install -m 644 $(SHARE)/templates/* $(DESTDIR)$(PREFIX)/share/gridleak/templates
 	install -m 644 $(SHARE)/fonts/* $(DESTDIR)$(PREFIX)/share/gridleak/fonts
+	install -m 644 $(SHARE)/job.schema.json $(DESTDIR)$(PREFIX)/share/gridleak
+	install -m 644 $(BUILD)/gridleak.1 $(DESTDIR)$(PREFIX)/share/man/man1
 
 uninstall:
 	rm -f $(DESTDIR)$(PREFIX)/bin/gridleak $(DESTDIR)$(PREFIX)/share/man/man1/gridleak.1
@@ -120,5 +132,5 @@ clean:
 	rm -rf $(BUILD) asan
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
-.PHONY: all unit packages check-packages demo check lint format install uninstall clean
+.PHONY: all man schema unit packages check-packages demo check lint format install uninstall clean
 .SECONDARY:

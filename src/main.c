@@ -4,12 +4,12 @@
  */
 #include "archive/archive.h"
 #include "archive/job_files.h"
+#include "archive/new_job.h"
 #include "archive/publish.h"
 #include "archive/seal.h"
 #include "base/options.h"
 #include "job/manual.h"
 #include "job/schema.h"
-#include "job/start.h"
 #include "write/json.h"
 
 #include <errno.h>
@@ -75,21 +75,21 @@ static const struct command_row command_rows[] = {
      "Writes JOB.yaml into the archive, with every section ready to be filled in. With\n"
      "--like the parts of an earlier job on the same chassis are kept and its readings,\n"
      "dates and actions left out.\n",
-     COMMAND_START},
+     COMMAND_START, 1, 1},
     {"sheet", "JOB.yaml [-o FILE]", "bench sheet before measuring",
      "What to lift, at which volts to test, how long to wait, and the limit of each part in\n"
      "microamperes and in megohms, with blanks to write in. On the terminal, or in the\n"
      "format of FILE's name: .html, .pdf or .md.\n",
-     COMMAND_SHEET},
+     COMMAND_SHEET, 1, 1},
     {"assess", "JOB.yaml...", "findings, part by part",
      "What each capacitor leaks, what that does where it sits, whether it may stay, and why.\n"
      "`-` reads standard input. A failed capacitor is a finding, never an exit status.\n",
-     COMMAND_ASSESS},
+     COMMAND_ASSESS, 1, OPERANDS_MANY},
     {"publish", "ARCHIVE | JOB.yaml... [-o DIR]", "records, bench sheets and pages",
      "Makes the shop's, the client's and the sale copy of every job as Markdown, HTML and\n"
      "PDF, the bench sheets, and the list of the archive. A job file with mistakes is told\n"
      "and left out; the others are made.\n",
-     COMMAND_PUBLISH},
+     COMMAND_PUBLISH, 1, OPERANDS_MANY},
     {"seal", "JOB.yaml client|sale [-o DIR]", "set a published copy aside for good",
      "Copies the client's or the sale copy, as last published, into the archive's folder\n"
      "sealed/, which no command writes again, and appends a line to seals.txt. The same\n"
@@ -97,15 +97,15 @@ static const struct command_row command_rows[] = {
      "it has changed since. It cannot show that the shop did not write everything anew\n"
      "before it handed anything out. To sign a sealed folder:\n"
      "ssh-keygen -Y sign -f KEY -n gridleak FOLDER/manifest.sha256\n",
-     COMMAND_SEAL},
+     COMMAND_SEAL, 2, 2},
     {"prove", "FOLDER", "has anything in a copy been changed?",
      "Holds every file against manifest.sha256, looks for files added or lost, checks the\n"
      "record's fingerprint and, inside the archive, the chain of seals.txt. `sha256sum -c\n"
      "manifest.sha256` checks the files alone. Exit 1 when something differs.\n",
-     COMMAND_PROVE},
+     COMMAND_PROVE, 1, 1},
     {"fields", "[--schema]", "every key of a job file",
      "Each key with its unit, choices and an example, or a JSON Schema for editors.\n",
-     COMMAND_FIELDS},
+     COMMAND_FIELDS, 0, 0},
     {0},
 };
 
@@ -147,15 +147,27 @@ static void show_diagnostics(const struct diagnostics *list, bool quiet)
 /* Standard output, whole; a full disk or a closed pipe is a failure of the system. */
 static int print(const struct buffer *text)
 {
-    if (text->length && fwrite(text->data, 1, text->length, stdout) != text->length)
-        return EXIT_SYSTEM;
-    return fflush(stdout) == 0 ? EXIT_DONE : EXIT_SYSTEM;
+    bool whole = !text->length || fwrite(text->data, 1, text->length, stdout) == text->length;
+    if (fflush(stdout) == 0 && whole)
+        return EXIT_DONE;
+    fprintf(stderr, "gridleak: cannot write to standard output: %s\n", strerror(errno));
+    return EXIT_SYSTEM;
 }
 
 static bool bold_allowed(void)
 {
     const char *no_colour = getenv("NO_COLOR");
     return isatty(STDOUT_FILENO) && !(no_colour && *no_colour);
+}
+
+/* The archive that --archive names must be one; false, and told. */
+static bool archive_option_is_good(const struct session *session)
+{
+    const char *folder = session->options.archive;
+    bool good = !folder || archive_is_at(folder);
+    if (!good)
+        fprintf(stderr, "gridleak: '%s' is no archive: it holds no shop.yaml\n", folder);
+    return good;
 }
 
 static bool open_archive(struct session *session, const char *job_path, struct archive *archive)
@@ -165,6 +177,8 @@ static bool open_archive(struct session *session, const char *job_path, struct a
         fputs("gridleak: the templates are not where they were installed\n", stderr);
         exit(EXIT_SYSTEM);
     }
+    if (!archive_option_is_good(session))
+        return false;
     const char *folder = session->options.archive ? session->options.archive
                          : job_path && strcmp(job_path, "-") != 0
                              ? archive_folder_of(job_path, &session->arena)
@@ -173,6 +187,13 @@ static bool open_archive(struct session *session, const char *job_path, struct a
     if (!good)
         show_diagnostics(&session->diagnostics, session->options.quiet);
     return good;
+}
+
+/* A command line that its command cannot use. */
+static int wrong_usage(const struct command_row *command)
+{
+    fprintf(stderr, "gridleak: usage: gridleak %s %s\n", command->name, command->usage);
+    return EXIT_INPUT;
 }
 
 static int exit_of(const struct session *session, size_t errors, size_t warnings)
@@ -298,10 +319,40 @@ static void tell_job(const struct publish_event *event, void *context)
                 event->done == event->of ? "\n" : "");
 }
 
+/* Whether the operands are one archive, or job files; false after a mistake, told. */
+static bool publish_operands(const struct session *session, unsigned *threads)
+{
+    enum { THREADS_MAX = 64 };
+    const char *word = session->options.threads;
+    char *end = NULL;
+    unsigned long wanted = word ? strtoul(word, &end, 10) : 2;
+    if (wanted < 1 || wanted > THREADS_MAX || (end && *end)) {
+        fprintf(stderr, "gridleak: --threads is a number from 1 to %d, not '%s'\n", THREADS_MAX,
+                word);
+        return false;
+    }
+    *threads = (unsigned)wanted;
+    for (int i = 0; i < session->operand_count; i++) {
+        const char *word_at = session->operands[i];
+        bool job = ends_with(word_at, ".yaml");
+        if (job && !session->options.pages)
+            continue;
+        if (!job && session->operand_count == 1)
+            continue;
+        fprintf(stderr, "gridleak: '%s': publish takes one archive, or job files%s\n", word_at,
+                session->options.pages ? "; --pages one archive" : "");
+        return false;
+    }
+    return true;
+}
+
 static int command_publish(struct session *session)
 {
     const char *first = session->operands[0];
-    bool whole = session->operand_count == 1 && !ends_with(first, ".yaml");
+    bool whole = !ends_with(first, ".yaml");
+    unsigned threads;
+    if (!publish_operands(session, &threads))
+        return EXIT_INPUT;
     if (whole)
         session->options.archive = first;
     struct archive archive;
@@ -311,14 +362,13 @@ static int command_publish(struct session *session)
         show_diagnostics(&session->diagnostics, session->options.quiet);
         return EXIT_SYSTEM;
     }
-    const char *threads = session->options.threads;
     struct publish_request request = {
         .output = session->options.output ? session->options.output : "output",
         .job_paths = whole ? NULL : (const char *const *)session->operands,
         .job_path_count = whole ? 0 : (size_t)session->operand_count,
         .pages_only = session->options.pages,
         .wait = session->options.wait,
-        .threads = threads ? (unsigned)strtoul(threads, NULL, 10) : 0,
+        .threads = threads,
         .listener = tell_job,
         .listener_context = session,
     };
@@ -374,7 +424,7 @@ static int show_seal(const struct seal_result *result)
 
 static int command_seal(struct session *session)
 {
-    const char *word = session->operand_count == 2 ? session->operands[1] : "";
+    const char *word = session->operands[1];
     enum copy copy = strcmp(word, copy_text(COPY_SALE)) == 0 ? COPY_SALE : COPY_CLIENT;
     if (strcmp(word, copy_text(copy)) != 0) {
         fputs("gridleak: usage: gridleak seal JOB.yaml client|sale\n", stderr);
@@ -428,7 +478,51 @@ static int command_prove(struct session *session)
     return proof.count ? EXIT_NO : EXIT_DONE;
 }
 
-/* ---- fields, start */
+/* ---- start */
+
+static int show_new_job(const struct new_job *made)
+{
+    switch (made->status) {
+    case NEW_JOB_DONE:
+        printf("%s\n", made->path);
+        return EXIT_DONE;
+    case NEW_JOB_NUMBER:
+        fprintf(stderr,
+                "gridleak: '%s' cannot be a job number: letters, digits, '.' and '-', beginning "
+                "with a letter or digit\n",
+                made->path);
+        return EXIT_INPUT;
+    case NEW_JOB_THERE:
+        fprintf(stderr, "gridleak: '%s' is there already\n", made->path);
+        return EXIT_INPUT;
+    case NEW_JOB_LIKE_MISSING:
+        fprintf(stderr, "gridleak: cannot read '%s': %s\n", made->path,
+                file_status_text(made->failure));
+        return EXIT_INPUT;
+    case NEW_JOB_FAILED:
+        return system_failure(made->path, made->failure);
+    }
+    return EXIT_SYSTEM;
+}
+
+static int command_start(struct session *session)
+{
+    if (!archive_option_is_good(session))
+        return EXIT_INPUT;
+    struct new_job_request request = {
+        .archive_folder = session->options.archive ? session->options.archive
+                                                   : archive_folder_of("job.yaml", &session->arena),
+        .number = session->operands[0],
+        .received = today(&session->arena),
+        .like = session->options.like,
+    };
+    struct new_job made = new_job(&request, &session->arena, &session->diagnostics);
+    diagnostics_sort(&session->diagnostics);
+    show_diagnostics(&session->diagnostics, session->options.quiet);
+    return show_new_job(&made);
+}
+
+/* ---- fields */
 
 static int command_fields(struct session *session)
 {
@@ -452,12 +546,9 @@ static const struct command_row *find_command(const char *name)
 
 static int run(struct session *session, const struct command_row *command)
 {
-    if (command->bit == COMMAND_FIELDS)
-        return command_fields(session);
-    if (session->operand_count == 0) {
-        fprintf(stderr, "gridleak: usage: gridleak %s %s\n", command->name, command->usage);
-        return EXIT_INPUT;
-    }
+    if (session->operand_count < command->operands_least ||
+        session->operand_count > command->operands_most)
+        return wrong_usage(command);
     switch ((enum command_bit)command->bit) {
     case COMMAND_ASSESS:
         return command_assess(session);
@@ -470,7 +561,9 @@ static int run(struct session *session, const struct command_row *command)
     case COMMAND_PROVE:
         return command_prove(session);
     case COMMAND_START:
+        return command_start(session);
     case COMMAND_FIELDS:
+        return command_fields(session);
     case COMMAND_ALL:
         break;
     }

@@ -63,6 +63,15 @@ const char *archive_folder_of(const char *job_path, struct arena *arena)
     return folder;
 }
 
+bool archive_is_at(const char *folder)
+{
+    struct buffer path = {0};
+    buffer_print(&path, "%s/shop.yaml", folder);
+    bool there = access(buffer_string(&path), F_OK) == 0;
+    buffer_release(&path);
+    return there;
+}
+
 static const struct shop *read_shop(const char *folder, struct arena *arena,
                                     struct diagnostics *diagnostics)
 {

@@ -28,6 +28,9 @@ const char *archive_share_folder(struct arena *arena);
    own folder. */
 const char *archive_folder_of(const char *job_path, struct arena *arena);
 
+/* Whether the folder is there and holds shop.yaml. */
+bool archive_is_at(const char *folder);
+
 /* false when templates or shop.yaml have errors; diagnostics tell. */
 bool archive_open(struct archive *archive, const char *folder, const char *share_folder,
                   struct arena *arena, struct diagnostics *diagnostics);

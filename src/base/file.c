@@ -24,6 +24,8 @@ static enum file_status status_of(int error)
     case ENOSPC:
     case EDQUOT:
         return FILE_DISK_FULL;
+    case EEXIST:
+        return FILE_EXISTS;
     default:
         return FILE_FAILED;
     }
@@ -44,6 +46,8 @@ const char *file_status_text(enum file_status status)
         return "too large";
     case FILE_DISK_FULL:
         return "the disk is full";
+    case FILE_EXISTS:
+        return "it is there already";
     case FILE_FAILED:
         return strerror(errno);
     }
@@ -117,6 +121,29 @@ static enum file_status write_all(int file, const char *data, size_t length)
     return FILE_OK;
 }
 
+/* Write the bytes into a new file beside `path`, whose name is appended to *aside. */
+static enum file_status write_aside(const char *path, const void *data, size_t length,
+                                    struct buffer *aside)
+{
+    buffer_print(aside, "%s.part-%ld", path, (long)getpid());
+    int file = open(buffer_string(aside), O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
+    if (file < 0)
+        return status_of(errno);
+    enum file_status status = write_all(file, data, length);
+    if (close(file) != 0 && status == FILE_OK)
+        status = status_of(errno);
+    return status;
+}
+
+/* Remove what was written aside; errno keeps saying what went wrong before. */
+static void drop_aside(struct buffer *aside)
+{
+    int error = errno;
+    unlink(buffer_string(aside));
+    buffer_release(aside);
+    errno = error;
+}
+
 enum file_status file_write(const char *path, const void *data, size_t length, bool *changed)
 {
     if (changed)
@@ -124,27 +151,39 @@ enum file_status file_write(const char *path, const void *data, size_t length, b
     if (holds_already(path, data, length))
         return FILE_OK;
     struct buffer aside = {0};
-    buffer_print(&aside, "%s.part-%ld", path, (long)getpid());
-    const char *aside_path = buffer_string(&aside);
-    enum file_status status = FILE_OK;
-    int file = open(aside_path, O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
-    if (file < 0) {
+    enum file_status status = write_aside(path, data, length, &aside);
+    if (status == FILE_OK && rename(buffer_string(&aside), path) != 0)
         status = status_of(errno);
-    } else {
-        status = write_all(file, data, length);
-        if (close(file) != 0 && status == FILE_OK)
-            status = status_of(errno);
-        if (status == FILE_OK && rename(aside_path, path) != 0)
-            status = status_of(errno);
-        if (status != FILE_OK) {
-            int error = errno;
-            unlink(aside_path);
-            errno = error;
-        }
-    }
-    buffer_release(&aside);
+    if (status == FILE_OK)
+        buffer_release(&aside);
+    else
+        drop_aside(&aside);
     if (changed)
         *changed = status == FILE_OK;
+    return status;
+}
+
+/* Give the file its name unless that is taken. FAT and some shares know no links: there the
+   question and the renaming are two steps. */
+static enum file_status name_if_free(const char *aside, const char *path)
+{
+    if (link(aside, path) == 0)
+        return FILE_OK;
+    if (errno == EEXIST)
+        return FILE_EXISTS;
+    struct stat about;
+    if (lstat(path, &about) == 0)
+        return FILE_EXISTS;
+    return rename(aside, path) == 0 ? FILE_OK : status_of(errno);
+}
+
+enum file_status file_create(const char *path, const void *data, size_t length)
+{
+    struct buffer aside = {0};
+    enum file_status status = write_aside(path, data, length, &aside);
+    if (status == FILE_OK)
+        status = name_if_free(buffer_string(&aside), path);
+    drop_aside(&aside);
     return status;
 }
 

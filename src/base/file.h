@@ -17,7 +17,8 @@ enum file_status {
     FILE_NOT_REGULAR, /* a folder, a device */
     FILE_LARGE,       /* more than the limit */
     FILE_DISK_FULL,
-    FILE_FAILED /* any other; errno says why */
+    FILE_EXISTS, /* and must not be written over */
+    FILE_FAILED  /* any other; errno says why */
 };
 
 /* English, lower case, no full stop: "cannot open 'x': " comes before it. */
@@ -28,6 +29,9 @@ enum file_status file_read(const char *path, size_t limit_bytes, struct buffer *
 
 /* Make the file hold exactly these bytes. *changed (may be NULL): whether it held others before. */
 enum file_status file_write(const char *path, const void *data, size_t length, bool *changed);
+
+/* Make the file hold these bytes, whole or not at all; FILE_EXISTS when its name is taken. */
+enum file_status file_create(const char *path, const void *data, size_t length);
 
 /* Make a folder and those above it; an existing one is fine. */
 enum file_status folder_make(const char *path);

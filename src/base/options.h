@@ -15,8 +15,8 @@ struct option_row {
     char letter;          /* 'o': -o; 0: none */
     const char *argument; /* "DIR"; NULL: a flag */
     const char *text;     /* one line of help, no capital, no full stop */
-    size_t offset;        /* in the caller's struct: a bool, or a const char * when it has an argument */
-    unsigned commands;    /* bit of each command that knows it */
+    size_t offset; /* in the caller's struct: a bool, or a const char * when it has an argument */
+    unsigned commands; /* bit of each command that knows it */
 };
 
 struct command_row {
@@ -25,12 +25,15 @@ struct command_row {
     const char *summary; /* one line */
     const char *details; /* paragraphs for the help and the man page; lines under 78 columns */
     unsigned bit;
+    int operands_least, operands_most; /* how many words besides the options it takes */
 };
+
+enum { OPERANDS_MANY = 1 << 20 };
 
 /*
  * Parse argv[0..argc) (behind the command's name) by the rows of that command into *values.
  * Operands (a lone `-` among them) are moved to the front of argv; their count is returned, -1
- * after a mistake, told in *message without line end.
+ * after a mistake, told in *message without line end. Their number is not looked at.
  */
 int options_parse(const struct option_row *options, const struct command_row *command, int argc,
                   char **argv, void *values, struct buffer *message);

@@ -58,7 +58,7 @@ static bool is_alphanumeric(char byte)
            (byte >= '0' && byte <= '9');
 }
 
-static bool is_job_number(const char *number)
+bool job_number_is_valid(const char *number)
 {
     size_t length = strlen(number);
     bool good = length > 0 && length <= 64 && is_alphanumeric(number[0]);
@@ -72,7 +72,7 @@ static void check_number(struct reader *reader)
     const struct job *job = reader->job;
     if (!job->number)
         return;
-    if (!is_job_number(job->number)) {
+    if (!job_number_is_valid(job->number)) {
         reader_tell(reader, job->number_at, DIAGNOSTIC_JOB_NAME,
                     "letters, digits, '.' and '-', beginning with a letter or digit",
                     "'%s' cannot be a job number", job->number);

@@ -440,6 +440,9 @@ enum {
 const struct job *job_read(const struct source *source, struct arena *arena,
                            struct diagnostics *diagnostics);
 
+/* Letters, digits, '.' and '-', beginning with a letter or digit; 64 at the most. */
+bool job_number_is_valid(const char *number);
+
 /* A shallow copy without what this copy of the record may not show (owner, private, prices ...). */
 const struct job *job_for_copy(const struct job *job, enum copy copy, struct arena *arena);
 
