@@ -53,22 +53,49 @@ static bool together(const struct assessment *assessment, size_t a, size_t b)
     return false;
 }
 
-/* The part's figures with the others in place, each leak moved by `steps` of its uncertainty. */
-static void evaluate_with(const struct assessment *assessment, size_t index, double steps,
-                          struct place_values *values)
+/* What moves by its standard uncertainty: what one instrument's readings share, one reading's own
+   last step, or one measured resistor. */
+struct shift {
+    int instrument; /* NOT_SHIFTED: none */
+    int own;        /* part; NOT_SHIFTED: none */
+    const struct stage_step *step;
+};
+enum { NOT_SHIFTED = -2 };
+
+static int instrument_index(const struct assessment *assessment, size_t index)
+{
+    const struct capacitor_findings *part = &assessment->capacitors[index];
+    return part->readings[part->deciding].reading->instrument;
+}
+
+static double shifted_leak(const struct assessment *assessment, size_t index,
+                           const struct shift *shift)
+{
+    const struct leak *leak = &assessment->work[index].leak;
+    double leak_s = leak->conductance_s;
+    if (instrument_index(assessment, index) == shift->instrument)
+        leak_s += leak->common_s;
+    return (int)index == shift->own ? leak_s + leak->own_s : leak_s;
+}
+
+/* The part's figures with the others in place. */
+static void evaluate_with(const struct assessment *assessment, size_t index,
+                          const struct shift *shift, struct place_values *values)
 {
     struct place_case place = assessment->work[index].place;
     struct stage_circuit circuits[STAGE_GROUP_MAX];
     enum joint_kind kind = kind_of(&place);
     if (kind == JOINT_STAGE) {
-        memcpy(circuits, place.circuits, place.group->count * sizeof *circuits);
+        place.bare = shift->step ? shift->step->bare : place.bare;
+        memcpy(circuits, shift->step ? shift->step->circuits : place.circuits,
+               place.group->count * sizeof *circuits);
         place.circuits = circuits;
     }
     for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
         if (i == index || !takes_part(assessment, i) || !together(assessment, index, i))
             continue;
         const struct part_work *other = &assessment->work[i];
-        double leak_s = other->leak.conductance_s + steps * other->leak.standard_s;
+        double leak_s = shifted_leak(assessment, i, shift);
         if (kind == JOINT_STAGE) {
             struct stage_leak leak = place_leak(&other->place, leak_s);
             stage_add_leak(place.stages, place.group, circuits, &leak);
@@ -78,8 +105,42 @@ static void evaluate_with(const struct assessment *assessment, size_t index, dou
             place.can_others_w += leak_s * other->place.service_v * other->place.service_v;
         }
     }
-    const struct leak *own = &assessment->work[index].leak;
-    place_evaluate(&place, own->conductance_s + steps * own->standard_s, values);
+    place_evaluate(&place, shifted_leak(assessment, index, shift), values);
+}
+
+/* The joint figures and the variance of each. */
+struct joint_figures {
+    struct place_values at;
+    double variance[PLACE_VALUES_MAX];
+};
+
+static void add_shift(const struct assessment *assessment, size_t index, const struct shift *shift,
+                      struct joint_figures *figures)
+{
+    struct place_values moved;
+    evaluate_with(assessment, index, shift, &moved);
+    for (size_t i = 0; i < figures->at.count && i < moved.count; i++) {
+        double difference = moved.items[i].value - figures->at.items[i].value;
+        figures->variance[i] += isnan(difference) ? 0 : difference * difference;
+    }
+}
+
+/* Covariance by cause: all readings of one instrument move together, the rest one by one. */
+static void find_figures(const struct assessment *assessment, size_t index,
+                         struct joint_figures *figures)
+{
+    const struct place_case *place = &assessment->work[index].place;
+    struct shift shift = {NOT_SHIFTED, NOT_SHIFTED, NULL};
+    *figures = (struct joint_figures){0};
+    evaluate_with(assessment, index, &shift, &figures->at);
+    for (int i = NOT_LISTED; i < (int)assessment->job->instrument_count; i++)
+        add_shift(assessment, index, &(struct shift){i, NOT_SHIFTED, NULL}, figures);
+    for (size_t i = 0; i < assessment->job->capacitor_count; i++)
+        if (takes_part(assessment, i) && (i == index || together(assessment, index, i)))
+            add_shift(assessment, index, &(struct shift){NOT_SHIFTED, (int)i, NULL}, figures);
+    for (size_t i = 0; kind_of(place) == JOINT_STAGE && i < place->group->step_count; i++)
+        add_shift(assessment, index,
+                  &(struct shift){NOT_SHIFTED, NOT_SHIFTED, &place->group->steps[i]}, figures);
 }
 
 static const struct criterion *single_of(const struct judgement *judgement, enum criterion_key key)
@@ -113,19 +174,14 @@ static double share_of(const struct assessment *assessment, size_t index, enum c
     return all > 0 ? own / all : 0;
 }
 
-/*
- * One joint criterion. Its uncertainty takes all leaks as moving together, which is right where
- * one instrument read them and an upper figure otherwise; measured resistors add as they do singly.
- */
 static struct criterion joint_criterion(const struct assessment *assessment, size_t index,
-                                        const struct place_value *at, double moved)
+                                        const struct place_value *at, double u)
 {
     const struct part_work *work = &assessment->work[index];
     const struct criterion *single = single_of(&work->final, at->key);
-    double u = 2 * fabs(moved - at->value);
     struct criterion criterion = {.key = at->key,
                                   .value = at->value,
-                                  .uncertainty = single ? fmax(u, single->uncertainty) : u,
+                                  .uncertainty = u,
                                   .limit = single ? single->limit : at->limit,
                                   .unit = at->unit,
                                   .upper = true,
@@ -158,18 +214,19 @@ static bool is_joint_figure(enum joint_kind kind, enum criterion_key key)
 
 static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
 {
-    struct place_values at, moved;
-    evaluate_with(assessment, index, 0, &at);
-    evaluate_with(assessment, index, 1, &moved);
-    for (size_t i = 0; i < at.count && i < moved.count; i++)
-        if (is_joint_figure(kind_of(&assessment->work[index].place), at.items[i].key)) {
-            struct criterion criterion =
-                joint_criterion(assessment, index, &at.items[i], moved.items[i].value);
-            /* A reading that is only a bound says how much at most: it cannot fail others. */
-            if (assessment->capacitors[index].test_bound == BOUND_NONE ||
-                criterion.outcome <= OUTCOME_CONDITIONAL_PASS)
-                judge_add(result, &criterion);
-        }
+    enum joint_kind kind = kind_of(&assessment->work[index].place);
+    struct joint_figures figures;
+    find_figures(assessment, index, &figures);
+    for (size_t i = 0; i < figures.at.count; i++) {
+        if (!is_joint_figure(kind, figures.at.items[i].key))
+            continue;
+        struct criterion criterion =
+            joint_criterion(assessment, index, &figures.at.items[i], 2 * sqrt(figures.variance[i]));
+        /* A reading that is only a bound says how much at most: it cannot fail others. */
+        if (assessment->capacitors[index].test_bound == BOUND_NONE ||
+            criterion.outcome <= OUTCOME_CONDITIONAL_PASS)
+            judge_add(result, &criterion);
+    }
 }
 
 void joint_assess(struct assessment *assessment)

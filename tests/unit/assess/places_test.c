@@ -124,43 +124,63 @@ static void test_screen_bypass(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER
-                 "resistors:\n  R5: {marked: 22k 1 W, measured: 22k, done: kept}\n"
-                 "stages:\n  mixer:\n    valve: V1 6SA7\n    supply: 250 V\n    screen: R5\n"
-                 "    cathode: 220 ohm\n"
-                 "  output:\n    valve: V4 6V6GT\n    supply: 250 V\n    cathode: 252.5 ohm\n"
-                 "    grid_leak: 470k\n"
-                 "  if:\n    valve: V2 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 "
-                 "0.5 mA, "
-                 "gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 300k\n    cathode: 1200 ohm\n"
-                 "    grid_leak: 1 meg\n"
-                 "capacitors:\n" CAP(
-                     "C1", "paper", "0.1 uF 400 V",
-                     "screen bypass") "    stage: mixer\n    readings:\n      - 250 V 60 s 1 "
-                                      "uA\n" CAP("C2", "paper", "0.1 uF 400 V",
-                                                 "screen bypass") "    stage: output\n    "
-                                                                  "readings:\n      - 250 V 60 s 1 "
-                                                                  "uA\n" CAP("C3", "paper",
-                                                                             "0.1 uF 400 V",
-                                                                             "screen bypass") "    "
-                                                                                              "stag"
-                                                                                              "e: "
-                                                                                              "if\n"
-                                                                                              "    "
-                                                                                              "read"
-                                                                                              "ings"
-                                                                                              ":\n "
-                                                                                              "    "
-                                                                                              " - "
-                                                                                              "100 "
-                                                                                              "V "
-                                                                                              "60 "
-                                                                                              "s 1 "
-                                                                                              "uA"
-                                                                                              "\n" CAP("C4",
-                                                                                                       "paper",
-                                                                                                       "25 uF 25 V",
-                                                                                                       "cathode bypass") "    stage: mixer\n    service: 2 V\n    readings:\n      - 10 V 60 s 1 uA\n");
+    bench_assess(
+        &bench, HEAD METER
+        "resistors:\n  R5: {marked: 22k 1 W, measured: 22k, done: kept}\n"
+        "stages:\n  mixer:\n    valve: V1 6SA7\n    supply: 250 V\n    screen: R5\n"
+        "    cathode: 220 ohm\n"
+        "  output:\n    valve: V4 6V6GT\n    supply: 250 V\n    cathode: 252.5 ohm\n"
+        "    grid_leak: 470k\n"
+        "  if:\n    valve: V2 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 "
+        "0.5 mA, "
+        "gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 300k\n    cathode: 1200 ohm\n"
+        "    grid_leak: 1 meg\n"
+        "capacitors:\n" CAP(
+            "C1", "paper", "0.1 uF 400 V",
+            "screen bypass") "    stage: mixer\n    readings:\n      - 250 V 60 s 1 "
+                             "uA\n" CAP(
+                                 "C2", "paper", "0.1 uF 400 V",
+                                 "screen bypass") "    stage: output\n    "
+                                                  "readings:\n      - 250 V 60 s 1 "
+                                                  "uA\n" CAP(
+                                                      "C3", "paper", "0.1 uF 400 V",
+                                                      "screen bypass") "    "
+                                                                       "stag"
+                                                                       "e: "
+                                                                       "if\n"
+                                                                       "    "
+                                                                       "read"
+                                                                       "ings"
+                                                                       ":\n "
+                                                                       "    "
+                                                                       " - "
+                                                                       "100 "
+                                                                       "V "
+                                                                       "60 "
+                                                                       "s 1 "
+                                                                       "uA"
+                                                                       "\n" CAP(
+                                                                           "C4", "paper",
+                                                                           "25 uF 25 V",
+                                                                           "cathode bypass") "    "
+                                                                                             "stage"
+                                                                                             ": "
+                                                                                             "mixer"
+                                                                                             "\n   "
+                                                                                             " serv"
+                                                                                             "ice: "
+                                                                                             "2 "
+                                                                                             "V\n  "
+                                                                                             "  "
+                                                                                             "readi"
+                                                                                             "ngs:"
+                                                                                             "\n   "
+                                                                                             "   - "
+                                                                                             "10 V "
+                                                                                             "60 s "
+                                                                                             "1 "
+                                                                                             "uA"
+                                                                                             "\n");
     /* No row for a converter: 20 times the dropper, 250 V/(20*22 k) = 568 uA. */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_relative(part->limit_a, 250 / (20 * 22e3), 1e-4);
@@ -219,6 +239,12 @@ static void test_avc_line_singly_and_jointly(void **state)
     /* singly 0.0333/1.0333 = 3.2 %; together 0.06675/1.06675 = 6.26 % */
     assert_relative(bench_criterion(part, CRITERION_LINE_LOSS, false)->value, 3.226, 1e-3);
     assert_relative(bench_criterion(part, CRITERION_LINE_LOSS, true)->value, 6.257, 1e-3);
+    /* Relative standard uncertainty of each leak, chassis as warm as the bench (both kinks count):
+       bench +-1 K: 2^(0.577/10) - 1 = 4.08 %; volts 1 %/sqrt(3) low is scaled up by its square:
+       1.16 %; accuracy (0.4 + 0.1 nA)/sqrt(3)/400 nA = 0.07 %: together 4.24 %. Common to all
+       readings of the instrument, so the loss moves by 4.24 % of 6.257*(1 - 0.06257) = 0.249 and
+       U is 0.497; were the readings independent it would be 0.352. */
+    assert_relative(bench_criterion(part, CRITERION_LINE_LOSS, true)->uncertainty, 0.497, 0.01);
     assert_int_equal(part->outcome_found, OUTCOME_PASS);
     assert_int_equal(part->outcome, OUTCOME_CONDITIONAL_FAIL);
     assert_int_equal(part->why, WHY_JOINT);
@@ -233,50 +259,54 @@ static void test_linear_places(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench,
-                 HEAD
-                     METER "resistors:\n  R1: {marked: 2.2k 1 W, done: kept}\ncapacitors:\n" CAP(
-                         "C1", "paper", "0.1 uF 400 V",
-                         "decoupling") "    feed: R1\n    current: 20 mA\n    service: 250 V\n    "
-                                       "readings:\n"
-                                       "      - 250 V 60 s 1 uA\n" CAP("C2", "paper", "50 pF 600 V", "avc feed") "    source: 200 V\n    feed: 1 meg\n    readings:\n      - 200 V 60 s 0.001 uA\n" CAP(
-                                           "C3", "mica", "100 pF 350 V",
-                                           "detector") "    feed: 500k\n    service: 10 V\n    "
-                                                       "readings:\n      - 10 V 60 s 0.001 "
-                                                       "uA\n" CAP("C4", "mica", "100 pF 350 V 5 %",
-                                                                  "tuning") "    circuit: 100k\n   "
-                                                                            " service: 100 V\n    "
-                                                                            "measured: 110 pF\n    "
-                                                                            "readings:\n"
-                                                                            "      - 100 V 60 s "
-                                                                            "0.001 uA\n" CAP("C5", "paper", "2 uF 150 V", "battery bypass") "    current: 10 mA\n    service: 90 V\n    readings:\n      - 90 V 60 s 1 uA\n" CAP(
-                                                                                "C6", "paper",
-                                                                                "0.1 uF 400 V",
-                                                                                "other") "    "
-                                                                                         "feed: "
-                                                                                         "10k\n    "
-                                                                                         "shift: "
-                                                                                         "0.5 V\n  "
-                                                                                         "  "
-                                                                                         "service: "
-                                                                                         "100 V\n  "
-                                                                                         "  "
-                                                                                         "readings:"
-                                                                                         "\n"
-                                                                                         "      - "
-                                                                                         "100 V 60 "
-                                                                                         "s 1 "
-                                                                                         "uA\n" CAP(
-                                                                                             "C7",
-                                                                                             "pape"
-                                                                                             "r",
-                                                                                             "0.1 "
-                                                                                             "uF "
-                                                                                             "400 "
-                                                                                             "V",
-                                                                                             "othe"
-                                                                                             "r") "    feed: 10k\n    shift: 1 %\n    service: 100 V\n    readings:\n"
-                                                                                                  "      - 100 V 60 s 1 uA\n");
+    bench_assess(
+        &bench,
+        HEAD METER "resistors:\n  R1: {marked: 2.2k 1 W, done: kept}\ncapacitors:\n" CAP(
+            "C1", "paper", "0.1 uF 400 V",
+            "decoupling") "    feed: R1\n    current: 20 mA\n    service: 250 V\n    "
+                          "readings:\n"
+                          "      - 250 V 60 s 1 uA\n" CAP("C2", "paper", "50 pF 600 V", "avc feed") "    source: 200 V\n    feed: 1 meg\n    readings:\n      - 200 V 60 s 0.001 uA\n" CAP(
+                              "C3", "mica", "100 pF 350 V",
+                              "detector") "    feed: 500k\n    service: 10 V\n    "
+                                          "readings:\n      - 10 V 60 s 0.001 "
+                                          "uA\n" CAP(
+                                              "C4", "mica", "100 pF 350 V 5 %",
+                                              "tuning") "    circuit: 100k\n   "
+                                                        " service: 100 V\n    "
+                                                        "measured: 110 pF\n    "
+                                                        "readings:\n"
+                                                        "      - 100 V 60 s "
+                                                        "0.001 uA\n" CAP("C5", "paper", "2 uF 150 V", "battery bypass") "    current: 10 mA\n    service: 90 V\n    readings:\n      - 90 V 60 s 1 uA\n" CAP(
+                                                            "C6", "paper", "0.1 uF 400 V",
+                                                            "other") "    "
+                                                                     "feed: "
+                                                                     "10k\n    "
+                                                                     "shift: "
+                                                                     "0.5 V\n  "
+                                                                     "  "
+                                                                     "service: "
+                                                                     "100 V\n  "
+                                                                     "  "
+                                                                     "readings:"
+                                                                     "\n"
+                                                                     "      - "
+                                                                     "100 V 60 "
+                                                                     "s 1 "
+                                                                     "uA\n" CAP(
+                                                                         "C7",
+                                                                         "pape"
+                                                                         "r",
+                                                                         "0.1 "
+                                                                         "uF "
+                                                                         "400 "
+                                                                         "V",
+                                                                         "othe"
+                                                                         "r") "    feed: 10k\n    "
+                                                                              "shift: 1 %\n    "
+                                                                              "service: 100 V\n    "
+                                                                              "readings:\n"
+                                                                              "      - 100 V 60 s "
+                                                                              "1 uA\n");
     /* drop 2 % of 250 V over 2.2 k is 2.27 mA; (20 mA + I)^2*2.2 k <= 1 W is 1.32 mA; heat 0.02 W
        at 250 V is 80 uA: the least. */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
@@ -336,45 +366,85 @@ static void test_mains_places(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench,
-                 HEAD METER "capacitors:\n" CAP(
-                     "C1", "paper",
-                     "0.22 uF 600 V", "across mains") "    plug_side: yes\n    readings:\n      - "
-                                                      "500 V 60 s over 5000 M\n    done: replaced\n"
-                                                      "    fitted: polypropylene 0.1 uF 310 V a.c. "
-                                                      "X2\n" CAP("C2", "paper", "0.01 uF 600 V", "mains to chassis") "    done: kept\n" CAP("C3", "ceramic", "4700 pF 300 V a.c. Y2", "mains to chassis") "    readings:\n      - 230 V 60 s over 5000 M\n    done: kept\n" CAP(
-                                                          "C4", "ceramic", "2200 pF 300 V a.c. Y1",
-                                                          "aerial isolator") "    readings:\n      "
-                                                                             "- 230 V 60 s over "
-                                                                             "5000 M\n    done: "
-                                                                             "kept\n" CAP("C5",
-                                                                                          "ceramic",
-                                                                                          "4700 pF "
-                                                                                          "300 V "
-                                                                                          "a.c. Y1",
-                                                                                          "earth "
-                                                                                          "isolato"
-                                                                                          "r") "   "
-                                                                                               " re"
-                                                                                               "adi"
-                                                                                               "ngs"
-                                                                                               ":\n"
-                                                                                               "   "
-                                                                                               "   "
-                                                                                               "- "
-                                                                                               "230"
-                                                                                               " V "
-                                                                                               "60 "
-                                                                                               "s "
-                                                                                               "ove"
-                                                                                               "r "
-                                                                                               "500"
-                                                                                               "0 "
-                                                                                               "M"
-                                                                                               "\n" CAP("C6",
-                                                                                                        "ceramic",
-                                                                                                        "4700 pF 250 V a.c. Y2",
-                                                                                                        "mains to chassis") "    readings:\n      - 230 V 60 s 50 M\n");
+    bench_assess(
+        &bench, HEAD METER "capacitors:\n" CAP(
+                    "C1", "paper", "0.22 uF 600 V",
+                    "across mains") "    plug_side: yes\n    readings:\n      - "
+                                    "500 V 60 s over 5000 M\n    done: replaced\n"
+                                    "    fitted: polypropylene 0.1 uF 310 V a.c. "
+                                    "X2\n" CAP("C2", "paper", "0.01 uF 600 V", "mains to chassis") "    done: kept\n" CAP(
+                                        "C3", "ceramic", "4700 pF 300 V a.c. Y2",
+                                        "mains to chassis") "    readings:\n      "
+                                                            "- 230 V 60 s over "
+                                                            "5000 M\n    done: "
+                                                            "kept\n" CAP(
+                                                                "C4", "ceramic",
+                                                                "2200 pF "
+                                                                "300 V "
+                                                                "a.c. Y1",
+                                                                "aerial "
+                                                                "isolato"
+                                                                "r") "   "
+                                                                     " re"
+                                                                     "adi"
+                                                                     "ngs"
+                                                                     ":\n"
+                                                                     "   "
+                                                                     "   "
+                                                                     "- "
+                                                                     "230"
+                                                                     " V "
+                                                                     "60 "
+                                                                     "s "
+                                                                     "ove"
+                                                                     "r "
+                                                                     "500"
+                                                                     "0 "
+                                                                     "M\n"
+                                                                     "   "
+                                                                     " do"
+                                                                     "ne:"
+                                                                     " "
+                                                                     "kep"
+                                                                     "t"
+                                                                     "\n" CAP(
+                                                                         "C5", "ceramic",
+                                                                         "4700 pF "
+                                                                         "300 V "
+                                                                         "a.c. Y1",
+                                                                         "earth "
+                                                                         "isolato"
+                                                                         "r") "   "
+                                                                              " re"
+                                                                              "adi"
+                                                                              "ngs"
+                                                                              ":\n"
+                                                                              "   "
+                                                                              "   "
+                                                                              "- "
+                                                                              "230"
+                                                                              " V "
+                                                                              "60 "
+                                                                              "s "
+                                                                              "ove"
+                                                                              "r "
+                                                                              "500"
+                                                                              "0 "
+                                                                              "M"
+                                                                              "\n" CAP(
+                                                                                  "C6", "ceramic",
+                                                                                  "4700 pF 250 V "
+                                                                                  "a.c. Y2",
+                                                                                  "mains to "
+                                                                                  "chassis") "    "
+                                                                                             "readi"
+                                                                                             "ngs:"
+                                                                                             "\n   "
+                                                                                             "   - "
+                                                                                             "230 "
+                                                                                             "V 60 "
+                                                                                             "s 50 "
+                                                                                             "M\n");
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_true(part->no_reading_passes);
     assert_int_equal(part->outcome, OUTCOME_FAIL);
