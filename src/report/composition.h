@@ -35,13 +35,13 @@ struct composition {
     size_t piece_count, piece_capacity;
 };
 
-/* A new exhibit; id must be unique in the document. */
+/* A new exhibit. */
 struct exhibit *exhibit_begin(struct composition *composition, enum exhibit_kind kind,
                               const char *id);
 /* "Table 3" for the next of its kind. */
 const char *exhibit_number(struct composition *composition, enum numbered kind);
-/* Put it where the template now is. */
-void exhibit_place(struct composition *composition, const struct exhibit *exhibit);
+/* Put it where the template now is. A template that names it twice gets a second id. */
+void exhibit_place(struct composition *composition, struct exhibit *exhibit);
 
 /* ---- tables */
 

@@ -20,8 +20,21 @@ const char *exhibit_number(struct composition *composition, enum numbered kind)
                   arena_print(composition->arena, "%u", number), NULL);
 }
 
-void exhibit_place(struct composition *composition, const struct exhibit *exhibit)
+static bool is_placed(const struct composition *composition, const char *id)
 {
+    for (size_t i = 0; i < composition->piece_count; i++) {
+        const struct exhibit *exhibit = composition->pieces[i].exhibit;
+        if (exhibit && strcmp(exhibit->id, id) == 0)
+            return true;
+    }
+    return false;
+}
+
+void exhibit_place(struct composition *composition, struct exhibit *exhibit)
+{
+    const char *id = exhibit->id;
+    for (unsigned copy = 2; is_placed(composition, exhibit->id); copy++)
+        exhibit->id = arena_print(composition->arena, "%s-%u", id, copy);
     composition->pieces =
         arena_grow(composition->arena, composition->pieces, composition->piece_count,
                    &composition->piece_capacity, sizeof *composition->pieces);
