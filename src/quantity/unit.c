@@ -27,6 +27,16 @@ enum {
  * no part or meter of this trade shows millifarads; the note about it lets a mistake be seen.
  */
 static const struct unit_spelling spellings[] = {
+    /* The most frequent first: a job has hundreds of them. */
+    ROW("V", ANY_CASE, UNIT_VOLTAGE, 0),
+    TIME_ROW("s", AS_SPELT, 1),
+    ROW("uA", ANY_CASE, UNIT_CURRENT, -6),
+    TIME_ROW("min", ANY_CASE, 60),
+    ROW("%", AS_SPELT, UNIT_PERCENT, 0),
+    ROW("k", ANY_CASE, UNIT_RESISTANCE, 3),
+    ROW("mA", FIRST_AS_SPELT, UNIT_CURRENT, -3),
+    ROW("C", AS_SPELT, UNIT_TEMPERATURE, 0),
+
     ROW("uF", ANY_CASE, UNIT_CAPACITANCE, -6),
     ROW("pF", ANY_CASE, UNIT_CAPACITANCE, -12),
     ROW("nF", ANY_CASE, UNIT_CAPACITANCE, -9),
@@ -57,7 +67,6 @@ static const struct unit_spelling spellings[] = {
     ROW("ohm", ANY_CASE, UNIT_RESISTANCE, 0),
     ROW("ohms", ANY_CASE, UNIT_RESISTANCE, 0),
     ROW("R", ANY_CASE, UNIT_RESISTANCE, 0),
-    ROW("k", ANY_CASE, UNIT_RESISTANCE, 3),
     ROW("kohm", ANY_CASE, UNIT_RESISTANCE, 3),
     ROW("kohms", ANY_CASE, UNIT_RESISTANCE, 3),
     ROW("k ohm", ANY_CASE, UNIT_RESISTANCE, 3),
@@ -84,7 +93,6 @@ static const struct unit_spelling spellings[] = {
     ROW("T", AS_SPELT, UNIT_RESISTANCE, 12),
     ROW("Tohm", FIRST_AS_SPELT, UNIT_RESISTANCE, 12),
 
-    ROW("V", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("volt", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("volts", ANY_CASE, UNIT_VOLTAGE, 0),
     ROW("Vdc", ANY_CASE, UNIT_VOLTAGE, 0),
@@ -99,8 +107,6 @@ static const struct unit_spelling spellings[] = {
     ROW("mV", FIRST_AS_SPELT, UNIT_VOLTAGE, -3),
     ROW("uV", ANY_CASE, UNIT_VOLTAGE, -6),
 
-    ROW("uA", ANY_CASE, UNIT_CURRENT, -6),
-    ROW("mA", FIRST_AS_SPELT, UNIT_CURRENT, -3),
     ROW("nA", ANY_CASE, UNIT_CURRENT, -9),
     ROW("pA", ANY_CASE, UNIT_CURRENT, -12),
     ROW("A", ANY_CASE, UNIT_CURRENT, 0),
@@ -133,12 +139,10 @@ static const struct unit_spelling spellings[] = {
     ROW("mcps", ANY_CASE, UNIT_FREQUENCY, 6),
     ROW("cycles", ANY_CASE, UNIT_FREQUENCY, 0),
 
-    TIME_ROW("s", AS_SPELT, 1),
     TIME_ROW("sec", ANY_CASE, 1),
     TIME_ROW("secs", ANY_CASE, 1),
     TIME_ROW("second", ANY_CASE, 1),
     TIME_ROW("seconds", ANY_CASE, 1),
-    TIME_ROW("min", ANY_CASE, 60),
     TIME_ROW("mins", ANY_CASE, 60),
     TIME_ROW("minute", ANY_CASE, 60),
     TIME_ROW("minutes", ANY_CASE, 60),
@@ -155,7 +159,6 @@ static const struct unit_spelling spellings[] = {
     ROW("ms", AS_SPELT, UNIT_TIME, -3),
     ROW("us", AS_SPELT, UNIT_TIME, -6),
 
-    ROW("C", AS_SPELT, UNIT_TEMPERATURE, 0),
     ROW("degC", ANY_CASE, UNIT_TEMPERATURE, 0),
     ROW("deg C", ANY_CASE, UNIT_TEMPERATURE, 0),
     ROW("degrees C", ANY_CASE, UNIT_TEMPERATURE, 0),
@@ -165,7 +168,6 @@ static const struct unit_spelling spellings[] = {
     {"degrees F", ANY_CASE, UNIT_KIND_FAHRENHEIT, UNIT_TEMPERATURE, 0, 0},
     {"fahrenheit", ANY_CASE, UNIT_KIND_FAHRENHEIT, UNIT_TEMPERATURE, 0, 0},
 
-    ROW("%", AS_SPELT, UNIT_PERCENT, 0),
     ROW("percent", ANY_CASE, UNIT_PERCENT, 0),
     ROW("per cent", ANY_CASE, UNIT_PERCENT, 0),
     ROW("pct", ANY_CASE, UNIT_PERCENT, 0),
