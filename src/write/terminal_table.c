@@ -19,7 +19,11 @@ struct layout {
     struct terminal *terminal;
     struct table_text text;
     enum standing *places;
+    const char **heads; /* head_lines lines of a head for each column, one line when all fits */
+    size_t head_lines;
 };
+
+enum { HEAD_LINES_MAX = 4 };
 
 static bool stands_inline(const struct layout *layout, size_t column)
 {
@@ -58,6 +62,108 @@ static void make_room(struct layout *layout)
         }
 }
 
+static size_t cells_width(const struct layout *layout, size_t column)
+{
+    const struct table *table = layout->text.table;
+    size_t widest = 0;
+    for (size_t i = 0; i < table->row_count; i++) {
+        const char *text = table_text_cell(&layout->text, i, column);
+        size_t width = table->rows[i].group ? 0 : text_columns(text, strlen(text));
+        widest = width > widest ? width : widest;
+    }
+    return widest;
+}
+
+static size_t widest_word(const char *text)
+{
+    size_t widest = 0;
+    while (*text) {
+        size_t length = strcspn(text, " "), width = text_columns(text, length);
+        widest = width > widest ? width : widest;
+        text += length + strspn(text + length, " ");
+    }
+    return widest;
+}
+
+/* How much of the text makes a line of that width: whole words, one at the least. */
+static size_t line_length(const char *text, size_t width)
+{
+    size_t length = strcspn(text, " ");
+    for (;;) {
+        size_t next = length + strspn(text + length, " ");
+        next += strcspn(text + next, " ");
+        if (next == length || text_columns(text, next) > width)
+            return length;
+        length = next;
+    }
+}
+
+/* The lines of a head of that width, the last in the last place. */
+static void fold_head(struct layout *layout, size_t column, size_t width)
+{
+    const char *text = layout->text.heads[column], *lines[HEAD_LINES_MAX];
+    size_t count = 0;
+    for (; *text && count < HEAD_LINES_MAX; count++) {
+        size_t length = count + 1 < HEAD_LINES_MAX ? line_length(text, width) : strlen(text);
+        lines[count] = arena_text(&layout->terminal->scratch, text, length);
+        text += length + strspn(text + length, " ");
+    }
+    const char **place = layout->heads + column * HEAD_LINES_MAX;
+    for (size_t i = 0; i < HEAD_LINES_MAX; i++)
+        place[i] = i + count < HEAD_LINES_MAX ? "" : lines[i + count - HEAD_LINES_MAX];
+    layout->head_lines = count > layout->head_lines ? count : layout->head_lines;
+}
+
+static size_t folded_width(const struct layout *layout, size_t column)
+{
+    size_t cells = cells_width(layout, column);
+    size_t word = widest_word(layout->text.heads[column]);
+    return cells > word ? cells : word;
+}
+
+/* While the table is too wide, the head that stands out furthest takes several lines. */
+static void narrow_heads(struct layout *layout)
+{
+    while (inline_width(layout) > layout->terminal->columns) {
+        size_t furthest = 0, gained = 0;
+        for (size_t i = 0; i < layout->text.table->column_count; i++) {
+            size_t gain = layout->text.widths[i] - folded_width(layout, i);
+            if (stands_inline(layout, i) && gain > gained) {
+                furthest = i;
+                gained = gain;
+            }
+        }
+        if (gained == 0)
+            return;
+        layout->text.widths[furthest] -= gained;
+    }
+}
+
+static void fold_heads(struct layout *layout)
+{
+    size_t columns = layout->text.table->column_count;
+    layout->heads =
+        arena_array(&layout->terminal->scratch, columns * HEAD_LINES_MAX, sizeof *layout->heads);
+    for (size_t i = 0; i < columns; i++)
+        fold_head(layout, i, layout->text.widths[i]);
+}
+
+/* When all that is not enough: the widest column of words goes below, then the next. */
+static void make_more_room(struct layout *layout)
+{
+    const struct table *table = layout->text.table;
+    while (inline_width(layout) > layout->terminal->columns) {
+        size_t widest = 0;
+        for (size_t i = 1; i < table->column_count; i++)
+            if (stands_inline(layout, i) && table->columns[i].kind == COLUMN_TEXT &&
+                (widest == 0 || width_of(layout, i) > width_of(layout, widest)))
+                widest = i;
+        if (widest == 0)
+            return;
+        layout->places[widest] = BELOW;
+    }
+}
+
 static size_t trimmed(const char *text)
 {
     size_t length = strlen(text);
@@ -88,27 +194,44 @@ static void write_field(const struct layout *layout, size_t column, const char *
 }
 
 /* Whether nothing but empty cells follows in the line. */
-static bool is_last(const struct layout *layout, size_t row, size_t column, bool head)
+static bool is_last(const struct layout *layout, size_t row, size_t column)
 {
     const struct table *table = layout->text.table;
-    for (size_t i = column + 1; i < table->column_count; i++) {
-        const char *text = head ? layout->text.heads[i] : table_text_cell(&layout->text, row, i);
-        if (stands_inline(layout, i) && text[0])
+    for (size_t i = column + 1; i < table->column_count; i++)
+        if (stands_inline(layout, i) && table_text_cell(&layout->text, row, i)[0])
             return false;
-    }
     return true;
 }
 
-static void write_head(const struct layout *layout)
+static const char *head_line(const struct layout *layout, size_t column, size_t line)
+{
+    return layout->heads[column * HEAD_LINES_MAX + line];
+}
+
+static bool is_last_head(const struct layout *layout, size_t line, size_t column)
+{
+    for (size_t i = column + 1; i < layout->text.table->column_count; i++)
+        if (stands_inline(layout, i) && head_line(layout, i, line)[0])
+            return false;
+    return true;
+}
+
+static void write_head_line(const struct layout *layout, size_t line)
 {
     for (size_t i = 0; i < layout->text.table->column_count; i++) {
-        bool last = is_last(layout, 0, i, true);
+        bool last = is_last_head(layout, line, i);
         if (stands_inline(layout, i))
-            write_field(layout, i, layout->text.heads[i], true, last);
+            write_field(layout, i, head_line(layout, i, line), true, last);
         if (last)
             break;
     }
     buffer_byte(layout->terminal->out, '\n');
+}
+
+static void write_head(const struct layout *layout)
+{
+    for (size_t i = HEAD_LINES_MAX - layout->head_lines; i < HEAD_LINES_MAX; i++)
+        write_head_line(layout, i);
 }
 
 static void append_below(struct buffer *line, const char *label, const char *text)
@@ -142,7 +265,7 @@ static void write_row(const struct layout *layout, size_t row)
 {
     const struct table *table = layout->text.table;
     for (size_t i = 0; i < table->column_count; i++) {
-        bool last = is_last(layout, row, i, false);
+        bool last = is_last(layout, row, i);
         const struct cell *cell = &table->rows[row].cells[i];
         if (stands_inline(layout, i))
             write_field(layout, i, table_text_cell(&layout->text, row, i),
@@ -203,6 +326,9 @@ void terminal_table(struct terminal *terminal, const struct table *table)
         .places = arena_array(&terminal->scratch, table->column_count, sizeof(enum standing))};
     bool lines = table->text_only && inline_width(&layout) > terminal->columns;
     make_room(&layout);
+    narrow_heads(&layout);
+    make_more_room(&layout);
+    fold_heads(&layout);
     if (!lines)
         write_head(&layout);
     for (size_t i = 0; i < table->row_count; i++) {
