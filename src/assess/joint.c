@@ -59,6 +59,7 @@ struct shift {
     int instrument; /* NOT_SHIFTED: none */
     int own;        /* part; NOT_SHIFTED: none */
     const struct stage_step *step;
+    bool certain; /* others of which only an upper bound is known count as nothing */
 };
 enum { NOT_SHIFTED = -2 };
 
@@ -92,7 +93,8 @@ static void evaluate_with(const struct assessment *assessment, size_t index,
         place.circuits = circuits;
     }
     for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
-        if (i == index || !takes_part(assessment, i) || !together(assessment, index, i))
+        if (i == index || !takes_part(assessment, i) || !together(assessment, index, i) ||
+            (shift->certain && assessment->capacitors[i].test_bound == BOUND_UNDER))
             continue;
         const struct part_work *other = &assessment->work[i];
         double leak_s = shifted_leak(assessment, i, shift);
@@ -126,21 +128,23 @@ static void add_shift(const struct assessment *assessment, size_t index, const s
 }
 
 /* Covariance by cause: all readings of one instrument move together, the rest one by one. */
-static void find_figures(const struct assessment *assessment, size_t index,
+static void find_figures(const struct assessment *assessment, size_t index, bool certain,
                          struct joint_figures *figures)
 {
     const struct place_case *place = &assessment->work[index].place;
-    struct shift shift = {NOT_SHIFTED, NOT_SHIFTED, NULL};
+    struct shift shift = {NOT_SHIFTED, NOT_SHIFTED, NULL, certain};
     *figures = (struct joint_figures){0};
     evaluate_with(assessment, index, &shift, &figures->at);
     for (int i = NOT_LISTED; i < (int)assessment->job->instrument_count; i++)
-        add_shift(assessment, index, &(struct shift){i, NOT_SHIFTED, NULL}, figures);
+        add_shift(assessment, index, &(struct shift){i, NOT_SHIFTED, NULL, certain}, figures);
     for (size_t i = 0; i < assessment->job->capacitor_count; i++)
         if (takes_part(assessment, i) && (i == index || together(assessment, index, i)))
-            add_shift(assessment, index, &(struct shift){NOT_SHIFTED, (int)i, NULL}, figures);
+            add_shift(assessment, index, &(struct shift){NOT_SHIFTED, (int)i, NULL, certain},
+                      figures);
     for (size_t i = 0; kind_of(place) == JOINT_STAGE && i < place->group->step_count; i++)
         add_shift(assessment, index,
-                  &(struct shift){NOT_SHIFTED, NOT_SHIFTED, &place->group->steps[i]}, figures);
+                  &(struct shift){NOT_SHIFTED, NOT_SHIFTED, &place->group->steps[i], certain},
+                  figures);
 }
 
 static const struct criterion *single_of(const struct judgement *judgement, enum criterion_key key)
@@ -212,21 +216,33 @@ static bool is_joint_figure(enum joint_kind kind, enum criterion_key key)
     return key != CRITERION_LEAKAGE_RULE;
 }
 
-static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
+static void judge_figures(const struct assessment *assessment, size_t index, bool certain,
+                          struct judgement *judgement)
 {
     enum joint_kind kind = kind_of(&assessment->work[index].place);
     struct joint_figures figures;
-    find_figures(assessment, index, &figures);
-    for (size_t i = 0; i < figures.at.count; i++) {
-        if (!is_joint_figure(kind, figures.at.items[i].key))
-            continue;
-        struct criterion criterion =
-            joint_criterion(assessment, index, &figures.at.items[i], 2 * sqrt(figures.variance[i]));
-        /* A reading that is only a bound says how much at most: it cannot fail others. */
-        if (assessment->capacitors[index].test_bound == BOUND_NONE ||
-            criterion.outcome <= OUTCOME_CONDITIONAL_PASS)
-            judge_add(result, &criterion);
-    }
+    *judgement = (struct judgement){0};
+    find_figures(assessment, index, certain, &figures);
+    for (size_t i = 0; i < figures.at.count; i++)
+        if (is_joint_figure(kind, figures.at.items[i].key)) {
+            struct criterion criterion = joint_criterion(assessment, index, &figures.at.items[i],
+                                                         2 * sqrt(figures.variance[i]));
+            judge_add(judgement, &criterion);
+        }
+}
+
+/* A reading that is only a bound says how much at most: with it a joint figure may pass, and only
+   without it may the figure fail; a part known by a bound alone cannot be blamed. */
+static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
+{
+    struct judgement joint;
+    judge_figures(assessment, index, false, &joint);
+    if (joint.outcome >= OUTCOME_CONDITIONAL_FAIL)
+        judge_figures(assessment, index, true, &joint);
+    bool bound = assessment->capacitors[index].test_bound != BOUND_NONE;
+    for (size_t i = 0; i < joint.count; i++)
+        if (!bound || joint.criteria[i].outcome <= OUTCOME_CONDITIONAL_PASS)
+            judge_add(result, &joint.criteria[i]);
 }
 
 void joint_assess(struct assessment *assessment)
