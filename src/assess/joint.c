@@ -57,11 +57,14 @@ static bool together(const struct assessment *assessment, size_t a, size_t b)
    last step, or one measured resistor. */
 struct shift {
     int instrument; /* NOT_SHIFTED: none */
-    int own;        /* part; NOT_SHIFTED: none */
+    int own;        /* part; NOT_SHIFTED: none; OWN_OF_ALL */
     const struct stage_step *step;
     bool certain; /* others of which only an upper bound is known count as nothing */
 };
-enum { NOT_SHIFTED = -2 };
+enum { NOT_SHIFTED = -2, OWN_OF_ALL = -3 };
+/* With more parts than this on one line their last steps move together: an upper figure, and the
+   work stays in proportion to the square of their number. */
+enum { ONE_BY_ONE_MAX = 24 };
 
 static int instrument_index(const struct assessment *assessment, size_t index)
 {
@@ -76,7 +79,8 @@ static double shifted_leak(const struct assessment *assessment, size_t index,
     double leak_s = leak->conductance_s;
     if (instrument_index(assessment, index) == shift->instrument)
         leak_s += leak->common_s;
-    return (int)index == shift->own ? leak_s + leak->own_s : leak_s;
+    bool own = (int)index == shift->own || shift->own == OWN_OF_ALL;
+    return own ? leak_s + leak->own_s : leak_s;
 }
 
 /* The part's figures with the others in place. */
@@ -127,6 +131,15 @@ static void add_shift(const struct assessment *assessment, size_t index, const s
     }
 }
 
+/* How many parts share the line, the stage or the can, this one included. */
+static size_t company_of(const struct assessment *assessment, size_t index)
+{
+    size_t count = 0;
+    for (size_t i = 0; i < assessment->job->capacitor_count; i++)
+        count += takes_part(assessment, i) && (i == index || together(assessment, index, i));
+    return count;
+}
+
 /* Covariance by cause: all readings of one instrument move together, the rest one by one. */
 static void find_figures(const struct assessment *assessment, size_t index, bool certain,
                          struct joint_figures *figures)
@@ -137,10 +150,14 @@ static void find_figures(const struct assessment *assessment, size_t index, bool
     evaluate_with(assessment, index, &shift, &figures->at);
     for (int i = NOT_LISTED; i < (int)assessment->job->instrument_count; i++)
         add_shift(assessment, index, &(struct shift){i, NOT_SHIFTED, NULL, certain}, figures);
-    for (size_t i = 0; i < assessment->job->capacitor_count; i++)
-        if (takes_part(assessment, i) && (i == index || together(assessment, index, i)))
-            add_shift(assessment, index, &(struct shift){NOT_SHIFTED, (int)i, NULL, certain},
-                      figures);
+    if (company_of(assessment, index) > ONE_BY_ONE_MAX)
+        add_shift(assessment, index, &(struct shift){NOT_SHIFTED, OWN_OF_ALL, NULL, certain},
+                  figures);
+    else
+        for (size_t i = 0; i < assessment->job->capacitor_count; i++)
+            if (takes_part(assessment, i) && (i == index || together(assessment, index, i)))
+                add_shift(assessment, index, &(struct shift){NOT_SHIFTED, (int)i, NULL, certain},
+                          figures);
     for (size_t i = 0; kind_of(place) == JOINT_STAGE && i < place->group->step_count; i++)
         add_shift(assessment, index,
                   &(struct shift){NOT_SHIFTED, NOT_SHIFTED, &place->group->steps[i], certain},
@@ -252,10 +269,7 @@ void joint_assess(struct assessment *assessment)
     /* All are judged on the single outcomes before any of them is changed. */
     for (size_t i = 0; i < count; i++) {
         results[i] = assessment->work[i].final;
-        bool company = false;
-        for (size_t k = 0; k < count && takes_part(assessment, i) && !company; k++)
-            company = k != i && takes_part(assessment, k) && together(assessment, i, k);
-        if (company)
+        if (takes_part(assessment, i) && company_of(assessment, i) > 1)
             judge_jointly(assessment, i, &results[i]);
     }
     for (size_t i = 0; i < count; i++) {

@@ -14,7 +14,7 @@ static const double exponent_high = 1.3;
 static const double same_volts_share = 0.005, same_temperature_k = 1;
 static const double warmer_k = 5; /* "turns on temperature" */
 static const double rising_share = 0.1;
-enum { RUN_MAX = 64, RUNS_OF_A_LOG = 10000 };
+enum { RUNS_OF_A_LOG = 10000 };
 
 /* ---- limits at a reading */
 
@@ -178,12 +178,12 @@ static int choose(const struct assessment *assessment, size_t index, struct choi
 /* ---- runs: the readings of one switching-on up to the one that decides */
 
 static size_t run_up_to(const struct assessment *assessment, size_t index, size_t last,
-                        struct reading_findings run[RUN_MAX])
+                        struct reading_findings *run)
 {
     const struct part_work *work = &assessment->work[index];
     const struct reading_findings *deciding = &work->readings[last];
     size_t count = 0;
-    for (size_t i = 0; i <= last && count < RUN_MAX; i++) {
+    for (size_t i = 0; i <= last; i++) {
         const struct reading_findings *reading = &work->readings[i];
         bool same =
             work->runs[i] == work->runs[last] &&
@@ -200,10 +200,10 @@ static size_t run_up_to(const struct assessment *assessment, size_t index, size_
 static void fit_run(struct assessment *assessment, size_t index, size_t deciding)
 {
     struct capacitor_findings *part = &assessment->capacitors[index];
-    struct reading_findings run[RUN_MAX];
+    struct reading_findings *run = arena_array(assessment->arena, deciding + 1, sizeof *run);
     size_t count = run_up_to(assessment, index, deciding, run);
     part->trend = soak_trend(run, count);
-    struct absorption_reading fit[RUN_MAX];
+    struct absorption_reading *fit = arena_array(assessment->arena, deciding + 1, sizeof *fit);
     size_t fitted = 0;
     for (size_t i = 0; i < count; i++)
         if (run[i].bound == BOUND_NONE && soak_time(&run[i]) > 0)

@@ -106,7 +106,7 @@ static double worst_rise(const struct place_case *place, const struct stage_solu
 static void add_dissipation(const struct place_case *place, struct place_values *values,
                             enum criterion_key key, double with_w, double bare_w, double max_w)
 {
-    if (isnan(max_w) || isnan(with_w))
+    if (isnan(max_w))
         return;
     add_value(values, (struct place_value){
                           .key = key,
@@ -117,7 +117,7 @@ static void add_dissipation(const struct place_case *place, struct place_values 
 }
 
 static void add_pushpull(const struct place_case *place, struct place_values *values,
-                         const struct stage_solution *with)
+                         const struct stage_solution *with, bool split)
 {
     if (place->model->partner < 0)
         return;
@@ -126,7 +126,8 @@ static void add_pushpull(const struct place_case *place, struct place_values *va
         return;
     double one = with[place->model->slot].anode_a, other = with[partner->slot].anode_a;
     double bare = place->bare[place->model->slot].anode_a;
-    add_percent(values, CRITERION_PUSHPULL_DIFFERENCE, bare > 0 ? fabs(one - other) / bare : NAN,
+    add_percent(values, CRITERION_PUSHPULL_DIFFERENCE,
+                bare > 0 && split ? fabs(one - other) / bare : NAN,
                 place->policy->pushpull_difference);
 }
 
@@ -147,15 +148,16 @@ static void evaluate_coupling(const struct place_case *place, double leak_s,
     }
     add_percent(values, CRITERION_CATHODE_CURRENT, rise_of(leaking->cathode_a, bare->cathode_a),
                 place->policy->cathode_current_rise);
-    if (is_bottomed(leaking) || is_bottomed(bare))
-        return;
+    /* A bottomed anode has no figure for the split; the row stays, so that figures keep their
+       places whatever the leak. */
+    bool split = !is_bottomed(leaking) && !is_bottomed(bare);
     const struct valve_law *law = &place->model->law;
-    add_dissipation(place, values, CRITERION_ANODE_DISSIPATION, leaking->anode_w, bare->anode_w,
-                    law->pa_max_w);
+    add_dissipation(place, values, CRITERION_ANODE_DISSIPATION, split ? leaking->anode_w : NAN,
+                    bare->anode_w, law->pa_max_w);
     if (!law->triode)
-        add_dissipation(place, values, CRITERION_SCREEN_DISSIPATION, leaking->screen_w,
-                        bare->screen_w, law->pg2_max_w);
-    add_pushpull(place, values, with);
+        add_dissipation(place, values, CRITERION_SCREEN_DISSIPATION,
+                        split ? leaking->screen_w : NAN, bare->screen_w, law->pg2_max_w);
+    add_pushpull(place, values, with, split);
 }
 
 static void evaluate_screen(const struct place_case *place, double leak_s,

@@ -57,7 +57,8 @@ static void coupling_effects(struct gathering *to)
     }
     add(to, "grid_volts", shift_v, UNIT_VOLTAGE, bias_v);
     add(to, "cathode_current", 100 * (leaking->cathode_a / bare->cathode_a - 1), UNIT_PERCENT, NAN);
-    add(to, "anode_watts", leaking->anode_w, UNIT_POWER, model->law.pa_max_w);
+    if (leaking->status == SOLVE_OK)
+        add(to, "anode_watts", leaking->anode_w, UNIT_POWER, model->law.pa_max_w);
 }
 
 static void linear_effect(struct gathering *to, const char *key, double ohm)

@@ -103,7 +103,8 @@ static void solve_phase(const struct assessment *assessment, const struct stage_
     for (size_t i = 0; i < group->count; i++) {
         struct stage_phase *found = &stages[group->members[i]].phases[phase];
         found->solution = warm[i];
-        found->judged = possible && warm[i].status != SOLVE_IMPOSSIBLE;
+        found->judged =
+            possible && (warm[i].status == SOLVE_OK || warm[i].status == SOLVE_BOTTOMED);
         found->why = found->judged ? WHY_NONE : WHY_STAGE;
         found->no_leak_cathode_a = group->bare[phase][i].cathode_a;
         found->grid_cold_v = cold[i].grid_v;

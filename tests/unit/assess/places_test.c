@@ -274,6 +274,32 @@ static void test_bounds_do_not_fail_a_line(void **state)
     bench_release(&bench);
 }
 
+static void test_many_on_one_line_and_a_short(void **state)
+{
+    (void)state;
+    static char text[32768];
+    int length = snprintf(text, sizeof text, "%s",
+                          HEAD METER STAGE_6V6 "capacitors:\n" CAP(
+                              "C0", "paper", "0.02 uF 400 V",
+                              "coupling") "    stage: output\n    source: 250 V\n    readings:\n"
+                                          "      - 250 V 60 s 100 ohm\n");
+    for (int i = 1; i <= 30; i++)
+        length += snprintf(text + length, sizeof text - (size_t)length,
+                           "  C%d:\n    type: paper\n    marked: 0.1 uF 150 V\n"
+                           "    place: avc bypass\n    line: A\n    feed: 1 meg\n"
+                           "    service: 12 V\n    readings:\n      - 12 V 60 s 0.04 uA\n",
+                           i);
+    struct bench bench;
+    bench_assess(&bench, text);
+    assert_int_equal(bench_part(&bench, "C0")->outcome, OUTCOME_FAIL);
+    assert_true(bench_effect(bench_part(&bench, "C0"), "grid_volts")->value > 20);
+    /* 30*3.33 nS*1 M = 0.1: 9.1 % of the line together, a thirtieth each */
+    const struct capacitor_findings *part = bench_part(&bench, "C7");
+    assert_relative(bench_criterion(part, CRITERION_LINE_LOSS, true)->value, 9.09, 0.003);
+    assert_int_equal(part->outcome, OUTCOME_CONDITIONAL_FAIL);
+    bench_release(&bench);
+}
+
 static void test_linear_places(void **state)
 {
     (void)state;
@@ -573,6 +599,7 @@ int main(void)
         cmocka_unit_test(test_screen_bypass),
         cmocka_unit_test(test_avc_line_singly_and_jointly),
         cmocka_unit_test(test_bounds_do_not_fail_a_line),
+        cmocka_unit_test(test_many_on_one_line_and_a_short),
         cmocka_unit_test(test_linear_places),
         cmocka_unit_test(test_detector_on_a_grid_and_tone),
         cmocka_unit_test(test_mains_places),

@@ -163,6 +163,64 @@ static void test_measured_resistors_and_joint_leaks(void **state)
     bench_release(&bench);
 }
 
+static void test_stages_that_one_capacitor_bypasses(void **state)
+{
+    (void)state;
+    struct bench bench;
+    bench_assess(&bench, HEAD METER
+                 "stages:\n"
+                 "  rf:\n    valve: V1 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, "
+                 "ig2 0.5 mA, gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 150k\n"
+                 "    cathode: 1200 ohm\n    grid_leak: 1 meg\n"
+                 "  if:\n    valve: V2 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, "
+                 "ig2 0.5 mA, gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 150k\n"
+                 "    cathode: 1200 ohm\n    grid_leak: 1 meg\n"
+                 "capacitors:\n  C1:\n    type: paper\n    marked: 0.1 uF 400 V\n"
+                 "    place: screen bypass\n    stage: rf, if\n    readings:\n"
+                 "      - 100 V 60 s 10 uA\n");
+    /* One dropper for both: at the row 253 - 150 k*(0.5 + 0.5 mA) = 103 V, the row's own 100 V
+       above the cathode's 3 V. */
+    const struct stage_solution *rf = &stage(&bench, "rf")->phases[PHASE_DESIGNED].solution;
+    const struct stage_solution *other = &stage(&bench, "if")->phases[PHASE_DESIGNED].solution;
+    assert_close(rf->screen_v, 103, 0.1);
+    assert_close(rf->screen_v, other->screen_v, 1e-6);
+    assert_relative(rf->cathode_a, 2.5e-3, 2e-3);
+    const struct capacitor_findings *part = bench_part(&bench, "C1");
+    assert_non_null(bench_criterion(part, CRITERION_SCREEN_FALL, false));
+    assert_int_equal(part->outcome, OUTCOME_PASS);
+    bench_release(&bench);
+}
+
+static void test_rows_given_for_unknown_types(void **state)
+{
+    (void)state;
+    struct bench bench;
+    bench_assess(&bench, HEAD METER
+                 "stages:\n"
+                 "  power:\n    valve: V1 QX45\n    row: va 250 V, vg1 -45 V, ia 60 mA, "
+                 "gm 5.25 mA/V, mu 4.2\n    supply: 295 V\n    cathode: 750 ohm\n"
+                 "    grid_leak: 470k\n"
+                 "  small:\n    valve: V2 QX9\n    row: va 250 V, vg1 -8.5 V, ia 5.5 mA, "
+                 "gm 2.2 mA/V, mu 17.5\n    supply: 250 V\n    bias: -8.5 V\n"
+                 "  pentode:\n    valve: V3 QX7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, "
+                 "ig2 0.5 mA, gm 1.225 mA/V\n    supply: 250 V\n    screen: 100 V 0 ohm\n"
+                 "    bias: -3 V\n"
+                 "  output:\n    valve: V4 QX6\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, "
+                 "ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V\n    supply: 250 V\n    bias: 150 ohm\n"
+                 "    others: 33.8 mA\n");
+    assert_true(stage(&bench, "power")->is_output);
+    assert_relative(stage(&bench, "power")->phases[PHASE_DESIGNED].solution.anode_a, 60e-3, 1e-3);
+    assert_false(stage(&bench, "small")->is_output);
+    assert_relative(stage(&bench, "small")->phases[PHASE_DESIGNED].solution.anode_a, 5.5e-3, 1e-3);
+    assert_false(stage(&bench, "pentode")->is_output);
+    assert_relative(stage(&bench, "pentode")->phases[PHASE_DESIGNED].solution.anode_a, 2e-3, 1e-3);
+    assert_true(stage(&bench, "output")->is_output);
+    /* 49.5 + 33.8 mA through 150 ohm is 12.5 V, the row's bias */
+    assert_relative(stage(&bench, "output")->phases[PHASE_DESIGNED].solution.return_v, -12.5, 2e-3);
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_UNKNOWN), 0);
+    bench_release(&bench);
+}
+
 static void test_more_than_eight_on_one_resistor(void **state)
 {
     (void)state;
@@ -189,6 +247,8 @@ int main(void)
         cmocka_unit_test(test_grid_current_is_what_leakage_leaves),
         cmocka_unit_test(test_anchor_on_a_lifted_cathode_voltage),
         cmocka_unit_test(test_measured_resistors_and_joint_leaks),
+        cmocka_unit_test(test_stages_that_one_capacitor_bypasses),
+        cmocka_unit_test(test_rows_given_for_unknown_types),
         cmocka_unit_test(test_more_than_eight_on_one_resistor),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
