@@ -43,7 +43,9 @@ enum lock_status lock_take(const char *folder, enum lock_kind kind, bool wait, s
     int file = open_lock_file(folder, failure);
     if (file < 0)
         return LOCK_FAILED;
-    struct flock wanted = {.l_type = kind == LOCK_ALONE ? F_WRLCK : F_RDLCK, .l_whence = SEEK_SET};
+    /* Byte 0 alone: the bytes behind it are the jobs', which holders of the shared lock take. */
+    struct flock wanted = {
+        .l_type = kind == LOCK_ALONE ? F_WRLCK : F_RDLCK, .l_whence = SEEK_SET, .l_len = 1};
     int answer;
     do
         answer = fcntl(file, wait ? F_SETLKW : F_SETLK, &wanted);

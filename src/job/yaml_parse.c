@@ -308,6 +308,8 @@ static const struct {
     {"did not find expected ',' or ']'", "", true, true, "'[' is not closed", NULL},
     {"found unexpected", "while scanning a quoted scalar", true, true, "the quote is not closed",
      NULL},
+    {"did not find expected node content", "", false, false,
+     "a value is missing, or a bracket above is not closed", NULL},
     {"did not find expected '-' indicator", "", false, false,
      "this line does not fit the list above it",
      "the items of a list begin with '- ' in the same column"},
