@@ -114,6 +114,9 @@ const char *text_with_micro(struct arena *arena, const char *text);
 
 /* ---- what several exhibits ask of a part */
 
+/* What the leak does there, in one line; NULL: nothing is known. */
+const char *effects_text(const struct composition *composition,
+                         const struct capacitor_findings *part);
 /* The deciding reading in µA: three figures, none finer than the instrument shows; the bound. */
 struct figures leakage_figures(const struct composition *composition,
                                const struct capacitor_findings *part);

@@ -7,15 +7,6 @@ static const struct column_plan part_plan[] = {
     {"outcome", NULL, NULL, COLUMN_OUTCOME, 22, 1}, {"advice", NULL, NULL, COLUMN_TEXT, 18, 3},
 };
 
-static const char *effects_text(const struct composition *composition,
-                                const struct capacitor_findings *part)
-{
-    const char **texts = arena_array(composition->arena, part->effect_count + 1, sizeof *texts);
-    for (size_t i = 0; i < part->effect_count; i++)
-        texts[i] = part->effects[i].text;
-    return text_join(composition->arena, "; ", texts, part->effect_count);
-}
-
 static void add_part(struct table_builder *builder, size_t index)
 {
     const struct composition *composition = builder->composition;

@@ -2,6 +2,8 @@
 #include "report/leakage_notes.h"
 #include "report/phrases.h"
 
+#include <string.h>
+
 enum {
     COLUMN_OF_REF,
     COLUMN_OF_MARKED,
@@ -75,16 +77,22 @@ struct figures leakage_figures(const struct composition *composition,
     return figures_plain(composition, value, 1e-6, decimals);
 }
 
-static const char *effect_cell_text(const struct composition *composition,
-                                    const struct capacitor_findings *part)
+/* Heat that no hand would feel is left out beside what the leak does to the circuit. */
+static bool is_idle(const struct capacitor_findings *part, const struct effect *effect)
 {
-    if (part->effect_count == 0)
-        return part->no_reading_passes
-                   ? phrase_in(&composition->say, "short", place_text(part->part->place))
-                   : NULL;
-    const char **texts = arena_array(composition->arena, part->effect_count, sizeof *texts);
+    const double felt_w = 1e-3;
+    return part->effect_count > 1 && strcmp(effect->key, "part_watts") == 0 &&
+           effect->value < felt_w;
+}
+
+const char *effects_text(const struct composition *composition,
+                         const struct capacitor_findings *part)
+{
+    const char **texts = arena_array(composition->arena, part->effect_count + 1, sizeof *texts);
     for (size_t i = 0; i < part->effect_count; i++)
-        texts[i] = part->effects[i].text;
+        texts[i] = is_idle(part, &part->effects[i]) ? NULL : part->effects[i].text;
+    if (part->effect_count == 0 && part->no_reading_passes)
+        return phrase_in(&composition->say, "short", place_text(part->part->place));
     return text_join(composition->arena, "; ", texts, part->effect_count);
 }
 
@@ -117,7 +125,7 @@ static void add_part(struct table_builder *builder, size_t index)
     cells[COLUMN_OF_REF].text = part->part->ref;
     set_marked(composition, &cells[COLUMN_OF_MARKED], &part->part->marked);
     set_reading(composition, cells, part);
-    cells[COLUMN_OF_EFFECT].text = effect_cell_text(composition, part);
+    cells[COLUMN_OF_EFFECT].text = effects_text(composition, part);
     cells[COLUMN_OF_OUTCOME] = (struct cell){
         .text = phrase_in(&composition->say, "outcome", outcome_text(part->outcome)),
         .second = reason_under(composition, part),

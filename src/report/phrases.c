@@ -80,6 +80,8 @@ static const char *effect_phrase(const struct phrasing *say, const struct job *j
     bool at_most = effect->at_most;
     bool of_line = strncmp(effect->key, "line_", 5) == 0;
     double share = effect->of > 0 ? 100 * effect->value / effect->of : NAN;
+    if (share < least_shown(UNIT_PERCENT))
+        share = NAN; /* the figure itself says enough */
     return phrase(say, arena_print(arena, "effect.%s", effect->key), "amount",
                   figure_phrase(say, effect->value, unit, at_most, SIGN_NONE), "rise",
                   figure_phrase(say, effect->value, unit, at_most, SIGN_RISE), "fall",
