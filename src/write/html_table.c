@@ -14,6 +14,7 @@ enum { SLOT_DIGITS_MAX = 6, FOLDED_COLUMNS_MAX = 4 };
 struct slots {
     size_t digits;
     unsigned unit_milli;
+    bool second; /* numbers to the right of the first */
 };
 
 struct table_writing {
@@ -21,7 +22,27 @@ struct table_writing {
     const struct table *table;
     struct slots *slots;
     bool folded; /* cells become lines on a phone */
+    size_t head; /* the column that names its row; column_count: none does */
 };
+
+/* The ref, or else the words in front. */
+static size_t head_column(const struct table *table)
+{
+    for (size_t i = 0; i < table->column_count; i++)
+        if (table->columns[i].kind == COLUMN_REF)
+            return i;
+    return table->column_count > 1 && table->columns[0].kind == COLUMN_TEXT ? 0
+                                                                            : table->column_count;
+}
+
+/* In a table of texts every cell behind the first takes a line. */
+static unsigned rank_of(const struct table *table, size_t column)
+{
+    unsigned rank = table->columns[column].rank;
+    if (table->text_only)
+        return column == 0 ? 1 : 3;
+    return rank >= 1 && rank <= 3 ? rank : 3;
+}
 
 static bool is_number(const struct table *table, size_t column)
 {
@@ -35,6 +56,8 @@ static struct slots slots_of(const struct table *table, size_t column)
         const struct figures *figures = &table->rows[i].cells[column].figures;
         if (table->rows[i].group || !figures->whole)
             continue;
+        if (table->rows[i].cells[column].second_figures.whole && !table->write_in)
+            slots.second = true;
         size_t fraction = strlen(figures->fraction);
         if (fraction > slots.digits + 1)
             slots.digits = fraction - 1;
@@ -104,6 +127,8 @@ static void write_number(const struct table_writing *writing, const struct cell 
         html_raw(html, writing->table->write_in ? "<span class=\"under\">" : "<span class=\"rv\">");
         write_plain_figures(html, &cell->second_figures);
         html_raw(html, "</span>");
+    } else if (cell->figures.whole && writing->slots[column].second) {
+        html_raw(html, "<span class=\"rv\"></span>"); /* keeps the first ones in line */
     }
     if (cell->second) {
         html_raw(html, "<span class=\"under\">");
@@ -179,7 +204,7 @@ static void write_classes(const struct table_writing *writing, size_t column, bo
     html_raw(writing->html, words && here->kind == COLUMN_NUMBER ? "c-t" : kind_class[here->kind]);
     if (writing->folded) {
         char rank[] = " p1";
-        rank[2] = (char)('0' + (here->rank >= 1 && here->rank <= 3 ? here->rank : 3));
+        rank[2] = (char)('0' + rank_of(writing->table, column));
         html_raw(writing->html, rank);
     }
     html_raw(writing->html, "\"");
@@ -191,7 +216,7 @@ static void write_cell(const struct table_writing *writing, const struct cell *c
     struct html *html = writing->html;
     const struct column *here = &writing->table->columns[column];
     bool words = here->kind == COLUMN_NUMBER && !cell->figures.whole && cell->text;
-    bool head = here->kind == COLUMN_REF;
+    bool head = column == writing->head;
     html_raw(html, head ? "<th scope=\"row\"" : "<td");
     write_classes(writing, column, words);
     if (span > 1) {
@@ -307,7 +332,7 @@ static size_t first_rank_columns(const struct table *table)
 {
     size_t count = 0;
     for (size_t i = 0; i < table->column_count; i++)
-        count += table->columns[i].rank == 1;
+        count += rank_of(table, i) == 1;
     return count;
 }
 
@@ -365,6 +390,7 @@ void html_table(struct html *html, const struct exhibit *exhibit)
     struct table_writing writing = {
         .html = html,
         .table = table,
+        .head = head_column(table),
         .slots = arena_array(&html->scratch, table->column_count, sizeof(struct slots)),
         .folded = !table->write_in && columns >= 1 && columns <= FOLDED_COLUMNS_MAX};
     for (size_t i = 0; i < table->column_count; i++)
