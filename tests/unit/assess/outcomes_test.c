@@ -21,50 +21,33 @@ static void test_time(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER "capacitors:\n" BYPASS(
-                             "C1",
-                             "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 5 s 80 "
-                                                      "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 5 s 20 uA\n" BYPASS("C3", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n" BYPASS(
-                                                          "C4", "paper",
-                                                          "0.1 uF 400 V") "    readings:\n "
-                                                                          "     - 100 V 80 "
-                                                                          "uA\n" BYPASS(
-                                                                              "C"
-                                                                              "5",
-                                                                              "pa"
-                                                                              "pe"
-                                                                              "r",
-                                                                              "0."
-                                                                              "1 "
-                                                                              "uF"
-                                                                              " 4"
-                                                                              "00"
-                                                                              " "
-                                                                              "V") "    "
-                                                                                   "readings:\n    "
-                                                                                   "  - 100 V 60 s "
-                                                                                   "4 uA, 5 min 8 "
-                                                                                   "uA\n" BYPASS("C"
-                                                                                                 "6",
-                                                                                                 "p"
-                                                                                                 "a"
-                                                                                                 "p"
-                                                                                                 "e"
-                                                                                                 "r",
-                                                                                                 "0"
-                                                                                                 "."
-                                                                                                 "1"
-                                                                                                 " "
-                                                                                                 "u"
-                                                                                                 "F"
-                                                                                                 " "
-                                                                                                 "4"
-                                                                                                 "0"
-                                                                                                 "0"
-                                                                                                 " "
-                                                                                                 "V") "    readings:\n      - 100 V 60 s 1 uA, 5 min 2 uA\n" BYPASS("C7",
-                                                                                                                                                                    "paper",
-                                                                                                                                                                    "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 5 s 70 uA hot 20 C\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 5 s 80 uA\n"
+        BYPASS("C2", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 5 s 20 uA\n"
+        BYPASS("C3", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 80 uA\n"
+        BYPASS("C4", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 80 uA\n"
+        BYPASS("C5", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 4 uA, 5 min 8 uA\n"
+        BYPASS("C6", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA, 5 min 2 uA\n"
+        BYPASS("C7", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 80 uA\n"
+        "      - 100 V 5 s 70 uA hot 20 C\n");
+    /* clang-format on */
     expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_TOO_EARLY);
     expect(&bench, "C2", OUTCOME_PASS, WHY_NONE); /* an early reading may pass */
     expect(&bench, "C3", OUTCOME_FAIL, WHY_NONE);
@@ -85,11 +68,14 @@ static void test_waiting_for_absorption(void **state)
     /* I = 20 uA + 60 uA*(t/60 s)^-0.8: 30 s 124.47, 60 s 80, 120 s 54.46... against 50 uA: the
        curve meets it at 60*(60/30)^(1/0.8) = 142.7 s, so a last reading at 120 s waits; ratio 12.
      */
-    bench_assess(&bench, HEAD METER "capacitors:\n" BYPASS(
-                             "C1", "paper",
-                             "0.1 uF 400 V") "    readings:\n      - 100 V 10 s 271.582 uA, 15 s "
-                                             "201.886 uA, 30 s 124.466 uA, "
-                                             "60 s 80.000 uA, 90 s 63.379 uA, 120 s 54.461 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 10 s 271.582 uA, 15 s 201.886 uA, 30 s 124.466 uA, 60 s 80.000 uA, 90 s 63.379 uA, 120 s 54.461 uA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_int_equal(part->absorption.status, ABSORPTION_RESOLVED);
     assert_relative(part->absorption.wait_until_s, 60 * pow(2, 1 / 0.8), 0.02);
@@ -102,56 +88,30 @@ static void test_volts(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER "capacitors:\n" BYPASS(
-                             "C1",
-                             "paper", "0.1 uF 400 V") "    readings:\n      - 25 V 60 s 2 "
-                                                      "uA\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 25 V 60 s 20 uA\n" BYPASS(
-                                                          "C3", "paper",
-                                                          "0.1 uF 400 V") "    readings:\n      - "
-                                                                          "200 V 60 s 80 "
-                                                                          "uA\n" BYPASS("C4",
-                                                                                        "paper",
-                                                                                        "0.1 uF "
-                                                                                        "150 V") " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 "r"
-                                                                                                 "e"
-                                                                                                 "a"
-                                                                                                 "d"
-                                                                                                 "i"
-                                                                                                 "n"
-                                                                                                 "g"
-                                                                                                 "s"
-                                                                                                 ":"
-                                                                                                 "\n "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 " "
-                                                                                                 "-"
-                                                                                                 " "
-                                                                                                 "2"
-                                                                                                 "0"
-                                                                                                 "0"
-                                                                                                 " "
-                                                                                                 "V"
-                                                                                                 " "
-                                                                                                 "6"
-                                                                                                 "0"
-                                                                                                 " "
-                                                                                                 "s"
-                                                                                                 " "
-                                                                                                 "1"
-                                                                                                 " "
-                                                                                                 "u"
-                                                                                                 "A"
-                                                                                                 "\n" BYPASS("C5", "paper", "0.1 uF 50 V") "    readings:\n      - 50 V 60 s 1 uA\n" BYPASS(
-                                                                                                     "C6",
-                                                                                                     "paper",
-                                                                                                     "0.1 uF 400 V") "    readings:\n      - 50 V 60 s 1 uA\n      - 100 V 60 s 4 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 25 V 60 s 2 uA\n"
+        BYPASS("C2", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 25 V 60 s 20 uA\n"
+        BYPASS("C3", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 200 V 60 s 80 uA\n"
+        BYPASS("C4", "paper", "0.1 uF 150 V")
+        "    readings:\n"
+        "      - 200 V 60 s 1 uA\n"
+        BYPASS("C5", "paper", "0.1 uF 50 V")
+        "    readings:\n"
+        "      - 50 V 60 s 1 uA\n"
+        BYPASS("C6", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 50 V 60 s 1 uA\n"
+        "      - 100 V 60 s 4 uA\n");
+    /* clang-format on */
     expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_VOLTS_TOO_LOW);
     assert_true(bench_part(&bench, "C1")->readings[0].service_lower_bound);
     expect(&bench, "C2", OUTCOME_FAIL, WHY_NONE); /* 80 uA at least */
@@ -172,21 +132,35 @@ static void test_temperature_and_ageing(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        "job: T-1\nset:\n  maker: P\n  supply: transformer\n  mains: 230 V\nreceived: 2031-02-03\n"
-        "conditions:\n  bench: 20 C\n  working: 45 C\n" METER "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA\n" BYPASS(
-            "C2", "paper",
-            "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA\n      - 100 V 60 s 5 uA hot "
-                            "45 C\n" BYPASS("C3", "waxed paper", "0.1 uF 400 V") BYPASS(
-                                "C4", "paper",
-                                "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 7.5 "
-                                                "uA\n" BYPASS("C5", "polyester",
-                                                              "0.1 uF 400 V") "    near_heat: "
-                                                                              "yes\n    "
-                                                                              "readings:\n     "
-                                                                              " - 100 V 60 s 1 "
-                                                                              "uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        "job: T-1\n"
+        "set:\n"
+        "  maker: P\n"
+        "  supply: transformer\n"
+        "  mains: 230 V\n"
+        "received: 2031-02-03\n"
+        "conditions:\n"
+        "  bench: 20 C\n"
+        "  working: 45 C\n"
+        METER
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n"
+        BYPASS("C2", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n"
+        "      - 100 V 60 s 5 uA hot 45 C\n"
+        BYPASS("C3", "waxed paper", "0.1 uF 400 V")
+        BYPASS("C4", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 7.5 uA\n"
+        BYPASS("C5", "polyester", "0.1 uF 400 V")
+        "    near_heat: yes\n"
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* 2^(25/10) = 5.657 */
     assert_relative(part->leakage_warm_a, 5.657e-6, 1e-3);
@@ -210,39 +184,39 @@ static void test_instrument_and_bounds(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD "instruments:\n  leakage:\n    accuracy: 2 % + 50 uA\n    resolution: 1 uA\n"
-             "  fine:\n    accuracy: 1 %\n    resolution: 0.01 uA\n"
-             "capacitors:\n" BYPASS(
-                 "C1", "paper",
-                 "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 "
-                                 "uA\n" BYPASS(
-                                     "C2", "paper",
-                                     "0.1 uF 400 V") " "
-                                                     " "
-                                                     " "
-                                                     " "
-                                                     "r"
-                                                     "e"
-                                                     "a"
-                                                     "d"
-                                                     "i"
-                                                     "n"
-                                                     "g"
-                                                     "s"
-                                                     ":"
-                                                     "\n      - 100 V 60 s over 2000 M by "
-                                                     "fine\n" BYPASS("C3", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s under 200 uA by fine\n" BYPASS("C4", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s over 200 uA by fine\n" BYPASS(
-                                                         "C5", "paper",
-                                                         "0.1 uF 400 V") "    readings:\n      - "
-                                                                         "100 V 60 s 49.9 uA by "
-                                                                         "fine\n" BYPASS("C6",
-                                                                                         "paper",
-                                                                                         "0.1 uF "
-                                                                                         "400 V") "    readings:\n      - 100 V 60 s 50.1 uA by fine\n" BYPASS("C7",
-                                                                                                                                                               "paper",
-                                                                                                                                                               "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 1 uA by fine in circuit\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD
+        "instruments:\n"
+        "  leakage:\n"
+        "    accuracy: 2 % + 50 uA\n"
+        "    resolution: 1 uA\n"
+        "  fine:\n"
+        "    accuracy: 1 %\n"
+        "    resolution: 0.01 uA\n"
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n"
+        BYPASS("C2", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s over 2000 M by fine\n"
+        BYPASS("C3", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s under 200 uA by fine\n"
+        BYPASS("C4", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s over 200 uA by fine\n"
+        BYPASS("C5", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 49.9 uA by fine\n"
+        BYPASS("C6", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 50.1 uA by fine\n"
+        BYPASS("C7", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA by fine in circuit\n");
+    /* clang-format on */
     /* 50 uA/sqrt(3)*2 is more than half of 50 uA */
     expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
     assert_true(bench_part(&bench, "C1")->sheet_not_with_this_meter);
@@ -264,115 +238,50 @@ static void test_electrolytics(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD
-            METER "cans:\n  CAN1:\n    holds: C7 C8\n    seen: above\n    done: reformed\n"
-                  "capacitors:\n" CAN(
-                      "C1",
-                      "20 uF 450 V") "    readings:\n      - 300 V 60 s 4 "
-                                     "mA, 5 min 2 mA\n" CAN(
-                                         "C2",
-                                         "20 uF "
-                                         "450 V") "    readings:\n      - 300 V 60 s 2 mA, 5 min 2 "
-                                                  "mA\n" CAN("C3",
-                                                             "20 uF 450 V") "    readings:\n      "
-                                                                            "- 300 V 60 s 2 "
-                                                                            "mA\n" CAN("C4",
-                                                                                       "20 uF 450 "
-                                                                                       "V") "    "
-                                                                                            "readin"
-                                                                                            "gs:\n "
-                                                                                            "   "
-                                                                                            "  - "
-                                                                                            "300 V "
-                                                                                            "60 s "
-                                                                                            "0.1 "
-                                                                                            "mA, 5 "
-                                                                                            "min "
-                                                                                            "0.1 "
-                                                                                            "mA"
-                                                                                            "\n" CAN(
-                                                                                                "C"
-                                                                                                "5",
-                                                                                                "20"
-                                                                                                " u"
-                                                                                                "F "
-                                                                                                "45"
-                                                                                                "0 "
-                                                                                                "V") "    rule: 0.01 CV or 3 uA\n    measured: 15 uF\n" CAN("C6",
-                                                                                                                                                            "20 uF 475 V") "    rule: nobody's\n" CAN("C7",
-                                                                                                                                                                                                      "16 uF 450 V")
-                                                                                                CAN("C8",
-                                                                                                    "16 uF 450 "
-                                                                                                    "V") "reform"
-                                                                                                         "s:\n  "
-                                                                                                         "- "
-                                                                                                         "capaci"
-                                                                                                         "tor: "
-                                                                                                         "C7\n  "
-                                                                                                         "  "
-                                                                                                         "date: "
-                                                                                                         "2031-"
-                                                                                                         "02-"
-                                                                                                         "10\n  "
-                                                                                                         "  "
-                                                                                                         "limite"
-                                                                                                         "r: "
-                                                                                                         "47k\n "
-                                                                                                         "   "
-                                                                                                         "log:\n"
-                                                                                                         "      "
-                                                                                                         "- 50 "
-                                                                                                         "V 30 "
-                                                                                                         "s 170 "
-                                                                                                         "uA, 5 "
-                                                                                                         "min "
-                                                                                                         "21 "
-                                                                                                         "uA\n  "
-                                                                                                         "  "
-                                                                                                         "rest: "
-                                                                                                         "12 h\n"
-                                                                                                         "    "
-                                                                                                         "after_"
-                                                                                                         "rest: "
-                                                                                                         "300 V "
-                                                                                                         "5 min "
-                                                                                                         "0.4 "
-                                                                                                         "mA\n"
-                                                                                                         "  - "
-                                                                                                         "capaci"
-                                                                                                         "tor: "
-                                                                                                         "C8\n  "
-                                                                                                         "  "
-                                                                                                         "date: "
-                                                                                                         "2031-"
-                                                                                                         "02-"
-                                                                                                         "10\n  "
-                                                                                                         "  "
-                                                                                                         "limite"
-                                                                                                         "r: "
-                                                                                                         "47k\n "
-                                                                                                         "   "
-                                                                                                         "log:\n"
-                                                                                                         "      "
-                                                                                                         "- 50 "
-                                                                                                         "V 30 "
-                                                                                                         "s 170 "
-                                                                                                         "uA, 5 "
-                                                                                                         "min "
-                                                                                                         "21 "
-                                                                                                         "uA\n  "
-                                                                                                         "  "
-                                                                                                         "rest: "
-                                                                                                         "12 h\n"
-                                                                                                         "    "
-                                                                                                         "after_"
-                                                                                                         "rest: "
-                                                                                                         "300 V "
-                                                                                                         "5 min "
-                                                                                                         "0.6 "
-                                                                                                         "mA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "cans:\n"
+        "  CAN1:\n"
+        "    holds: C7 C8\n"
+        "    seen: above\n"
+        "    done: reformed\n"
+        "capacitors:\n"
+        CAN("C1", "20 uF 450 V")
+        "    readings:\n"
+        "      - 300 V 60 s 4 mA, 5 min 2 mA\n"
+        CAN("C2", "20 uF 450 V")
+        "    readings:\n"
+        "      - 300 V 60 s 2 mA, 5 min 2 mA\n"
+        CAN("C3", "20 uF 450 V")
+        "    readings:\n"
+        "      - 300 V 60 s 2 mA\n"
+        CAN("C4", "20 uF 450 V")
+        "    readings:\n"
+        "      - 300 V 60 s 0.1 mA, 5 min 0.1 mA\n"
+        CAN("C5", "20 uF 450 V")
+        "    rule: 0.01 CV or 3 uA\n"
+        "    measured: 15 uF\n"
+        CAN("C6", "20 uF 475 V")
+        "    rule: nobody's\n"
+        CAN("C7", "16 uF 450 V")
+        CAN("C8", "16 uF 450 V")
+        "reforms:\n"
+        "  - capacitor: C7\n"
+        "    date: 2031-02-10\n"
+        "    limiter: 47k\n"
+        "    log:\n"
+        "      - 50 V 30 s 170 uA, 5 min 21 uA\n"
+        "    rest: 12 h\n"
+        "    after_rest: 300 V 5 min 0.4 mA\n"
+        "  - capacitor: C8\n"
+        "    date: 2031-02-10\n"
+        "    limiter: 47k\n"
+        "    log:\n"
+        "      - 50 V 30 s 170 uA, 5 min 21 uA\n"
+        "    rest: 12 h\n"
+        "    after_rest: 300 V 5 min 0.6 mA\n");
+    /* clang-format on */
     /* heat of a tubular: 0.05 W at 300 V is 167 uA, less than 2 % of 60 mA and than JAN-C-62 (1.1
      * mA) */
     assert_relative(bench_part(&bench, "C4")->limit_a, 0.05 / 300, 1e-4);
@@ -410,9 +319,19 @@ static void test_warnings_of_electrolytics(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, "job: T-1\nset:\n  maker: P\n  supply: transformer\n  mains: 230 V\n"
-                         "  ht_secondary: 350 V\nreceived: 2031-02-03\n"
-                         "capacitors:\n" CAN("C1", "8 uF 475 V") CAN("C2", "8 uF 600 V"));
+    /* clang-format off */
+    bench_assess(&bench,
+        "job: T-1\n"
+        "set:\n"
+        "  maker: P\n"
+        "  supply: transformer\n"
+        "  mains: 230 V\n"
+        "  ht_secondary: 350 V\n"
+        "received: 2031-02-03\n"
+        "capacitors:\n"
+        CAN("C1", "8 uF 475 V")
+        CAN("C2", "8 uF 600 V"));
+    /* clang-format on */
     /* 1.414*1.1*350 = 544 V */
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_NO_LOAD_ABOVE_MARKED), 1);
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_RULE_EDGE), 2);
@@ -423,44 +342,42 @@ static void test_what_was_done(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER "capacitors:\n" BYPASS(
-                    "C1", "paper",
-                    "0.1 uF 400 V") "    readings:\n      - 100 V 60 s "
-                                    "80 uA\n    done: kept\n" BYPASS("C2", "paper", "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 80 uA\n    done: kept\n    reason: a museum set\n" BYPASS(
-                                        "C3", "paper",
-                                        "0.1 uF 400 V") "    readings:\n "
-                                                        "     - 100 V 60 "
-                                                        "s 1 uA\n    "
-                                                        "done: replaced\n"
-                                                        "    fitted: "
-                                                        "polypropylene "
-                                                        "0.1 uF 630 "
-                                                        "V\n" BYPASS("C4", "paper", "0.1 uF 400 V") "    done: replaced\n    fitted: polypropylene 0.1 uF 630 V\n    age: period\n" BYPASS(
-                                                            "C5", "paper",
-                                                            "0.1 uF 400 "
-                                                            "V") "    "
-                                                                 "done: "
-                                                                 "kept"
-                                                                 "\n" BYPASS(
-                                                                     "C6", "paper",
-                                                                     "0.1 uF 400 V") "    "
-                                                                                     "readings:\n  "
-                                                                                     "    - 100 V "
-                                                                                     "60 s 80 uA\n "
-                                                                                     "     - 100 V "
-                                                                                     "60 s 0.01 uA "
-                                                                                     "left\n"
-                                                                                     "    done: "
-                                                                                     "restuffed\n  "
-                                                                                     "  fitted: "
-                                                                                     "polypropylene"
-                                                                                     " 0.1 uF 630 "
-                                                                                     "V\n" BYPASS(
-                                                                                         "C7",
-                                                                                         "paper",
-                                                                                         "0.1 uF "
-                                                                                         "400 V") "    readings:\n      - 100 V 60 s 80 uA\n      - 100 V 60 s 1 uA left\n    done: kept\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 80 uA\n"
+        "    done: kept\n"
+        BYPASS("C2", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 80 uA\n"
+        "    done: kept\n"
+        "    reason: a museum set\n"
+        BYPASS("C3", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n"
+        "    done: replaced\n"
+        "    fitted: polypropylene 0.1 uF 630 V\n"
+        BYPASS("C4", "paper", "0.1 uF 400 V")
+        "    done: replaced\n"
+        "    fitted: polypropylene 0.1 uF 630 V\n"
+        "    age: period\n"
+        BYPASS("C5", "paper", "0.1 uF 400 V")
+        "    done: kept\n"
+        BYPASS("C6", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 80 uA\n"
+        "      - 100 V 60 s 0.01 uA left\n"
+        "    done: restuffed\n"
+        "    fitted: polypropylene 0.1 uF 630 V\n"
+        BYPASS("C7", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 80 uA\n"
+        "      - 100 V 60 s 1 uA left\n"
+        "    done: kept\n");
+    /* clang-format on */
     assert_true(bench_part(&bench, "C1")->against_advice);
     assert_true(bench_part(&bench, "C2")->against_advice);
     assert_true(bench_part(&bench, "C3")->against_advice);               /* passed, yet replaced */
@@ -485,15 +402,27 @@ static void test_bench_sheet(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD
-        "instruments:\n  leakage:\n    accuracy: 1 % + 0.01 uA\n    resolution: 0.01 uA\n"
-        "    series: 10k\n    volts: 25 V, 50 V, 100 V, 250 V, 500 V\n"
-        "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") BYPASS("C2", "paper", "0.1 uF 75 V")
-            BYPASS("C3", "paper",
-                   "0.1 uF 10 V") "  C4:\n    type: paper\n    marked: 0.1 uF 400 V\n    place: "
-                                  "other\n"
-                                  "    feed: 10k\n    shift: 0.5 V\n    service: 160 V\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD
+        "instruments:\n"
+        "  leakage:\n"
+        "    accuracy: 1 % + 0.01 uA\n"
+        "    resolution: 0.01 uA\n"
+        "    series: 10k\n"
+        "    volts: 25 V, 50 V, 100 V, 250 V, 500 V\n"
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        BYPASS("C2", "paper", "0.1 uF 75 V")
+        BYPASS("C3", "paper", "0.1 uF 10 V")
+        "  C4:\n"
+        "    type: paper\n"
+        "    marked: 0.1 uF 400 V\n"
+        "    place: other\n"
+        "    feed: 10k\n"
+        "    shift: 0.5 V\n"
+        "    service: 160 V\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_close(part->sheet_voltage_v, 100, 1e-9);
     assert_relative(part->sheet_limit_a, 50e-6, 1e-4);
@@ -519,11 +448,20 @@ static void test_only_heat_limits(void **state)
     struct bench bench;
     /* 2 uF across 10 ohm of a cathode: no leak up to 1 mS matters; 0.02 W at 10 V is 2 mA, of waxed
        paper half. */
-    bench_assess(&bench, HEAD METER
-                 "capacitors:\n"
-                 "  C1:\n    type: waxed paper\n    marked: 2 uF 50 V\n    place: other\n"
-                 "    feed: 10 ohm\n    shift: 5 V\n    service: 10 V\n    readings:\n"
-                 "      - 10 V 60 s 1.5 mA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        "  C1:\n"
+        "    type: waxed paper\n"
+        "    marked: 2 uF 50 V\n"
+        "    place: other\n"
+        "    feed: 10 ohm\n"
+        "    shift: 5 V\n"
+        "    service: 10 V\n"
+        "    readings:\n"
+        "      - 10 V 60 s 1.5 mA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_true(part->limit_is_heat);
     assert_relative(part->limit_a, 1e-3, 1e-4);
@@ -536,10 +474,17 @@ static void test_impossible_reading(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD
-                 "instruments:\n  leakage:\n    series: 100k\n"
-                 "capacitors:\n" BYPASS("C1", "paper",
-                                        "0.1 uF 400 V") "    readings:\n      - 100 V 60 s 5 mA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD
+        "instruments:\n"
+        "  leakage:\n"
+        "    series: 100k\n"
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 5 mA\n");
+    /* clang-format on */
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_READING_IMPOSSIBLE), 1);
     assert_int_equal(bench_part(&bench, "C1")->outcome, OUTCOME_FAIL);
     bench_release(&bench);
@@ -549,9 +494,17 @@ static void test_copies(void **state)
 {
     (void)state;
     struct bench bench;
+    /* clang-format off */
     bench_assess(&bench,
-                 HEAD "owner:\n  name: A. Client\nprivate: |\n  secret\n"
-                      "capacitors:\n" BYPASS("C1", "paper", "0.1 uF 400 V") "    price: 12\n");
+        HEAD
+        "owner:\n"
+        "  name: A. Client\n"
+        "private: |\n"
+        "  secret\n"
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    price: 12\n");
+    /* clang-format on */
     struct findings *sale = findings_for_copy(bench.findings, COPY_SALE, &bench.arena);
     assert_int_equal(sale->copy, COPY_SALE);
     assert_null(sale->job->owner.name.text);

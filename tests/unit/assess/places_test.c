@@ -4,23 +4,39 @@
 #define CAP(ref, type, marked, place)                                                              \
     "  " ref ":\n    type: " type "\n    marked: " marked "\n    place: " place "\n"
 
+/* clang-format off */
 #define STAGE_6V6                                                                                  \
-    "stages:\n  output:\n    valve: V4 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 "   \
-    "mA, "                                                                                         \
-    "ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n    supply: 262.5 V\n    cathode: 252.5 ohm\n"               \
+    "stages:\n"                                                                                    \
+    "  output:\n"                                                                                  \
+    "    valve: V4 6V6GT\n"                                                                        \
+    "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"       \
+    "    supply: 262.5 V\n"                                                                        \
+    "    cathode: 252.5 ohm\n"                                                                     \
     "    grid_leak: 470k\n"
+/* clang-format on */
 
 static void test_coupling_into_an_amplifier(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
-        "stages:\n  pre:\n    valve: V3 EL84\n    row: va 250 V, vg2 250 V, vg1 -7.3 V, "
-        "ia 48 mA, ig2 5.5 mA, gm 11.3 mA/V\n    supply: 257.3 V\n    cathode: 136.4 ohm\n"
-        "    grid_leak: 470k\n    use: amplifier\ncapacitors:\n" CAP(
-            "C1", "paper", "0.02 uF 400 V", "coupling") "    stage: pre\n    source: 100 V\n    "
-                                                        "readings:\n      - 100 V 60 s 9.4 M\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  pre:\n"
+        "    valve: V3 EL84\n"
+        "    row: va 250 V, vg2 250 V, vg1 -7.3 V, ia 48 mA, ig2 5.5 mA, gm 11.3 mA/V\n"
+        "    supply: 257.3 V\n"
+        "    cathode: 136.4 ohm\n"
+        "    grid_leak: 470k\n"
+        "    use: amplifier\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "0.02 uF 400 V", "coupling")
+        "    stage: pre\n"
+        "    source: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 9.4 M\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* EL84, 7.3 V bias, 470 k, 10 % of the bias: 0.73 V/470 k = 1.553 uA, (100 - 0.73)/1.553 uA =
        63.9 M: "1.55 uA, 64 M at 100 V". */
@@ -42,14 +58,25 @@ static void test_one_microampere_through_500k(void **state)
     struct bench bench;
     /* Common practice: 1 uA through 500 k is 0.5 V of bias lost. 988 V less -12 V over 1000 M is
        1 uA. (Near -1 V the grid's own current would take some of it back.) */
-    bench_assess(
-        &bench, HEAD METER
-        "stages:\n  af:\n    valve: V2 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, "
-        "ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n    supply: 250 V\n    bias: -12.5 V\n"
-        "    grid_leak: 500k\n    use: amplifier\ncapacitors:\n" CAP(
-            "C1", "paper", "0.01 uF 1200 V",
-            "coupling") "    stage: af\n    source: 988 V\n    service: 1000 V\n    readings:\n"
-                        "      - 1000 V 60 s 1.0 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  af:\n"
+        "    valve: V2 6V6GT\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        "    supply: 250 V\n"
+        "    bias: -12.5 V\n"
+        "    grid_leak: 500k\n"
+        "    use: amplifier\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "0.01 uF 1200 V", "coupling")
+        "    stage: af\n"
+        "    source: 988 V\n"
+        "    service: 1000 V\n"
+        "    readings:\n"
+        "      - 1000 V 60 s 1.0 uA\n");
+    /* clang-format on */
     const struct effect *effect = bench_effect(bench_part(&bench, "C1"), "grid_shift");
     assert_non_null(effect);
     assert_relative(effect->value, 0.5, 0.002);
@@ -61,11 +88,15 @@ static void test_cathode_bypass(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD METER STAGE_6V6 "capacitors:\n" CAP(
-            "C1", "paper", "2 uF 50 V",
-            "cathode bypass") "    stage: output\n    readings:\n      - 12.5 V 60 s 1 mA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER STAGE_6V6
+        "capacitors:\n"
+        CAP("C1", "paper", "2 uF 50 V", "cathode bypass")
+        "    stage: output\n"
+        "    readings:\n"
+        "      - 12.5 V 60 s 1 mA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* +10 % of 49.5 mA is 54.45 mA; D0 = 1.5*45/4.1 = 16.463 V; D must be 16.463*1.1^(2/3)
        = 17.543, 1.080 V more. k_a = (1/50k - 0.045*0.1/(250*1.1))/4.1 mS = 0.0009, mu12 = 250/28.74
@@ -82,13 +113,23 @@ static void test_bias_bypass_of_a_fixed_bias(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
-        "stages:\n  output:\n    valve: V4 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V,"
-        " ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n    supply: 250 V\n"
-        "    bias: -12.5 V\n    grid_leak: 470k\ncapacitors:\n" CAP(
-            "C1", "paper", "1 uF 50 V", "bias bypass") "    stage: output\n    feed: 100k\n    "
-                                                       "readings:\n      - 12.5 V 60 s 1 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        "    supply: 250 V\n"
+        "    bias: -12.5 V\n"
+        "    grid_leak: 470k\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "1 uF 50 V", "bias bypass")
+        "    stage: output\n"
+        "    feed: 100k\n"
+        "    readings:\n"
+        "      - 12.5 V 60 s 1 uA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* The same 1.080 V of drive, all of it at the grid: -12.5/(1 + g*100k) = -11.42 V, g = 0.946
        uS, at 12.5 V 11.8 uA. */
@@ -102,14 +143,26 @@ static void test_back_bias_bypass(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
-        "resistors:\n  R9: {marked: 150 ohm 2 W, measured: 150 ohm, done: kept}\n"
-        "stages:\n  output:\n    valve: V4 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V,"
-        " ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n    supply: 250 V\n    bias: R9\n"
-        "    others: 33.8 mA\n    grid_leak: 470k\ncapacitors:\n" CAP(
-            "C1", "paper", "1 uF 50 V", "bias bypass") "    stage: output\n    feed: 100k\n    "
-                                                       "readings:\n      - 12.5 V 60 s 1 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "resistors:\n"
+        "  R9: {marked: 150 ohm 2 W, measured: 150 ohm, done: kept}\n"
+        "stages:\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        "    supply: 250 V\n"
+        "    bias: R9\n"
+        "    others: 33.8 mA\n"
+        "    grid_leak: 470k\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "1 uF 50 V", "bias bypass")
+        "    stage: output\n"
+        "    feed: 100k\n"
+        "    readings:\n"
+        "      - 12.5 V 60 s 1 uA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* 49.5 mA + 33.8 mA through 150 ohm is 12.5 V: the row itself. */
     assert_relative(part->service_v, 12.5, 0.01);
@@ -124,63 +177,48 @@ static void test_screen_bypass(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
-        "resistors:\n  R5: {marked: 22k 1 W, measured: 22k, done: kept}\n"
-        "stages:\n  mixer:\n    valve: V1 6SA7\n    supply: 250 V\n    screen: R5\n"
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "resistors:\n"
+        "  R5: {marked: 22k 1 W, measured: 22k, done: kept}\n"
+        "stages:\n"
+        "  mixer:\n"
+        "    valve: V1 6SA7\n"
+        "    supply: 250 V\n"
+        "    screen: R5\n"
         "    cathode: 220 ohm\n"
-        "  output:\n    valve: V4 6V6GT\n    supply: 250 V\n    cathode: 252.5 ohm\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        "    supply: 250 V\n"
+        "    cathode: 252.5 ohm\n"
         "    grid_leak: 470k\n"
-        "  if:\n    valve: V2 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 "
-        "0.5 mA, "
-        "gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 300k\n    cathode: 1200 ohm\n"
+        "  if:\n"
+        "    valve: V2 6J7\n"
+        "    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 0.5 mA, gm 1.225 mA/V\n"
+        "    supply: 253 V\n"
+        "    screen: 253 V 300k\n"
+        "    cathode: 1200 ohm\n"
         "    grid_leak: 1 meg\n"
-        "capacitors:\n" CAP(
-            "C1", "paper", "0.1 uF 400 V",
-            "screen bypass") "    stage: mixer\n    readings:\n      - 250 V 60 s 1 "
-                             "uA\n" CAP(
-                                 "C2", "paper", "0.1 uF 400 V",
-                                 "screen bypass") "    stage: output\n    "
-                                                  "readings:\n      - 250 V 60 s 1 "
-                                                  "uA\n" CAP(
-                                                      "C3", "paper", "0.1 uF 400 V",
-                                                      "screen bypass") "    "
-                                                                       "stag"
-                                                                       "e: "
-                                                                       "if\n"
-                                                                       "    "
-                                                                       "read"
-                                                                       "ings"
-                                                                       ":\n "
-                                                                       "    "
-                                                                       " - "
-                                                                       "100 "
-                                                                       "V "
-                                                                       "60 "
-                                                                       "s 1 "
-                                                                       "uA"
-                                                                       "\n" CAP(
-                                                                           "C4", "paper",
-                                                                           "25 uF 25 V",
-                                                                           "cathode bypass") "    "
-                                                                                             "stage"
-                                                                                             ": "
-                                                                                             "mixer"
-                                                                                             "\n   "
-                                                                                             " serv"
-                                                                                             "ice: "
-                                                                                             "2 "
-                                                                                             "V\n  "
-                                                                                             "  "
-                                                                                             "readi"
-                                                                                             "ngs:"
-                                                                                             "\n   "
-                                                                                             "   - "
-                                                                                             "10 V "
-                                                                                             "60 s "
-                                                                                             "1 "
-                                                                                             "uA"
-                                                                                             "\n");
+        "capacitors:\n"
+        CAP("C1", "paper", "0.1 uF 400 V", "screen bypass")
+        "    stage: mixer\n"
+        "    readings:\n"
+        "      - 250 V 60 s 1 uA\n"
+        CAP("C2", "paper", "0.1 uF 400 V", "screen bypass")
+        "    stage: output\n"
+        "    readings:\n"
+        "      - 250 V 60 s 1 uA\n"
+        CAP("C3", "paper", "0.1 uF 400 V", "screen bypass")
+        "    stage: if\n"
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n"
+        CAP("C4", "paper", "25 uF 25 V", "cathode bypass")
+        "    stage: mixer\n"
+        "    service: 2 V\n"
+        "    readings:\n"
+        "      - 10 V 60 s 1 uA\n");
+    /* clang-format on */
     /* No row for a converter: 20 times the dropper, 250 V/(20*22 k) = 568 uA. */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_relative(part->limit_a, 250 / (20 * 22e3), 1e-4);
@@ -211,27 +249,35 @@ static void test_avc_line_singly_and_jointly(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD METER "capacitors:\n" CAP(
-            "C1", "paper", "0.1 uF 150 V",
-            "avc bypass") "    line: A\n    feed: 1 meg\n    service: 12 V\n    readings:\n"
-                          "      - 12 V 60 s 0.4 uA\n" CAP(
-                              "C2", "paper", "0.1 uF 150 V",
-                              "avc bypass") "    line: A\n    feed: 1 meg\n    service: 12 V\n    "
-                                            "readings:\n"
-                                            "      - 12 V 60 s 0.4 uA\n" CAP(
-                                                "C3", "paper", "0.1 uF 150 V",
-                                                "avc bypass") "    line: A\n    feed: 1 meg\n    "
-                                                              "service: 12 V\n    readings:\n"
-                                                              "      - 12 V 60 s 0.001 uA\n" CAP(
-                                                                  "C4", "paper", "0.1 uF 150 V",
-                                                                  "avc bypass") "    line: B\n    "
-                                                                                "feed: 1 meg\n    "
-                                                                                "service: 12 V\n   "
-                                                                                " readings:\n"
-                                                                                "      - 12 V 60 s "
-                                                                                "0.4 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        CAP("C1", "paper", "0.1 uF 150 V", "avc bypass")
+        "    line: A\n"
+        "    feed: 1 meg\n"
+        "    service: 12 V\n"
+        "    readings:\n"
+        "      - 12 V 60 s 0.4 uA\n"
+        CAP("C2", "paper", "0.1 uF 150 V", "avc bypass")
+        "    line: A\n"
+        "    feed: 1 meg\n"
+        "    service: 12 V\n"
+        "    readings:\n"
+        "      - 12 V 60 s 0.4 uA\n"
+        CAP("C3", "paper", "0.1 uF 150 V", "avc bypass")
+        "    line: A\n"
+        "    feed: 1 meg\n"
+        "    service: 12 V\n"
+        "    readings:\n"
+        "      - 12 V 60 s 0.001 uA\n"
+        CAP("C4", "paper", "0.1 uF 150 V", "avc bypass")
+        "    line: B\n"
+        "    feed: 1 meg\n"
+        "    service: 12 V\n"
+        "    readings:\n"
+        "      - 12 V 60 s 0.4 uA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     /* G*1 M/(1 + G*1 M) = 5 %: G = 52.6 nS, at 12 V 0.632 uA; the line's sheet limit by three. */
     assert_relative(part->limit_a, 0.6316e-6, 1e-3);
@@ -259,15 +305,23 @@ static void test_bounds_do_not_fail_a_line(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER "capacitors:\n" CAP(
-                    "C1", "paper", "0.1 uF 150 V",
-                    "avc bypass") "    line: A\n    feed: 1 meg\n    service: 12 V\n    readings:\n"
-                                  "      - 12 V 60 s 0.4 uA\n" CAP(
-                                      "C2", "paper", "0.1 uF 150 V",
-                                      "avc bypass") "    line: A\n    feed: 1 meg\n    service: 12 "
-                                                    "V\n    readings:\n"
-                                                    "      - 12 V 60 s under 0.4 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        CAP("C1", "paper", "0.1 uF 150 V", "avc bypass")
+        "    line: A\n"
+        "    feed: 1 meg\n"
+        "    service: 12 V\n"
+        "    readings:\n"
+        "      - 12 V 60 s 0.4 uA\n"
+        CAP("C2", "paper", "0.1 uF 150 V", "avc bypass")
+        "    line: A\n"
+        "    feed: 1 meg\n"
+        "    service: 12 V\n"
+        "    readings:\n"
+        "      - 12 V 60 s under 0.4 uA\n");
+    /* clang-format on */
     /* at most 6.26 % together, of which 3.2 % is certain */
     assert_int_equal(bench_part(&bench, "C1")->outcome, OUTCOME_PASS);
     assert_int_equal(bench_part(&bench, "C2")->outcome, OUTCOME_PASS);
@@ -304,54 +358,52 @@ static void test_linear_places(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD METER "resistors:\n  R1: {marked: 2.2k 1 W, done: kept}\ncapacitors:\n" CAP(
-            "C1", "paper", "0.1 uF 400 V",
-            "decoupling") "    feed: R1\n    current: 20 mA\n    service: 250 V\n    "
-                          "readings:\n"
-                          "      - 250 V 60 s 1 uA\n" CAP("C2", "paper", "50 pF 600 V", "avc feed") "    source: 200 V\n    feed: 1 meg\n    readings:\n      - 200 V 60 s 0.001 uA\n" CAP(
-                              "C3", "mica", "100 pF 350 V",
-                              "detector") "    feed: 500k\n    service: 10 V\n    "
-                                          "readings:\n      - 10 V 60 s 0.001 "
-                                          "uA\n" CAP(
-                                              "C4", "mica", "100 pF 350 V 5 %",
-                                              "tuning") "    circuit: 100k\n   "
-                                                        " service: 100 V\n    "
-                                                        "measured: 110 pF\n    "
-                                                        "readings:\n"
-                                                        "      - 100 V 60 s "
-                                                        "0.001 uA\n" CAP("C5", "paper", "2 uF 150 V", "battery bypass") "    current: 10 mA\n    service: 90 V\n    readings:\n      - 90 V 60 s 1 uA\n" CAP(
-                                                            "C6", "paper", "0.1 uF 400 V",
-                                                            "other") "    "
-                                                                     "feed: "
-                                                                     "10k\n    "
-                                                                     "shift: "
-                                                                     "0.5 V\n  "
-                                                                     "  "
-                                                                     "service: "
-                                                                     "100 V\n  "
-                                                                     "  "
-                                                                     "readings:"
-                                                                     "\n"
-                                                                     "      - "
-                                                                     "100 V 60 "
-                                                                     "s 1 "
-                                                                     "uA\n" CAP(
-                                                                         "C7",
-                                                                         "pape"
-                                                                         "r",
-                                                                         "0.1 "
-                                                                         "uF "
-                                                                         "400 "
-                                                                         "V",
-                                                                         "othe"
-                                                                         "r") "    feed: 10k\n    "
-                                                                              "shift: 1 %\n    "
-                                                                              "service: 100 V\n    "
-                                                                              "readings:\n"
-                                                                              "      - 100 V 60 s "
-                                                                              "1 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "resistors:\n"
+        "  R1: {marked: 2.2k 1 W, done: kept}\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "0.1 uF 400 V", "decoupling")
+        "    feed: R1\n"
+        "    current: 20 mA\n"
+        "    service: 250 V\n"
+        "    readings:\n"
+        "      - 250 V 60 s 1 uA\n"
+        CAP("C2", "paper", "50 pF 600 V", "avc feed")
+        "    source: 200 V\n"
+        "    feed: 1 meg\n"
+        "    readings:\n"
+        "      - 200 V 60 s 0.001 uA\n"
+        CAP("C3", "mica", "100 pF 350 V", "detector")
+        "    feed: 500k\n"
+        "    service: 10 V\n"
+        "    readings:\n"
+        "      - 10 V 60 s 0.001 uA\n"
+        CAP("C4", "mica", "100 pF 350 V 5 %", "tuning")
+        "    circuit: 100k\n"
+        "    service: 100 V\n"
+        "    measured: 110 pF\n"
+        "    readings:\n"
+        "      - 100 V 60 s 0.001 uA\n"
+        CAP("C5", "paper", "2 uF 150 V", "battery bypass")
+        "    current: 10 mA\n"
+        "    service: 90 V\n"
+        "    readings:\n"
+        "      - 90 V 60 s 1 uA\n"
+        CAP("C6", "paper", "0.1 uF 400 V", "other")
+        "    feed: 10k\n"
+        "    shift: 0.5 V\n"
+        "    service: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n"
+        CAP("C7", "paper", "0.1 uF 400 V", "other")
+        "    feed: 10k\n"
+        "    shift: 1 %\n"
+        "    service: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 1 uA\n");
+    /* clang-format on */
     /* drop 2 % of 250 V over 2.2 k is 2.27 mA; (20 mA + I)^2*2.2 k <= 1 W is 1.32 mA; heat 0.02 W
        at 250 V is 80 uA: the least. */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
@@ -382,19 +434,29 @@ static void test_detector_on_a_grid_and_tone(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD METER STAGE_6V6 "    anode: 310 ohm\ncapacitors:\n" CAP(
-            "C1", "paper", "0.01 uF 400 V",
-            "detector") "    stage: output\n    feed: 500k\n    service: 10 V\n    readings:\n"
-                        "      - 10 V 60 s 0.1 uA\n" CAP(
-                            "C2", "paper", "0.01 uF 1000 V",
-                            "tone") "    stage: output\n    readings:\n      - 250 V 60 s 1 "
-                                    "uA\n" CAP("C3", "paper", "0.01 uF 1000 V",
-                                               "avc feed") "    stage: output\n    source: 200 V\n "
-                                                           "   feed: 1 meg\n    delay: 1 V\n"
-                                                           "    readings:\n      - 200 V 60 s 0.01 "
-                                                           "uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER STAGE_6V6
+        "    anode: 310 ohm\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "0.01 uF 400 V", "detector")
+        "    stage: output\n"
+        "    feed: 500k\n"
+        "    service: 10 V\n"
+        "    readings:\n"
+        "      - 10 V 60 s 0.1 uA\n"
+        CAP("C2", "paper", "0.01 uF 1000 V", "tone")
+        "    stage: output\n"
+        "    readings:\n"
+        "      - 250 V 60 s 1 uA\n"
+        CAP("C3", "paper", "0.01 uF 1000 V", "avc feed")
+        "    stage: output\n"
+        "    source: 200 V\n"
+        "    feed: 1 meg\n"
+        "    delay: 1 V\n"
+        "    readings:\n"
+        "      - 200 V 60 s 0.01 uA\n");
+    /* clang-format on */
     /* 10 % of 12.5 V over 500 k is 2.5 uA (the stage without load resistance sits at its row) */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_relative(part->limit_a, 2.5e-6, 0.02);
@@ -411,85 +473,33 @@ static void test_mains_places(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER "capacitors:\n" CAP(
-                    "C1", "paper", "0.22 uF 600 V",
-                    "across mains") "    plug_side: yes\n    readings:\n      - "
-                                    "500 V 60 s over 5000 M\n    done: replaced\n"
-                                    "    fitted: polypropylene 0.1 uF 310 V a.c. "
-                                    "X2\n" CAP("C2", "paper", "0.01 uF 600 V", "mains to chassis") "    done: kept\n" CAP(
-                                        "C3", "ceramic", "4700 pF 300 V a.c. Y2",
-                                        "mains to chassis") "    readings:\n      "
-                                                            "- 230 V 60 s over "
-                                                            "5000 M\n    done: "
-                                                            "kept\n" CAP(
-                                                                "C4", "ceramic",
-                                                                "2200 pF "
-                                                                "300 V "
-                                                                "a.c. Y1",
-                                                                "aerial "
-                                                                "isolato"
-                                                                "r") "   "
-                                                                     " re"
-                                                                     "adi"
-                                                                     "ngs"
-                                                                     ":\n"
-                                                                     "   "
-                                                                     "   "
-                                                                     "- "
-                                                                     "230"
-                                                                     " V "
-                                                                     "60 "
-                                                                     "s "
-                                                                     "ove"
-                                                                     "r "
-                                                                     "500"
-                                                                     "0 "
-                                                                     "M\n"
-                                                                     "   "
-                                                                     " do"
-                                                                     "ne:"
-                                                                     " "
-                                                                     "kep"
-                                                                     "t"
-                                                                     "\n" CAP(
-                                                                         "C5", "ceramic",
-                                                                         "4700 pF "
-                                                                         "300 V "
-                                                                         "a.c. Y1",
-                                                                         "earth "
-                                                                         "isolato"
-                                                                         "r") "   "
-                                                                              " re"
-                                                                              "adi"
-                                                                              "ngs"
-                                                                              ":\n"
-                                                                              "   "
-                                                                              "   "
-                                                                              "- "
-                                                                              "230"
-                                                                              " V "
-                                                                              "60 "
-                                                                              "s "
-                                                                              "ove"
-                                                                              "r "
-                                                                              "500"
-                                                                              "0 "
-                                                                              "M"
-                                                                              "\n" CAP(
-                                                                                  "C6", "ceramic",
-                                                                                  "4700 pF 250 V "
-                                                                                  "a.c. Y2",
-                                                                                  "mains to "
-                                                                                  "chassis") "    "
-                                                                                             "readi"
-                                                                                             "ngs:"
-                                                                                             "\n   "
-                                                                                             "   - "
-                                                                                             "230 "
-                                                                                             "V 60 "
-                                                                                             "s 50 "
-                                                                                             "M\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        CAP("C1", "paper", "0.22 uF 600 V", "across mains")
+        "    plug_side: yes\n"
+        "    readings:\n"
+        "      - 500 V 60 s over 5000 M\n"
+        "    done: replaced\n"
+        "    fitted: polypropylene 0.1 uF 310 V a.c. X2\n"
+        CAP("C2", "paper", "0.01 uF 600 V", "mains to chassis")
+        "    done: kept\n"
+        CAP("C3", "ceramic", "4700 pF 300 V a.c. Y2", "mains to chassis")
+        "    readings:\n"
+        "      - 230 V 60 s over 5000 M\n"
+        "    done: kept\n"
+        CAP("C4", "ceramic", "2200 pF 300 V a.c. Y1", "aerial isolator")
+        "    readings:\n"
+        "      - 230 V 60 s over 5000 M\n"
+        "    done: kept\n"
+        CAP("C5", "ceramic", "4700 pF 300 V a.c. Y1", "earth isolator")
+        "    readings:\n"
+        "      - 230 V 60 s over 5000 M\n"
+        CAP("C6", "ceramic", "4700 pF 250 V a.c. Y2", "mains to chassis")
+        "    readings:\n"
+        "      - 230 V 60 s 50 M\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_true(part->no_reading_passes);
     assert_int_equal(part->outcome, OUTCOME_FAIL);
@@ -524,10 +534,16 @@ static void test_pulse_place(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER
-                 "capacitors:\n" CAP("C1", "paper", "0.01 uF 1600 V",
-                                     "other") "    pulse: yes\n    pulse_peak: 900 V\n    "
-                                              "readings:\n      - 500 V 60 s 0.01 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "capacitors:\n"
+        CAP("C1", "paper", "0.01 uF 1600 V", "other")
+        "    pulse: yes\n"
+        "    pulse_peak: 900 V\n"
+        "    readings:\n"
+        "      - 500 V 60 s 0.01 uA\n");
+    /* clang-format on */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_int_equal(part->outcome, OUTCOME_FAIL);
     assert_close(bench_criterion(part, CRITERION_PULSE_RATING, false)->limit, 1800, 1e-9);
@@ -542,22 +558,38 @@ static void test_pushpull_pair_on_one_cathode_resistor(void **state)
     /* Two 6V6GT, 262.5 V, common R_k 126.3 ohm, EMF 6.25 V at one grid: its cathode current +42.7
        %, the other's -16.3 % (computed, agrees with ngspice). 100 V through 7.05 M into 470 k is
        100*470/7520 = 6.25 V. */
-    bench_assess(
-        &bench, HEAD METER
-        "resistors:\n  R12: {marked: 126.3 ohm 2 W}\nstages:\n"
-        "  a:\n    valve: V4 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 "
-        "mA, "
-        "gm 4.1 mA/V, ra 50k\n    supply: 262.5 V\n    cathode: R12\n    grid_leak: 470k\n"
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "resistors:\n"
+        "  R12: {marked: 126.3 ohm 2 W}\n"
+        "stages:\n"
+        "  a:\n"
+        "    valve: V4 6V6GT\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        "    supply: 262.5 V\n"
+        "    cathode: R12\n"
+        "    grid_leak: 470k\n"
         "    pushpull_with: b\n"
-        "  b:\n    valve: V5 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 "
-        "mA, "
-        "gm 4.1 mA/V, ra 50k\n    supply: 262.5 V\n    cathode: R12\n    grid_leak: 470k\n"
-        "    pushpull_with: a\ncapacitors:\n" CAP(
-            "C1", "paper", "0.1 uF 400 V",
-            "coupling") "    stage: a\n    source: 100 V\n    readings:\n      - 100 V 60 s 7.05 "
-                        "M\n" CAP("C2", "paper", "0.1 uF 400 V",
-                                  "coupling") "    stage: b\n    source: 100 V\n    readings:\n    "
-                                              "  - 100 V 60 s over 50000 M\n");
+        "  b:\n"
+        "    valve: V5 6V6GT\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        "    supply: 262.5 V\n"
+        "    cathode: R12\n"
+        "    grid_leak: 470k\n"
+        "    pushpull_with: a\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "0.1 uF 400 V", "coupling")
+        "    stage: a\n"
+        "    source: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 7.05 M\n"
+        CAP("C2", "paper", "0.1 uF 400 V", "coupling")
+        "    stage: b\n"
+        "    source: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s over 50000 M\n");
+    /* clang-format on */
     const struct stage_findings *stages = bench.findings->stages;
     const struct stage_phase *a = &stages[0].phases[PHASE_FOUND],
                              *b = &stages[1].phases[PHASE_FOUND];
@@ -574,12 +606,19 @@ static void test_missing_facts(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER
-                 "stages:\n  af:\n    valve: V2 12AX7\n    anode: 100k\ncapacitors:\n" CAP(
-                     "C1", "paper", "0.02 uF 400 V",
-                     "coupling") "    stage: af\n    source: 90 V\n" CAP("C2", "paper",
-                                                                         "0.02 uF 400 V",
-                                                                         "decoupling"));
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  af:\n"
+        "    valve: V2 12AX7\n"
+        "    anode: 100k\n"
+        "capacitors:\n"
+        CAP("C1", "paper", "0.02 uF 400 V", "coupling")
+        "    stage: af\n"
+        "    source: 90 V\n"
+        CAP("C2", "paper", "0.02 uF 400 V", "decoupling"));
+    /* clang-format on */
     assert_int_equal(bench_part(&bench, "C1")->outcome, OUTCOME_NOT_JUDGED);
     assert_int_equal(bench_part(&bench, "C1")->why, WHY_NO_READING);
     assert_int_equal(bench_part(&bench, "C1")->advice, ADVICE_MEASURE_AGAIN);

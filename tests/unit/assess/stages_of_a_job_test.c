@@ -20,15 +20,33 @@ static void test_designed_found_left(void **state)
     /* 6V6GT with load and dropper (agrees with ngspice): HT 300, R_a 300, R_g2 10 k, R_k 253, R_g
        470 k, 90 V through 20.1 M: V_g 2.0564, V_k 13.239, I_a 48.029, I_g2 4.2989 mA; no
        leak 44.793, 4.0390, V_k 12.354. */
-    bench_assess(&bench, HEAD METER
-                 "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
-                 "    supply: 300 V\n    anode: 300 ohm\n    screen: 300 V 10k\n"
-                 "    cathode: 253 ohm\n    grid_leak: 470k\n"
-                 "    measured:\n      found: grid 2.0 V, cathode 13.2 V\n"
-                 "capacitors:\n  C1:\n    type: paper\n    marked: 0.02 uF 400 V\n"
-                 "    place: coupling\n    stage: output\n    source: 90 V\n    readings:\n"
-                 "      - 90 V 60 s 20.1 M\n      - 90 V 60 s over 90000 M left\n"
-                 "    done: restuffed\n    fitted: polypropylene 0.022 uF 630 V\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        ROW_6V6
+        "    supply: 300 V\n"
+        "    anode: 300 ohm\n"
+        "    screen: 300 V 10k\n"
+        "    cathode: 253 ohm\n"
+        "    grid_leak: 470k\n"
+        "    measured:\n"
+        "      found: grid 2.0 V, cathode 13.2 V\n"
+        "capacitors:\n"
+        "  C1:\n"
+        "    type: paper\n"
+        "    marked: 0.02 uF 400 V\n"
+        "    place: coupling\n"
+        "    stage: output\n"
+        "    source: 90 V\n"
+        "    readings:\n"
+        "      - 90 V 60 s 20.1 M\n"
+        "      - 90 V 60 s over 90000 M left\n"
+        "    done: restuffed\n"
+        "    fitted: polypropylene 0.022 uF 630 V\n");
+    /* clang-format on */
     const struct stage_findings *found = stage(&bench, "output");
     const struct stage_solution *designed = &found->phases[PHASE_DESIGNED].solution;
     const struct stage_solution *leaking = &found->phases[PHASE_FOUND].solution;
@@ -50,13 +68,27 @@ static void test_contact_bias(void **state)
     (void)state;
     struct bench bench;
     /* 12AX7, 250 V, 220 k, 10 M: V_g -1.125 V; with 100 V through 1 G: -0.993 V (computed). */
-    bench_assess(
-        &bench, HEAD METER
-        "stages:\n  af:\n    valve: V2 12AX7\n    row: va 250 V, vg1 -2 V, ia 1.2 mA, "
-        "gm 1.6 mA/V, mu 100\n    supply: 250 V\n    anode: 220k\n    bias: contact\n"
-        "    grid_leak: 10 meg\ncapacitors:\n  C1:\n    type: paper\n"
-        "    marked: 0.01 uF 400 V\n    place: coupling\n    stage: af\n    source: 100 V\n"
-        "    readings:\n      - 100 V 60 s 1000 M\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  af:\n"
+        "    valve: V2 12AX7\n"
+        "    row: va 250 V, vg1 -2 V, ia 1.2 mA, gm 1.6 mA/V, mu 100\n"
+        "    supply: 250 V\n"
+        "    anode: 220k\n"
+        "    bias: contact\n"
+        "    grid_leak: 10 meg\n"
+        "capacitors:\n"
+        "  C1:\n"
+        "    type: paper\n"
+        "    marked: 0.01 uF 400 V\n"
+        "    place: coupling\n"
+        "    stage: af\n"
+        "    source: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 1000 M\n");
+    /* clang-format on */
     const struct stage_findings *af = stage(&bench, "af");
     assert_close(af->phases[PHASE_DESIGNED].solution.grid_v, -1.125, 0.002);
     assert_close(af->phases[PHASE_FOUND].solution.grid_v, -0.993, 0.002);
@@ -70,20 +102,48 @@ static void test_valves_by_name(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench, HEAD METER
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
         "stages:\n"
-        "  a:\n    valve: V1 ECL82\n    supply: 200 V\n    cathode: 2k\n"
-        "  b:\n    valve: V1 ECL82 triode\n    supply: 200 V\n    cathode: 2k\n"
-        "  c:\n    valve: V2 6V6GT\n    row: A1-251\n    supply: 250 V\n    cathode: 250 ohm\n"
-        "  d:\n    valve: V3 6v6 gt\n    supply: 250 V\n    cathode: 250 ohm\n"
-        "  e:\n    valve: V4 6ZZ9\n    supply: 250 V\n    cathode: 250 ohm\n"
-        "  f:\n    valve: V5\n    supply: 250 V\n    cathode: 1k\n"
-        "  g:\n    valve: V6 6V6GT\n    row: va 250 V, vg2 250 V\n    supply: 250 V\n"
+        "  a:\n"
+        "    valve: V1 ECL82\n"
+        "    supply: 200 V\n"
+        "    cathode: 2k\n"
+        "  b:\n"
+        "    valve: V1 ECL82 triode\n"
+        "    supply: 200 V\n"
+        "    cathode: 2k\n"
+        "  c:\n"
+        "    valve: V2 6V6GT\n"
+        "    row: A1-251\n"
+        "    supply: 250 V\n"
         "    cathode: 250 ohm\n"
-        "  h:\n    valve: V7 6V6GT\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, "
-        "ig2 4.5 mA\n    supply: 250 V\n    cathode: 250 ohm\n"
-        "valves:\n  V5: {type: 12AX7, tested: 80 %, done: kept}\n");
+        "  d:\n"
+        "    valve: V3 6v6 gt\n"
+        "    supply: 250 V\n"
+        "    cathode: 250 ohm\n"
+        "  e:\n"
+        "    valve: V4 6ZZ9\n"
+        "    supply: 250 V\n"
+        "    cathode: 250 ohm\n"
+        "  f:\n"
+        "    valve: V5\n"
+        "    supply: 250 V\n"
+        "    cathode: 1k\n"
+        "  g:\n"
+        "    valve: V6 6V6GT\n"
+        "    row: va 250 V, vg2 250 V\n"
+        "    supply: 250 V\n"
+        "    cathode: 250 ohm\n"
+        "  h:\n"
+        "    valve: V7 6V6GT\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA\n"
+        "    supply: 250 V\n"
+        "    cathode: 250 ohm\n"
+        "valves:\n"
+        "  V5: {type: 12AX7, tested: 80 %, done: kept}\n");
+    /* clang-format on */
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_AMBIGUOUS), 1);
     assert_null(stage(&bench, "a")->row_name);
     assert_non_null(stage(&bench, "b")->row_name);
@@ -101,16 +161,35 @@ static void test_grid_current_is_what_leakage_leaves(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(
-        &bench,
-        HEAD "instruments:\n  leakage:\n    accuracy: 1 % + 0.001 uA\n    resolution: 0.001 uA\n"
-             "  volts:\n    accuracy: 1 % + 0.01 V\n    input: 10 meg\n"
-             "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
-             "    supply: 262.5 V\n    cathode: 252.5 ohm\n    grid_leak: 470k\n"
-             "    measured:\n      found: grid 4.0 V\n"
-             "capacitors:\n  C1:\n    type: paper\n    marked: 0.02 uF 400 V\n"
-             "    place: coupling\n    stage: output\n    source: 100 V\n    readings:\n"
-             "      - 100 V 60 s 46.53 M\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD
+        "instruments:\n"
+        "  leakage:\n"
+        "    accuracy: 1 % + 0.001 uA\n"
+        "    resolution: 0.001 uA\n"
+        "  volts:\n"
+        "    accuracy: 1 % + 0.01 V\n"
+        "    input: 10 meg\n"
+        "stages:\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        ROW_6V6
+        "    supply: 262.5 V\n"
+        "    cathode: 252.5 ohm\n"
+        "    grid_leak: 470k\n"
+        "    measured:\n"
+        "      found: grid 4.0 V\n"
+        "capacitors:\n"
+        "  C1:\n"
+        "    type: paper\n"
+        "    marked: 0.02 uF 400 V\n"
+        "    place: coupling\n"
+        "    stage: output\n"
+        "    source: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 46.53 M\n");
+    /* clang-format on */
     const struct stage_findings *output = stage(&bench, "output");
     /* 100 V through 46.53 M into 470 k is 1.00 V, read 0.955 V through 470 k || 10 M = 448.9 k; 4.0
        V leaves 3.045 V, 6.78 uA. */
@@ -125,10 +204,19 @@ static void test_anchor_on_a_lifted_cathode_voltage(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
-                                    "    supply: 262.5 V\n    cathode: 252.5 ohm\n"
-                                    "    grid_leak: 470k\n    measured:\n"
-                                    "      found: cathode 10.1 V, lifted\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        ROW_6V6
+        "    supply: 262.5 V\n"
+        "    cathode: 252.5 ohm\n"
+        "    grid_leak: 470k\n"
+        "    measured:\n"
+        "      found: cathode 10.1 V, lifted\n");
+    /* clang-format on */
     /* The valve's own 10.1 V/252.5 ohm = 40 mA. */
     assert_relative(stage(&bench, "output")->phases[PHASE_FOUND].solution.cathode_a, 40e-3, 1e-3);
     bench_release(&bench);
@@ -138,15 +226,36 @@ static void test_measured_resistors_and_joint_leaks(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER
-                 "resistors:\n  R1: {marked: 250 ohm 1 W, measured: 300 ohm, done: replaced, "
-                 "fitted: 250 ohm 2 W}\n  R2: {marked: 470k, measured: 520k, done: kept}\n"
-                 "stages:\n  output:\n    valve: V4 6V6GT\n" ROW_6V6
-                 "    supply: 262.5 V\n    cathode: R1\n    grid_leak: R2\ncapacitors:\n"
-                 "  C1:\n    type: paper\n    marked: 0.02 uF 400 V\n    place: coupling\n"
-                 "    stage: output\n    source: 100 V\n    readings:\n      - 100 V 60 s 32 M\n"
-                 "  C2:\n    type: paper\n    marked: 25 uF 25 V\n    place: cathode bypass\n"
-                 "    stage: output\n    readings:\n      - 15 V 60 s 6 mA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "resistors:\n"
+        "  R1: {marked: 250 ohm 1 W, measured: 300 ohm, done: replaced, fitted: 250 ohm 2 W}\n"
+        "  R2: {marked: 470k, measured: 520k, done: kept}\n"
+        "stages:\n"
+        "  output:\n"
+        "    valve: V4 6V6GT\n"
+        ROW_6V6
+        "    supply: 262.5 V\n"
+        "    cathode: R1\n"
+        "    grid_leak: R2\n"
+        "capacitors:\n"
+        "  C1:\n"
+        "    type: paper\n"
+        "    marked: 0.02 uF 400 V\n"
+        "    place: coupling\n"
+        "    stage: output\n"
+        "    source: 100 V\n"
+        "    readings:\n"
+        "      - 100 V 60 s 32 M\n"
+        "  C2:\n"
+        "    type: paper\n"
+        "    marked: 25 uF 25 V\n"
+        "    place: cathode bypass\n"
+        "    stage: output\n"
+        "    readings:\n"
+        "      - 15 V 60 s 6 mA\n");
+    /* clang-format on */
     const struct stage_findings *output = stage(&bench, "output");
     assert_true(output->phases[PHASE_FOUND].no_leak_cathode_a <
                 output->phases[PHASE_DESIGNED].no_leak_cathode_a);
@@ -167,17 +276,33 @@ static void test_stages_that_one_capacitor_bypasses(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER
-                 "stages:\n"
-                 "  rf:\n    valve: V1 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, "
-                 "ig2 0.5 mA, gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 150k\n"
-                 "    cathode: 1200 ohm\n    grid_leak: 1 meg\n"
-                 "  if:\n    valve: V2 6J7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, "
-                 "ig2 0.5 mA, gm 1.225 mA/V\n    supply: 253 V\n    screen: 253 V 150k\n"
-                 "    cathode: 1200 ohm\n    grid_leak: 1 meg\n"
-                 "capacitors:\n  C1:\n    type: paper\n    marked: 0.1 uF 400 V\n"
-                 "    place: screen bypass\n    stage: rf, if\n    readings:\n"
-                 "      - 100 V 60 s 10 uA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  rf:\n"
+        "    valve: V1 6J7\n"
+        "    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 0.5 mA, gm 1.225 mA/V\n"
+        "    supply: 253 V\n"
+        "    screen: 253 V 150k\n"
+        "    cathode: 1200 ohm\n"
+        "    grid_leak: 1 meg\n"
+        "  if:\n"
+        "    valve: V2 6J7\n"
+        "    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 0.5 mA, gm 1.225 mA/V\n"
+        "    supply: 253 V\n"
+        "    screen: 253 V 150k\n"
+        "    cathode: 1200 ohm\n"
+        "    grid_leak: 1 meg\n"
+        "capacitors:\n"
+        "  C1:\n"
+        "    type: paper\n"
+        "    marked: 0.1 uF 400 V\n"
+        "    place: screen bypass\n"
+        "    stage: rf, if\n"
+        "    readings:\n"
+        "      - 100 V 60 s 10 uA\n");
+    /* clang-format on */
     /* One dropper for both: at the row 253 - 150 k*(0.5 + 0.5 mA) = 103 V, the row's own 100 V
        above the cathode's 3 V. */
     const struct stage_solution *rf = &stage(&bench, "rf")->phases[PHASE_DESIGNED].solution;
@@ -195,19 +320,34 @@ static void test_rows_given_for_unknown_types(void **state)
 {
     (void)state;
     struct bench bench;
-    bench_assess(&bench, HEAD METER
-                 "stages:\n"
-                 "  power:\n    valve: V1 QX45\n    row: va 250 V, vg1 -45 V, ia 60 mA, "
-                 "gm 5.25 mA/V, mu 4.2\n    supply: 295 V\n    cathode: 750 ohm\n"
-                 "    grid_leak: 470k\n"
-                 "  small:\n    valve: V2 QX9\n    row: va 250 V, vg1 -8.5 V, ia 5.5 mA, "
-                 "gm 2.2 mA/V, mu 17.5\n    supply: 250 V\n    bias: -8.5 V\n"
-                 "  pentode:\n    valve: V3 QX7\n    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, "
-                 "ig2 0.5 mA, gm 1.225 mA/V\n    supply: 250 V\n    screen: 100 V 0 ohm\n"
-                 "    bias: -3 V\n"
-                 "  output:\n    valve: V4 QX6\n    row: va 250 V, vg2 250 V, vg1 -12.5 V, "
-                 "ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V\n    supply: 250 V\n    bias: 150 ohm\n"
-                 "    others: 33.8 mA\n");
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD METER
+        "stages:\n"
+        "  power:\n"
+        "    valve: V1 QX45\n"
+        "    row: va 250 V, vg1 -45 V, ia 60 mA, gm 5.25 mA/V, mu 4.2\n"
+        "    supply: 295 V\n"
+        "    cathode: 750 ohm\n"
+        "    grid_leak: 470k\n"
+        "  small:\n"
+        "    valve: V2 QX9\n"
+        "    row: va 250 V, vg1 -8.5 V, ia 5.5 mA, gm 2.2 mA/V, mu 17.5\n"
+        "    supply: 250 V\n"
+        "    bias: -8.5 V\n"
+        "  pentode:\n"
+        "    valve: V3 QX7\n"
+        "    row: va 250 V, vg2 100 V, vg1 -3 V, ia 2 mA, ig2 0.5 mA, gm 1.225 mA/V\n"
+        "    supply: 250 V\n"
+        "    screen: 100 V 0 ohm\n"
+        "    bias: -3 V\n"
+        "  output:\n"
+        "    valve: V4 QX6\n"
+        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V\n"
+        "    supply: 250 V\n"
+        "    bias: 150 ohm\n"
+        "    others: 33.8 mA\n");
+    /* clang-format on */
     assert_true(stage(&bench, "power")->is_output);
     assert_relative(stage(&bench, "power")->phases[PHASE_DESIGNED].solution.anode_a, 60e-3, 1e-3);
     assert_false(stage(&bench, "small")->is_output);
