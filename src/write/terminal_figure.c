@@ -161,9 +161,43 @@ void terminal_plot(struct terminal *terminal, const struct exhibit *exhibit)
     }
 }
 
+static const char stroke_letters[STROKE_COUNT] = {'|', '\'', 'o', '.'};
+
+static void write_strokes(struct terminal *terminal, const struct headline_kind *kind, size_t room)
+{
+    size_t all = 0;
+    for (int stroke = 0; stroke < STROKE_COUNT; stroke++)
+        all += kind->strokes[stroke];
+    if (all == 0 || all > room)
+        return;
+    buffer_text(terminal->out, "  ");
+    for (int stroke = 0; stroke < STROKE_COUNT; stroke++)
+        for (unsigned i = 0; i < kind->strokes[stroke]; i++)
+            buffer_byte(terminal->out, stroke_letters[stroke]);
+}
+
+static void write_kinds(struct terminal *terminal, const struct headline *headline)
+{
+    size_t labels = 0, counts = 0;
+    for (size_t i = 0; i < headline->kind_count; i++) {
+        const struct headline_kind *kind = &headline->kinds[i];
+        size_t label = text_columns(kind->label, strlen(kind->label)),
+               count = text_columns(kind->count_text, strlen(kind->count_text));
+        labels = label > labels ? label : labels;
+        counts = count > counts ? count : counts;
+    }
+    size_t used = labels + 2 + counts + 2;
+    for (size_t i = 0; i < headline->kind_count; i++) {
+        const struct headline_kind *kind = &headline->kinds[i];
+        terminal_field(terminal, kind->label, labels + 2);
+        terminal_field(terminal, kind->count_text, counts);
+        write_strokes(terminal, kind, terminal->columns > used ? terminal->columns - used : 0);
+        buffer_byte(terminal->out, '\n');
+    }
+}
+
 void terminal_headline(struct terminal *terminal, const struct headline *headline)
 {
-    static const char letters[STROKE_COUNT] = {'|', '\'', 'o', '.'};
     const char *count = arena_print(&terminal->scratch, "%s: %s %s", headline->heading,
                                     headline->kept, headline->of);
     terminal_bold(terminal, count);
@@ -175,23 +209,9 @@ void terminal_headline(struct terminal *terminal, const struct headline *headlin
     for (size_t i = 0; i < headline->line_count; i++) {
         const struct headline_line *line = &headline->lines[i];
         const char *text =
-            arena_print(&terminal->scratch, "%c %s", letters[line->stroke], line->text);
+            arena_print(&terminal->scratch, "%c %s", stroke_letters[line->stroke], line->text);
         terminal_wrapped(terminal, text, (struct indent){0, 2});
     }
-    for (size_t i = 0; i < headline->kind_count; i++) {
-        const struct headline_kind *kind = &headline->kinds[i];
-        terminal_field(terminal, kind->label, 19);
-        buffer_byte(terminal->out, ' ');
-        terminal_field(terminal, kind->count_text, 10);
-        unsigned room = (unsigned)terminal->columns - 31, drawn = 0, all = 0;
-        for (int stroke = 0; stroke < STROKE_COUNT; stroke++)
-            all += kind->strokes[stroke];
-        for (int stroke = 0; stroke < STROKE_COUNT && all <= room; stroke++)
-            for (unsigned j = 0; j < kind->strokes[stroke]; j++, drawn++) {
-                buffer_text(terminal->out, drawn == 0 ? " " : "");
-                buffer_byte(terminal->out, letters[stroke]);
-            }
-        buffer_byte(terminal->out, '\n');
-    }
+    write_kinds(terminal, headline);
     terminal_wrapped(terminal, headline->below, (struct indent){0, 0});
 }
