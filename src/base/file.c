@@ -121,11 +121,13 @@ static enum file_status write_all(int file, const char *data, size_t length)
     return FILE_OK;
 }
 
+static const char aside_mark[] = ".part-";
+
 /* Write the bytes into a new file beside `path`, whose name is appended to *aside. */
 static enum file_status write_aside(const char *path, const void *data, size_t length,
                                     struct buffer *aside)
 {
-    buffer_print(aside, "%s.part-%ld", path, (long)getpid());
+    buffer_print(aside, "%s%s%ld", path, aside_mark, (long)getpid());
     int file = open(buffer_string(aside), O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
     if (file < 0)
         return status_of(errno);
@@ -237,4 +239,22 @@ enum file_status folder_remove(const char *path)
     if (status == FILE_OK && rmdir(path) != 0)
         status = status_of(errno);
     return status;
+}
+
+static bool is_aside(const char *name)
+{
+    const char *mark = strstr(name, aside_mark);
+    const char *digits = mark ? mark + sizeof aside_mark - 1 : "";
+    return *digits && digits[strspn(digits, "0123456789")] == '\0';
+}
+
+void folder_clear_aside(const char *path)
+{
+    DIR *folder = opendir(path);
+    if (!folder)
+        return;
+    for (struct dirent *entry; (entry = readdir(folder));)
+        if (is_aside(entry->d_name))
+            remove_entry(path, entry->d_name);
+    closedir(folder);
 }

@@ -36,6 +36,10 @@ enum file_status file_create(const char *path, const void *data, size_t length);
 /* Make a folder and those above it; an existing one is fine. */
 enum file_status folder_make(const char *path);
 
+/* Remove what programs killed while writing left aside in this folder (not below it). Only for who
+ * writes there alone. */
+void folder_clear_aside(const char *path);
+
 /* Remove a folder with all it holds; a missing one is fine. Symbolic links are removed, not
  * followed. */
 enum file_status folder_remove(const char *path);

@@ -1,0 +1,154 @@
+#!/bin/sh
+# publish.sh BUILD WORK: what publishing makes, leaves alone and takes away.
+set -u
+here=$(cd "$(dirname "$0")" && pwd)
+root=$(cd "$here/../.." && pwd)
+program=$(cd "$1" && pwd)/gridleak
+work=$2
+. "$here/kit.sh"
+cp -r "$root/jobs-example" "$work/archive"
+cd "$work" || exit 1
+
+# ---- a broken job stops no other, nothing but its summary is made, and no input is touched
+archive_of mixed 2031-001 2031-002 2031-003
+printf 'job: 2031-004\nset:\n  makker: X\n' >mixed/2031-004.yaml
+find mixed -type f -exec sha256sum {} + | sort >before
+expect 2 "$program" publish mixed -o mixed-out
+tells '2031-004.yaml:3:3: error: unknown key .makker.'
+tells '4 jobs: 3 made, 0 unchanged, 1 left out for mistakes'
+[ "$(ls mixed-out/jobs/2031-004)" = summary.json ] || say_failed "files of a broken job: $(ls mixed-out/jobs/2031-004)"
+for number in 1 2 3; do
+    for file in shop.html shop.md shop.pdf sheet.html sheet.pdf client/2031-00$number.pdf sale/2031-00$number.md; do
+        there mixed-out/jobs/2031-00$number/$file
+    done
+done
+[ "$(wc -l <mixed-out/summaries.jsonl)" = 4 ] || say_failed "summaries.jsonl has not a line a job"
+grep -q '2031-004' mixed-out/index.html || say_failed "the broken job is not in the list"
+find mixed -type f -exec sha256sum {} + | sort >after
+cmp -s before after || say_failed "publish touched its input"
+# A job that breaks later keeps the record that was published before.
+expect 2 "$program" publish mixed -o mixed-out
+stamps mixed-out | grep 'jobs/2031-001/client' >client-before
+echo 'nonsense: yes' >>mixed/2031-001.yaml
+expect 2 "$program" publish mixed -o mixed-out
+stamps mixed-out | grep 'jobs/2031-001/client' >client-after
+cmp -s client-before client-after || say_failed "mistakes in a job file took its earlier record away"
+# Mended, it is made again; without its file, it goes.
+sed -i '$d' mixed/2031-001.yaml
+rm mixed/2031-004.yaml
+expect 0 "$program" publish mixed -o mixed-out
+gone mixed-out/jobs/2031-004
+! grep -q '2031-004' mixed-out/index.html mixed-out/summaries.jsonl || say_failed "a removed job is still listed"
+
+# ---- unchanged: nothing is touched; one changed: that one alone is made
+expect 0 "$program" publish archive -o out
+stamps out >before
+expect 0 "$program" publish archive -o out
+tells '6 jobs: 0 made, 6 unchanged'
+stamps out >after
+cmp -s before after || say_failed "publishing an unchanged archive touched files"
+touch archive/2031-014.yaml
+expect 0 "$program" publish archive -o out
+tells '6 unchanged'
+sed -i 's/^technician: .*/technician: A. Nother/' archive/2031-014.yaml
+expect 0 "$program" publish archive -o out
+tells '6 jobs: [12] made'
+stamps out >after
+diff before after | sed -n 's/^[<>] \.\/jobs\/\([^/]*\).*/\1/p' | sort -u >touched
+# a later visit to the same set may show what the earlier one found
+grep -q -x 2031-014 touched || say_failed "a changed job is not made again"
+[ "$(grep -c -v -e 2031-014 -e 2037-008 touched)" = 0 ] || say_failed "others were touched: $(cat touched)"
+grep -q 'A. Nother' out/jobs/2031-014/shop.md || say_failed "the change is not in the record"
+# A photograph is an input as well.
+photo=$(find archive/photos/2029-003 -type f | head -n 1)
+expect 0 "$program" publish archive -o out
+printf 'x' >>"$photo"
+expect 0 "$program" publish archive -o out
+tells '6 jobs: 1 made, 5 unchanged'
+rm "$photo"
+expect 2 "$program" publish archive -o out
+tells '2029-003.yaml:[0-9]*:[0-9]*: error: cannot read the photograph'
+cp "$root/jobs-example/${photo#archive/}" "$photo"
+# The shop's file and the templates are inputs of every job.
+sed -i 's/^name: .*/name: Another Shop/' archive/shop.yaml
+expect 0 "$program" publish archive -o out
+tells '6 jobs: 6 made'
+# A lost file comes back.
+rm -r out/jobs/2031-014
+expect 0 "$program" publish archive -o out
+tells '6 jobs: 1 made, 5 unchanged'
+there out/jobs/2031-014/client/findings.json
+
+# ---- jobs named one by one, at the same time, and then the pages: the same bytes as in one run
+rm -rf out one
+cp "$root"/jobs-example/shop.yaml archive/shop.yaml
+expect 0 "$program" publish archive -o one
+for job in archive/2*.yaml; do
+    "$program" publish -q "$job" -o out 2>>parallel.log &
+done
+wait
+expect 0 "$program" publish --pages archive -o out
+diff -r --exclude=.gridleak one out >difference || say_failed "jobs one by one: $(head -n 5 difference)"
+# Two threads and one, and a second place on the disk, are no difference either.
+expect 0 "$program" publish archive -o "$work/far/away/out" --threads 1
+diff -r --exclude=.gridleak one far/away/out >difference || say_failed "one thread: $(head -n 5 difference)"
+
+# ---- the output folder is held by one publish at a time
+python3 "$here/hold_lock.py" one/.gridleak/lock 3 >holder &
+for _ in 1 2 3 4 5 6 7 8 9 10 11 12 13 14 15 16 17 18 19 20; do [ -s holder ] && break; sleep 0.1; done
+stamps one >before
+expect 3 "$program" publish archive -o one
+tells "is being published by process $(cat holder)"
+expect 3 "$program" publish --pages archive -o one
+expect 3 "$program" publish archive/2031-014.yaml -o one
+stamps one >after
+cmp -s before after || say_failed "a publish that found the folder held wrote into it"
+expect 0 "$program" publish archive -o one --wait
+wait
+
+# ---- two numbers that differ in case only
+archive_of twins 2031-a 2031-A
+expect 2 "$program" publish twins -o twins-out
+tells 'differs from .2031-[aA]. in case only'
+gone twins-out/jobs/2031-a/shop.html
+gone twins-out/jobs/2031-A/shop.html
+
+# ---- templates and words of the archive's own
+archive_of own 2031-001
+mkdir own/templates
+own_template() { # NAME SED-SCRIPT PATTERN
+    sed "$2" "$root/templates/$1" >own/templates/$1
+    expect 2 "$program" publish own -o own-out
+    tells "$3"
+    rm own/templates/$1
+}
+own_template record.md '1s/^/{{#open}}/' 'template-syntax\|error: '
+own_template record.md '1s/^/{{{raw}}}/' 'error: '
+own_template record.md '$s/$/\n\n{{> nothing_of_that_name}}\n/' 'nothing_of_that_name'
+own_template words.yaml '/^outcome/d' 'error: '
+cp "$root/templates/record.md" own/templates/
+sed -i '1s/^/# A heading of our own\n\n/' own/templates/record.md
+expect 0 "$program" publish own -o own-out
+grep -q 'heading of our own' own-out/jobs/2031-001/shop.md || say_failed "the archive's template is not used"
+
+# ---- seal and prove
+expect 0 "$program" publish archive -o sealing
+expect 0 "$program" seal archive/2031-014.yaml client -o sealing
+says 'sealed/2031-014-client-1$'
+expect 0 "$program" seal archive/2031-014.yaml sale -o sealing
+expect 0 "$program" prove archive/sealed/2031-014-client-1
+says 'sealed, chain of 2 checked'
+cp -r archive/sealed/2031-014-client-1 handed-out
+expect 0 "$program" prove handed-out
+says 'seals.txt not at hand'
+(cd handed-out && sha256sum --quiet -c manifest.sha256) || say_failed "sha256sum does not read the manifest"
+echo >>handed-out/2031-014.md
+expect 1 "$program" prove handed-out
+says 'changed: 2031-014.md'
+expect 2 "$program" seal archive/2029-9.yaml client -o sealing
+tells 'publish first'
+echo >>sealing/jobs/2031-014/client/2031-014.md
+expect 2 "$program" seal archive/2031-014.yaml client -o sealing
+tells 'publish again'
+
+finish
