@@ -15,3 +15,12 @@ ${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc tests/fuzz/reader_fuzz.
 cd "$build"
 ./reader_fuzz "${FUZZ_SECONDS:-10}" "${FUZZ_SEED:-1}" "$root"/tests/golden/diagnostics/*.yaml \
     $(find "$root/jobs-example" -name '*.yaml')
+# Notes and templates.
+cd "$root"
+libraries="$build/libreport.a $build/libassess.a $build/libjob.a $build/libreference.a $build/libquantity.a
+    $build/libbase.a"
+make -s BUILD="$build" EXTRA="$sanitize" $libraries >&2
+# shellcheck disable=SC2086
+${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc -Itests tests/fuzz/prose_fuzz.c $libraries \
+    $(pkg-config --libs yaml-0.1 libcmark cminpack nettle) -lutf8proc -lm -o "$build/prose_fuzz"
+"$build/prose_fuzz" "${FUZZ_SECONDS:-10}" "${FUZZ_SEED:-1}"
