@@ -101,7 +101,7 @@ static size_t line_length(const char *text, size_t width)
 /* The lines of a head of that width, the last in the last place. */
 static void fold_head(struct layout *layout, size_t column, size_t width)
 {
-    const char *text = layout->text.heads[column], *lines[HEAD_LINES_MAX];
+    const char *text = layout->text.heads[column], *lines[HEAD_LINES_MAX] = {0};
     size_t count = 0;
     for (; *text && count < HEAD_LINES_MAX; count++) {
         size_t length = count + 1 < HEAD_LINES_MAX ? line_length(text, width) : strlen(text);
