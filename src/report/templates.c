@@ -1,6 +1,7 @@
 #include "report/templates.h"
 
 #include "base/file.h"
+#include "report/words_check.h"
 
 #include <dirent.h>
 #include <string.h>
@@ -100,6 +101,7 @@ struct templates *templates_open(const char *archive_folder, const char *share_f
     take_folder(templates, archive_folder, arena, diagnostics);
     take_folder(templates, share_folder, arena, diagnostics);
     templates->words = open_words(templates, shop, arena, diagnostics);
+    words_check(templates->words, arena, diagnostics);
     return templates;
 }
 

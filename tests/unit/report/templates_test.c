@@ -109,7 +109,12 @@ static void test_missing_phrase(void **state)
     struct archive archive = archive_begin();
     put_template(&archive, "words.yaml", "document:\n  language: en\n");
     assert_null(compose(&archive));
+    bool effect_told = false;
     assert_true(archive.sample->diagnostics.errors > 0);
+    for (size_t i = 0; i < archive.sample->diagnostics.count; i++)
+        effect_told |=
+            strstr(archive.sample->diagnostics.items[i].text, "'effect.grid_volts'") != NULL;
+    assert_true(effect_told);
     for (size_t i = 0; i < archive.sample->diagnostics.count; i++)
         assert_int_equal(archive.sample->diagnostics.items[i].code, DIAGNOSTIC_WORD_MISSING);
     archive_end(&archive, NULL);
