@@ -104,6 +104,12 @@ bool archive_open(struct archive *archive, const char *folder, const char *share
         archive->style = templates_text(archive->templates, "style.css", diagnostics);
         archive->page_template = templates_text(archive->templates, "page.html", diagnostics);
     }
+    if (archive->page_template) {
+        struct source *page = arena_get(arena, sizeof *page);
+        *page =
+            (struct source){"page.html", archive->page_template, strlen(archive->page_template)};
+        html_check_page(page, arena, diagnostics);
+    }
     return diagnostics->errors == errors_before && archive->templates;
 }
 
