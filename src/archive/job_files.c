@@ -2,6 +2,7 @@
 
 #include "archive/photographs.h"
 #include "archive/summary.h"
+#include "archive/visits.h"
 #include "base/hash.h"
 #include "write/json.h"
 
@@ -39,6 +40,9 @@ struct opened_job job_open(const struct archive *archive, const char *path, stru
     opened.job = job_read(source, arena, source->text ? diagnostics : &silent);
     opened.findings = assess_job(opened.job, archive->shop, GRIDLEAK_VERSION, arena, diagnostics);
     opened.findings->diagnostics = diagnostics;
+    struct visits visits = visits_follow(archive->folder, opened.findings, arena, diagnostics);
+    opened.visit_paths = visits.paths;
+    opened.visit_count = visits.count;
     report_explain(opened.findings, templates_words(archive->templates), arena);
     return opened;
 }
@@ -200,15 +204,19 @@ const char *job_name_of(const char *path, struct arena *arena)
     return arena_text(arena, name, length);
 }
 
-static void list_inputs(const struct job_files_request *request, const struct job *job,
+static void list_inputs(const struct job_files_request *request, const struct opened_job *opened,
                         struct job_files_result *result)
 {
-    result->inputs = arena_array(request->arena, job->photo_count + 1, sizeof *result->inputs);
+    const struct job *job = opened->job;
+    result->inputs = arena_array(request->arena, job->photo_count + opened->visit_count + 1,
+                                 sizeof *result->inputs);
     result->inputs[result->input_count++] = request->path;
     for (size_t i = 0; i < job->photo_count; i++)
         if (job->photos[i].file)
             result->inputs[result->input_count++] =
                 photograph_path(job, &job->photos[i], request->arena);
+    for (size_t i = 0; i < opened->visit_count; i++)
+        result->inputs[result->input_count++] = opened->visit_paths[i];
 }
 
 struct job_files_result job_files_publish(const struct job_files_request *request)
@@ -221,7 +229,7 @@ struct job_files_result job_files_publish(const struct job_files_request *reques
     struct opened_job opened =
         job_open(request->archive, request->path, request->arena, diagnostics);
     struct photographs photographs = {0};
-    list_inputs(request, opened.job, &result);
+    list_inputs(request, &opened, &result);
     if (diagnostics->errors == 0)
         photographs = photographs_read(request->archive, opened.job, request->arena, diagnostics);
     if (diagnostics->errors == 0) {

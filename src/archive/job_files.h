@@ -14,6 +14,9 @@ struct opened_job {
     const struct job *job;
     struct findings
         *findings; /* the shop's copy, explained; with errors: from what could be read */
+    /* job files of earlier visits that were looked at, whether they are there or not */
+    const char **visit_paths;
+    size_t visit_count;
 };
 
 /*
@@ -40,7 +43,8 @@ struct job_files_request {
 struct job_files_result {
     enum file_status failure; /* FILE_OK, or why `failed_path` could not be written */
     const char *failed_path;
-    const char **inputs; /* what the files were made from: the job file, its photographs */
+    const char **inputs; /* what the files were made from: the job file, its photographs,
+                            job files of earlier visits */
     size_t input_count;
 };
 

@@ -1,91 +1,53 @@
 #include "archive/pages.h"
 
-#include "base/mustache.h"
+#include "archive/page_frame.h"
 
-#include <cjson/cJSON.h>
 #include <dirent.h>
 #include <stdlib.h>
 #include <string.h>
+#include <unistd.h>
 
-enum { SUMMARY_BYTES_MAX = 16 << 20 };
+enum { SUMMARY_BYTES_MAX = 16 << 20, SUMMARIES_BYTES_MAX = 2000 << 20 };
 
-/* What is gathered while the summaries go by. */
-struct index_work {
+struct pages_work {
+    const struct pages_request *request;
     struct arena arena;
-    struct mustache_value *sets;   /* rows of the table */
-    struct mustache_value *broken; /* jobs whose files have mistakes */
-    struct buffer summaries;       /* summaries.jsonl */
+    struct job_names names;
+    struct buffer old, summaries; /* summaries.jsonl as it is, and as it will be */
+    struct columns columns;
+    struct buffer *failed;
 };
 
-static const char *text_of(const cJSON *object, const char *key)
+/* ---- the note that the pages are whole: present only while they are */
+
+static const char *note_path(const char *output, struct arena *arena)
 {
-    return cJSON_GetStringValue(cJSON_GetObjectItemCaseSensitive(object, key));
+    return arena_print(arena, "%s/.gridleak/pages", output);
 }
 
-static void take_text(struct index_work *work, struct mustache_value *row, const cJSON *object,
-                      const char *key)
+bool pages_are_whole(const char *output, const char *setting)
 {
-    mustache_set_text(&work->arena, row, key, text_of(object, key));
+    static const char *const pages[] = {"index.html",      "search.js",      "search-data.js",
+                                        "statistics.html", "site-style.css", "summaries.jsonl"};
+    struct arena arena = {0};
+    struct buffer note = {0};
+    bool whole = file_read(note_path(output, &arena), 4096, &note) == FILE_OK &&
+                 strcmp(buffer_string(&note), setting) == 0;
+    for (size_t i = 0; whole && i < sizeof pages / sizeof *pages; i++)
+        whole = access(arena_print(&arena, "%s/%s", output, pages[i]), F_OK) == 0;
+    buffer_release(&note);
+    arena_release(&arena);
+    return whole;
 }
 
-static void take_number(struct index_work *work, struct mustache_value *row, const cJSON *object,
-                        const char *key)
+void pages_forget(const char *output)
 {
-    const cJSON *number = cJSON_GetObjectItemCaseSensitive(object, key);
-    if (cJSON_IsNumber(number))
-        mustache_set_text(&work->arena, row, key,
-                          arena_print(&work->arena, "%.0f", number->valuedouble));
+    struct arena arena = {0};
+    unlink(note_path(output, &arena));
+    arena_release(&arena);
 }
 
-static void add_broken(struct index_work *work, const cJSON *summary, const char *name)
-{
-    struct mustache_value *row = mustache_map(&work->arena);
-    struct mustache_value *mistakes = mustache_list(&work->arena);
-    mustache_set_text(&work->arena, row, "job", name);
-    const cJSON *item;
-    cJSON_ArrayForEach(item, cJSON_GetObjectItemCaseSensitive(summary, "diagnostics"))
-    {
-        struct mustache_value *mistake = mustache_map(&work->arena);
-        take_number(work, mistake, item, "line");
-        take_text(work, mistake, item, "text");
-        mustache_push(&work->arena, mistakes, mistake);
-    }
-    mustache_set(&work->arena, row, "diagnostics", mistakes);
-    mustache_push(&work->arena, work->broken, row);
-}
-
-static void add_set(struct index_work *work, const cJSON *summary, const char *name)
-{
-    static const char *const texts[] = {"maker",    "model",    "year",    "supply",
-                                        "received", "returned", "chassis", NULL};
-    static const char *const numbers[] = {"kept", "of", "capacitors", "capacitors_failed", NULL};
-    struct mustache_value *row = mustache_map(&work->arena);
-    mustache_set_text(&work->arena, row, "job", name);
-    for (size_t i = 0; texts[i]; i++)
-        take_text(work, row, summary, texts[i]);
-    for (size_t i = 0; numbers[i]; i++)
-        take_number(work, row, summary, numbers[i]);
-    bool in_progress = cJSON_IsTrue(cJSON_GetObjectItemCaseSensitive(summary, "in_progress"));
-    mustache_set_flag(&work->arena, row, "in_progress", in_progress);
-    mustache_push(&work->arena, work->sets, row);
-}
-
-static void add_job(struct index_work *work, const char *output, const char *name)
-{
-    struct buffer contents = {0}, path = {0};
-    buffer_print(&path, "%s/jobs/%s/summary.json", output, name);
-    if (file_read(buffer_string(&path), SUMMARY_BYTES_MAX, &contents) == FILE_OK) {
-        buffer_append(&work->summaries, contents.data, contents.length);
-        cJSON *summary = cJSON_ParseWithLength(contents.data, contents.length);
-        if (cJSON_IsTrue(cJSON_GetObjectItemCaseSensitive(summary, "broken")))
-            add_broken(work, summary, name);
-        else if (summary)
-            add_set(work, summary, name);
-        cJSON_Delete(summary);
-    }
-    buffer_release(&contents);
-    buffer_release(&path);
-}
+/* ---- gathering the summaries */
 
 static bool is_listed(const struct job_names *names, const char *name)
 {
@@ -103,91 +65,143 @@ static bool is_listed(const struct job_names *names, const char *name)
 }
 
 /* Folders below jobs/ whose job file is gone. */
-static enum file_status remove_gone(const char *output, const struct job_names *names,
-                                    struct arena *arena)
+static enum file_status remove_gone(struct pages_work *work)
 {
-    DIR *folder = opendir(arena_print(arena, "%s/jobs", output));
+    const char *jobs = arena_print(&work->arena, "%s/jobs", work->request->output);
+    DIR *folder = opendir(jobs);
     enum file_status status = FILE_OK;
     for (struct dirent *entry; folder && status == FILE_OK && (entry = readdir(folder));)
-        if (entry->d_name[0] != '.' && !is_listed(names, entry->d_name))
-            status = folder_remove(arena_print(arena, "%s/jobs/%s", output, entry->d_name));
+        if (entry->d_name[0] != '.' && !is_listed(&work->names, entry->d_name))
+            status = folder_remove(arena_print(&work->arena, "%s/%s", jobs, entry->d_name));
     if (folder)
         closedir(folder);
-    return status;
-}
-
-static void set_shop(struct index_work *work, const struct archive *archive,
-                     struct mustache_value *values)
-{
-    const struct shop *shop = archive->shop;
-    mustache_set_text(&work->arena, values, "shop", shop->name);
-    mustache_set_text(&work->arena, values, "trade", shop->trade);
-    mustache_set_text(&work->arena, values, "address", shop->address);
-    mustache_set_text(&work->arena, values, "contact", shop->contact);
-}
-
-/* The one raw insertion: the style sheet, a template of the shop's own. */
-static enum mustache_partial_answer insert_style(void *data, const struct mustache_partial *partial,
-                                                 const struct source **found)
-{
-    const struct archive *archive = data;
-    (void)found;
-    if (strcmp(partial->name, "style") != 0)
-        return MUSTACHE_PARTIAL_UNKNOWN;
-    buffer_text(partial->out, archive->style);
-    return MUSTACHE_PARTIAL_DONE;
-}
-
-static enum file_status write_index(struct index_work *work, const struct archive *archive,
-                                    const char *output, struct buffer *failed)
-{
-    struct diagnostics mistakes = diagnostics_in(&work->arena);
-    const char *text = templates_text(archive->templates, "index.html", &mistakes);
-    struct mustache_value *values = mustache_map(&work->arena);
-    set_shop(work, archive, values);
-    mustache_set_text(&work->arena, values, "count",
-                      arena_print(&work->arena, "%zu", work->sets->count));
-    mustache_set(&work->arena, values, "sets", work->sets);
-    mustache_set_flag(&work->arena, values, "any_broken", work->broken->count > 0);
-    mustache_set(&work->arena, values, "broken", work->broken);
-    struct archive shared = *archive;
-    struct source source = {"index.html", text ? text : "", text ? strlen(text) : 0};
-    struct mustache_target target = {mustache_escape_html, insert_style, &shared, &work->arena,
-                                     &mistakes};
-    struct buffer page = {0};
-    mustache_render(&source, values, &target, &page);
-    const char *path = arena_print(&work->arena, "%s/index.html", output);
-    enum file_status status = file_write(path, page.data, page.length, NULL);
-    if (status == FILE_OK) {
-        path = arena_print(&work->arena, "%s/summaries.jsonl", output);
-        status = file_write(path, work->summaries.data, work->summaries.length, NULL);
-    }
     if (status != FILE_OK)
-        buffer_text(failed, path);
-    buffer_release(&page);
+        buffer_text(work->failed, jobs);
     return status;
 }
 
-enum file_status pages_publish(const struct archive *archive, const char *output,
+/* A line of the old summaries.jsonl, which is sorted as the names are. */
+struct old_line {
+    const char *text;
+    size_t length;
+};
+
+/* Go on to the line of job `name`: false when there is none. *at stands before the first line that
+   was not passed over. */
+static bool find_old_line(const struct buffer *old, const char **at, const char *name,
+                          struct old_line *line)
+{
+    static const char begins[] = ",\"job\":\"";
+    const char *end = old->data + old->length;
+    while (*at && *at < end) {
+        const char *line_end = memchr(*at, '\n', (size_t)(end - *at));
+        size_t length = (size_t)((line_end ? line_end : end) - *at);
+        const char *key = memmem(*at, length < 64 ? length : 64, begins, sizeof begins - 1);
+        const char *found = key ? key + sizeof begins - 1 : NULL;
+        const char *quote = found ? memchr(found, '"', length - (size_t)(found - *at)) : NULL;
+        if (!quote)
+            return false; /* not as we write it: read the summaries one by one */
+        size_t found_length = (size_t)(quote - found), name_length = strlen(name);
+        size_t common = found_length < name_length ? found_length : name_length;
+        int order = memcmp(found, name, common);
+        if (order == 0)
+            order = (found_length > name_length) - (found_length < name_length);
+        if (order > 0)
+            return false;
+        *line = (struct old_line){*at, length};
+        *at += length + (line_end ? 1 : 0);
+        if (order == 0)
+            return true;
+    }
+    return false;
+}
+
+static void read_summary(struct pages_work *work, const char *name)
+{
+    struct buffer path = {0};
+    buffer_print(&path, "%s/jobs/%s/summary.json", work->request->output, name);
+    file_read(buffer_string(&path), SUMMARY_BYTES_MAX, &work->summaries);
+    buffer_release(&path);
+}
+
+static void gather_summaries(struct pages_work *work)
+{
+    const struct pages_request *request = work->request;
+    const char *path = arena_print(&work->arena, "%s/summaries.jsonl", request->output);
+    if (request->changed && pages_are_whole(request->output, request->setting))
+        file_read(path, SUMMARIES_BYTES_MAX, &work->old);
+    buffer_reserve(&work->summaries, work->old.length + 4096);
+    const char *at = work->old.data;
+    for (size_t i = 0; i < work->names.count; i++) {
+        const char *name = work->names.names[i];
+        struct old_line line;
+        if (work->old.length && !is_listed(request->changed, name) &&
+            find_old_line(&work->old, &at, name, &line)) {
+            buffer_append(&work->summaries, line.text, line.length);
+            buffer_byte(&work->summaries, '\n');
+        } else {
+            read_summary(work, name);
+        }
+    }
+    buffer_release(&work->old);
+}
+
+/* ---- writing */
+
+static enum file_status write_pages(struct pages_work *work, struct diagnostics *diagnostics)
+{
+    struct page_frame frame = {
+        .archive = work->request->archive,
+        .output = work->request->output,
+        .columns = &work->columns,
+        .arena = &work->arena,
+        .say = {templates_words(work->request->archive->templates), &work->arena, diagnostics},
+        .diagnostics = diagnostics,
+        .failed = work->failed,
+    };
+    enum file_status (*const writers[])(struct page_frame *) = {
+        page_style_write, page_index_write, page_search_write, page_models_write,
+        page_statistics_write};
+    enum file_status status = page_write_file(&frame, "summaries.jsonl", &work->summaries);
+    for (size_t i = 0; i < sizeof writers / sizeof *writers && status == FILE_OK; i++)
+        status = writers[i](&frame);
+    return status;
+}
+
+static enum file_status publish_gathered(struct pages_work *work, struct diagnostics *diagnostics)
+{
+    const char *note = note_path(work->request->output, &work->arena);
+    const char *setting = work->request->setting;
+    gather_summaries(work);
+    columns_add_all(&work->columns, work->summaries.data, work->summaries.length);
+    page_models_name(&work->columns);
+    pages_forget(work->request->output);
+    enum file_status status = write_pages(work, diagnostics);
+    if (status == FILE_OK) {
+        status = folder_make(arena_print(&work->arena, "%s/.gridleak", work->request->output));
+        if (status == FILE_OK)
+            status = file_write(note, setting, strlen(setting), NULL);
+        if (status != FILE_OK)
+            buffer_text(work->failed, note);
+    }
+    return status;
+}
+
+enum file_status pages_publish(const struct pages_request *request, struct diagnostics *diagnostics,
                                struct buffer *failed)
 {
-    struct index_work work = {0};
-    work.sets = mustache_list(&work.arena);
-    work.broken = mustache_list(&work.arena);
-    struct job_names names;
-    enum file_status status = archive_job_names(archive->folder, &work.arena, &names);
+    struct pages_work work = {.request = request, .failed = failed};
+    enum file_status status = archive_job_names(request->archive->folder, &work.arena, &work.names);
     if (status == FILE_OK)
-        status = folder_make(output);
+        status = folder_make(request->output);
+    if (status != FILE_OK)
+        buffer_text(failed, request->output);
     if (status == FILE_OK)
-        status = remove_gone(output, &names, &work.arena);
-    if (status == FILE_OK) {
-        for (size_t i = 0; i < names.count; i++)
-            add_job(&work, output, names.names[i]);
-        status = write_index(&work, archive, output, failed);
-    } else {
-        buffer_text(failed, output);
-    }
+        status = remove_gone(&work);
+    if (status == FILE_OK)
+        status = publish_gathered(&work, diagnostics);
     buffer_release(&work.summaries);
+    columns_release(&work.columns);
     arena_release(&work.arena);
     return status;
 }

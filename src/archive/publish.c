@@ -164,6 +164,12 @@ static void mark_case_twins(struct publish_work *work)
         }
 }
 
+/* Another archive may have been published into this folder before, with jobs of the same names. */
+static bool is_made_from(const struct state_job *state, const char *path)
+{
+    return state->input_count > 0 && strcmp(state->inputs[0].path, path) == 0;
+}
+
 static void list_archive(struct publish_work *work, struct state *old)
 {
     struct job_names names = {0};
@@ -181,7 +187,8 @@ static void list_archive(struct publish_work *work, struct state *old)
         struct state_job *state = state_find(old, job->name);
         bool touched = false;
         /* A broken file is read again, so that its mistakes are told again. */
-        if (!state || state->broken || !state_is_current(state, work->setting, &touched))
+        if (!state || state->broken || !is_made_from(state, job->path) ||
+            !state_is_current(state, work->setting, &touched))
             continue;
         const char *summary =
             arena_print(work->arena, "%s/jobs/%s/summary.json", work->request->output, job->name);
@@ -212,12 +219,32 @@ static void fail(struct publish_work *work, enum file_status status, const char 
     work->result->failed_path = arena_copy(work->arena, path);
 }
 
-static void publish_pages(struct publish_work *work)
+/* The jobs made in this run. */
+static struct job_names made_jobs(const struct publish_work *work)
+{
+    struct job_names made = {arena_array(work->arena, work->count + 1, sizeof *made.names), 0};
+    for (size_t i = 0; i < work->count; i++)
+        if (work->jobs[i].diagnostics.arena)
+            made.names[made.count++] = work->jobs[i].name;
+    return made;
+}
+
+/* changed NULL: nothing is known of any job. */
+static void publish_pages(struct publish_work *work, const struct job_names *changed)
 {
     struct buffer failed = {0};
-    enum file_status status = pages_publish(work->archive, work->request->output, &failed);
+    struct arena arena = {0};
+    struct diagnostics diagnostics = diagnostics_in(&arena);
+    struct pages_request request = {work->archive, work->request->output, work->setting, changed};
+    enum file_status status = pages_publish(&request, &diagnostics, &failed);
     fail(work, status, buffer_string(&failed));
+    if (diagnostics.count) {
+        struct publish_event event = {"", work->count, work->count, &diagnostics};
+        work->request->listener(&event, work->request->listener_context);
+        work->result->broken += diagnostics.errors > 0;
+    }
     buffer_release(&failed);
+    arena_release(&arena);
 }
 
 static void publish_all(struct publish_work *work)
@@ -229,8 +256,13 @@ static void publish_all(struct publish_work *work)
     const struct state_job **jobs = arena_array(work->arena, work->count, sizeof *jobs);
     for (size_t i = 0; i < work->count; i++)
         jobs[i] = work->jobs[i].state;
-    if (work->result->failure == FILE_OK)
-        publish_pages(work);
+    struct job_names made = made_jobs(work);
+    bool same = made.count == 0 && old.count == work->count &&
+                pages_are_whole(work->request->output, work->setting);
+    if (work->result->failure == FILE_OK && !same)
+        publish_pages(work, &made);
+    if (work->result->failure != FILE_OK)
+        pages_forget(work->request->output);
     /* Also after a failure: what was made need not be made again. */
     enum file_status status = state_write(work->request->output, jobs, work->count);
     fail(work, status, work->request->output);
@@ -241,6 +273,13 @@ static void publish_named(struct publish_work *work)
 {
     list_named(work);
     run_threads(work);
+}
+
+/* What a publish that was killed left aside; a job's folder is cleared when it is made again. */
+static void clear_left_over(const char *output, struct arena *arena)
+{
+    folder_clear_aside(output);
+    folder_clear_aside(arena_print(arena, "%s/.gridleak", output));
 }
 
 struct publish_result publish(const struct archive *archive, const struct publish_request *request,
@@ -261,11 +300,13 @@ struct publish_result publish(const struct archive *archive, const struct publis
         fail(&work, failure, request->output);
     if (locked != LOCK_HELD)
         return result;
+    if (!work.named)
+        clear_left_over(request->output, arena);
     setting_hash(archive, work.setting);
     if (work.named)
         publish_named(&work);
     else if (request->pages_only)
-        publish_pages(&work);
+        publish_pages(&work, NULL);
     else
         publish_all(&work);
     result.jobs = work.count;

@@ -5,6 +5,7 @@
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
+#include <unistd.h>
 
 static const char heading[] = "gridleak state 1\n";
 enum { STATE_BYTES_MAX = 1 << 30, INPUT_BYTES_MAX = 64 << 20 };
@@ -100,9 +101,24 @@ static uint64_t nanoseconds(const struct stat *about)
     return (uint64_t)about->st_mtim.tv_sec * 1000000000u + (uint64_t)about->st_mtim.tv_nsec;
 }
 
+/* An input that is not there: a size that no file has, so that its coming is noticed. */
+static const char no_hash[HASH_TEXT_BYTES] =
+    "0000000000000000000000000000000000000000000000000000000000000000";
+
+static bool note_missing(const char *path, struct arena *arena, struct state_input *input)
+{
+    input->path = arena_copy(arena, path);
+    input->size = UINT64_MAX;
+    input->changed_ns = 0;
+    memcpy(input->hash, no_hash, HASH_TEXT_BYTES);
+    return true;
+}
+
 bool state_note_input(const char *path, struct arena *arena, struct state_input *input)
 {
     struct stat about;
+    if (access(path, F_OK) != 0)
+        return note_missing(path, arena, input);
     struct buffer contents = {0};
     bool good = stat(path, &about) == 0 && file_read(path, INPUT_BYTES_MAX, &contents) == FILE_OK;
     if (good) {
@@ -120,7 +136,7 @@ static bool input_is_current(struct state_input *input, bool *touched)
 {
     struct stat about;
     if (stat(input->path, &about) != 0)
-        return false;
+        return input->size == UINT64_MAX;
     if ((uint64_t)about.st_size == input->size && nanoseconds(&about) == input->changed_ns)
         return true;
     struct arena arena = {0};

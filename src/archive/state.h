@@ -45,7 +45,7 @@ struct state_job *state_find(const struct state *state, const char *name);
    hash stayed are put right in *job, and *touched is set. */
 bool state_is_current(struct state_job *job, const char *setting, bool *touched);
 
-/* Note an input file as it is now. false when it cannot be read. */
+/* Note an input file as it is now, also that it is not there. false when it cannot be read. */
 bool state_note_input(const char *path, struct arena *arena, struct state_input *input);
 
 /* Write the lines of jobs[count], sorted by name; entries that are NULL are left out. */

@@ -1,11 +1,26 @@
 #include "archive/summary.h"
 
+#include "archive/columns.h"
+#include "assess/visit.h"
 #include "write/json.h"
 
 #include <math.h>
 #include <string.h>
 
-enum { SUMMARY_VERSION = 1 };
+/* A part's facts by column; NULL: unknown. */
+struct row {
+    const char *texts[PART_COLUMN_COUNT];
+};
+struct again_row {
+    const char *texts[AGAIN_COLUMN_COUNT];
+};
+struct summary_work {
+    const struct findings *findings;
+    struct arena arena;
+    struct buffer *out;
+    struct row *rows;
+    size_t row_count;
+};
 
 static void key(struct buffer *out, const char *name)
 {
@@ -32,149 +47,278 @@ static void flag_member(struct buffer *out, const char *name, bool value)
     buffer_text(out, value ? "true" : "false");
 }
 
-static double quantity_value(const struct quantity *quantity)
+/* ---- the parts as columns */
+
+/* uA to two figures, without an exponent: few different texts, and what the record shows. */
+static const char *micro_text(struct arena *arena, double ampere, enum bound bound)
 {
-    return quantity->set ? quantity->value : NAN;
+    static const char *const signs[] = {[BOUND_NONE] = "", [BOUND_OVER] = ">", [BOUND_UNDER] = "<"};
+    if (!isfinite(ampere))
+        return NULL;
+    double micro = ampere * 1e6;
+    if (micro <= 0)
+        return arena_print(arena, "%s0", signs[bound]);
+    int first = (int)floor(log10(micro));
+    double unit = pow(10, first - 1);
+    double rounded = round(micro / unit * (1 + 1e-13)) * unit;
+    first = (int)floor(log10(rounded * (1 + 1e-13)));
+    return arena_print(arena, "%s%.*f", signs[bound], first < 1 ? 1 - first : 0, rounded);
 }
 
-static void open_item(struct buffer *out)
+static const char *valves_of_part(struct summary_work *work, const struct capacitor *part)
 {
-    if (out->data[out->length - 1] == '}')
-        buffer_byte(out, ',');
-    buffer_byte(out, '{');
-}
-
-static void write_stage_valves(struct buffer *out, const struct job *job,
-                               const struct capacitor *part)
-{
-    key(out, "valves");
-    buffer_byte(out, '[');
+    const struct job *job = work->findings->job;
+    const char *text = NULL;
     for (size_t i = 0; i < part->stage_count; i++) {
-        if (i)
-            buffer_byte(out, ',');
-        json_string(out, job->stages[part->stages[i]].valve_type);
+        const char *type = job->stages[part->stages[i]].valve_type;
+        if (type && (!text || !strstr(text, type)))
+            text = text ? arena_print(&work->arena, "%s, %s", text, type) : type;
     }
-    buffer_byte(out, ']');
+    return text;
 }
 
-static void write_capacitor(struct buffer *out, const struct findings *findings, size_t index)
+static void take_capacitor(struct summary_work *work, size_t index)
 {
-    const struct capacitor_findings *found = &findings->capacitors[index];
+    const struct capacitor_findings *found = &work->findings->capacitors[index];
     const struct capacitor *part = found->part;
-    open_item(out);
-    text_member(out, "ref", part->ref);
-    text_member(out, "kind", "capacitor");
-    text_member(out, "type", dielectric_text(part->type));
-    text_member(out, "maker", part->maker);
-    text_member(out, "marked", part->marked.written);
-    number_member(out, "value_f", quantity_value(&part->marked.value));
-    number_member(out, "rated_v", quantity_value(&part->marked.rated));
-    text_member(out, "place", place_text(part->place));
-    write_stage_valves(out, findings->job, part);
-    text_member(out, "was", origin_text(part->was));
-    text_member(out, "state", part_state_text(found->state));
-    text_member(out, "done", action_text(part->done));
-    text_member(out, "outcome_found", outcome_text(found->outcome_found));
-    text_member(out, "outcome", outcome_text(found->outcome));
-    number_member(out, "leakage_a", found->test_leakage_a);
-    number_member(out, "limit_a", found->test_limit_a);
-    number_member(out, "found_leakage_a", found->found_leakage_a);
-    number_member(out, "found_limit_a", found->found_limit_a);
-    flag_member(out, "measured", found->reading_count > 0);
-    flag_member(out, "replaced_unmeasured", found->replaced_unmeasured);
-    text_member(out, "fitted", part->fitted.written);
-    text_member(out, "batch", part->batch);
-    buffer_byte(out, '}');
+    const struct can *can = part->can == NOT_LISTED ? NULL : &work->findings->job->cans[part->can];
+    bool as_found = !isnan(found->found_leakage_a);
+    struct row *row = &work->rows[work->row_count++];
+    enum action done = part->done == DONE_OPEN && can ? can->done : part->done;
+    *row = (struct row){{
+        [PART_REF] = part->ref,
+        [PART_KIND] = "capacitor",
+        [PART_TYPE] = dielectric_text(part->type),
+        [PART_MAKER] = part->maker || !can ? part->maker : can->maker,
+        [PART_MARKED] = part->marked.written,
+        [PART_PLACE] = place_text(part->place),
+        [PART_VALVES] = valves_of_part(work, part),
+        [PART_WAS] = origin_text(can ? can->was : part->was),
+        [PART_DONE] = action_text(done),
+        [PART_OUTCOME] = outcome_text(found->outcome_found),
+        [PART_LEFT] = outcome_text(found->outcome),
+        [PART_LEAKAGE] =
+            micro_text(&work->arena, as_found ? found->found_leakage_a : found->test_leakage_a,
+                       as_found ? BOUND_NONE : found->test_bound),
+        [PART_LIMIT] = micro_text(
+            &work->arena, as_found ? found->found_limit_a : found->test_limit_a, BOUND_NONE),
+        [PART_UNREAD] = found->replaced_unmeasured ? "unread" : NULL,
+        [PART_FITTED] = part->fitted.set || !can ? part->fitted.written : can->fitted.written,
+        [PART_BATCH] = part->batch || !can ? part->batch : can->batch,
+    }};
 }
 
-/* Resistors, windings and valves: only what a search asks for. */
-static void write_part(struct buffer *out, const char *kind, const char *ref, const char *maker,
-                       const char *marked, enum action done)
+static void take_others(struct summary_work *work)
 {
-    open_item(out);
-    text_member(out, "ref", ref);
-    text_member(out, "kind", kind);
-    text_member(out, "maker", maker);
-    text_member(out, "marked", marked);
-    text_member(out, "done", action_text(done));
-}
-
-static void write_parts(struct buffer *out, const struct findings *findings)
-{
-    const struct job *job = findings->job;
-    key(out, "parts");
-    buffer_byte(out, '[');
-    for (size_t i = 0; i < findings->capacitor_count; i++)
-        write_capacitor(out, findings, i);
+    const struct job *job = work->findings->job;
     for (size_t i = 0; i < job->resistor_count; i++) {
         const struct resistor *part = &job->resistors[i];
-        write_part(out, "resistor", part->ref, part->maker, part->marked.written, part->done);
-        text_member(out, "fitted", part->fitted.written);
-        text_member(out, "batch", part->batch);
-        buffer_byte(out, '}');
+        work->rows[work->row_count++] = (struct row){{
+            [PART_REF] = part->ref,
+            [PART_KIND] = "resistor",
+            [PART_MAKER] = part->maker,
+            [PART_MARKED] = part->marked.written,
+            [PART_WAS] = origin_text(part->was),
+            [PART_DONE] = action_text(part->done),
+            [PART_FITTED] = part->fitted.written,
+            [PART_BATCH] = part->batch,
+        }};
     }
     for (size_t i = 0; i < job->winding_count; i++) {
         const struct winding *part = &job->windings[i];
-        write_part(out, "winding", part->ref, part->maker, part->marked.written, part->done);
-        text_member(out, "fitted", part->fitted.written);
-        text_member(out, "batch", part->batch);
-        buffer_byte(out, '}');
+        work->rows[work->row_count++] = (struct row){{
+            [PART_REF] = part->ref,
+            [PART_KIND] = "winding",
+            [PART_MAKER] = part->maker,
+            [PART_MARKED] = part->marked.written,
+            [PART_WAS] = origin_text(part->was),
+            [PART_DONE] = action_text(part->done),
+            [PART_FITTED] = part->fitted.written,
+            [PART_BATCH] = part->batch,
+        }};
+    }
+    for (size_t i = 0; i < job->control_count; i++) {
+        const struct control *part = &job->controls[i];
+        work->rows[work->row_count++] = (struct row){{
+            [PART_REF] = part->ref,
+            [PART_KIND] = "control",
+            [PART_MARKED] = part->what.text,
+            [PART_WAS] = origin_text(part->was),
+            [PART_DONE] = action_text(part->done),
+            [PART_FITTED] = part->fitted.text,
+        }};
     }
     for (size_t i = 0; i < job->valve_count; i++) {
         const struct valve *part = &job->valves[i];
-        write_part(out, "valve", part->ref, part->maker, part->type, part->done);
-        buffer_byte(out, '}');
+        work->rows[work->row_count++] = (struct row){{
+            [PART_REF] = part->ref,
+            [PART_KIND] = "valve",
+            [PART_MAKER] = part->maker,
+            [PART_MARKED] = part->type,
+            [PART_VALVES] = part->type,
+            [PART_WAS] = origin_text(part->was),
+            [PART_DONE] = action_text(part->done),
+            [PART_FITTED] = part->fitted.text,
+        }};
     }
-    buffer_byte(out, ']');
 }
 
-static void write_valves(struct buffer *out, const struct job *job)
+/* One column of `count` rows, `stride` texts apart; one without any text is left out. */
+static void write_column(struct buffer *out, const char *name, const char *const *texts,
+                         size_t stride, size_t count)
 {
-    key(out, "valves");
+    bool any = false;
+    for (size_t i = 0; i < count && !any; i++)
+        any = texts[i * stride] && *texts[i * stride];
+    if (!any)
+        return;
+    key(out, name);
     buffer_byte(out, '[');
-    for (size_t i = 0; i < job->valve_count; i++) {
+    for (size_t i = 0; i < count; i++) {
+        const char *text = texts[i * stride];
         if (i)
             buffer_byte(out, ',');
-        json_string(out, job->valves[i].type);
+        json_string(out, text ? text : "");
     }
     buffer_byte(out, ']');
 }
 
-static void write_set(struct buffer *out, const struct job *job)
+static void write_parts(struct summary_work *work)
 {
-    text_member(out, "maker", job->set.maker.text);
-    text_member(out, "model", job->set.model.text);
-    text_member(out, "chassis", job->set.chassis.text);
-    text_member(out, "serial", job->set.serial.text);
-    text_member(out, "description", job->set.description.text);
-    text_member(out, "year", job->set.year.written);
-    number_member(out, "year_first", job->set.year.set ? (double)job->set.year.first : NAN);
-    number_member(out, "year_last", job->set.year.set ? (double)job->set.year.last : NAN);
-    text_member(out, "supply", supply_text(job->set.supply));
-    text_member(out, "received", job->received.written);
-    text_member(out, "returned", job->returned.written);
-    text_member(out, "technician", job->technician.text);
-    text_member(out, "call_back", job->call_back.written);
-    text_member(out, "continues", job->continues.text);
+    const struct findings *findings = work->findings;
+    const struct job *job = findings->job;
+    work->rows = arena_array(&work->arena,
+                             findings->capacitor_count + job->resistor_count + job->winding_count +
+                                 job->control_count + job->valve_count,
+                             sizeof *work->rows);
+    for (size_t i = 0; i < findings->capacitor_count; i++)
+        take_capacitor(work, i);
+    take_others(work);
+    key(work->out, "parts");
+    buffer_byte(work->out, '{');
+    for (int i = 0; i < PART_COLUMN_COUNT && work->row_count; i++)
+        write_column(work->out, part_column_keys[i], &work->rows[0].texts[i], PART_COLUMN_COUNT,
+                     work->row_count);
+    buffer_byte(work->out, '}');
+}
+
+/* ---- parts measured again */
+
+static const char *factor_text(struct arena *arena, double then, double now)
+{
+    double factor = now / then;
+    return then > 0 && isfinite(factor) && factor > 0 ? arena_print(arena, "%.4g", factor) : NULL;
+}
+
+static struct again_row again_of(struct summary_work *work, const struct visit_changes *since,
+                                 const struct visit_change *change)
+{
+    static const char *const kinds[] = {[VISIT_CAPACITOR] = "capacitor",
+                                        [VISIT_RESISTOR] = "resistor",
+                                        [VISIT_WINDING] = "winding"};
+    bool bound = change->then_bound != BOUND_NONE || change->now_bound != BOUND_NONE;
+    const struct capacitor_findings *found =
+        change->capacitor == NOT_LISTED ? NULL : &work->findings->capacitors[change->capacitor];
+    struct arena *arena = &work->arena;
+    return (struct again_row){{
+        [AGAIN_REF] = change->ref,
+        [AGAIN_TYPE] = found ? dielectric_text(found->part->type) : kinds[change->kind],
+        [AGAIN_YEARS] = isnan(since->years) ? NULL : arena_print(arena, "%.2f", since->years),
+        [AGAIN_LEAKAGE_FACTOR] = bound ? NULL : factor_text(arena, change->then_a, change->now_a),
+        [AGAIN_VALUE_FACTOR] = factor_text(arena, change->then_value, change->now_value),
+        [AGAIN_OUTCOME] = found ? outcome_text(found->outcome_found) : NULL,
+    }};
+}
+
+static void write_again(struct summary_work *work)
+{
+    const struct visit_changes *since = work->findings->since;
+    if (!since)
+        return;
+    struct again_row *rows = arena_array(&work->arena, since->count, sizeof *rows);
+    size_t count = 0;
+    for (size_t i = 0; i < since->count; i++)
+        if (visit_was_kept(since->items[i].done_then))
+            rows[count++] = again_of(work, since, &since->items[i]);
+    if (count == 0)
+        return;
+    key(work->out, "again");
+    buffer_byte(work->out, '{');
+    for (int i = 0; i < AGAIN_COLUMN_COUNT; i++)
+        write_column(work->out, again_column_keys[i], &rows[0].texts[i], AGAIN_COLUMN_COUNT, count);
+    buffer_byte(work->out, '}');
+}
+
+/* ---- the set */
+
+static const char *all_valves(struct summary_work *work)
+{
+    const struct job *job = work->findings->job;
+    const char *text = NULL;
+    for (size_t i = 0; i < job->valve_count; i++)
+        if (job->valves[i].type)
+            text = text ? arena_print(&work->arena, "%s, %s", text, job->valves[i].type)
+                        : job->valves[i].type;
+    return text;
+}
+
+static void write_years(struct summary_work *work)
+{
+    const struct year_span *year = &work->findings->job->set.year;
+    text_member(work->out, job_column_keys[JOB_YEAR], year->written);
+    if (!year->set)
+        return;
+    number_member(work->out, job_column_keys[JOB_YEAR_FIRST], year->first);
+    number_member(work->out, job_column_keys[JOB_YEAR_LAST], year->last);
+    int middle = (year->first + year->last) / 2;
+    text_member(work->out, job_column_keys[JOB_DECADE],
+                arena_print(&work->arena, "%ds", middle / 10 * 10));
+}
+
+static void write_set(struct summary_work *work)
+{
+    const struct job *job = work->findings->job;
+    const struct {
+        enum job_column column;
+        const char *text;
+    } texts[] = {
+        {JOB_MAKER, job->set.maker.text},
+        {JOB_MODEL, job->set.model.text},
+        {JOB_CHASSIS, job->set.chassis.text},
+        {JOB_SERIAL, job->set.serial.text},
+        {JOB_DESCRIPTION, job->set.description.text},
+        {JOB_SUPPLY, supply_text(job->set.supply)},
+        {JOB_RECEIVED, job->received.written},
+        {JOB_RETURNED, job->returned.written},
+        {JOB_TECHNICIAN, job->technician.text},
+        {JOB_CALL_BACK, job->call_back.written},
+        {JOB_CONTINUES, job->continues.text},
+        {JOB_VALVES, all_valves(work)},
+    };
+    for (size_t i = 0; i < sizeof texts / sizeof *texts; i++)
+        text_member(work->out, job_column_keys[texts[i].column], texts[i].text);
+    write_years(work);
 }
 
 void summary_write(const struct findings *findings, struct buffer *out)
 {
+    struct summary_work work = {.findings = findings, .out = out};
     unsigned failed = 0;
     for (size_t i = 0; i < findings->capacitor_count; i++)
         failed += findings->capacitors[i].outcome_found == OUTCOME_FAIL;
     buffer_print(out, "{\"summary\":%d", SUMMARY_VERSION);
-    text_member(out, "job", findings->job->number);
+    text_member(out, job_column_keys[JOB_NUMBER], findings->job->number);
     flag_member(out, "broken", false);
-    flag_member(out, "in_progress", findings->in_progress);
-    write_set(out, findings->job);
-    number_member(out, "kept", findings->originality.total.kept);
-    number_member(out, "of", findings->originality.total.of);
-    number_member(out, "capacitors_failed", failed);
-    number_member(out, "capacitors", (double)findings->capacitor_count);
-    write_valves(out, findings->job);
-    write_parts(out, findings);
+    flag_member(out, job_column_keys[JOB_IN_PROGRESS], findings->in_progress);
+    write_set(&work);
+    number_member(out, job_column_keys[JOB_KEPT], findings->originality.total.kept);
+    number_member(out, job_column_keys[JOB_OF], findings->originality.total.of);
+    number_member(out, job_column_keys[JOB_FAILED], failed);
+    number_member(out, job_column_keys[JOB_CAPACITORS], (double)findings->capacitor_count);
+    write_parts(&work);
+    write_again(&work);
     buffer_text(out, "}\n");
+    arena_release(&work.arena);
 }
 
 void summary_write_broken(const char *name, const struct diagnostics *diagnostics,
@@ -185,11 +329,13 @@ void summary_write_broken(const char *name, const struct diagnostics *diagnostic
     flag_member(out, "broken", true);
     key(out, "diagnostics");
     buffer_byte(out, '[');
+    bool first = true;
     for (size_t i = 0; i < diagnostics->count; i++) {
         const struct diagnostic *item = &diagnostics->items[i];
         if (item->severity != SEVERITY_ERROR)
             continue;
-        open_item(out);
+        buffer_text(out, first ? "{" : ",{");
+        first = false;
         number_member(out, "line", item->at.line);
         number_member(out, "column", item->at.column);
         text_member(out, "text", item->text);

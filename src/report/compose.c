@@ -36,6 +36,7 @@ static const struct {
     {"voltages", exhibit_voltages},
     {"performance", exhibit_performance},
     {"safety", exhibit_safety},
+    {"visits", exhibit_visits},
     {"plates", exhibit_plates},
     {"reform_curves", exhibit_reform_curves},
     {"policy", exhibit_policy},

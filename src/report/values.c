@@ -100,6 +100,20 @@ static void put_people(const struct filler *root)
     put(root, "continues", job->continues.text);
 }
 
+/* The visit before: since.earlier, since.then (a date), since.years. */
+static void put_since(const struct filler *root)
+{
+    const struct visit_changes *since = root->composition->findings->since;
+    struct filler map = fill(root->composition);
+    if (!since)
+        return;
+    put(&map, "earlier", since->earlier);
+    put(&map, "then", since->then_date);
+    if (since->years > 0)
+        put(&map, "years", arena_print(root->composition->arena, "%.1f", since->years));
+    put_map(root, "since", &map);
+}
+
 static void put_conditions(const struct filler *root)
 {
     const struct findings *findings = root->composition->findings;
@@ -185,6 +199,7 @@ static void put_sections(const struct filler *root)
     put_flag(&has, "many_capacitors", job->capacitor_count > LARGE_SET);
     put_flag(&has, "soak_curves", has_soak_curves(composition));
     put_flag(&has, "changed", has_changed(composition));
+    put_flag(&has, "visits", composition->findings->since && composition->findings->since->count);
     put_flag(&has, "removed", job->removed_count > 0);
     put_flag(&has, "stages", composition->findings->stage_count > 0);
     put_flag(&has, "resistors", job->resistor_count > 0);
@@ -426,6 +441,7 @@ struct mustache_value *values_of(struct composition *composition)
     put_shop(&root);
     put_people(&root);
     put_conditions(&root);
+    put_since(&root);
     put_sections(&root);
     put_actions(&root);
     put_decision(&root);

@@ -4,6 +4,7 @@
 #include "base/mustache.h"
 #include "write/html_parts.h"
 
+#include <assert.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -313,6 +314,18 @@ void html_write_body(const struct document *document, struct buffer *out)
          node = cmark_node_next(node))
         write_node(&html, node, &walk);
     html_raw(&html, walk.small ? "</div>\n" : "");
+    for (size_t i = 0; i < sizeof html.marks / sizeof html.marks[0]; i++)
+        buffer_release(&html.marks[i]);
+    arena_release(&html.scratch);
+}
+
+void html_write_exhibit(const struct exhibit *exhibit, struct buffer *out)
+{
+    struct html html = {.out = out};
+    struct walk walk = {0};
+    assert(exhibit->kind != EXHIBIT_CONTENTS);
+    make_marks(&html);
+    write_exhibit(&html, exhibit, &walk);
     for (size_t i = 0; i < sizeof html.marks / sizeof html.marks[0]; i++)
         buffer_release(&html.marks[i]);
     arena_release(&html.scratch);

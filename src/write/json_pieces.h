@@ -39,5 +39,6 @@ void json_write_other_parts(const struct findings *findings, struct buffer *out)
 void json_write_work(const struct findings *findings, struct buffer *out);
 void json_write_capacitors(const struct findings *findings, struct buffer *out);
 void json_write_stages(const struct findings *findings, struct buffer *out);
+void json_write_visits(const struct findings *findings, struct buffer *out);
 
 #endif

@@ -29,6 +29,10 @@ bool html_check_page(const struct source *page, struct arena *arena,
 /* Only the document's body, without page: for pages of the archive. */
 void html_write_body(const struct document *document, struct buffer *out);
 
+/* One exhibit by itself, for pages that are made from templates of their own; any but
+   EXHIBIT_CONTENTS, which speaks of a document. */
+void html_write_exhibit(const struct exhibit *exhibit, struct buffer *out);
+
 /* Plain text for a terminal `columns` wide; colour: ANSI bold allowed (isatty, no NO_COLOR). */
 void terminal_write(const struct document *document, unsigned columns, bool bold_allowed,
                     struct buffer *out);

@@ -1,0 +1,140 @@
+/*
+ * The archive as columns: every job, every part and every part measured again at a later visit, one
+ * array a fact, each value a code into the column's dictionary. Read from the lines of
+ * summaries.jsonl; what find, the list of the archive, the search and the statistics work on.
+ *
+ * Facts are texts as the summary gives them (numbers too); "" is unknown and always code 0.
+ */
+#ifndef ARCHIVE_COLUMNS_H
+#define ARCHIVE_COLUMNS_H
+
+#include "base/arena.h"
+#include "base/buffer.h"
+
+#include <stdbool.h>
+#include <stddef.h>
+#include <stdint.h>
+
+/* X(enum, key in the summary, and in find) */
+#define JOB_COLUMNS(X)                                                                             \
+    X(JOB_NUMBER, "job")                                                                           \
+    X(JOB_IN_PROGRESS, "in_progress") /* "true" or "false" */                                      \
+    X(JOB_MAKER, "maker")                                                                          \
+    X(JOB_MODEL, "model")                                                                          \
+    X(JOB_CHASSIS, "chassis")                                                                      \
+    X(JOB_SERIAL, "serial")                                                                        \
+    X(JOB_DESCRIPTION, "description")                                                              \
+    X(JOB_YEAR, "year")                                                                            \
+    X(JOB_YEAR_FIRST, "year_first")                                                                \
+    X(JOB_YEAR_LAST, "year_last")                                                                  \
+    X(JOB_DECADE, "decade") /* "1950s": of the middle of the years */                              \
+    X(JOB_SUPPLY, "supply")                                                                        \
+    X(JOB_RECEIVED, "received")                                                                    \
+    X(JOB_RETURNED, "returned")                                                                    \
+    X(JOB_TECHNICIAN, "technician")                                                                \
+    X(JOB_CALL_BACK, "call_back")                                                                  \
+    X(JOB_CONTINUES, "continues")                                                                  \
+    X(JOB_KEPT, "kept")                                                                            \
+    X(JOB_OF, "of")                                                                                \
+    X(JOB_FAILED, "failed")         /* capacitors that failed as found */                          \
+    X(JOB_CAPACITORS, "capacitors") /* how many */                                                 \
+    X(JOB_VALVES, "valves")         /* types, with commas */                                       \
+    X(JOB_PAGE, "page")             /* its model's page: not in the summary */
+
+#define PART_COLUMNS(X)                                                                            \
+    X(PART_REF, "ref")                                                                             \
+    X(PART_KIND, "kind") /* capacitor, resistor, winding, control, valve */                        \
+    X(PART_TYPE, "type")                                                                           \
+    X(PART_MAKER, "maker")                                                                         \
+    X(PART_MARKED, "marked")                                                                       \
+    X(PART_PLACE, "place")                                                                         \
+    X(PART_VALVES, "valves") /* of the stages it serves; of a valve its type */                    \
+    X(PART_WAS, "was")                                                                             \
+    X(PART_DONE, "done")                                                                           \
+    X(PART_OUTCOME, "outcome") /* as found */                                                      \
+    X(PART_LEFT, "left")       /* outcome as left */                                               \
+    X(PART_LEAKAGE, "leakage") /* uA on the bench, as found: "0.62", "<0.01" */                    \
+    X(PART_LIMIT, "limit")     /* uA, at the same volts */                                         \
+    X(PART_UNREAD, "unread")   /* "unread": replaced without a reading */                          \
+    X(PART_FITTED, "fitted")                                                                       \
+    X(PART_BATCH, "batch")
+
+/* Parts that were kept at an earlier visit and are there again. */
+#define AGAIN_COLUMNS(X)                                                                           \
+    X(AGAIN_REF, "ref")                                                                            \
+    X(AGAIN_TYPE, "type")                                                                          \
+    X(AGAIN_YEARS, "years")                   /* between the visits */                             \
+    X(AGAIN_LEAKAGE_FACTOR, "leakage_factor") /* now over then, at the same volts */               \
+    X(AGAIN_VALUE_FACTOR, "value_factor")     /* capacitance or ohms, now over then */             \
+    X(AGAIN_OUTCOME, "outcome")               /* as found now */
+
+#define COLUMN_ENUM(name, key) name,
+enum job_column { JOB_COLUMNS(COLUMN_ENUM) JOB_COLUMN_COUNT };
+enum part_column { PART_COLUMNS(COLUMN_ENUM) PART_COLUMN_COUNT };
+enum again_column { AGAIN_COLUMNS(COLUMN_ENUM) AGAIN_COLUMN_COUNT };
+
+/* Keys by column, then NULL. */
+extern const char *const job_column_keys[];
+extern const char *const part_column_keys[];
+extern const char *const again_column_keys[];
+
+struct dictionary_entry {
+    const char *text;
+    uint32_t length, hash;
+};
+struct dictionary {
+    struct dictionary_entry *entries; /* by code; entries[0] is "" */
+    uint32_t count, capacity;
+    uint32_t *slots; /* code + 1, 0: free */
+    uint32_t slot_count;
+};
+struct column_data {
+    uint32_t *codes;
+    size_t count, capacity;
+    struct dictionary dictionary;
+};
+
+/* A job file with mistakes. */
+struct broken_job {
+    const char *name, *line; /* of summaries.jsonl */
+    size_t line_length;
+};
+
+struct columns {
+    struct arena arena; /* texts */
+    struct column_data jobs[JOB_COLUMN_COUNT];
+    struct column_data parts[PART_COLUMN_COUNT];
+    struct column_data again[AGAIN_COLUMN_COUNT];
+    struct column_data part_job, again_job; /* codes: index of the job; no dictionary */
+    size_t job_count, part_count, again_count;
+    struct broken_job *broken;
+    size_t broken_count, broken_capacity;
+};
+
+/*
+ * Add the job of one line, without its line end. false: the line is no summary of this version and
+ * nothing was added. {0} is empty and valid; columns_release. `line` of a broken job is kept as it
+ * is given: it must outlive the columns.
+ */
+bool columns_add(struct columns *columns, const char *line, size_t length);
+
+/* Add all lines of summaries.jsonl; how many were none. */
+size_t columns_add_all(struct columns *columns, const char *text, size_t length);
+
+/* The text of row `index` of a column. */
+const char *column_text(const struct column_data *column, size_t index);
+/* Its number; NaN: unknown. */
+double column_number(const struct column_data *column, size_t index);
+
+/* The code of a text, added when new. */
+uint32_t dictionary_code(struct dictionary *dictionary, struct arena *arena, const char *text,
+                         size_t length);
+/* Put one more row behind a column. */
+void column_push(struct column_data *column, struct arena *arena, const char *text, size_t length);
+
+void columns_release(struct columns *columns);
+
+/* The summary's version: a line of another one is made again. */
+enum { SUMMARY_VERSION = 2 };
+
+#endif
