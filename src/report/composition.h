@@ -141,7 +141,7 @@ exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents
     exhibit_leakage, exhibit_soak_curves, exhibit_changed, exhibit_removed, exhibit_resistors,
     exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stage, exhibit_voltages,
     exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_policy,
-    exhibit_sources, exhibit_instruments, exhibit_write_on, exhibit_sheet_leakage,
+    exhibit_sources, exhibit_instruments, exhibit_visits, exhibit_write_on, exhibit_sheet_leakage,
     exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages;
 
 /* ---- reforming: the plan of one electrolytic, for the bench sheet.
