@@ -3,6 +3,7 @@
  * Exit 0 done; 1 the answer is no; 2 wrong input; 3 the system failed.
  */
 #include "archive/archive.h"
+#include "archive/find.h"
 #include "archive/job_files.h"
 #include "archive/new_job.h"
 #include "archive/publish.h"
@@ -45,7 +46,8 @@ enum command_bit {
     COMMAND_FIELDS = 1 << 4,
     COMMAND_SEAL = 1 << 5,
     COMMAND_PROVE = 1 << 6,
-    COMMAND_ALL = (1 << 7) - 1
+    COMMAND_FIND = 1 << 7,
+    COMMAND_ALL = (1 << 8) - 1
 };
 
 #define OPTION_AT(member) offsetof(struct options, member)
@@ -56,8 +58,9 @@ static const struct option_row option_rows[] = {
     {"like", 0, "JOB", "keep the chassis' parts of this job, blank its readings", OPTION_AT(like),
      COMMAND_START},
     {"output", 'o', "PATH", "sheet: a file .html, .pdf or .md; else the output folder, \"output\"",
-     OPTION_AT(output), COMMAND_SHEET | COMMAND_PUBLISH | COMMAND_SEAL},
-    {"json", 0, NULL, "one object a job, on one line", OPTION_AT(json), COMMAND_ASSESS},
+     OPTION_AT(output), COMMAND_SHEET | COMMAND_PUBLISH | COMMAND_SEAL | COMMAND_FIND},
+    {"json", 0, NULL, "one object a job, or a hit, on one line", OPTION_AT(json),
+     COMMAND_ASSESS | COMMAND_FIND},
     {"strict", 0, NULL, "exit 1 when there is a warning", OPTION_AT(strict),
      COMMAND_ASSESS | COMMAND_PUBLISH},
     {"threads", 0, "N", "jobs made at the same time, else 2", OPTION_AT(threads), COMMAND_PUBLISH},
@@ -90,6 +93,14 @@ static const struct command_row command_rows[] = {
      "PDF, the bench sheets, and the list of the archive. A job file with mistakes is told\n"
      "and left out; the others are made.\n",
      COMMAND_PUBLISH, 1, OPERANDS_MANY},
+    {"find", "WORDS... [key=value ...] [-o DIR]", "parts and jobs, one line each",
+     "A word finds what has a word that begins so, whatever its case and accents; several\n"
+     "must all be met. `place=coupling outcome=fail` asks for facts by name: maker, model,\n"
+     "chassis, serial, valve, supply, year (1948..1952), decade, kind, type, marked, place,\n"
+     "was, done, outcome (as found), left, batch, fitted, from and to (date of return) and\n"
+     "due (call-back by then). A part is listed when it meets what its set does not, a job\n"
+     "when it meets all. Reads what publish last wrote into DIR. Exit 1 without a hit.\n",
+     COMMAND_FIND, 1, OPERANDS_MANY},
     {"seal", "JOB.yaml client|sale [-o DIR]", "set a published copy aside for good",
      "Copies the client's or the sale copy, as last published, into the archive's folder\n"
      "sealed/, which no command writes again, and appends a line to seals.txt. The same\n"
@@ -388,6 +399,41 @@ static int command_publish(struct session *session)
     return exit_of(session, result.broken, result.warned);
 }
 
+/* ---- find */
+
+static int command_find(struct session *session)
+{
+    const char *output = session->options.output ? session->options.output : "output";
+    struct columns columns = {0};
+    struct buffer lines = {0}, out = {0};
+    size_t damaged;
+    int answer = EXIT_INPUT;
+    if (find_read(output, &columns, &lines, &damaged) != FILE_OK) {
+        fprintf(stderr, "gridleak: there is no '%s/summaries.jsonl': publish first\n", output);
+    } else {
+        struct query_hits hits = query_run(&columns, (const char *const *)session->operands,
+                                           (size_t)session->operand_count, &session->arena);
+        (session->options.json ? find_write_json : find_write)(&columns, &hits, &out);
+        answer = print(&out);
+        if (damaged)
+            fprintf(stderr,
+                    "gridleak: %zu lines of '%s/summaries.jsonl' are of another version or "
+                    "damaged: publish again\n",
+                    damaged, output);
+        if (hits.unknown_key) {
+            fprintf(stderr, "gridleak: no fact is named '%s'; see gridleak find --help\n",
+                    hits.unknown_key);
+            answer = EXIT_INPUT;
+        } else if (answer == EXIT_DONE && hits.part_count + hits.job_count == 0) {
+            answer = EXIT_NO;
+        }
+    }
+    buffer_release(&out);
+    buffer_release(&lines);
+    columns_release(&columns);
+    return answer;
+}
+
 /* ---- seal, prove */
 
 static const char *today(struct arena *arena)
@@ -556,6 +602,8 @@ static int run(struct session *session, const struct command_row *command)
         return command_sheet(session);
     case COMMAND_PUBLISH:
         return command_publish(session);
+    case COMMAND_FIND:
+        return command_find(session);
     case COMMAND_SEAL:
         return command_seal(session);
     case COMMAND_PROVE:

@@ -364,7 +364,8 @@
     head(row, "jobs/" + name + "/shop.html", name + " " + parts.ref.text(part));
     cell(row, "p2 k-set", setName(job));
     cell(row, "p2", parts.type.text(part) || parts.kind.text(part));
-    cell(row, "p2", parts.marked.text(part));
+    /* a number stays with its unit */
+    cell(row, "p2", parts.marked.text(part).replace(/(\d) (?=\S)/g, "$1\u00a0"));
     cell(row, "p2", parts.place.text(part));
     cell(row, "n p1 k-leakage", number(parts.leakage.text(part)), "leakage");
     cell(row, "n p1 k-limit", number(parts.limit.text(part)), "limit");

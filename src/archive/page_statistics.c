@@ -145,13 +145,13 @@ static void add_table(struct statistics_work *work, enum grouping grouping)
     struct exhibit *exhibit =
         page_exhibit(frame, EXHIBIT_TABLE, arena_print(frame->arena, "table_%s", name));
     const struct column columns[] = {
-        page_column(frame, name, COLUMN_REF, 21, 1),
+        page_column(frame, name, COLUMN_REF, 19, 1),
         page_column(frame, "failed", COLUMN_NUMBER, 8, 1),
         page_column(frame, "read", COLUMN_NUMBER, 9, 1),
         page_column(frame, "sets", COLUMN_NUMBER, 8, 2),
         page_column(frame, "share", COLUMN_NUMBER, 10, 1),
         page_column(frame, "interval", COLUMN_TEXT, 14, 2),
-        page_column(frame, "unread", COLUMN_NUMBER, 8, 2),
+        page_column(frame, "unread", COLUMN_NUMBER, 10, 2),
         page_column(frame, "if_unread", COLUMN_TEXT, 14, 2),
         page_column(frame, "not_judged", COLUMN_NUMBER, 8, 2),
     };
@@ -247,15 +247,21 @@ static void add_typical(struct statistics_work *work)
 
 /* ---- revisits */
 
+/* With a true minus. */
+static const char *signed_text(const struct statistics_work *work, const char *format, double value)
+{
+    const char *text = arena_print(work->frame->arena, format, value);
+    return *text == '-' ? arena_print(work->frame->arena, "\u2212%s", text + 1) : text;
+}
+
 static const char *drift_text(const struct statistics_work *work, const char *format, double middle,
                               double low, double high)
 {
     if (isnan(middle))
         return NULL;
-    struct arena *arena = work->frame->arena;
     return phrase(&work->frame->say, "statistics.median", "median",
-                  arena_print(arena, format, middle), "low", arena_print(arena, format, low),
-                  "high", arena_print(arena, format, high), NULL);
+                  signed_text(work, format, middle), "low", signed_text(work, format, low), "high",
+                  signed_text(work, format, high), NULL);
 }
 
 static void add_drift(struct statistics_work *work)

@@ -95,7 +95,7 @@ def job_text(number, name, earlier):
     year = random_.randint(1930, 1962)
     serial = random_.randint(10000, 999999)
     random_ = random.Random(number)
-    start = 2020 + number // 600
+    start = 2020 + number // 600 + (5 if earlier is not None else 0)
     month, day = 1 + number // 50 % 12, 1 + number % 27
     out = ["job: %s" % name, "set:", "  maker: %s" % maker, "  model: %s" % model, "  chassis: C%d" % (serial % 97),
            "  serial: %d" % serial, "  year: about %d" % year, "  supply: transformer", "  mains: 230 V",
