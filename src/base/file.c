@@ -87,9 +87,12 @@ static enum file_status read_all(int file, size_t limit_bytes, struct buffer *co
 
 enum file_status file_read(const char *path, size_t limit_bytes, struct buffer *contents)
 {
+    /* Without waiting, for a pipe that nobody writes to must not hold a publish up; but what comes
+       through one that somebody writes to is waited for. */
     int file = open(path, O_RDONLY | O_CLOEXEC | O_NONBLOCK);
     if (file < 0)
         return status_of(errno);
+    fcntl(file, F_SETFL, O_RDONLY);
     enum file_status status = read_all(file, limit_bytes, contents);
     close(file);
     return status;

@@ -103,6 +103,23 @@ static bool refuse_marks(struct parse *parse, const yaml_char_t *anchor, const y
 }
 
 /* A key longer than its line would be is a value out of place. */
+/* The value without what may not be in it; *damaged (may be NULL) is set when something was. */
+static const char *scalar_text(struct parse *parse, const yaml_event_t *event, struct position at,
+                               bool *damaged)
+{
+    char *text =
+        arena_text(parse->arena, (const char *)event->data.scalar.value, event->data.scalar.length);
+    uint32_t first;
+    if (event->data.scalar.style == YAML_DOUBLE_QUOTED_SCALAR_STYLE &&
+        yaml_value_mend(text, event->data.scalar.length, &first)) {
+        diagnostic_add(&parse->told, parse->source, at, DIAGNOSTIC_CONTROL_CHARACTER, "delete it",
+                       "invisible character U+%04X, written as an escape", (unsigned)first);
+        if (damaged)
+            *damaged = true;
+    }
+    return text;
+}
+
 static struct node *node_of_key(struct parse *parse, const yaml_event_t *event)
 {
     struct position at = position_of(event->start_mark);
@@ -117,8 +134,7 @@ static struct node *node_of_key(struct parse *parse, const yaml_event_t *event)
     }
     struct node *node = arena_get(parse->arena, sizeof *node);
     refuse_marks(parse, event->data.scalar.anchor, event->data.scalar.tag, at, true);
-    node->key =
-        arena_text(parse->arena, (const char *)event->data.scalar.value, event->data.scalar.length);
+    node->key = scalar_text(parse, event, at, NULL);
     node->key_at = node->at = at;
     node->text = "";
     return node;
@@ -201,8 +217,7 @@ static bool take_scalar(struct parse *parse, const yaml_event_t *event)
         return true;
     }
     node->length = event->data.scalar.length;
-    node->text =
-        arena_text(parse->arena, (const char *)event->data.scalar.value, event->data.scalar.length);
+    node->text = scalar_text(parse, event, node->at, &node->damaged);
     if (plain && node->length)
         node->comment = comment_behind(parse, event->end_mark);
     return true;

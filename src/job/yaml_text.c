@@ -146,3 +146,21 @@ bool yaml_text_check(const struct source *source, struct diagnostics *diagnostic
         buffer_append(mended, check.copied, (size_t)(end - check.copied));
     return true;
 }
+
+bool yaml_value_mend(char *text, size_t length, uint32_t *first)
+{
+    bool found = false;
+    for (char *cursor = text, *end = text + length; cursor < end;) {
+        const char *next = cursor;
+        uint32_t code_point = utf8_next(&next, end);
+        size_t bytes = (size_t)(next - cursor);
+        bool control = code_point < 0x20 && code_point != '\n' && code_point != '\t';
+        if (control || is_refused(code_point)) {
+            *first = found ? *first : code_point;
+            found = true;
+            memset(cursor, ' ', bytes);
+        }
+        cursor += bytes;
+    }
+    return found;
+}

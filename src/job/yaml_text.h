@@ -9,6 +9,7 @@
 #include "base/diagnostic.h"
 
 #include <stdbool.h>
+#include <stdint.h>
 
 /*
  * Check size, encoding and characters. true: the text can be parsed; when mistakes were told that
@@ -17,6 +18,12 @@
  */
 bool yaml_text_check(const struct source *source, struct diagnostics *diagnostics,
                      struct buffer *mended);
+
+/*
+ * The same of a value, where a quoted one may hold such characters as escapes ("\u202E"): each
+ * becomes a space. true: there was one, *first. Line feeds and tabs may stand in a value.
+ */
+bool yaml_value_mend(char *text, size_t length, uint32_t *first);
 
 /* A line that YAML takes otherwise than it was meant. */
 struct bite {
