@@ -1,10 +1,7 @@
 # What the scripts of this folder share: sourced with $program, $root and $work set.
-failures=0
 
-say_failed() {
-    echo "FAILED: $*"
-    failures=$((failures + 1))
-}
+# Also in the subshells of pipelines: counted in a file.
+say_failed() { echo "FAILED: $*" | tee -a "$work/failures"; }
 
 # expect STATUS COMMAND...: run it; its words go to $work/stdout and $work/stderr.
 expect() {
@@ -71,5 +68,5 @@ archive_of() {
 }
 
 finish() {
-    [ "$failures" = 0 ] || { echo "$failures failed"; exit 1; }
+    [ ! -e "$work/failures" ] || exit 1
 }
