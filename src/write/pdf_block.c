@@ -197,12 +197,19 @@ static void place_long(struct paginator *paginator, size_t from, size_t to)
 static void shrink(struct strip *strip, double scale)
 {
     strip->height *= scale;
-    for (size_t i = 0; i < strip->item_count; i++)
-        if (strip->items[i].kind == ITEM_DRAWING)
-            strip->items[i].drawing.scale *= scale;
+    for (size_t i = 0; i < strip->item_count; i++) {
+        struct item *item = &strip->items[i];
+        if (item->kind == ITEM_DRAWING) {
+            item->drawing.scale *= scale;
+        } else if (item->kind == ITEM_IMAGE) {
+            item->image.width *= scale;
+            item->image.height *= scale;
+        }
+    }
 }
 
-/* Whether a drawing among strips from..to could give up `excess` of its height; then it does. */
+/* Whether a drawing or pictures among strips from..to could give up `excess` of its height; then it
+ * does. */
 static bool shrink_by(struct paginator *paginator, size_t from, size_t to, double excess)
 {
     for (size_t i = from; i < to; i++) {
@@ -216,6 +223,21 @@ static bool shrink_by(struct paginator *paginator, size_t from, size_t to, doubl
     return false;
 }
 
+/* Where a unit that does not fit here is parted, so that no large part of a page stays empty;
+   `from`: nowhere. */
+static size_t parting(const struct paginator *paginator, size_t from, size_t to)
+{
+    const double much = 0.16; /* of the page's text */
+    const struct page_geometry *page = paginator->flow->page;
+    double room = page->bottom - paginator->y;
+    if (room < much * (page->bottom - page->top))
+        return from;
+    for (size_t i = to - 1; i > from; i--)
+        if (paginator->flow->strips[i - 1]->may_part && unit_height(paginator, from, i) <= room)
+            return i;
+    return from;
+}
+
 static void place_unit(struct paginator *paginator, size_t from, size_t to)
 {
     const struct page_geometry *page = paginator->flow->page;
@@ -224,6 +246,14 @@ static void place_unit(struct paginator *paginator, size_t from, size_t to)
         next_page(paginator);
     double excess = paginator->y + unit_height(paginator, from, to) - page->bottom;
     if (excess > slack && !shrink_by(paginator, from, to, excess)) {
+        size_t part = paginator->at_top ? from : parting(paginator, from, to);
+        if (part > from) {
+            for (size_t i = from; i < part; i++)
+                place(paginator, paginator->flow->strips[i]);
+            next_page(paginator);
+            place_unit(paginator, part, to);
+            return;
+        }
         if (unit_height(paginator, from, to) > page->bottom - page->top) {
             place_long(paginator, from, to);
             return;

@@ -49,9 +49,10 @@ struct strip {
     double before; /* space above, dropped at the top of a page */
     double height;
     bool keep_next;     /* not parted from the next strip, if a page can hold both */
+    bool may_part;      /* kept with the next, but parted when much of a page would stay empty */
     bool page_break;    /* begins a page */
     bool top_rule;      /* hairline on top, unless it begins a page or follows a repeated head */
-    double least_scale; /* a drawing may be made this much smaller to stay on its page; 0: not */
+    double least_scale; /* pictures may be made this much smaller to stay on a page; 0: not */
     struct item *items;
     size_t item_count, item_capacity;
     const struct strip *head;      /* of its table, repeated when it begins a page; NULL: none */
@@ -134,7 +135,7 @@ struct page_plan {
     unsigned page_count; /* at least 1 */
 };
 
-/* Decide what stands where, and shrink drawings that may be. Belongs to the flow's arena. */
+/* Decide what stands where, and shrink pictures that may be. Belongs to the flow's arena. */
 struct page_plan flow_paginate(struct flow *flow);
 
 #endif

@@ -269,7 +269,7 @@ static void compose_plot(struct composer *composer, const char *number, const st
     item.drawing.drawing = drawing;
     item.drawing.scale = scale;
     strip_item(flow, strip, &item);
-    strip->least_scale = plot->kind == PLOT_GLANCE ? least_scale / scale : 0;
+    strip->least_scale = least_scale / scale;
     flow_space(flow, mm(1.7));
     size_t before = flow->count;
     compose_caption(composer, number, plot->caption, figure_text_pt);
@@ -306,6 +306,7 @@ static void compose_plate(struct composer *composer, const char *number, const s
     size_t first = flow->count;
     flow_space(flow, mm(5));
     struct strip *strip = flow_strip(flow, height);
+    strip->least_scale = 0.75;
     struct row_box boxes[2] = {{.x = 0}};
     double x = 0;
     for (size_t i = 0; i < count; i++) {
@@ -563,7 +564,7 @@ void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, c
         composer->flow.page_break = true;
         break;
     case EXHIBIT_SMALL:
-        composer->body = (struct type_size){type_facts.size, 12.15};
+        composer->body = (struct type_size){7.5, 11.2};
         break;
     }
 }

@@ -495,8 +495,10 @@ static void keep_rows(struct flow *flow, const struct table *table,
 {
     bool whole = plain_rows(table) <= KEPT_ROWS;
     size_t end = whole ? strips->last : strips->head + 2;
-    for (size_t i = strips->first; i < strips->last && i <= end; i++)
+    for (size_t i = strips->first; i < strips->last && i <= end; i++) {
         flow->strips[i]->keep_next = true;
+        flow->strips[i]->may_part = whole && i > strips->head + 1 && i + 2 < strips->last;
+    }
     if (strips->last > strips->head + 1)
         flow->strips[strips->last - 1]->keep_next = true;
     if (strips->last + 1 < flow->count && !table->write_in)
