@@ -2,6 +2,7 @@
  * A sale copy must not name the owner. What the copy leaves out is filtered elsewhere; this looks
  * for what slipped into the texts that stay.
  */
+#include "base/memory.h"
 #include "report/report.h"
 #include "report/shown_text.h"
 
@@ -33,6 +34,8 @@ static const char *fold(struct arena *arena, const char *text, bool keep_lines)
         utf8proc_map((const utf8proc_uint8_t *)text, 0, &folded,
                      UTF8PROC_NULLTERM | UTF8PROC_STABLE | UTF8PROC_DECOMPOSE | UTF8PROC_COMPAT |
                          UTF8PROC_CASEFOLD | UTF8PROC_STRIPMARK | UTF8PROC_IGNORE);
+    if (length == UTF8PROC_ERROR_NOMEM)
+        memory_exhausted();
     if (length < 0)
         return arena_copy(arena, text);
     char *copy = arena_get(arena, (size_t)length + 1);

@@ -1,4 +1,5 @@
 #include "report/prose.h"
+#include "report/tree_memory.h"
 
 #include "base/memory.h"
 
@@ -161,7 +162,7 @@ void prose_graft(struct composition *composition, cmark_node *root, const struct
                        "text is longer than 64 KB");
         return;
     }
-    cmark_node *tree = cmark_parse_document(prose->text, length, CMARK_OPT_VALIDATE_UTF8);
+    cmark_node *tree = tree_of(prose->text, length);
     prose_clean(composition, tree, source, prose->at);
     lower_headings(composition, tree, level);
     prose_move(tree, root);

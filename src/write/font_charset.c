@@ -132,6 +132,8 @@ static enum font_status write_program(struct font_streams *streams, const struct
     struct buffer plain = {0};
     enum font_status status =
         font_face_subset(set->face, glyphs, set->count, &plain, subset_glyphs);
+    if (status == FONT_SUBSET_FAILED)
+        memory_exhausted(); /* the face could be cut when it was opened */
     if (status == FONT_OK) {
         streams->program_length = plain.length;
         deflate_append(&streams->program, plain.data, plain.length, level);

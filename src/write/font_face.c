@@ -311,6 +311,23 @@ static hb_subset_input_t *subset_input(const uint16_t *glyphs, size_t count)
     return input;
 }
 
+/* HarfBuzz goes on without what it found no memory for: look whether all is there. */
+static bool subset_is_whole(hb_blob_t *file, unsigned glyph_count)
+{
+    static const hb_tag_t tags[] = {HB_TAG('g', 'l', 'y', 'f'), HB_TAG('l', 'o', 'c', 'a'),
+                                    HB_TAG('h', 'e', 'a', 'd'), HB_TAG('h', 'h', 'e', 'a'),
+                                    HB_TAG('h', 'm', 't', 'x'), HB_TAG('m', 'a', 'x', 'p')};
+    hb_face_t *face = hb_face_create(file, 0);
+    bool whole = hb_face_get_glyph_count(face) == glyph_count;
+    for (size_t i = 0; i < sizeof tags / sizeof tags[0] && whole; i++) {
+        struct table table = table_open(face, tags[i]);
+        whole = table.length > 0;
+        table_close(&table);
+    }
+    hb_face_destroy(face);
+    return whole;
+}
+
 enum font_status font_face_subset(const struct font_face *face, const uint16_t *glyphs,
                                   size_t count, struct buffer *program, uint16_t *subset_glyphs)
 {
@@ -322,11 +339,14 @@ enum font_status font_face_subset(const struct font_face *face, const uint16_t *
         hb_blob_t *file = hb_face_reference_blob(subset);
         unsigned length;
         const char *data = hb_blob_get_data(file, &length);
-        if (length > 0) {
+        const hb_map_t *renumbered = hb_subset_plan_old_to_new_glyph_mapping(plan);
+        bool all = length > 0 && subset_is_whole(file, hb_map_get_population(renumbered));
+        for (size_t i = 0; i < count && all; i++) {
+            subset_glyphs[i] = (uint16_t)hb_map_get(renumbered, glyphs[i]);
+            all = hb_map_has(renumbered, glyphs[i]);
+        }
+        if (all) {
             buffer_append(program, data, length);
-            const hb_map_t *renumbered = hb_subset_plan_old_to_new_glyph_mapping(plan);
-            for (size_t i = 0; i < count; i++)
-                subset_glyphs[i] = (uint16_t)hb_map_get(renumbered, glyphs[i]);
             status = FONT_OK;
         }
         hb_blob_destroy(file);
