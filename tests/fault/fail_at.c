@@ -1,0 +1,174 @@
+/*
+ * Preloaded into the program: lets the n-th call of one kind fail, counts the calls.
+ *   FAULT_KIND   memory | write | open | rename | mkdir | unlink | close
+ *   FAULT_AT     which call fails, from 1; 0 or none: only count
+ *   FAULT_STAY   all later ones fail as well (a disk stays full)
+ *   FAULT_COUNT  file that gets the number of calls when the program ends, however it ends
+ * Only calls of the program and its libraries after main has begun count.
+ */
+#define _GNU_SOURCE
+#include <dlfcn.h>
+#include <errno.h>
+#include <fcntl.h>
+#include <stdarg.h>
+#include <stdatomic.h>
+#include <stdio.h>
+#include <stdlib.h>
+#include <string.h>
+#include <sys/stat.h>
+#include <sys/types.h>
+#include <unistd.h>
+
+enum kind { KIND_NONE, KIND_MEMORY, KIND_WRITE, KIND_OPEN, KIND_RENAME, KIND_MKDIR, KIND_UNLINK, KIND_CLOSE };
+
+static enum kind kind;
+static unsigned long fail_at;
+static int stay;
+static atomic_ulong calls;
+static int count_file = -1;
+
+extern void *__libc_malloc(size_t);
+extern void *__libc_calloc(size_t, size_t);
+extern void *__libc_realloc(void *, size_t);
+extern void *__libc_memalign(size_t, size_t);
+
+__attribute__((constructor)) static void begin(void)
+{
+    static const char *const names[] = {"", "memory", "write", "open", "rename", "mkdir", "unlink", "close"};
+    const char *wanted = getenv("FAULT_KIND"), *at = getenv("FAULT_AT");
+    const char *count = getenv("FAULT_COUNT");
+    if (count)
+        count_file = open(count, O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
+    for (int i = 1; wanted && i < 8; i++)
+        if (strcmp(wanted, names[i]) == 0)
+            kind = (enum kind)i;
+    fail_at = at ? strtoul(at, NULL, 10) : 0;
+    stay = getenv("FAULT_STAY") != NULL;
+}
+
+static int fails(enum kind of)
+{
+    if (of != kind)
+        return 0;
+    unsigned long now = atomic_fetch_add(&calls, 1) + 1;
+    return fail_at && (now == fail_at || (stay && now > fail_at));
+}
+
+__attribute__((destructor)) static void end(void)
+{
+    char text[32];
+    int length = snprintf(text, sizeof text, "%lu\n", (unsigned long)calls);
+    if (count_file >= 0 && pwrite(count_file, text, (size_t)length, 0) < 0)
+        return;
+}
+
+void *malloc(size_t size)
+{
+    if (fails(KIND_MEMORY)) {
+        errno = ENOMEM;
+        return NULL;
+    }
+    return __libc_malloc(size);
+}
+
+void *calloc(size_t count, size_t size)
+{
+    if (fails(KIND_MEMORY)) {
+        errno = ENOMEM;
+        return NULL;
+    }
+    return __libc_calloc(count, size);
+}
+
+void *realloc(void *block, size_t size)
+{
+    if (fails(KIND_MEMORY)) {
+        errno = ENOMEM;
+        return NULL;
+    }
+    return __libc_realloc(block, size);
+}
+
+int posix_memalign(void **block, size_t alignment, size_t size)
+{
+    if (fails(KIND_MEMORY))
+        return ENOMEM;
+    *block = __libc_memalign(alignment, size);
+    return *block ? 0 : ENOMEM;
+}
+
+#define REAL(name) ((__typeof__(&name))dlsym(RTLD_NEXT, #name))
+
+ssize_t write(int file, const void *data, size_t size)
+{
+    static ssize_t (*real)(int, const void *, size_t);
+    if (!real)
+        real = REAL(write);
+    if (file > 2 && fails(KIND_WRITE)) {
+        errno = ENOSPC;
+        /* a disk that is full from now on takes half of it first */
+        return stay && calls == fail_at && size > 1 ? real(file, data, size / 2) : -1;
+    }
+    return real(file, data, size);
+}
+
+static int opened(int (*real)(const char *, int, ...), const char *path, int flags, mode_t mode)
+{
+    if ((flags & O_ACCMODE) != O_RDONLY && fails(KIND_OPEN)) {
+        errno = EMFILE;
+        return -1;
+    }
+    return real(path, flags, mode);
+}
+
+int open(const char *path, int flags, ...)
+{
+    static int (*real)(const char *, int, ...);
+    va_list more;
+    va_start(more, flags);
+    mode_t mode = flags & O_CREAT ? va_arg(more, mode_t) : 0;
+    va_end(more);
+    if (!real)
+        real = REAL(open);
+    return opened(real, path, flags, mode);
+}
+
+int rename(const char *from, const char *to)
+{
+    if (fails(KIND_RENAME)) {
+        errno = EIO;
+        return -1;
+    }
+    return REAL(rename)(from, to);
+}
+
+int mkdir(const char *path, mode_t mode)
+{
+    if (fails(KIND_MKDIR)) {
+        errno = ENOSPC;
+        return -1;
+    }
+    return REAL(mkdir)(path, mode);
+}
+
+int unlink(const char *path)
+{
+    if (fails(KIND_UNLINK)) {
+        errno = EIO;
+        return -1;
+    }
+    return REAL(unlink)(path);
+}
+
+int close(int file)
+{
+    static int (*real)(int);
+    if (!real)
+        real = REAL(close);
+    int answer = real(file);
+    if (file > 2 && fails(KIND_CLOSE)) {
+        errno = EIO;
+        return -1;
+    }
+    return answer;
+}
