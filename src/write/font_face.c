@@ -244,8 +244,20 @@ static enum font_status read_face(hb_face_t *source, struct font_face *face)
     return face->name[0] ? status : FONT_NOT_TRUETYPE;
 }
 
+/*
+ * HarfBuzz 6.0.0 does not survive every allocation that fails: let memory end here, in our hands,
+ * where less is left than it takes for a face. Never touched, and too large for malloc's own
+ * store, so that it costs two calls of the system.
+ */
+static void make_sure_of_room(void)
+{
+    enum { ROOM_BYTES = 33 << 20 };
+    free(memory_get(ROOM_BYTES));
+}
+
 enum font_status font_face_open(const char *path, struct font_face **face)
 {
+    make_sure_of_room();
     hb_blob_t *blob = hb_blob_create_from_file_or_fail(path);
     if (!blob)
         return FONT_NOT_READABLE;
@@ -331,6 +343,7 @@ static bool subset_is_whole(hb_blob_t *file, unsigned glyph_count)
 enum font_status font_face_subset(const struct font_face *face, const uint16_t *glyphs,
                                   size_t count, struct buffer *program, uint16_t *subset_glyphs)
 {
+    make_sure_of_room();
     hb_subset_input_t *input = subset_input(glyphs, count);
     hb_subset_plan_t *plan = input ? hb_subset_plan_create_or_fail(face->outlines, input) : NULL;
     hb_face_t *subset = plan ? hb_subset_plan_execute_or_fail(plan) : NULL;

@@ -94,4 +94,23 @@ publish open '' ''
 publish rename '' ''
 publish mkdir '' '0'
 publish close '' '0'
+
+# Less and less memory for the whole: the program says so, wherever it ends.
+short=0
+for limit in 24 28 32 36 40 44 48 52 56 60 64 68 72 76 80 84 88 92 96 100 110 120 130 140 150 160 180 200 240 280; do
+    rm -rf cut
+    cp -a old-out cut
+    status=0
+    sh -c "ulimit -v $((limit * 1024)); exec '$program' publish -q --threads 1 new -o cut" >stdout 2>stderr || status=$?
+    # 127: the loader itself had no room for the libraries
+    case $status in
+    0) same || say_failed "ulimit -v $limit MB: exit 0 with other files" ;;
+    3) short=$((short + 1)); grep -q '^gridleak: ' stderr || say_failed "ulimit -v $limit MB: no sentence" ;;
+    127) ;;
+    *) say_failed "ulimit -v $limit MB: exit $status: $(tail -n 2 stderr)" ;;
+    esac
+    whole "ulimit -v $limit MB"
+done
+[ $short -ge 3 ] || say_failed "only $short of the limits were too small"
+echo "$short limits of memory too small, and told"
 finish
