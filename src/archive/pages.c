@@ -1,5 +1,6 @@
 #include "archive/pages.h"
 
+#include "archive/manual_page.h"
 #include "archive/page_frame.h"
 
 #include <dirent.h>
@@ -28,7 +29,8 @@ static const char *note_path(const char *output, struct arena *arena)
 bool pages_are_whole(const char *output, const char *setting)
 {
     static const char *const pages[] = {"index.html",      "search.js",      "search-data.js",
-                                        "statistics.html", "site-style.css", "summaries.jsonl"};
+                                        "statistics.html", "site-style.css", "summaries.jsonl",
+                                        "manual.html"};
     struct arena arena = {0};
     struct buffer note = {0};
     bool whole = file_read(note_path(output, &arena), 4096, &note) == FILE_OK &&
@@ -161,7 +163,7 @@ static enum file_status write_pages(struct pages_work *work, struct diagnostics 
     };
     enum file_status (*const writers[])(struct page_frame *) = {
         page_style_write, page_index_write, page_search_write, page_models_write,
-        page_statistics_write};
+        page_statistics_write, manual_page_write};
     enum file_status status = page_write_file(&frame, "summaries.jsonl", &work->summaries);
     for (size_t i = 0; i < sizeof writers / sizeof *writers && status == FILE_OK; i++)
         status = writers[i](&frame);

@@ -10,6 +10,7 @@
 
 #include "job/job.h"
 #include "job/yaml_tree.h"
+#include "reference/source.h"
 
 #include <stddef.h>
 
@@ -76,7 +77,11 @@ struct field {
     bool choices_are_hints; /* the schema must not refuse other values */
     enum field_start start;
     const char *text;    /* for manual and schema: what it is, in a few words */
-    const char *example; /* as typed in a job file */
+    const char *example; /* as typed in a job file; of a policy limit its default */
+    /* of a policy limit, for the manual: why it stands where it stands, and who says so;
+       SOURCE_NONE: nobody but the shop */
+    const char *why;
+    enum source_key source;
 };
 
 struct record {

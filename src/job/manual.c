@@ -5,7 +5,7 @@
 
 #include <string.h>
 
-enum { WIDTH = 80, KEY_WIDTH = 20 };
+enum { WIDTH = 80, MEANING_COLUMN = 34 };
 
 /* Words laid into lines of WIDTH, each indented. */
 struct wrap {
@@ -44,168 +44,106 @@ static void wrap_end(struct wrap *wrap)
     wrap->column = 0;
 }
 
-/* What the value is: choices, unit, form. */
-static void value_text(struct buffer *out, const struct field *field)
+/* Behind the words: the choices, or where the keys below it stand. */
+static void takes_text(struct buffer *out, const struct field *field)
 {
-    bool first = true;
-    if (!field->choices) {
-        buffer_text(out, field_value_text(field));
-        if (field->record)
-            buffer_print(out, ": see %s", field->record->section);
+    if (field->choices) {
+        const char *between = ": ";
+        for (const char *const *choice = field->choices; *choice; choice++)
+            if (**choice) {
+                buffer_print(out, "%s%s", between, *choice);
+                between = ", ";
+            }
         return;
     }
-    buffer_text(out, "one of: ");
-    for (const char *const *choice = field->choices; *choice; choice++) {
-        if (!**choice)
-            continue;
-        buffer_print(out, "%s%s", first ? "" : ", ", *choice);
-        first = false;
-    }
+    if (field->kind == FIELD_RESISTANCE)
+        buffer_text(out, "; or the ref of a listed resistor or winding");
+    if (field->record && strcmp(field->record->section, field->key) != 0)
+        buffer_print(out, ": %s", field->record->section);
 }
 
-static void example_text(struct buffer *out, const struct field *field)
+/* The key as typed, with its example where one line holds it. */
+static void typed_text(struct buffer *out, const struct field *field)
 {
-    switch (field->kind) {
-    case FIELD_LINES:
-        buffer_print(out, "- %s", field->example);
+    buffer_print(out, "%s:%s", field->key, field->record ? " ..." : "");
+    if (field->record || field->kind == FIELD_LINES || field->kind == FIELD_FREE)
         return;
-    case FIELD_FREE:
-        buffer_text(out, field->example);
-        return;
-    case FIELD_TABLE:
-    case FIELD_LIST:
-    case FIELD_RECORD:
-        return;
-    case FIELD_TEXT:
-    case FIELD_PROSE:
-    case FIELD_CHOICE:
-    case FIELD_FLAG:
-    case FIELD_WHOLE:
-    case FIELD_QUANTITY:
-    case FIELD_NUMBER:
-    case FIELD_FRACTION:
-    case FIELD_RESISTANCE:
-    case FIELD_DATE:
-    case FIELD_YEARS:
-    case FIELD_SIZE:
-    case FIELD_LINE:
-        buffer_print(out, "%s: ", field->key);
-        yaml_scalar_write(out, field->example, 2);
-    }
+    buffer_byte(out, ' ');
+    yaml_scalar_write(out, field->example, 2);
 }
 
-/* ---- plain ---- */
+/* What is typed on the lines below the key. */
+static void below_text(struct buffer *out, const struct field *field, unsigned indent)
+{
+    if (field->kind == FIELD_LINES || field->kind == FIELD_FREE)
+        buffer_print(out, "%*s%s%s\n", (int)indent + 2, "", field->kind == FIELD_LINES ? "- " : "",
+                     field->example);
+}
 
-static void field_plain(struct buffer *out, const struct field *field)
+static void field_write(struct buffer *out, const struct field *field, unsigned indent)
 {
     struct buffer text = {0};
-    struct wrap wrap = {out, KEY_WIDTH, 0};
-    bool is_long = strlen(field->key) > KEY_WIDTH - 3;
-    if (is_long)
-        buffer_print(out, "  %s\n", field->key);
+    typed_text(&text, field);
+    bool fits = indent + text.length <= MEANING_COLUMN - 2;
+    struct wrap typed = {out, indent, 0};
+    wrap_words(&typed, buffer_string(&text));
+    if (fits)
+        buffer_print(out, "%*s", (int)(MEANING_COLUMN - typed.column), "");
     else
-        buffer_print(out, "  %-*s", KEY_WIDTH - 2, field->key);
-    wrap.column = is_long ? 0 : KEY_WIDTH;
+        wrap_end(&typed);
+    buffer_clear(&text);
     buffer_print(&text, "%s%s", field->text, field->required ? " (required)" : "");
-    wrap_words(&wrap, buffer_string(&text));
-    wrap_end(&wrap);
-    buffer_clear(&text);
-    value_text(&text, field);
-    wrap_words(&wrap, buffer_string(&text));
-    wrap_end(&wrap);
-    buffer_clear(&text);
-    example_text(&text, field);
-    if (text.length) {
-        wrap.indent += 2;
-        wrap_words(&wrap, buffer_string(&text));
-        wrap_end(&wrap);
-    }
+    takes_text(&text, field);
+    struct wrap meaning = {out, MEANING_COLUMN, fits ? MEANING_COLUMN : 0};
+    wrap_words(&meaning, buffer_string(&text));
+    wrap_end(&meaning);
+    below_text(out, field, indent);
     buffer_release(&text);
 }
 
-static void places_plain(struct buffer *out)
+static void places_write(struct buffer *out)
 {
-    buffer_text(out, "\n  What a place needs, once there is a reading:\n");
+    buffer_text(out,
+                "\nplaces\n  What a capacitor needs there, once there is a reading or the sheet "
+                "is to give\n  a limit.\n\n");
     for (int place = PLACE_UNKNOWN + 1; place < PLACE_COUNT; place++)
-        buffer_print(out, "    %-18s %s\n", place_text((enum place)place),
+        buffer_print(out, "  %-*s%s\n", MEANING_COLUMN - 2, place_text((enum place)place),
                      place_needs_text((enum place)place));
 }
 
-static void record_plain(struct buffer *out, const struct record *record)
+static void record_write(struct buffer *out, const struct record *record)
 {
     struct wrap wrap = {out, 2, 0};
-    buffer_print(out, "%s%s\n", out->length ? "\n" : "", record->section);
+    buffer_print(out, "\n%s\n", record->section);
     wrap_words(&wrap, record->text);
     wrap_end(&wrap);
-    if (record->keyed)
-        buffer_print(out, "\n  %s:%s%s\n", record->key_example, record->example ? " " : "",
-                     record->example ? record->example : "");
-    for (size_t i = 0; i < record->field_count; i++) {
-        buffer_byte(out, '\n');
-        field_plain(out, &record->fields[i]);
-    }
-    if (strcmp(record->section, "capacitors") == 0)
-        places_plain(out);
-}
-
-/* ---- Markdown ---- */
-
-static void field_markdown(struct buffer *out, const struct field *field)
-{
-    struct buffer example = {0};
-    buffer_print(out, "- `%s`: %s%s; ", field->key, field->text,
-                 field->required ? " (required)" : "");
-    value_text(out, field);
-    example_text(&example, field);
-    if (example.length)
-        buffer_print(out, ". `%s`", buffer_string(&example));
     buffer_byte(out, '\n');
-    buffer_release(&example);
-}
-
-static void record_markdown(struct buffer *out, const struct record *record)
-{
-    buffer_print(out, "%s## %s\n\n%s\n\n", out->length ? "\n" : "", record->section, record->text);
     if (record->keyed)
-        buffer_print(out, "`%s:%s%s`\n\n", record->key_example, record->example ? " " : "",
+        buffer_print(out, "  %s:%s%s\n", record->key_example, record->example ? " " : "",
                      record->example ? record->example : "");
     for (size_t i = 0; i < record->field_count; i++)
-        field_markdown(out, &record->fields[i]);
-    if (strcmp(record->section, "capacitors") != 0)
-        return;
-    buffer_text(out, "\nWhat a place needs, once there is a reading:\n\n");
-    for (int place = PLACE_UNKNOWN + 1; place < PLACE_COUNT; place++)
-        buffer_print(out, "- `%s`: %s\n", place_text((enum place)place),
-                     place_needs_text((enum place)place));
+        field_write(out, &record->fields[i], record->keyed ? 4 : 2);
+    if (strcmp(record->section, "capacitors") == 0)
+        places_write(out);
 }
 
-/* ---- all records, each before those below it ---- */
-
-static void walk(struct buffer *out, const struct record *record,
-                 void write(struct buffer *, const struct record *))
+/* Each before those below it. */
+static void walk(struct buffer *out, const struct record *record)
 {
-    write(out, record);
-    for (size_t i = 0; i < record->field_count; i++) {
+    record_write(out, record);
+    for (size_t i = 0; i < record->field_count; i++)
         if (record->fields[i].record)
-            walk(out, record->fields[i].record, write);
-    }
-}
-
-static void all(struct buffer *buffer, void write(struct buffer *, const struct record *))
-{
-    struct buffer out = {0};
-    walk(&out, &job_record, write);
-    walk(&out, &shop_record, write);
-    buffer_append(buffer, out.data, out.length);
-    buffer_release(&out);
+            walk(out, record->fields[i].record);
 }
 
 void manual_write(struct buffer *buffer)
 {
-    all(buffer, record_plain);
-}
-
-void manual_write_markdown(struct buffer *buffer)
-{
-    all(buffer, record_markdown);
+    buffer_text(buffer,
+                "Every key as typed, with an example, and what it is. What is not (required) may\n"
+                "be left out. ... stands for keys of its own, in the section of that name below.\n"
+                "Values are written as the trade does: 0.05 uF, .05mfd, 4n7, 470k, 0.5 meg,\n"
+                "2.4 uA, 220 M, 19 C, 5 min, 465 kc/s; off scale: over 2000 M. Text of any length\n"
+                "stands behind |, on lines of its own below the key.\n");
+    walk(buffer, &job_record);
+    walk(buffer, &shop_record);
 }

@@ -10,7 +10,4 @@
 /* Append it as plain text of 80 columns, for `gridleak fields`. */
 void manual_write(struct buffer *buffer);
 
-/* The same as Markdown, with a heading of level 2 for each section. */
-void manual_write_markdown(struct buffer *buffer);
-
 #endif

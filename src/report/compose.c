@@ -48,6 +48,9 @@ static const struct {
     {"sheet_bleed", exhibit_sheet_bleed},
     {"assessed_capacitors", exhibit_assessed_capacitors},
     {"assessed_stages", exhibit_assessed_stages},
+    {"fields", exhibit_fields},
+    {"policy_limits", exhibit_policy_limits},
+    {"rule_sources", exhibit_rule_sources},
 };
 
 static exhibit_builder *builder_of(const char *name)
@@ -171,10 +174,10 @@ static const char *template_name(enum document_kind kind)
         return "sheet.md";
     case DOCUMENT_ASSESSMENT:
         return "assessment.md";
-    case DOCUMENT_PAGE:
-        break;
+    case DOCUMENT_MANUAL:
+        return "manual.md";
     }
-    return "page.md";
+    return "";
 }
 
 static const char *title_key(enum document_kind kind)
@@ -186,10 +189,10 @@ static const char *title_key(enum document_kind kind)
         return "document.sheet";
     case DOCUMENT_ASSESSMENT:
         return "document.assessment";
-    case DOCUMENT_PAGE:
-        break;
+    case DOCUMENT_MANUAL:
+        return "document.manual";
     }
-    return "document.page";
+    return "";
 }
 
 static const char *document_phrase(struct composition *composition, const char *key)
@@ -227,7 +230,8 @@ static struct document *make_document(struct composition *composition, cmark_nod
         .skip_word = phrase(say, "document.skip", NULL),
         .footer = document_phrase(composition, arena_print(composition->arena, "%s.footer", key)),
         .page = shop->page,
-        .sections_numbered = composition->kind == DOCUMENT_RECORD,
+        .sections_numbered =
+            composition->kind == DOCUMENT_RECORD || composition->kind == DOCUMENT_MANUAL,
         .accent = shop->accent,
         .accent_dark = shop->accent_dark,
         .date = job->returned.set ? job->returned : job->received,
@@ -280,4 +284,14 @@ struct document *report_compose(const struct findings *findings, enum document_k
         document = NULL;
     }
     return document;
+}
+
+struct document *report_compose_manual(const struct shop *shop, const struct templates *templates,
+                                       struct arena *arena, struct diagnostics *diagnostics)
+{
+    struct job *nothing = arena_get(arena, sizeof *nothing);
+    struct findings *findings = arena_get(arena, sizeof *findings);
+    findings->job = nothing;
+    findings->shop = shop;
+    return report_compose(findings, DOCUMENT_MANUAL, templates, NULL, arena, diagnostics);
 }

@@ -142,7 +142,8 @@ exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents
     exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stage, exhibit_voltages,
     exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_policy,
     exhibit_sources, exhibit_instruments, exhibit_visits, exhibit_write_on, exhibit_sheet_leakage,
-    exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages;
+    exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages,
+    exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
 
 /* ---- reforming: the plan of one electrolytic, for the bench sheet.
    Limiter R = max(V_end/I_ceiling, V_end^2/(4*P_ceiling)); steps of V_end; the bleeder R*C*ln(V/10
@@ -165,6 +166,8 @@ bool has_soak_curves(const struct composition *composition);
 /* ---- what a template sees */
 
 struct mustache_value *values_of(struct composition *composition);
+/* What manual.md sees besides: `keys` (section, text, example, index) and `has_numbers`. */
+void manual_values(struct composition *composition, struct mustache_value *values);
 /* A prose field of the job by its name in templates; NULL: no such field, or empty. */
 const struct prose *composition_prose(const struct composition *composition, const char *name,
                                       size_t index);

@@ -16,7 +16,7 @@
 
 #include <cmark.h>
 
-enum document_kind { DOCUMENT_RECORD, DOCUMENT_SHEET, DOCUMENT_PAGE, DOCUMENT_ASSESSMENT };
+enum document_kind { DOCUMENT_RECORD, DOCUMENT_SHEET, DOCUMENT_MANUAL, DOCUMENT_ASSESSMENT };
 
 struct document {
     enum document_kind kind;

@@ -49,9 +49,26 @@ static void name_document(const struct composition *composition, struct title_bl
             phrase(say, "title.assessment", "job", job, "in_progress", in_progress, NULL);
         block->subtitle = set_line(composition);
         break;
-    case DOCUMENT_PAGE:
+    case DOCUMENT_MANUAL:
+        block->title = phrase(say, "title.manual", NULL);
         break;
     }
+}
+
+/* The picture behind the last photograph. */
+static const struct plate_picture *logo(const struct composition *composition)
+{
+    const struct report_picture *given =
+        composition->pictures ? &composition->pictures[composition->job->photo_count] : NULL;
+    if (!given || !given->file)
+        return NULL;
+    struct plate_picture *picture = arena_get(composition->arena, sizeof *picture);
+    *picture = (struct plate_picture){.file = given->file,
+                                      .text = composition->shop->name,
+                                      .width_px = given->width_px,
+                                      .height_px = given->height_px,
+                                      .picture = given->picture};
+    return picture;
 }
 
 void exhibit_title(struct composition *composition, size_t index)
@@ -64,6 +81,7 @@ void exhibit_title(struct composition *composition, size_t index)
         .shop_trade = shop->trade,
         .shop_address = shop->address,
         .shop_contact = shop->contact,
+        .logo = logo(composition),
     };
     name_document(composition, &exhibit->title);
     exhibit_place(composition, exhibit);

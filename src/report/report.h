@@ -26,7 +26,8 @@ const struct words *templates_words(const struct templates *templates);
 void report_explain(struct findings *findings, const struct words *words, struct arena *arena);
 
 /* Pictures of a record, decoded and renamed 01.jpg ... by the caller (write/picture.h), in the
-   order of job->photos. file NULL: left out (missing or damaged; a diagnostic said so). */
+   order of job->photos, and behind them the shop's logo. file NULL: left out (missing or damaged; a
+   diagnostic said so). */
 struct report_picture {
     const char *file;
     unsigned width_px, height_px;
@@ -43,6 +44,11 @@ struct document *report_compose(const struct findings *findings, enum document_k
                                 const struct templates *templates,
                                 const struct report_picture *pictures, struct arena *arena,
                                 struct diagnostics *diagnostics);
+
+/* The manual, DOCUMENT_MANUAL from manual.md, which speaks of no job; NULL after a template error.
+ */
+struct document *report_compose_manual(const struct shop *shop, const struct templates *templates,
+                                       struct arena *arena, struct diagnostics *diagnostics);
 
 /* The name of the owner, its last word or the contact found in text of the job that a sale copy
    would show: a diagnostic each. true when the sale copy may be written. */

@@ -450,5 +450,7 @@ struct mustache_value *values_of(struct composition *composition)
     put_reforms(&root);
     put_reform_plans(&root);
     put_hazards(&root);
+    if (composition->kind == DOCUMENT_MANUAL)
+        manual_values(composition, root.map);
     return root.map;
 }

@@ -391,7 +391,7 @@ static const char *kind_name(enum document_kind kind)
         return "record";
     case DOCUMENT_SHEET:
         return "sheet";
-    case DOCUMENT_PAGE:
+    case DOCUMENT_MANUAL:
         return "page";
     case DOCUMENT_ASSESSMENT:
         return "assessment";

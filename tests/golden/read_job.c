@@ -1,5 +1,5 @@
 /* read_job FILE...: read each job (or shop.yaml) and print its diagnostics, sorted, and their
-   codes. read_job --manual | --markdown | --schema: what the field tables say. read_job --start
+   codes. read_job --manual | --schema: what the field tables say. read_job --start
    [LIKE]: a new job file. */
 #include "base/file.h"
 #include "job/job.h"
@@ -84,8 +84,6 @@ int main(int count, char **words)
     const char *option = count > 1 ? words[1] : "";
     if (strcmp(option, "--manual") == 0)
         print_tables(manual_write);
-    else if (strcmp(option, "--markdown") == 0)
-        print_tables(manual_write_markdown);
     else if (strcmp(option, "--schema") == 0)
         print_tables(schema_write);
     else if (strcmp(option, "--start") == 0)

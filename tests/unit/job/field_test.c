@@ -156,9 +156,6 @@ static void test_manual(void **state)
         line += length + 1;
     }
     free(manual);
-    buffer_clear(&text);
-    manual_write_markdown(&text);
-    walk(&job_record, keys_in, (char *)buffer_string(&text));
     buffer_release(&text);
 }
 

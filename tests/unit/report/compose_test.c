@@ -320,7 +320,7 @@ static void test_empty_job(void **state)
     sample->findings.fingerprint = NULL;
     sample->findings.in_progress = true;
     for (int kind = DOCUMENT_RECORD; kind <= DOCUMENT_ASSESSMENT; kind++) {
-        if (kind == DOCUMENT_PAGE)
+        if (kind == DOCUMENT_MANUAL)
             continue;
         struct document *document = sample_compose(sample, (enum document_kind)kind);
         show(sample);
