@@ -183,6 +183,21 @@ static void warn_touch(struct assessment *assessment)
                        total_f * 1e9, allowed_f * 1e9);
 }
 
+/* A valve without a row matters where a part that was read is not judged for want of it. */
+static void tell_unknown_valves(struct assessment *assessment)
+{
+    const struct job *job = assessment->job;
+    bool *needed = arena_array(assessment->arena, job->stage_count + 1, sizeof *needed);
+    for (size_t i = 0; i < job->capacitor_count; i++) {
+        const struct capacitor_findings *part = &assessment->capacitors[i];
+        for (size_t k = 0; k < part->part->stage_count; k++)
+            if (part->deciding >= 0 && part->why == WHY_NO_ROW)
+                needed[part->part->stages[k]] = true;
+    }
+    stages_tell_unknown(&assessment->stages, job, needed, assessment->arena,
+                        assessment->diagnostics);
+}
+
 static void conclude(struct assessment *assessment, size_t index)
 {
     copy_criteria(assessment, index);
@@ -215,6 +230,7 @@ struct findings *assess_job(const struct job *job, const struct shop *shop, cons
     for (size_t i = 0; i < count; i++)
         conclude(&assessment, i);
     warn_touch(&assessment);
+    tell_unknown_valves(&assessment);
     struct findings *findings = arena_get(arena, sizeof *findings);
     *findings = (struct findings){
         .program = program,

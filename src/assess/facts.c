@@ -1,6 +1,7 @@
 #include "assess/facts.h"
 
 #include "assess/mains.h"
+#include "assess/reading.h"
 #include "assess/temperature.h"
 #include "assess/uncertainty.h"
 #include "assess/verdict.h"
@@ -49,7 +50,8 @@ static bool capacitance_matters(const struct facts_case *facts)
 static double capacitance_u(const struct facts_case *facts)
 {
     double share = facts->policy->default_accuracy;
-    double absolute_f = 0, measured_f = facts->part->measured.value.value;
+    double measured_f = facts->part->measured.value.value;
+    double absolute_f = reading_last_digit(&facts->part->measured.value);
     for (size_t i = 0; i < facts->job->instrument_count; i++) {
         const struct instrument *instrument = &facts->job->instruments[i];
         if (instrument->accuracy_set && instrument->accuracy_unit == UNIT_CAPACITANCE) {

@@ -38,7 +38,8 @@
     X(WHY_NO_READING_PASSES, "no reading passes")                                                  \
     X(WHY_WITHIN_UNCERTAINTY, "within uncertainty")                                                \
     X(WHY_RISING, "rising")                                                                        \
-    X(WHY_JOINT, "joint") /* fails together with others */
+    X(WHY_JOINT, "joint")                 /* fails together with others */                         \
+    X(WHY_OPEN_RESISTOR, "open resistor") /* what feeds the part, or its stage, read open */
 
 #define ADVICES(X)                                                                                 \
     X(ADVICE_NONE, "")                                                                             \
@@ -114,15 +115,16 @@ struct criterion {
  *   rail_drop (V; V of the rail), part_watts (W), bias_loss (V; V of bias), ht_share (A; A of the
  *   HT), short_watts (W that a short would put into the primary; unknown: NaN), control_volts (V),
  *   circuit_ratio (R_L over the circuit's resistance), battery_share (A; A of the drain),
- * mains_fire (no value), earth_current (A), touch_current (A of all isolators; A allowed),
+ *   mains_fire (no value), earth_current (A), touch_current (A of all isolators; A allowed),
  *   discharge_resistor (no value: one is needed besides), pulse_peak (V), shift (V; V allowed),
- *   linear_ratio (R_L over the resistor that it bridges: no valve row).
+ *   linear_ratio (R_L over the resistor that it bridges: no valve row), primary_current (A through
+ *   the output primary), capacitance (% off the marked value; % of tolerance on that side).
  */
 struct effect {
     const char *key;
     double value;
     enum unit unit;
-    bool at_most;        /* the reading is a bound */
+    bool at_most;        /* the reading is a bound; a ratio is then "at least" */
     double of;           /* second figure ("of 85 V"), NaN: none */
     const char *subject; /* stage or line named, NULL: none */
     const char *text;    /* filled by report_explain */
@@ -198,7 +200,13 @@ struct capacitor_findings {
     double found_leakage_a, found_limit_a; /* the same for outcome_found, when another reading */
     /* for the bench sheet */
     double sheet_voltage_v, sheet_soak_s, sheet_limit_a, sheet_limit_ohm, sheet_series_max_ohm;
+    int sheet_instrument; /* index: what tells the limit, else the one for leakage; -1: none named
+                           */
+    bool sheet_proves_fail_only; /* the volts stay so far below service that no reading passes */
     bool sheet_not_with_this_meter;
+    /* where it is not: volts at which this meter would do, within the marked (NaN: none would), and
+       the expanded uncertainty of a meter that would do at sheet_voltage_v */
+    double sheet_volts_needed_v, sheet_uncertainty_max_a;
     bool no_reading_passes;
     enum safety_class class_needed;
     const struct effect *effects;

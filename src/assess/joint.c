@@ -1,7 +1,8 @@
 /*
  * Parts that pass singly may fail together: all of one AVC line, of one group of stages, of one
  * can. Parts that fail by themselves are taken as replaced. Where the rest fails jointly, each part
- * that brings at least 1/(2N) of the joint figure is a conditional fail.
+ * that brings at least 1/(2N) of the joint figure is a conditional fail. Done once with every part
+ * as its last readings show it, and once as found: the set as found decides `outcome_found`.
  */
 #include "assess/assessment.h"
 
@@ -58,8 +59,9 @@ static bool together(const struct assessment *assessment, size_t a, size_t b)
 struct shift {
     int instrument; /* NOT_SHIFTED: none */
     int own;        /* part; NOT_SHIFTED: none; OWN_OF_ALL */
+    bool bench;     /* the bench's temperature, for all */
     const struct stage_step *step;
-    bool certain; /* others of which only an upper bound is known count as nothing */
+    bool certain; /* others of which only an upper figure is known count as nothing */
 };
 enum { NOT_SHIFTED = -2, OWN_OF_ALL = -3 };
 /* With more parts than this on one line their last steps move together: an upper figure, and the
@@ -79,6 +81,8 @@ static double shifted_leak(const struct assessment *assessment, size_t index,
     double leak_s = leak->conductance_s;
     if (instrument_index(assessment, index) == shift->instrument)
         leak_s += leak->common_s;
+    if (shift->bench)
+        leak_s += leak->bench_s;
     bool own = (int)index == shift->own || shift->own == OWN_OF_ALL;
     return own ? leak_s + leak->own_s : leak_s;
 }
@@ -98,7 +102,7 @@ static void evaluate_with(const struct assessment *assessment, size_t index,
     }
     for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
         if (i == index || !takes_part(assessment, i) || !together(assessment, index, i) ||
-            (shift->certain && assessment->capacitors[i].test_bound == BOUND_UNDER))
+            (shift->certain && !assessment->work[i].leak.proves_fail))
             continue;
         const struct part_work *other = &assessment->work[i];
         double leak_s = shifted_leak(assessment, i, shift);
@@ -140,28 +144,39 @@ static size_t company_of(const struct assessment *assessment, size_t index)
     return count;
 }
 
-/* Covariance by cause: all readings of one instrument move together, the rest one by one. */
+/* Covariance by cause: all readings of one instrument move together, all cold readings with the
+   bench's temperature, the rest one by one. */
 static void find_figures(const struct assessment *assessment, size_t index, bool certain,
                          struct joint_figures *figures)
 {
     const struct place_case *place = &assessment->work[index].place;
-    struct shift shift = {NOT_SHIFTED, NOT_SHIFTED, NULL, certain};
+    const struct shift none = {.instrument = NOT_SHIFTED, .own = NOT_SHIFTED, .certain = certain};
+    struct shift shift = none;
     *figures = (struct joint_figures){0};
-    evaluate_with(assessment, index, &shift, &figures->at);
-    for (int i = NOT_LISTED; i < (int)assessment->job->instrument_count; i++)
-        add_shift(assessment, index, &(struct shift){i, NOT_SHIFTED, NULL, certain}, figures);
-    if (company_of(assessment, index) > ONE_BY_ONE_MAX)
-        add_shift(assessment, index, &(struct shift){NOT_SHIFTED, OWN_OF_ALL, NULL, certain},
-                  figures);
-    else
+    evaluate_with(assessment, index, &none, &figures->at);
+    for (int i = NOT_LISTED; i < (int)assessment->job->instrument_count; i++) {
+        shift.instrument = i;
+        add_shift(assessment, index, &shift, figures);
+    }
+    shift = none;
+    shift.bench = true;
+    add_shift(assessment, index, &shift, figures);
+    shift = none;
+    if (company_of(assessment, index) > ONE_BY_ONE_MAX) {
+        shift.own = OWN_OF_ALL;
+        add_shift(assessment, index, &shift, figures);
+    } else {
         for (size_t i = 0; i < assessment->job->capacitor_count; i++)
-            if (takes_part(assessment, i) && (i == index || together(assessment, index, i)))
-                add_shift(assessment, index, &(struct shift){NOT_SHIFTED, (int)i, NULL, certain},
-                          figures);
-    for (size_t i = 0; kind_of(place) == JOINT_STAGE && i < place->group->step_count; i++)
-        add_shift(assessment, index,
-                  &(struct shift){NOT_SHIFTED, NOT_SHIFTED, &place->group->steps[i], certain},
-                  figures);
+            if (takes_part(assessment, i) && (i == index || together(assessment, index, i))) {
+                shift.own = (int)i;
+                add_shift(assessment, index, &shift, figures);
+            }
+    }
+    shift = none;
+    for (size_t i = 0; kind_of(place) == JOINT_STAGE && i < place->group->step_count; i++) {
+        shift.step = &place->group->steps[i];
+        add_shift(assessment, index, &shift, figures);
+    }
 }
 
 static const struct criterion *single_of(const struct judgement *judgement, enum criterion_key key)
@@ -248,21 +263,23 @@ static void judge_figures(const struct assessment *assessment, size_t index, boo
         }
 }
 
-/* A reading that is only a bound says how much at most: with it a joint figure may pass, and only
-   without it may the figure fail; a part known by a bound alone cannot be blamed. */
+/* A reading that is only a bound, too early or still falling says how much at most: with it a joint
+   figure may pass, and only without it may the figure fail; a part known by such a reading alone
+   cannot be blamed. */
 static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
 {
     struct judgement joint;
     judge_figures(assessment, index, false, &joint);
     if (joint.outcome >= OUTCOME_CONDITIONAL_FAIL)
         judge_figures(assessment, index, true, &joint);
-    bool bound = assessment->capacitors[index].test_bound != BOUND_NONE;
+    bool blameless = assessment->capacitors[index].test_bound != BOUND_NONE ||
+                     !assessment->work[index].leak.proves_fail;
     for (size_t i = 0; i < joint.count; i++)
-        if (!bound || joint.criteria[i].outcome <= OUTCOME_CONDITIONAL_PASS)
+        if (!blameless || joint.criteria[i].outcome <= OUTCOME_CONDITIONAL_PASS)
             judge_add(result, &joint.criteria[i]);
 }
 
-void joint_assess(struct assessment *assessment)
+static void assess_together(struct assessment *assessment)
 {
     size_t count = assessment->job->capacitor_count;
     struct judgement *results = arena_array(assessment->arena, count + 1, sizeof *results);
@@ -278,5 +295,56 @@ void joint_assess(struct assessment *assessment)
             assessment->capacitors[i].outcome = results[i].outcome;
             assessment->capacitors[i].why = results[i].why;
         }
+    }
+}
+
+static bool all_decided_as_found(const struct assessment *assessment)
+{
+    for (size_t i = 0; i < assessment->job->capacitor_count; i++)
+        if (assessment->capacitors[i].deciding != assessment->capacitors[i].deciding_found &&
+            kind_of(&assessment->work[i].place) != JOINT_NONE)
+            return false;
+    return true;
+}
+
+/* The same set with every part as its readings found it. */
+static struct assessment as_found(const struct assessment *assessment)
+{
+    size_t count = assessment->job->capacitor_count;
+    struct assessment found = *assessment;
+    found.work = arena_array(assessment->arena, count + 1, sizeof *found.work);
+    found.capacitors = arena_array(assessment->arena, count + 1, sizeof *found.capacitors);
+    for (size_t i = 0; i < count; i++) {
+        struct part_work *work = &found.work[i];
+        struct capacitor_findings *part = &found.capacitors[i];
+        *work = assessment->work[i];
+        *part = assessment->capacitors[i];
+        work->leak = work->leak_found;
+        work->leaks = work->leaks_found;
+        work->final = work->found;
+        part->deciding = part->deciding_found;
+        part->outcome = part->outcome_found;
+        part->test_bound = part->deciding < 0 ? BOUND_NONE : part->readings[part->deciding].bound;
+    }
+    return found;
+}
+
+void joint_assess(struct assessment *assessment)
+{
+    size_t count = assessment->job->capacitor_count;
+    bool alike = all_decided_as_found(assessment);
+    struct assessment found = alike ? *assessment : as_found(assessment);
+    assess_together(assessment);
+    if (!alike)
+        assess_together(&found);
+    for (size_t i = 0; i < count; i++) {
+        struct capacitor_findings *part = &assessment->capacitors[i];
+        if (kind_of(&assessment->work[i].place) == JOINT_NONE)
+            continue;
+        part->outcome_found = verdict_worse(part->outcome_found, found.capacitors[i].outcome);
+        /* The others leaked no less as found than after they were reformed: one reading, one
+           outcome. */
+        if (part->deciding == part->deciding_found)
+            part->outcome_found = verdict_worse(part->outcome_found, part->outcome);
     }
 }

@@ -163,13 +163,16 @@ void judge_leak(const struct judge_case *given, struct judgement *judgement)
                                                  .why = WHY_STAGE});
 }
 
-enum outcome judge_simple(const struct judge_case *given, double factor)
+bool judge_fails(const struct judge_case *given, double factor)
 {
-    struct verdict_case judged = {.value = given->leak->conductance_s * factor,
-                                  .limit = given->limit->leak_s,
-                                  .guard = given->place->policy->guard_band * 2 *
-                                           given->leak->standard_s * factor,
-                                  .upper = true,
-                                  .bound = given->bound};
-    return verdict_of(&judged);
+    struct place_case place = *given->place;
+    place.to_20c /= factor;
+    struct place_values values;
+    place_evaluate(&place, given->leak->conductance_s * factor, &values);
+    if (given->bound != BOUND_NONE)
+        return false;
+    for (size_t i = 0; i < values.count && i < given->limit->count; i++)
+        if (values.items[i].value > given->limit->limits[i])
+            return true;
+    return false;
 }

@@ -15,10 +15,13 @@ struct judge_case {
     const struct place_limit *limit;
     const struct leak *leak;
     enum bound bound;
-    bool may_fail;   /* soaked long enough */
-    bool instrument; /* U at the limit exceeds the policy's share of it; a clear fail stands */
-    bool waiting;    /* the fit says that absorption still runs, and falls below the limit */
-    bool falling;    /* electrolytic: still falling, or not known to be level */
+    bool may_fail; /* soaked long enough */
+    /* U at the limit exceeds the policy's share of it: neither a pass nor a conditional outcome can
+       be told from the other. A fail stands: it lies above the limit by more than the U of the
+       figure itself, which is what the guard band asks of any fail. */
+    bool instrument;
+    bool waiting; /* the fit says that absorption still runs, and falls below the limit */
+    bool falling; /* electrolytic: still falling, or not known to be level */
 };
 
 struct judgement {
@@ -34,7 +37,9 @@ void judge_leak(const struct judge_case *given, struct judgement *judgement);
 /* Add one criterion that needs no leak (class, capacitance, ratings). */
 void judge_add(struct judgement *judgement, const struct criterion *criterion);
 
-/* What a leak brought to +5 K more would be judged, for "turns on temperature". */
-enum outcome judge_simple(const struct judge_case *given, double factor);
+/* Whether any figure of the place is outside with the leak `factor` times what it is, as in a
+   chassis warmer by 5 K ("turns on temperature"). A leakage rule is written for 20 C and does not
+   turn on the chassis; a reading that is only a bound proves no fail. */
+bool judge_fails(const struct judge_case *given, double factor);
 
 #endif

@@ -20,11 +20,15 @@ static double conductance(const double *inputs, const void *context)
     if (reading->value.unit == UNIT_RESISTANCE) /* ohms do not depend on the volts set */
         current_a *= volts_v / reading->set_volts.value;
     double part_v = fmax(volts_v - current_a * inputs[INPUT_SERIES], volts_v * 1e-3);
-    struct scaled_current scaled = voltage_scale(part_v, given->service_v, given->exponent,
-                                                 dielectric_is_electrolytic(given->type));
+    bool electrolytic = dielectric_is_electrolytic(given->type);
+    bool lower_bound =
+        voltage_scale(given->reading->part_v, given->service_v, given->exponent, electrolytic)
+            .lower_bound;
+    double scale =
+        voltage_factor_near(part_v, given->service_v, given->exponent, electrolytic, lower_bound);
     double factor = temperature_factor(given->type, inputs[INPUT_TEMPERATURE], given->working_c,
                                        reading->hot.set);
-    return current_a * scaled.factor * factor / given->service_v;
+    return current_a * scale * factor / given->service_v;
 }
 
 static struct leak without_uncertainty(const struct leak_case *given)
@@ -63,7 +67,9 @@ struct leak leak_of(const struct leak_case *given)
     double own = result.contributions[INPUT_STEP];
     leak.own_s = fabs(own);
     leak.standard_s = result.standard;
-    leak.common_s = sqrt(fmax(result.standard * result.standard - own * own, 0));
+    double bench = result.contributions[INPUT_TEMPERATURE];
+    leak.bench_s = fabs(bench);
+    leak.common_s = sqrt(fmax(result.standard * result.standard - own * own - bench * bench, 0));
     return leak;
 }
 

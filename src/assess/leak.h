@@ -21,11 +21,15 @@ struct leak {
     double service_a; /* at service volts, at the reading's temperature */
     double warm_a;    /* and warm */
     bool lower_bound; /* scaled up beyond 1/0.95 */
+    /* may count in a joint fail: soaked, not falling or waiting, no mere upper bound. Set where the
+       reading is judged. */
+    bool proves_fail;
     double conductance_s;
     double common_s;   /* by what all readings of the instrument share: accuracy, volts, series
-                          resistance, and the bench's temperature */
+                          resistance */
+    double bench_s;    /* by the bench's temperature, which all cold readings of the job share */
     double own_s;      /* by the last step of the display */
-    double standard_s; /* both */
+    double standard_s; /* all three */
 };
 
 struct leak leak_of(const struct leak_case *given);

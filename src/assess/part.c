@@ -11,6 +11,8 @@
 #include <math.h>
 
 static const double exponent_high = 1.3;
+/* A shorted part takes nearly all the volts in the tester's resistance: nothing to tell b from. */
+static const double exponent_least_share = 0.01;
 static const double same_volts_share = 0.005, same_temperature_k = 1;
 static const double warmer_k = 5; /* "turns on temperature" */
 static const double rising_share = 0.1;
@@ -224,6 +226,7 @@ static void find_exponent(struct assessment *assessment, size_t index, size_t de
     for (size_t i = 0; i < part->reading_count; i++) {
         const struct reading_findings *reading = &work->readings[i];
         bool usable = reading->may_fail && reading->bound == BOUND_NONE &&
+                      reading->part_v > exponent_least_share * reading->reading->set_volts.value &&
                       !reading->reading->in_circuit &&
                       state_of(work, i) == state_of(work, deciding) &&
                       fabs(reading->temperature_c - work->readings[deciding].temperature_c) <=
@@ -284,12 +287,12 @@ static bool instrument_too_coarse(const struct assessment *assessment, size_t in
 
 /* A part that rises is not stable: it fails from a tenth of its limit on. */
 static void judge_rise(const struct assessment *assessment, size_t index, const struct leak *leak,
-                       struct judgement *judgement)
+                       bool may_fail, struct judgement *judgement)
 {
     const struct capacitor_findings *part = &assessment->capacitors[index];
     if (part->trend != TREND_RISING || judgement->outcome == OUTCOME_FAIL || isnan(part->limit_a))
         return;
-    if (leak->warm_a > rising_share * part->limit_a)
+    if (may_fail && leak->warm_a > rising_share * part->limit_a)
         judgement->outcome = OUTCOME_FAIL;
     else if (judgement->outcome == OUTCOME_PASS)
         judgement->outcome = OUTCOME_CONDITIONAL_PASS;
@@ -326,13 +329,13 @@ static void judge_reading(struct assessment *assessment, size_t index, size_t re
                                    .waiting = part->absorption.status == ABSORPTION_RESOLVED &&
                                               !isnan(part->absorption.wait_until_s),
                                    .falling = still_falling(assessment, index, reading)};
+        leak->proves_fail =
+            given.may_fail && !given.falling && !given.waiting && given.bound != BOUND_UNDER;
         judge_leak(&given, judgement);
-        judge_rise(assessment, index, leak, judgement);
-        bool now_fails = judge_simple(&given, 1) >= OUTCOME_CONDITIONAL_FAIL;
-        bool warmer_fails =
-            judge_simple(&given, exp2(warmer_k / temperature_doubling(part->part->type).theta_k)) >=
-            OUTCOME_CONDITIONAL_FAIL;
-        part->turns_on_temperature = !is_hot_enough(part, found) && now_fails != warmer_fails;
+        judge_rise(assessment, index, leak, found->may_fail, judgement);
+        double warmer = exp2(warmer_k / temperature_doubling(part->part->type).theta_k);
+        part->turns_on_temperature =
+            !is_hot_enough(part, found) && !judge_fails(&given, 1) && judge_fails(&given, warmer);
     }
     struct facts_case facts = {assessment->job, assessment->policy, part->part, leak->conductance_s,
                                left};

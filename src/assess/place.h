@@ -47,7 +47,7 @@ struct place_case {
     double heat_limit_w; /* of the part */
     enum source_key heat_source;
     bool electrolytic; /* leakage rule and heat are judged wherever it sits */
-    bool heat_counts;  /* heat is judged: an electrolytic, or nothing else limits the leak */
+    bool heat_counts;  /* heat is judged: an electrolytic, or nothing limits the leak sooner */
     double margin;     /* ageing */
     struct leakage_rule rule;
     bool rule_unknown; /* the job or the shop names no rule that is known */
@@ -88,13 +88,14 @@ struct stage_leak place_leak(const struct place_case *place, double leak_s);
 struct place_limit {
     double leak_s;                   /* after the ageing margin; NaN: no figure */
     bool none;                       /* outside without this part */
-    bool heat;                       /* nothing fails: the heat limit */
+    bool heat;                       /* the place would bear more: the heat limit */
     double limits[PLACE_VALUES_MAX]; /* of each figure, after the margin; NaN: already outside */
     size_t count;
 };
 struct place_limit place_find_limit(const struct place_case *place);
 
-/* Find it and, where only heat limits the leak, have heat judged too. */
+/* Find it and, where heat in the part limits the leak sooner than its place does, have heat judged
+   too: a screen fed through 1 k would bear a leak that cooks any paper capacitor. */
 struct place_limit place_set_limit(struct place_case *place);
 
 /* The same limit holds for both: same place, same facts. */

@@ -130,6 +130,7 @@ static void leak_effects(struct gathering *to)
         break;
     case PLACE_TONE:
         add_part_watts(to);
+        add(to, "primary_current", leak_a, UNIT_CURRENT, NAN);
         break;
     case PLACE_DETECTOR:
         add(to, "control_volts", leak_a * place->feed_ohm, UNIT_VOLTAGE, place->bias_v);
@@ -189,6 +190,19 @@ static void mains_effects(struct gathering *to)
         add(to, "discharge_resistor", NAN, UNIT_NONE, NAN);
 }
 
+/* A capacitance outside its tolerance is what goes wrong, whatever the insulation. */
+static void add_capacitance(struct gathering *to, const struct judgement *judged)
+{
+    for (size_t i = 0; i < judged->count; i++) {
+        const struct criterion *criterion = &judged->criteria[i];
+        if (criterion->key != CRITERION_CAPACITANCE ||
+            criterion->outcome < OUTCOME_CONDITIONAL_FAIL)
+            continue;
+        add(to, "capacitance", criterion->value, UNIT_PERCENT, criterion->limit);
+        to->effects[to->count - 1].at_most = false;
+    }
+}
+
 void place_effects(struct assessment *assessment, size_t index)
 {
     struct part_work *work = &assessment->work[index];
@@ -196,6 +210,8 @@ void place_effects(struct assessment *assessment, size_t index)
     struct gathering to = {.place = &work->place,
                            .leak_s = work->leaks ? work->leak.conductance_s : 0,
                            .at_most = part->test_bound == BOUND_UNDER};
+    if (part->part->place == PLACE_TUNING)
+        add_capacitance(&to, &work->final);
     if (part->part->pulse)
         add(&to, "pulse_peak", part->part->pulse_peak.set ? part->part->pulse_peak.value : NAN,
             UNIT_VOLTAGE, NAN);

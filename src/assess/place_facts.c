@@ -14,25 +14,13 @@ static double given_or_nan(const struct quantity *quantity)
     return quantity->set ? quantity->value : NAN;
 }
 
-/* Ohms as found, and their standard uncertainty when they were measured. */
-static double ohms_of(const struct place_bench *bench, const struct resistance *resistance,
-                      double *u_ohm)
-{
-    double ohm = NAN;
-    bool measured = false;
-    *u_ohm = 0;
-    if (!resistance->set || !job_resistance(bench->job, resistance, PHASE_FOUND, &ohm, &measured))
-        return NAN;
-    if (measured)
-        *u_ohm = resistance_uncertainty(bench->job, bench->policy, ohm);
-    return ohm;
-}
-
 static double rating_of(const struct job *job, const struct resistance *resistance)
 {
     if (!resistance->set || resistance->resistor == NOT_LISTED)
         return NAN;
-    return given_or_nan(&job->resistors[resistance->resistor].marked.rated);
+    const struct resistor *part = &job->resistors[resistance->resistor];
+    bool open = part->measured.set && part->measured.bound == BOUND_OVER;
+    return given_or_nan(open && part->fitted.rated.set ? &part->fitted.rated : &part->marked.rated);
 }
 
 /* The key that is missing: not given, or a ref that gives no figure. */
@@ -60,6 +48,15 @@ static bool uses_group(enum place place)
 static bool has_figure(const struct stage_solution *bare)
 {
     return bare->status == SOLVE_OK || bare->status == SOLVE_BOTTOMED;
+}
+
+/* A resistor of its stage, or of one that hangs together with it, read open. */
+static bool stage_is_open(const struct place_case *place)
+{
+    if (!place->model || !uses_group(place->part->place) || place->part->place == PLACE_TONE)
+        return false;
+    return place->model->open_unmended ||
+           (place->group && stage_group_open(place->stages, place->group, true));
 }
 
 /* The resistor that a bypass bridges. */
@@ -127,6 +124,18 @@ static void find_stage(struct place_case *place)
         else
             judge_linearly(place);
     }
+}
+
+/* A bypass across the resistance in the negative HT lead: what feeds it is that resistance, and
+   nothing lies between. */
+static bool feeds_itself(const struct place_case *place)
+{
+    if (place->part->place != PLACE_BIAS_BYPASS || !place->model)
+        return false;
+    const struct resistance *feed = &place->part->feed;
+    const struct resistance *bias = &place->model->stage->bias_resistance;
+    return (feed->resistor != NOT_LISTED && feed->resistor == bias->resistor) ||
+           (feed->winding != NOT_LISTED && feed->winding == bias->winding);
 }
 
 /* The least bias of the part's stages, as designed. */
@@ -245,9 +254,13 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
                                .current_a = given_or_nan(&part->current),
                                .bias_v = NAN,
                                .to_20c = 1};
-    place.feed_ohm = ohms_of(bench, &part->feed, &place.feed_u_ohm);
+    struct found_ohms feed = ohms_as_found(bench->job, bench->policy, &part->feed);
+    struct found_ohms source = ohms_as_found(bench->job, bench->policy, &part->source_resistance);
+    place.feed_ohm = feed.ohm;
+    place.feed_u_ohm = feed.u_ohm;
     place.circuit_ohm = given_or_nan(&part->circuit);
-    place.source_ohm = ohms_of(bench, &part->source_resistance, &place.source_u_ohm);
+    place.source_ohm = source.ohm;
+    place.source_u_ohm = source.u_ohm;
     if (isnan(place.source_ohm))
         place.source_ohm = 0; /* the cautious default */
     place.feed_rating_w = rating_of(bench->job, &part->feed);
@@ -257,6 +270,8 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
     place.margin = ageing_margin(bench->policy, part->type);
     find_rule(&place);
     find_stage(&place);
+    if (feeds_itself(&place))
+        place.feed_ohm = place.feed_u_ohm = 0;
     if (part->place == PLACE_AVC_FEED || part->place == PLACE_DETECTOR)
         place.bias_v = least_bias(&place);
     if (part->place == PLACE_AVC_FEED && part->delay.set)
@@ -271,6 +286,10 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
     if (missing || (place.why == WHY_NONE && !(place.service_v > 0))) {
         place.why = WHY_MISSING_FACT;
         place.missing = missing ? missing : place_is_mains(part->place) ? "mains" : "service";
+    }
+    if ((feed.open && isnan(feed.ohm)) || stage_is_open(&place)) {
+        place.why = WHY_OPEN_RESISTOR;
+        place.missing = NULL;
     }
     return place;
 }

@@ -123,6 +123,12 @@ struct place_limit place_find_limit(const struct place_case *place)
 struct place_limit place_set_limit(struct place_case *place)
 {
     struct place_limit limit = place_find_limit(place);
+    double heat_w = limit.leak_s * place->margin * place->service_v * place->service_v;
+    if (!place->heat_counts && heat_w > place->heat_limit_w) {
+        place->heat_counts = true;
+        limit = place_find_limit(place);
+        limit.heat = true;
+    }
     place->heat_counts = place->heat_counts || limit.heat;
     return limit;
 }

@@ -23,6 +23,31 @@ double resistance_uncertainty(const struct job *job, const struct policy *policy
     return uncertainty_of_accuracy(ohm, policy->default_accuracy, 0);
 }
 
+static bool read_open(const struct job *job, const struct resistance *resistance)
+{
+    const struct quantity *measured = NULL;
+    if (resistance->set && resistance->resistor != NOT_LISTED)
+        measured = &job->resistors[resistance->resistor].measured;
+    else if (resistance->set && resistance->winding != NOT_LISTED)
+        measured = &job->windings[resistance->winding].measured;
+    return measured && measured->set && measured->bound == BOUND_OVER;
+}
+
+struct found_ohms ohms_as_found(const struct job *job, const struct policy *policy,
+                                const struct resistance *resistance)
+{
+    struct found_ohms found = {NAN, 0, read_open(job, resistance)};
+    bool measured = false;
+    if (!resistance->set || !job_resistance(job, resistance, found.open ? PHASE_LEFT : PHASE_FOUND,
+                                            &found.ohm, &measured))
+        found.ohm = NAN;
+    else if (found.open && measured) /* nothing was fitted */
+        found.ohm = NAN;
+    else if (measured && found.ohm > 0)
+        found.u_ohm = resistance_uncertainty(job, policy, found.ohm);
+    return found;
+}
+
 static int node_of(const struct resistance *resistance)
 {
     if (!resistance->set)
@@ -162,22 +187,42 @@ struct builder {
     struct stage_model *models;
 };
 
-static void warn_unknown_valve(const struct builder *builder, const struct stage_model *model)
+/* Where a stage without a row is told of. */
+struct telling {
+    const struct job *job;
+    struct arena *arena;
+    struct diagnostics *diagnostics;
+};
+
+static void tell_unknown_valve(const struct telling *telling, const struct stage_model *model,
+                               bool needed)
 {
     const struct stage *stage = model->stage;
     struct position at = stage->valve_at.line ? stage->valve_at : stage->at;
     const char *half = model->valve_type ? half_of(model->valve_type) : NULL;
+    enum diagnostic_code code = needed ? DIAGNOSTIC_VALVE_UNKNOWN : DIAGNOSTIC_VALVE_NOT_NEEDED;
     if (!model->valve_type)
-        diagnostic_add(builder->diagnostics, &builder->job->source, at, DIAGNOSTIC_VALVE_UNKNOWN,
+        diagnostic_add(telling->diagnostics, &telling->job->source, at, code,
                        "say `valve: V4 6V6GT`", "stage '%s' names no valve", stage->name);
     else if (half)
-        diagnostic_add(builder->diagnostics, &builder->job->source, at, DIAGNOSTIC_VALVE_AMBIGUOUS,
-                       arena_print(builder->arena, "say which half: %s", half),
+        diagnostic_add(telling->diagnostics, &telling->job->source, at, DIAGNOSTIC_VALVE_AMBIGUOUS,
+                       arena_print(telling->arena, "say which half: %s", half),
                        "'%s' has more than one system", model->valve_type);
     else
-        diagnostic_add(builder->diagnostics, &builder->job->source, at, DIAGNOSTIC_VALVE_UNKNOWN,
-                       "give a row of its manual: `row: va 250 V, vg1 -12.5 V, ia 45 mA, gm ...`",
+        diagnostic_add(telling->diagnostics, &telling->job->source, at, code,
+                       needed ? "give a row of its manual: `row: va 250 V, vg1 -12.5 V, ia 45 mA, "
+                                "gm ...`"
+                              : "no part that was read stays unjudged for want of one",
                        "no row for '%s' in the valve book", model->valve_type);
+}
+
+void stages_tell_unknown(const struct stage_set *set, const struct job *job, const bool *needed,
+                         struct arena *arena, struct diagnostics *diagnostics)
+{
+    const struct telling telling = {job, arena, diagnostics};
+    for (size_t i = 0; i < set->count; i++)
+        if (!set->models[i].row)
+            tell_unknown_valve(&telling, &set->models[i], needed[i]);
 }
 
 static const struct valve_row *named_row(const struct builder *builder, const struct stage *stage,
@@ -210,10 +255,8 @@ static void choose_row(const struct builder *builder, struct stage_model *model)
         model->row = &model->given;
         return;
     }
-    if (count == 0) {
-        warn_unknown_valve(builder, model);
+    if (count == 0)
         return;
-    }
     if (stage->row_name)
         model->row = named_row(builder, stage, rows, count);
     if (!model->row)
@@ -273,16 +316,20 @@ static void read_resistors(const struct builder *builder, struct stage_model *mo
 {
     for (int which = 0; which < STAGE_RESISTOR_COUNT; which++) {
         const struct resistance *resistance = resistor_of(model->stage, which);
+        struct found_ohms found = ohms_as_found(builder->job, builder->policy, resistance);
+        double *ohms[PHASE_COUNT];
         for (int phase = 0; phase < PHASE_COUNT; phase++) {
-            double ohm = NAN;
-            bool measured = false;
+            ohms[phase] = &model->ohms[phase][which];
             if (!resistance->set ||
-                !job_resistance(builder->job, resistance, phase, &ohm, &measured))
-                ohm = NAN;
-            model->ohms[phase][which] = ohm;
-            if (phase == PHASE_FOUND && measured && ohm > 0)
-                model->resistor_u_ohm[which] =
-                    resistance_uncertainty(builder->job, builder->policy, ohm);
+                !job_resistance(builder->job, resistance, phase, ohms[phase], NULL))
+                *ohms[phase] = NAN;
+        }
+        *ohms[PHASE_FOUND] = found.ohm;
+        model->resistor_u_ohm[which] = found.u_ohm;
+        model->open_found = model->open_found || found.open;
+        if (found.open && isnan(found.ohm)) { /* only the stage as designed has figures */
+            model->open_unmended = true;
+            *ohms[PHASE_FOUND] = *ohms[PHASE_LEFT] = *ohms[PHASE_DESIGNED];
         }
     }
 }
@@ -525,6 +572,16 @@ struct stage_set stages_prepare(const struct job *job, const struct policy *poli
         make_steps(&builder, group);
     }
     return (struct stage_set){builder.models, job->stage_count, groups, group_count};
+}
+
+bool stage_group_open(const struct stage_set *set, const struct stage_group *group, bool unmended)
+{
+    for (size_t i = 0; i < group->count; i++) {
+        const struct stage_model *model = &set->models[group->members[i]];
+        if (unmended ? model->open_unmended : model->open_found)
+            return true;
+    }
+    return false;
 }
 
 /* ---- leaks */

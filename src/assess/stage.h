@@ -32,6 +32,8 @@ struct stage_model {
     enum reason why;     /* WHY_NONE: it can be solved */
     const char *missing; /* WHY_MISSING_FACT: the key */
     bool grid_leak_known;
+    bool open_found;    /* a resistor of it read open: as found it does not work */
+    bool open_unmended; /* and nothing was fitted for it: nothing can be said of its leaks either */
     bool is_output;
     bool is_triode;
     struct stage_circuit circuits[PHASE_COUNT];     /* without leaks */
@@ -63,9 +65,15 @@ struct stage_set {
     size_t group_count;
 };
 
-/* Build all. Stages that name no known valve, several, or an unusable row are warnings. */
+/* Build all. Stages that name several valves, or an unusable row, are warnings; of those without
+   any row stages_tell_unknown speaks, when it is known what hangs on them. */
 struct stage_set stages_prepare(const struct job *job, const struct policy *policy,
                                 struct arena *arena, struct diagnostics *diagnostics);
+
+/* Tell of the stages without a row: a warning for those in needed[], by which a part that was read
+   is not judged, a note for the rest. needed: as job->stages. */
+void stages_tell_unknown(const struct stage_set *set, const struct job *job, const bool *needed,
+                         struct arena *arena, struct diagnostics *diagnostics);
 
 /* A leak to be put into the circuits of a group. */
 struct stage_leak {
@@ -80,6 +88,22 @@ struct stage_leak {
 /* Add it (leaks add up). Only the leaks of stages in this group count. */
 void stage_add_leak(const struct stage_set *set, const struct stage_group *group,
                     struct stage_circuit *circuits, const struct stage_leak *leak);
+
+/*
+ * Ohms that leaks are judged with: as found. Of one that read open (`open`, or over what the meter
+ * shows) what was fitted counts, since nothing leaks into a stage that does not work; NaN where
+ * nothing was fitted.
+ */
+struct found_ohms {
+    double ohm;   /* NaN: not known */
+    double u_ohm; /* standard; 0: not measured */
+    bool open;
+};
+struct found_ohms ohms_as_found(const struct job *job, const struct policy *policy,
+                                const struct resistance *resistance);
+
+/* Whether a stage of the group has an open resistor as found; unmended: and none fitted for it. */
+bool stage_group_open(const struct stage_set *set, const struct stage_group *group, bool unmended);
 
 /* The standard uncertainty of a measured resistance: by the job's instrument for ohms, else the
    policy's default accuracy. */

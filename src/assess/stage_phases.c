@@ -86,32 +86,6 @@ static bool leaks_into(const struct assessment *assessment, const struct stage_g
     return false;
 }
 
-static void solve_phase(const struct assessment *assessment, const struct stage_group *group,
-                        enum phase phase, struct stage_findings *stages)
-{
-    struct stage_solution cold[STAGE_GROUP_MAX], warm[STAGE_GROUP_MAX];
-    memcpy(cold, group->bare[phase], sizeof cold);
-    memcpy(warm, group->bare[phase], sizeof warm);
-    bool possible = group->bare[phase][0].status != SOLVE_IMPOSSIBLE;
-    if (possible && leaks_into(assessment, group, phase)) {
-        struct stage_circuit circuits[STAGE_GROUP_MAX];
-        add_leaks(assessment, group, phase, false, circuits);
-        possible = stages_solve(circuits, group->count, cold) != SOLVE_IMPOSSIBLE;
-        add_leaks(assessment, group, phase, true, circuits);
-        possible = possible && stages_solve(circuits, group->count, warm) != SOLVE_IMPOSSIBLE;
-    }
-    for (size_t i = 0; i < group->count; i++) {
-        struct stage_phase *found = &stages[group->members[i]].phases[phase];
-        found->solution = warm[i];
-        found->judged =
-            possible && (warm[i].status == SOLVE_OK || warm[i].status == SOLVE_BOTTOMED);
-        found->why = found->judged ? WHY_NONE : WHY_STAGE;
-        found->no_leak_cathode_a = group->bare[phase][i].cathode_a;
-        found->grid_cold_v = cold[i].grid_v;
-        found->grid_warm_v = warm[i].grid_v;
-    }
-}
-
 static struct stage_solution unknown_solution(void)
 {
     return (struct stage_solution){.status = SOLVE_IMPOSSIBLE,
@@ -127,6 +101,38 @@ static struct stage_solution unknown_solution(void)
                                    .screen_w = NAN,
                                    .screen_resistor_w = NAN,
                                    .return_v = NAN};
+}
+
+static void solve_phase(const struct assessment *assessment, const struct stage_group *group,
+                        enum phase phase, struct stage_findings *stages)
+{
+    struct stage_solution cold[STAGE_GROUP_MAX], warm[STAGE_GROUP_MAX];
+    memcpy(cold, group->bare[phase], sizeof cold);
+    memcpy(warm, group->bare[phase], sizeof warm);
+    bool possible = group->bare[phase][0].status != SOLVE_IMPOSSIBLE;
+    bool open = phase != PHASE_DESIGNED &&
+                stage_group_open(&assessment->stages, group, phase == PHASE_LEFT);
+    if (possible && leaks_into(assessment, group, phase)) {
+        struct stage_circuit circuits[STAGE_GROUP_MAX];
+        add_leaks(assessment, group, phase, false, circuits);
+        possible = stages_solve(circuits, group->count, cold) != SOLVE_IMPOSSIBLE;
+        add_leaks(assessment, group, phase, true, circuits);
+        possible = possible && stages_solve(circuits, group->count, warm) != SOLVE_IMPOSSIBLE;
+    }
+    for (size_t i = 0; i < group->count; i++) {
+        struct stage_phase *found = &stages[group->members[i]].phases[phase];
+        found->solution = warm[i];
+        found->judged =
+            possible && !open && (warm[i].status == SOLVE_OK || warm[i].status == SOLVE_BOTTOMED);
+        found->why = open ? WHY_OPEN_RESISTOR : found->judged ? WHY_NONE : WHY_STAGE;
+        if (open) {
+            found->solution = unknown_solution();
+            continue;
+        }
+        found->no_leak_cathode_a = group->bare[phase][i].cathode_a;
+        found->grid_cold_v = cold[i].grid_v;
+        found->grid_warm_v = warm[i].grid_v;
+    }
 }
 
 static void begin(const struct stage_model *model, struct stage_findings *findings)

@@ -19,6 +19,16 @@ struct scaled_current voltage_scale(double part_v, double service_v, double expo
     return (struct scaled_current){x, true};
 }
 
+double voltage_factor_near(double part_v, double service_v, double exponent, bool electrolytic,
+                           bool lower_bound)
+{
+    struct scaled_current scaled = voltage_scale(part_v, service_v, exponent, electrolytic);
+    if (scaled.lower_bound == lower_bound)
+        return scaled.factor;
+    double x = service_v / part_v;
+    return lower_bound ? x : pow(x, electrolytic ? allowance_electrolytic : allowance_exponent);
+}
+
 double voltage_limit_at(double limit_a, double part_v, double service_v, double exponent,
                         bool electrolytic)
 {

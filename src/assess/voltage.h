@@ -26,6 +26,13 @@ struct scaled_current voltage_scale(double part_v, double service_v, double expo
                                     bool electrolytic);
 
 /*
+ * The same law at other volts of one reading, for its uncertainty: the volts are not certain, which
+ * side of 1/0.95 the reading lies on is. The step there is one of the rule, not of the part.
+ */
+double voltage_factor_near(double part_v, double service_v, double exponent, bool electrolytic,
+                           bool lower_bound);
+
+/*
  * The current at part_v that just comes to limit_a at service_v: the inverse of voltage_scale.
  * Where that gives a lower bound the answer is what proves a fail, not what passes.
  */

@@ -3,6 +3,8 @@
 
 #include "report/composition.h"
 
+#include <string.h>
+
 enum {
     SHEET_REF,
     SHEET_PLACE,
@@ -69,8 +71,17 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
         table_note(builder, cell, phrase_of(say, "sheet.not_with_this_meter", values));
     else if (part->missing)
         table_note(builder, cell, phrase_of(say, "sheet.missing_fact", values));
+    else if (part->sheet_proves_fail_only)
+        table_note(builder, cell, phrase_of(say, "sheet.proves_a_fail", values));
     else if (part->limit_none)
         table_note(builder, cell, phrase_of(say, "sheet.limit_none", values));
+    if (part->sheet_instrument > 0 && !part->no_reading_passes &&
+        strcmp(composition->job->instruments[part->sheet_instrument].name, "leakage") != 0)
+        table_note(builder, cell,
+                   phrase(say, "sheet.by_instrument", "instrument",
+                          composition->job->instruments[part->sheet_instrument].name, NULL));
+    if (part->why == WHY_OPEN_RESISTOR)
+        table_note(builder, cell, phrase_of(say, "sheet.open_resistor", values));
     if (isfinite(part->sheet_series_max_ohm) && !part->no_reading_passes)
         table_note(builder, cell,
                    phrase(say, "sheet.series_max", "ohm",

@@ -171,6 +171,15 @@ static const char *other_figure_note(const struct composition *composition, size
     return text_stopped(composition->arena, text_sentence(composition->arena, part->why_text));
 }
 
+/* The part's own, or that of the can it is in. */
+static const char *reason_given(const struct composition *composition,
+                                const struct capacitor_findings *part)
+{
+    if (part->part->reason.text || part->part->can == NOT_LISTED)
+        return part->part->reason.text;
+    return composition->job->cans[part->part->can].reason.text;
+}
+
 static const char *against_advice_note(const struct composition *composition, size_t index)
 {
     const struct capacitor_findings *part = part_of(composition, index);
@@ -179,7 +188,7 @@ static const char *against_advice_note(const struct composition *composition, si
     return phrase(
         &composition->say, "note.against_advice", "advice", part->advice_text, "done",
         phrase_in(&composition->say, "done", action_text(capacitor_done(composition, index))),
-        "reason", text_stopped(composition->arena, part->part->reason.text), NULL);
+        "reason", text_stopped(composition->arena, reason_given(composition, part)), NULL);
 }
 
 void leakage_notes(struct table_builder *builder, struct cell *cell, size_t index)

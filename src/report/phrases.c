@@ -139,6 +139,12 @@ struct mustache_value *part_values(const struct phrasing *say, const struct job 
                       text_set(arena, part->sheet_voltage_v, UNIT_VOLTAGE, 3));
     mustache_set_text(arena, values, "tested", text_set(arena, part->test_v, UNIT_VOLTAGE, 3));
     mustache_set_text(arena, values, "service", text_set(arena, part->service_v, UNIT_VOLTAGE, 3));
+    /* Volts at which the meter would do, where it did not. */
+    double enough_v = part->sheet_not_with_this_meter        ? part->sheet_volts_needed_v
+                      : part->sheet_voltage_v > part->test_v ? part->sheet_voltage_v
+                                                             : NAN;
+    mustache_set_text(arena, values, "enough", text_set(arena, enough_v, UNIT_VOLTAGE, 2));
+    mustache_set_text(arena, values, "finer", text_micro(arena, part->sheet_uncertainty_max_a, 1));
     mustache_set_text(arena, values, "soak", text_set(arena, part->sheet_soak_s, UNIT_TIME, 2));
     mustache_set_text(arena, values, "wait",
                       text_set(arena, part->absorption.wait_until_s, UNIT_TIME, 2));

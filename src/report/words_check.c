@@ -25,6 +25,8 @@ static const char *const effects[] = {"grid_volts",
                                       "pulse_peak",
                                       "shift",
                                       "linear_ratio",
+                                     "primary_current",
+                                     "capacitance",
                                       NULL};
 
 /* A group of phrases and the keys below it; `from` skips the unset choice. */

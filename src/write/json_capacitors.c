@@ -37,7 +37,10 @@ static void write_effect(const char *key, const struct effect *effect, struct bu
     json_text_member(out, "key", effect->key);
     json_number_member(out, "value", effect->value);
     json_choice_member(out, "unit", effect->unit == UNIT_NONE ? NULL : unit_name(effect->unit));
-    json_flag_member(out, "at_most", effect->at_most);
+    /* A leak of at most so much is a ratio of at least so much. */
+    bool ratio = effect->unit == UNIT_NONE;
+    json_flag_member(out, "at_most", effect->at_most && !ratio);
+    json_flag_member(out, "at_least", effect->at_most && ratio);
     json_number_member(out, "of", effect->of);
     json_text_member(out, "subject", effect->subject);
     json_text_member(out, "text", effect->text);
@@ -168,20 +171,24 @@ static void write_identity(const struct findings *findings, const struct capacit
     json_text_member(out, "case", part->case_size.set ? part->case_size.written : NULL);
 }
 
-static void write_action(const struct capacitor *part, struct buffer *out)
+/* A section says what was done where the can does not. */
+static void write_action(const struct job *job, const struct capacitor *part, struct buffer *out)
 {
-    json_choice_member(out, "done", action_text(part->done));
-    json_text_member(out, "fitted", part->fitted.set ? part->fitted.written : NULL);
-    json_choice_member(out, "fitted_type",
-                       part->fitted.set ? dielectric_text(part->fitted.type) : NULL);
-    json_quantity_member(out, "fitted_f", &part->fitted.value);
-    json_quantity_member(out, "fitted_rated_v", &part->fitted.rated);
-    json_choice_member(out, "fitted_class", safety_class_text(part->fitted.safety_class));
-    json_text_member(out, "age", part->fitted.set ? age_text(part->age) : NULL);
-    json_text_member(out, "batch", part->batch);
-    json_prose_member(out, "signed", &part->signed_where);
+    const struct can *can = part->can == NOT_LISTED ? NULL : &job->cans[part->can];
+    bool own = part->done != DONE_OPEN || !can;
+    const struct marking *fitted = part->fitted.set || !can ? &part->fitted : &can->fitted;
+    json_choice_member(out, "done", action_text(own ? part->done : can->done));
+    json_text_member(out, "fitted", fitted->set ? fitted->written : NULL);
+    json_choice_member(out, "fitted_type", fitted->set ? dielectric_text(fitted->type) : NULL);
+    json_quantity_member(out, "fitted_f", &fitted->value);
+    json_quantity_member(out, "fitted_rated_v", &fitted->rated);
+    json_choice_member(out, "fitted_class", safety_class_text(fitted->safety_class));
+    json_text_member(out, "age", fitted->set ? age_text(own ? part->age : can->age) : NULL);
+    json_text_member(out, "batch", part->batch || !can ? part->batch : can->batch);
+    json_prose_member(out, "signed",
+                      part->signed_where.text || !can ? &part->signed_where : &can->signed_where);
     json_prose_member(out, "price", &part->price);
-    json_prose_member(out, "reason", &part->reason);
+    json_prose_member(out, "reason", part->reason.text || !can ? &part->reason : &can->reason);
     json_prose_member(out, "note", &part->note);
 }
 
@@ -204,8 +211,11 @@ static void write_verdict(const struct capacitor_findings *found, struct buffer 
     json_flag_member(out, "tested_above_marked", found->tested_above_marked);
 }
 
-static void write_figures(const struct capacitor_findings *found, struct buffer *out)
+static void write_figures(const struct job *job, const struct capacitor_findings *found,
+                          struct buffer *out)
 {
+    const struct instrument *instrument =
+        found->sheet_instrument < 0 ? NULL : &job->instruments[found->sheet_instrument];
     const struct source_row *theta = source_row(found->theta_source);
     const struct {
         const char *key;
@@ -222,6 +232,8 @@ static void write_figures(const struct capacitor_findings *found, struct buffer 
         {"sheet_voltage_v", found->sheet_voltage_v},
         {"sheet_soak_s", found->sheet_soak_s},
         {"sheet_series_max_ohm", found->sheet_series_max_ohm},
+        {"sheet_volts_needed_v", found->sheet_volts_needed_v},
+        {"sheet_uncertainty_max_a", found->sheet_uncertainty_max_a},
         {"test_v", found->test_v},
         {"test_s", found->test_s},
         {"test_leakage_a", found->test_leakage_a},
@@ -244,6 +256,8 @@ static void write_figures(const struct capacitor_findings *found, struct buffer 
     json_text_member(out, "test_bound", json_bound(found->test_bound));
     json_flag_member(out, "limit_none", found->limit_none);
     json_flag_member(out, "limit_is_heat", found->limit_is_heat);
+    json_text_member(out, "sheet_instrument", instrument ? instrument->name : NULL);
+    json_flag_member(out, "sheet_proves_fail_only", found->sheet_proves_fail_only);
     json_flag_member(out, "sheet_not_with_this_meter", found->sheet_not_with_this_meter);
     json_flag_member(out, "exponent_warning", found->exponent_warning);
     json_text_member(out, "trend", trend_text(found->trend));
@@ -261,9 +275,9 @@ void json_write_capacitors(const struct findings *findings, struct buffer *out)
         const struct capacitor_findings *found = &findings->capacitors[i];
         json_open(out, NULL, '{');
         write_identity(findings, found->part, out);
-        write_action(found->part, out);
+        write_action(findings->job, found->part, out);
         write_verdict(found, out);
-        write_figures(found, out);
+        write_figures(findings->job, found, out);
         /* The first is the one that a line of text shows; the rest stand beside it. */
         if (found->effect_count > 0)
             write_effect("effect", &found->effects[0], out);

@@ -30,3 +30,5 @@ if awk -f "$here/compare.awk" "$work/$1.txt" "$work/$2.out" >/dev/null; then
 fi
 echo "$count circuits, $failed differ"
 [ "$failed" = 0 ] && [ "$count" -ge 20 ]
+make -s BUILD="$build" "$build/gridleak"
+"$here/assessment/check.sh" "$build"

@@ -150,7 +150,7 @@ static void test_valves_by_name(void **state)
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_ROW_UNKNOWN), 1);
     assert_non_null(stage(&bench, "c")->row_name); /* the nearest instead */
     assert_non_null(stage(&bench, "d")->row_name);
-    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_UNKNOWN), 1);      /* 6ZZ9 */
+    assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_NOT_NEEDED), 1);   /* 6ZZ9 */
     assert_true(stage(&bench, "f")->phases[PHASE_DESIGNED].judged);          /* type under valves */
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_VALVE_ROW_UNUSABLE), 2); /* g, h */
     assert_int_equal(stage(&bench, "g")->phases[PHASE_DESIGNED].why, WHY_NO_ROW);
@@ -250,6 +250,7 @@ static void test_measured_resistors_and_joint_leaks(void **state)
         "      - 100 V 60 s 32 M\n"
         "  C2:\n"
         "    type: paper\n"
+        "    case: 40 mm x 60 mm\n"
         "    marked: 25 uF 25 V\n"
         "    place: cathode bypass\n"
         "    stage: output\n"
