@@ -109,6 +109,12 @@ check: check-packages
 	$(MAKE) all $(UNIT_TESTS)
 	tests/run.sh $(BUILD) $(UNIT_TESTS)
 
+# What publishing SPEED_N synthetic jobs costs, beside what the libraries alone need.
+SPEED_N = 1000
+speed: check-packages
+	$(MAKE) all
+	tests/speed/speed.sh $(BUILD) $(SPEED_N)
+
 lint:
 	tests/lint/run.sh
 

@@ -27,8 +27,8 @@
   Column.prototype.codes = function () {
     if (this.unpacked) return this.unpacked;
     var packed = this.packed, letters = this.letters, count = this.count;
-    var codes = this.texts.length <= 256 ? new Uint8Array(count)
-      : this.texts.length <= 65536 ? new Uint16Array(count) : new Uint32Array(count);
+    /* one kind of array wherever it can be: the loops below run on many columns */
+    var codes = this.texts.length <= 65536 ? new Uint16Array(count) : new Uint32Array(count);
     for (var i = 0, at = 0; i < count; i++) {
       var code = 0;
       for (var n = 0; n < letters; n++) code = code * 91 + digit[packed.charCodeAt(at++)];
@@ -91,15 +91,18 @@
       if (test(folds[code])) any = mask[code] = 1;
     return any ? mask : null;
   }
-  function addJobs(compiled, column, test) {
+  /* Set the rows whose fact meets a test; whether any code does. */
+  function addRows(rows, column, test) {
     var mask = maskOf(column, test);
-    if (!mask) return;
+    if (!mask) return false;
     var codes = column.codes();
-    for (var job = 0; job < jobCount; job++) compiled.jobs[job] |= mask[codes[job]];
+    for (var row = 0, count = rows.length; row < count; row++) rows[row] |= mask[codes[row]];
+    return true;
   }
+  function addJobs(compiled, column, test) { addRows(compiled.jobs, column, test); }
   function addParts(compiled, column, test) {
-    var mask = maskOf(column, test);
-    if (mask) compiled.parts.push({ codes: column.codes(), mask: mask });
+    var rows = compiled.parts || new Uint8Array(partCount);
+    if (addRows(rows, column, test)) compiled.parts = rows;
   }
 
   var dateOf = function (job) { return jobs.returned.text(job) || jobs.received.text(job); };
@@ -124,9 +127,9 @@
     }
   };
 
-  /* What a term asks: by job, and of parts by column. known false: there is no such fact. */
+  /* Which jobs meet a term, and which parts (null: none). known false: there is no such fact. */
   function compile(term) {
-    var compiled = { jobs: new Uint8Array(jobCount), parts: [], known: true }, value = term.value;
+    var compiled = { jobs: new Uint8Array(jobCount), parts: null, known: true }, value = term.value;
     if (!term.key) {
       var begins = function (text) { return beginsWord(text, value); };
       archive.jobWords.forEach(function (key) { addJobs(compiled, jobs[key], begins); });
@@ -149,37 +152,54 @@
     return compiled;
   }
 
-  function meets(columns, part) {
-    for (var i = 0; i < columns.length; i++)
-      if (columns[i].mask[columns[i].codes[part]]) return true;
-    return false;
+  /* While one types, all words but the last stay the same. */
+  var compiledBefore = [];
+  function compileOnce(term) {
+    for (var i = 0; i < compiledBefore.length; i++)
+      if (compiledBefore[i].key === term.key && compiledBefore[i].value === term.value) return compiledBefore[i].compiled;
+    if (compiledBefore.length >= 12) compiledBefore.shift();
+    compiledBefore.push({ key: term.key, value: term.value, compiled: compile(term) });
+    return compiledBefore[compiledBefore.length - 1].compiled;
+  }
+
+  /* The parts of one job that meet all of `needed`, or, when the job needs none, any of `others`. */
+  function collect(job, needed, others, found, at) {
+    var start = firstPart[job], end = firstPart[job + 1], part, i, good;
+    if (needed.length === 1) {
+      for (var only = needed[0], part1 = start; part1 < end; part1++) if (only[part1]) found[at++] = part1;
+      return at;
+    }
+    for (part = start; part < end; part++) {
+      if (needed.length) {
+        for (good = 1, i = 0; good && i < needed.length; i++) good = needed[i][part];
+      } else {
+        for (good = 0, i = 0; !good && i < others.length; i++) good = others[i][part];
+      }
+      if (good) found[at++] = part;
+    }
+    return at;
   }
 
   /* Parts and jobs found, in order of jobs. */
+  var partsBuffer = new Uint32Array(partCount), jobsBuffer = new Uint32Array(jobCount);
   function search(terms) {
-    var compiled = terms.map(compile), foundJobs = [], foundParts = [];
+    var compiled = terms.map(compileOnce), parts = 0, jobs = 0;
     var unknown = terms.filter(function (term, i) { return !compiled[i].known; });
-    var ofParts = compiled.filter(function (term) { return term.parts.length > 0; });
+    var others = compiled.map(function (term) { return term.parts; }).filter(Boolean);
     for (var job = 0; job < jobCount; job++) {
-      var needed = [], possible = true, hit = 0;
-      for (var i = 0; i < compiled.length; i++)
+      var needed = [], possible = true;
+      for (var i = 0; i < compiled.length && possible; i++)
         if (!compiled[i].jobs[job]) {
-          needed.push(compiled[i].parts);
-          possible = possible && compiled[i].parts.length > 0;
+          if (compiled[i].parts) needed.push(compiled[i].parts);
+          else possible = false;
         }
       if (!possible) continue;
-      for (var part = firstPart[job], end = ofParts.length ? firstPart[job + 1] : part; part < end; part++) {
-        var good = needed.length > 0;
-        for (i = 0; good && i < needed.length; i++) good = meets(needed[i], part);
-        for (i = 0; !needed.length && !good && i < ofParts.length; i++) good = meets(ofParts[i].parts, part);
-        if (good) {
-          foundParts.push(part);
-          hit++;
-        }
-      }
-      if (!needed.length || hit) foundJobs.push(job);
+      var before = parts;
+      if (others.length) parts = collect(job, needed, others, partsBuffer, parts);
+      if (!needed.length || parts > before) jobsBuffer[jobs++] = job;
     }
-    return { jobs: foundJobs, parts: foundParts, unknown: unknown };
+    if (unknown.length) jobs = parts = 0;
+    return { jobs: jobsBuffer.slice(0, jobs), parts: partsBuffer.slice(0, parts), unknown: unknown };
   }
 
   /* ---- order */
@@ -284,22 +304,23 @@
       var value = rank(row);
       return value === Infinity ? Infinity : sign * value;
     };
-    var compare = function (a, b) { return a.key - b.key || sign * (a.row - b.row) || 0; };
-    var best = [], worst = Infinity;
+    /* Infinity less itself is no number: equal keys first. */
+    function compare(a, b) { return a.key === b.key ? sign * (a.row - b.row) : a.key < b.key ? -1 : 1; }
+    var best = [], worst = Infinity, full = false;
+    /* Rows come in their own order: from the end that is likelier to be wanted. */
     for (var i = 0; i < rows.length; i++) {
-      var value = key(rows[i]);
-      if (best.length >= most && value > worst) continue;
-      best.push({ key: value, row: rows[i] });
+      var row = rows[down ? rows.length - 1 - i : i], value = key(row);
+      /* Of equal ones those that came first are nearer to the wanted end. */
+      if (full && value >= worst) continue;
+      best.push({ key: value, row: row });
       if (best.length >= 4 * most) {
-        best.sort(compareSafely);
+        best.sort(compare);
         best.length = most;
         worst = best[most - 1].key;
+        full = true;
       }
     }
-    function compareSafely(a, b) {
-      return a.key === b.key ? sign * (a.row - b.row) : compare(a, b);
-    }
-    best.sort(compareSafely);
+    best.sort(compare);
     return best.slice(0, most).map(function (item) { return item.row; });
   }
 
@@ -379,12 +400,19 @@
     return row;
   }
 
+  /* The rows that fit a screen or two at once; the rest when the typing pauses. */
+  var AT_ONCE = 40, PAUSE_MS = 150, rest = { sets: 0, parts: 0 };
   function draw(name, rows, rowOf) {
     var order = orders[name][sort[name].key];
     var shown = order ? first(rows, order, sort[name].down, SHOWN) : [];
     var body = document.createElement("tbody");
-    shown.forEach(function (row) { body.append(rowOf(row)); });
+    shown.slice(0, AT_ONCE).forEach(function (row) { body.append(rowOf(row)); });
     tables[name].tBodies[0].replaceWith(body);
+    clearTimeout(rest[name]);
+    if (shown.length > AT_ONCE)
+      rest[name] = setTimeout(function () {
+        shown.slice(AT_ONCE).forEach(function (row) { body.append(rowOf(row)); });
+      }, PAUSE_MS);
     var note = document.getElementById(name + "-limited");
     note.hidden = rows.length <= SHOWN;
     note.textContent = "The first " + SHOWN + " of " + count(rows.length) + " are shown; a further word narrows them.";
@@ -403,11 +431,11 @@
       ", of " + count(jobCount) + ".";
   }
 
-  var last = null;
+  var last = null, everyJob = Uint32Array.from({ length: jobCount }, function (ignored, job) { return job; });
   function show() {
     var query = field.value.trim();
     if (last === null || last.query !== query) {
-      last = query ? search(termsOf(query)) : { jobs: Array.from({ length: jobCount }, function (ignored, job) { return job; }), parts: [], unknown: [] };
+      last = query ? search(termsOf(query)) : { jobs: everyJob, parts: [], unknown: [] };
       last.query = query;
     }
     partsFound.hidden = !last.parts.length;
@@ -560,8 +588,22 @@
     recall();
     show();
   });
+  /* What the first letter typed will need is made ready column by column, while nothing is asked. */
+  function prepare() {
+    var waiting = [];
+    archive.jobWords.forEach(function (key) { waiting.push(jobs[key]); });
+    archive.partWords.forEach(function (key) { waiting.push(parts[key]); });
+    (function next() {
+      var column = waiting.pop();
+      if (!column) return;
+      column.codes();
+      column.folds();
+      setTimeout(next, 0);
+    })();
+  }
   recall();
   if (/\b(maker|model|valve|kind|type|batch|from|to|due)=/.test(field.value)) document.getElementById("more").open = true;
   show();
+  setTimeout(prepare, 0);
   window.gridleakReady = true;
 })();

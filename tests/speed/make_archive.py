@@ -65,6 +65,7 @@ def capacitor(random_, ref, out):
         out.append("    fitted: polypropylene %s 630 V" % value)
         out.append("    batch: 20%02d-P%02d" % (random_.randint(26, 36), random_.randint(1, 12)))
         out.append("    signed: inside the end cap, with the year")
+        out.append("    reason: as agreed with the owner")
     else:
         out.append("    done: kept")
         out.append("    reason: the owner wished it left as it is, whatever was read")
