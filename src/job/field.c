@@ -250,6 +250,21 @@ static void line_kinds_read(struct reader *reader, const struct field *field,
 
 /* ---- records ---- */
 
+/* A fact as it would stand below a record's key: what it cannot do without, or what is marked on
+   the part, else its first. */
+static const char *fact_example(struct reader *reader, const struct field *field)
+{
+    const struct record *record = field->kind == FIELD_RECORD ? field->record : NULL;
+    if (!record || !record->field_count)
+        return "key: value";
+    const struct field *fact = &record->fields[0];
+    for (size_t i = 0; i < record->field_count; i++)
+        if (record->fields[i].required || strcmp(record->fields[i].key, "marked") == 0)
+            fact = &record->fields[i];
+    return fact->record ? "key: value"
+                        : arena_print(reader->arena, "%s: %s", fact->key, fact->example);
+}
+
 static bool expect(struct reader *reader, const struct field *field, const struct node *node,
                    enum node_kind kind)
 {
@@ -259,7 +274,9 @@ static bool expect(struct reader *reader, const struct field *field, const struc
         reader_tell(reader, node->at, DIAGNOSTIC_WRONG_SHAPE,
                     node->kind == NODE_SCALAR && strchr(node->text, ':')
                         ? "a fact is 'key: value', with a space after the colon"
-                        : "write each on a line of its own below it, as 'key: value'",
+                        : arena_print(reader->arena,
+                                      "write each on a line of its own below it, as '%s'",
+                                      fact_example(reader, field)),
                     "'%s' takes keys of its own, no %s", field->key,
                     node->kind == NODE_SCALAR ? "single value" : "list");
     else
@@ -304,7 +321,8 @@ static void one_record_read(struct reader *reader, const struct field *field,
         record->read(reader, field, node, out);
         return;
     }
-    struct field named = {.key = node->key ? node->key : record->name};
+    struct field named = {
+        .key = node->key ? node->key : record->name, .kind = FIELD_RECORD, .record = record};
     if (record->fields && expect(reader, &named, node, NODE_MAPPING))
         record_read(reader, record, node, out);
     else if (!record->fields)

@@ -244,18 +244,32 @@ static void record_write(struct draft draft, const struct record *record, const 
     }
 }
 
+static const char advice[] =
+    "## Lines behind one # are examples: take the # and its blank away to use one. Empty keys may\n"
+    "## stay. `gridleak fields` has every key, and what each place needs.\n";
+
 void start_write(struct buffer *buffer, const struct start *start, struct arena *arena,
                  struct diagnostics *diagnostics)
 {
     const struct node *like = start->like ? yaml_tree_read(start->like, arena, diagnostics) : NULL;
-    struct draft draft = {.out = buffer};
+    struct draft draft = {0};
+    bool after_block = false;
     for (size_t i = 0; i < job_record.field_count; i++) {
         const struct field *field = &job_record.fields[i];
+        struct buffer text = {0};
+        draft.out = &text;
         if (strcmp(field->key, "job") == 0)
-            buffer_print(buffer, "job: %s\n", start->number);
+            buffer_print(&text, "job: %s\n%s", start->number, advice);
         else if (strcmp(field->key, "received") == 0 && start->received)
-            buffer_print(buffer, "received: %s\n", start->received);
+            buffer_print(&text, "received: %s\n", start->received);
         else
             field_write(draft, field, like ? node_child(like, field->key) : NULL);
+        bool block = field->record != NULL;
+        if (text.length) {
+            buffer_text(buffer, block || after_block ? "\n" : "");
+            buffer_append(buffer, text.data, text.length);
+            after_block = block;
+        }
+        buffer_release(&text);
     }
 }
