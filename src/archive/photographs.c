@@ -8,6 +8,7 @@
 
 enum {
     LONGEST_SIDE_PX = 1600,
+    LOGO_SIDE_PX = 600, /* of 12 mm on paper, 48 px on a screen */
     JPEG_QUALITY = 85,
     PHOTO_BYTES_MAX = 64 << 20,
 };
@@ -42,44 +43,68 @@ const char *photograph_path(const struct job *job, const struct photo *photo, st
                        photo->file);
 }
 
-static bool read_one(const struct archive *archive, const struct job *job,
-                     const struct photo *photo, struct picture *picture,
-                     struct diagnostics *diagnostics)
+/* One picture to be read, and how to speak of it. */
+struct named_picture {
+    const char *what;            /* "photograph" */
+    const char *file;            /* as the user named it */
+    const char *path;            /* where that is */
+    const struct source *source; /* NULL: no file names it */
+    struct position at;
+    unsigned longest_side_px;
+};
+
+static enum picture_status decode(const struct named_picture *named, const struct buffer *file,
+                                  struct picture *picture)
 {
-    if (photo->file[0] == '/' || has_parent_step(photo->file)) {
-        diagnostic_add(diagnostics, &job->source, photo->at, DIAGNOSTIC_PHOTO_OUTSIDE,
-                       "name it from the job file's folder, without a leading / or ..",
-                       "the photograph '%s' is not inside the archive", photo->file);
+    const struct picture_limits limits = {.longest_side_px = named->longest_side_px,
+                                          .opened_px = OPENED_PX_MAX,
+                                          .jpeg_quality = JPEG_QUALITY,
+                                          .file_bytes = PHOTO_BYTES_MAX};
+    return picture_decode((const unsigned char *)file->data, file->length, &limits, picture);
+}
+
+static bool read_one(const struct archive *archive, const struct named_picture *named,
+                     struct picture *picture, struct diagnostics *diagnostics)
+{
+    if (named->file[0] == '/' || has_parent_step(named->file)) {
+        diagnostic_add(diagnostics, named->source, named->at, DIAGNOSTIC_PHOTO_OUTSIDE,
+                       "name it from the file's folder, without a leading / or ..",
+                       "the %s '%s' is not inside the archive", named->what, named->file);
         return false;
     }
-    const char *path = photograph_path(job, photo, diagnostics->arena);
     struct buffer file = {0};
-    enum file_status status = file_read(path, PHOTO_BYTES_MAX, &file);
+    enum file_status status = file_read(named->path, PHOTO_BYTES_MAX, &file);
+    enum picture_status decoded = PICTURE_OK;
     bool good = false;
-    if (status != FILE_OK) {
-        diagnostic_add(diagnostics, &job->source, photo->at, DIAGNOSTIC_PHOTO_UNREADABLE, NULL,
-                       "cannot read the photograph '%s': %s", photo->file,
+    if (status != FILE_OK)
+        diagnostic_add(diagnostics, named->source, named->at, DIAGNOSTIC_PHOTO_UNREADABLE, NULL,
+                       "cannot read the %s '%s': %s", named->what, named->file,
                        file_status_text(status));
-    } else if (!is_inside(archive->folder, path)) {
-        diagnostic_add(diagnostics, &job->source, photo->at, DIAGNOSTIC_PHOTO_OUTSIDE,
-                       "copy it into the archive", "the photograph '%s' is not inside the archive",
-                       photo->file);
-    } else {
-        const struct picture_limits limits = {.longest_side_px = LONGEST_SIDE_PX,
-                                              .opened_px = OPENED_PX_MAX,
-                                              .jpeg_quality = JPEG_QUALITY,
-                                              .file_bytes = PHOTO_BYTES_MAX};
-        enum picture_status decoded =
-            picture_decode((const unsigned char *)file.data, file.length, &limits, picture);
-        good = decoded == PICTURE_OK;
-        if (!good)
-            diagnostic_add(diagnostics, &job->source, photo->at, DIAGNOSTIC_PHOTO_DAMAGED,
-                           "save it again as JPEG or PNG from the original",
-                           "cannot use the photograph '%s': %s", photo->file,
-                           picture_status_text(decoded));
-    }
+    else if (!is_inside(archive->folder, named->path))
+        diagnostic_add(diagnostics, named->source, named->at, DIAGNOSTIC_PHOTO_OUTSIDE,
+                       "copy it into the archive", "the %s '%s' is not inside the archive",
+                       named->what, named->file);
+    else if ((decoded = decode(named, &file, picture)) != PICTURE_OK)
+        diagnostic_add(diagnostics, named->source, named->at, DIAGNOSTIC_PHOTO_DAMAGED,
+                       "save it again as JPEG or PNG from the original",
+                       "cannot use the %s '%s': %s", named->what, named->file,
+                       picture_status_text(decoded));
+    else
+        good = true;
     buffer_release(&file);
     return good;
+}
+
+static void read_logo(const struct archive *archive, struct photographs *photographs,
+                      struct diagnostics *diagnostics)
+{
+    const char *file = archive->shop->logo;
+    const struct named_picture logo = {
+        .what = "logo of shop.yaml",
+        .file = file,
+        .path = arena_print(diagnostics->arena, "%s/%s", archive->folder, file),
+        .longest_side_px = LOGO_SIDE_PX};
+    photographs->has_logo = read_one(archive, &logo, &photographs->logo, diagnostics);
 }
 
 struct photographs photographs_read(const struct archive *archive, const struct job *job,
@@ -90,10 +115,20 @@ struct photographs photographs_read(const struct archive *archive, const struct 
         .usable = arena_array(arena, job->photo_count, sizeof(bool)),
         .count = job->photo_count,
     };
-    for (size_t i = 0; i < job->photo_count; i++)
-        if (job->photos[i].file)
-            photographs.usable[i] =
-                read_one(archive, job, &job->photos[i], &photographs.pictures[i], diagnostics);
+    for (size_t i = 0; i < job->photo_count; i++) {
+        const struct photo *photo = &job->photos[i];
+        if (!photo->file)
+            continue;
+        const struct named_picture named = {.what = "photograph",
+                                            .file = photo->file,
+                                            .path = photograph_path(job, photo, diagnostics->arena),
+                                            .source = &job->source,
+                                            .at = photo->at,
+                                            .longest_side_px = LONGEST_SIDE_PX};
+        photographs.usable[i] = read_one(archive, &named, &photographs.pictures[i], diagnostics);
+    }
+    if (archive->shop->logo)
+        read_logo(archive, &photographs, diagnostics);
     return photographs;
 }
 
@@ -107,27 +142,38 @@ static size_t index_in_whole(const struct job *whole, const struct photo *photo,
     return whole->photo_count;
 }
 
+/* The picture under a name of its copy, its file in the folder. */
+static struct report_picture shown_as(const char *name, const struct picture *picture,
+                                      struct folder_image *image, struct arena *arena)
+{
+    struct report_picture shown = {
+        .file = arena_print(arena, "%s.%s", name, picture_file_extension(picture)),
+        .width_px = picture->width_px,
+        .height_px = picture->height_px,
+        .picture = picture};
+    picture_file_write(picture,
+                       folder_image_add(image, arena_print(arena, "pictures/%s", shown.file)));
+    return shown;
+}
+
 const struct report_picture *photographs_for_copy(const struct photographs *photographs,
                                                   const struct job *whole,
                                                   const struct job *filtered,
                                                   struct folder_image *image, struct arena *arena)
 {
     struct report_picture *shown =
-        arena_array(arena, filtered->photo_count, sizeof(struct report_picture));
+        arena_array(arena, filtered->photo_count + 1, sizeof(struct report_picture));
     size_t from = 0;
     for (size_t i = 0; i < filtered->photo_count; i++) {
         size_t index = index_in_whole(whole, &filtered->photos[i], from);
         if (index == whole->photo_count || !photographs->usable[index])
             continue;
         from = index + 1;
-        const struct picture *picture = &photographs->pictures[index];
-        shown[i].file = arena_print(arena, "%02zu.%s", i + 1, picture_file_extension(picture));
-        shown[i].width_px = picture->width_px;
-        shown[i].height_px = picture->height_px;
-        shown[i].picture = picture;
-        picture_file_write(
-            picture, folder_image_add(image, arena_print(arena, "pictures/%s", shown[i].file)));
+        shown[i] = shown_as(arena_print(arena, "%02zu", i + 1), &photographs->pictures[index],
+                            image, arena);
     }
+    if (photographs->has_logo)
+        shown[filtered->photo_count] = shown_as("logo", &photographs->logo, image, arena);
     return shown;
 }
 
@@ -136,4 +182,6 @@ void photographs_release(struct photographs *photographs)
     for (size_t i = 0; i < photographs->count; i++)
         if (photographs->usable[i])
             picture_release(&photographs->pictures[i]);
+    if (photographs->has_logo)
+        picture_release(&photographs->logo);
 }

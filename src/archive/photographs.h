@@ -1,6 +1,6 @@
 /*
- * The photographs of a job: read from inside the archive only, checked, upright, without camera
- * data, scaled down.
+ * The photographs of a job and the logo of the shop: read from inside the archive only, checked,
+ * upright, without camera data, scaled down.
  */
 #ifndef ARCHIVE_PHOTOGRAPHS_H
 #define ARCHIVE_PHOTOGRAPHS_H
@@ -15,6 +15,8 @@ struct photographs {
     struct picture *pictures; /* one for each of job->photos */
     bool *usable;
     size_t count;
+    struct picture logo;
+    bool has_logo;
 };
 
 /* Where a photograph lies: beside the job file. */
@@ -22,14 +24,15 @@ const char *photograph_path(const struct job *job, const struct photo *photo, st
 
 /*
  * Read all. A photograph that is missing, damaged or outside the archive is a diagnostic (error)
- * at its place in the job file.
+ * at its place in the job file; so is a logo, without a place.
  */
 struct photographs photographs_read(const struct archive *archive, const struct job *job,
                                     struct arena *arena, struct diagnostics *diagnostics);
 
 /*
  * The pictures that a copy shows, renamed 01.jpg, 02.jpg ... in order, one for each of
- * `filtered->photos` (which is taken from whole->photos by file name and place). Their files are
+ * `filtered->photos` (which is taken from whole->photos by file name and place), and behind them
+ * the logo, logo.jpg or logo.png. Their files are
  * added to the image under pictures/.
  */
 const struct report_picture *photographs_for_copy(const struct photographs *photographs,

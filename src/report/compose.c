@@ -5,6 +5,7 @@
  */
 #include "report/prose.h"
 #include "report/templates.h"
+#include "report/tree_memory.h"
 
 #include "base/memory.h"
 
@@ -32,15 +33,13 @@ static const struct {
     {"windings", exhibit_windings},
     {"controls", exhibit_controls},
     {"valves", exhibit_valves},
-    {"stage", exhibit_stage},
+    {"stages", exhibit_stages},
     {"voltages", exhibit_voltages},
     {"performance", exhibit_performance},
     {"safety", exhibit_safety},
     {"visits", exhibit_visits},
     {"plates", exhibit_plates},
     {"reform_curves", exhibit_reform_curves},
-    {"policy", exhibit_policy},
-    {"sources", exhibit_sources},
     {"instruments", exhibit_instruments},
     {"write_on", exhibit_write_on},
     {"sheet_leakage", exhibit_sheet_leakage},
@@ -129,7 +128,7 @@ static int settle_headings(cmark_node *run, int level)
 
 static void append_exhibit(cmark_node *root, const struct exhibit *exhibit)
 {
-    cmark_node *node = cmark_node_new(CMARK_NODE_CUSTOM_BLOCK);
+    cmark_node *node = tree_node(CMARK_NODE_CUSTOM_BLOCK);
     /* cmark carries the pointer and never looks behind it. */
     if (!node || !cmark_node_set_user_data(node, (void *)(uintptr_t)exhibit) ||
         !cmark_node_append_child(root, node))
@@ -138,7 +137,7 @@ static void append_exhibit(cmark_node *root, const struct exhibit *exhibit)
 
 static cmark_node *build_tree(struct composition *composition, const struct source *template)
 {
-    cmark_node *root = cmark_node_new(CMARK_NODE_DOCUMENT);
+    cmark_node *root = tree_node(CMARK_NODE_DOCUMENT);
     const struct buffer *text = composition->text;
     size_t from = 0;
     int level = 2;
@@ -148,8 +147,7 @@ static cmark_node *build_tree(struct composition *composition, const struct sour
         const struct piece *piece = i < composition->piece_count ? &composition->pieces[i] : NULL;
         size_t to = piece ? piece->offset : text->length;
         if (to > from) {
-            cmark_node *run =
-                cmark_parse_document(text->data + from, to - from, CMARK_OPT_VALIDATE_UTF8);
+            cmark_node *run = tree_of(text->data + from, to - from);
             prose_clean(composition, run, template, (struct position){0, 0});
             level = settle_headings(run, level);
             prose_move(run, root);

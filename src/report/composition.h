@@ -109,7 +109,7 @@ const char *text_join(struct arena *arena, const char *separator, const char *co
 /* A sentence of a text as typed: its first letter; its full stop. NULL stays NULL. */
 const char *text_sentence(struct arena *arena, const char *text);
 const char *text_stopped(struct arena *arena, const char *text);
-/* "0.02 uA" as typed, with its sign: "0.02 µA". */
+/* A text as typed with its signs: "0.02 uA", "3 sqrt(CV)", "2*10" as "0.02 µA", "3 √(CV)", "2×10". */
 const char *text_with_micro(struct arena *arena, const char *text);
 
 /* ---- what several exhibits ask of a part */
@@ -139,10 +139,10 @@ typedef void exhibit_builder(struct composition *composition, size_t index);
 exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents,
     exhibit_page_break, exhibit_small, exhibit_two_columns, exhibit_fingerprint, exhibit_glance,
     exhibit_leakage, exhibit_soak_curves, exhibit_changed, exhibit_removed, exhibit_resistors,
-    exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stage, exhibit_voltages,
-    exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_policy,
-    exhibit_sources, exhibit_instruments, exhibit_visits, exhibit_write_on, exhibit_sheet_leakage,
-    exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages,
+    exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stages, exhibit_voltages,
+    exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_instruments,
+    exhibit_visits, exhibit_write_on, exhibit_sheet_leakage, exhibit_sheet_reform,
+    exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages,
     exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
 
 /* ---- reforming: the plan of one electrolytic, for the bench sheet.
@@ -166,6 +166,11 @@ bool has_soak_curves(const struct composition *composition);
 /* ---- what a template sees */
 
 struct mustache_value *values_of(struct composition *composition);
+/* Lists `policy` (name, value, usual where the shop changed it) and `sources` (trust, titles): the
+   limits and the sources that this record used. */
+void methods_values(struct composition *composition, struct mustache_value *root);
+/* "second-hand": how a source is known, in words. */
+const char *trust_words(const struct composition *composition, enum trust trust);
 /* What manual.md sees besides: `keys` (section, text, example, index) and `has_numbers`. */
 void manual_values(struct composition *composition, struct mustache_value *values);
 /* A prose field of the job by its name in templates; NULL: no such field, or empty. */

@@ -307,13 +307,20 @@ const char *text_stopped(struct arena *arena, const char *text)
 
 const char *text_with_micro(struct arena *arena, const char *text)
 {
+    static const char root[] = "sqrt";
     struct buffer signs = {0};
     for (const char *at = text; *at; at++) {
         bool unit_begins = at > text && (at[-1] == ' ' || (at[-1] >= '0' && at[-1] <= '9'));
-        if (*at == 'u' && unit_begins && (at[1] == 'A' || at[1] == 'F' || at[1] == 'V'))
+        if (*at == 'u' && unit_begins && (at[1] == 'A' || at[1] == 'F' || at[1] == 'V')) {
             buffer_text(&signs, "µ");
-        else
+        } else if (strncmp(at, root, strlen(root)) == 0) {
+            buffer_text(&signs, "√");
+            at += strlen(root) - 1;
+        } else if (*at == '*') {
+            buffer_text(&signs, "×");
+        } else {
             buffer_byte(&signs, *at);
+        }
     }
     const char *shown = arena_text(arena, signs.data, signs.length);
     buffer_release(&signs);

@@ -77,12 +77,14 @@ struct figures leakage_figures(const struct composition *composition,
     return figures_plain(composition, value, 1e-6, decimals);
 }
 
-/* Heat that no hand would feel is left out beside what the leak does to the circuit. */
+/* Heat that no hand would feel, a current that nothing would notice: left out beside the rest. */
 static bool is_idle(const struct capacitor_findings *part, const struct effect *effect)
 {
-    const double felt_w = 1e-3;
-    return part->effect_count > 1 && strcmp(effect->key, "part_watts") == 0 &&
-           effect->value < felt_w;
+    const double felt_w = 1e-3, noticed_a = 1e-3;
+    if (part->effect_count < 2)
+        return false;
+    return (strcmp(effect->key, "part_watts") == 0 && effect->value < felt_w) ||
+           (strcmp(effect->key, "primary_current") == 0 && effect->value < noticed_a);
 }
 
 const char *effects_text(const struct composition *composition,
@@ -97,10 +99,13 @@ const char *effects_text(const struct composition *composition,
 }
 
 static const char *reason_under(const struct composition *composition,
-                                const struct capacitor_findings *part)
+                                const struct capacitor_findings *part, enum action done)
 {
-    if (part->outcome == OUTCOME_PASS || part->why == WHY_NONE)
+    bool said = part->why == WHY_NONE || part->why == WHY_WITHIN_UNCERTAINTY; /* "conditional" */
+    if (part->outcome == OUTCOME_PASS || (said && part->outcome != OUTCOME_NOT_JUDGED))
         return NULL;
+    if (part->why == WHY_NO_READING && done == DONE_KEPT_UNTESTED)
+        return NULL; /* "kept untested" */
     return phrase_in(&composition->say, "reason", reason_text(part->why));
 }
 
@@ -128,7 +133,7 @@ static void add_part(struct table_builder *builder, size_t index)
     cells[COLUMN_OF_EFFECT].text = effects_text(composition, part);
     cells[COLUMN_OF_OUTCOME] = (struct cell){
         .text = phrase_in(&composition->say, "outcome", outcome_text(part->outcome)),
-        .second = reason_under(composition, part),
+        .second = reason_under(composition, part, done),
         .mark = mark_of(part->outcome),
         .strong = part->outcome == OUTCOME_FAIL,
     };

@@ -30,7 +30,7 @@ static void add_picture(const struct composition *composition, struct plate *pla
         .file = picture->file,
         .when = paired ? phrase_in(&composition->say, "plate", photo->after ? "after" : "before")
                        : NULL,
-        .text = picture_text(photo),
+        .text = text_sentence(composition->arena, picture_text(photo)),
         .width_px = picture->width_px,
         .height_px = picture->height_px,
         .picture = picture->picture,

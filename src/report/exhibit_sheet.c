@@ -22,16 +22,16 @@ enum {
 
 static const struct column_plan plan[SHEET_COLUMNS] = {
     [SHEET_REF] = {"ref", NULL, NULL, COLUMN_REF, 5.5, 1},
-    [SHEET_PLACE] = {"place_and_lead", NULL, NULL, COLUMN_TEXT, 16, 1},
+    [SHEET_PLACE] = {"place", NULL, NULL, COLUMN_TEXT, 14.5, 1},
     [SHEET_MARKED] = {"marked", NULL, NULL, COLUMN_NUMBER, 10.5, 1},
     [SHEET_SET] = {"set", NULL, NULL, COLUMN_NUMBER, 6, 1},
     [SHEET_SOAK] = {"soak", NULL, NULL, COLUMN_NUMBER, 6, 1},
-    [SHEET_LIMIT] = {"limit", "µA", NULL, COLUMN_NUMBER, 5.5, 1},
-    [SHEET_LIMIT_OHM] = {"or", "MΩ", NULL, COLUMN_NUMBER, 5, 1},
+    [SHEET_LIMIT] = {"limit", "µA", NULL, COLUMN_NUMBER, 7, 1},
+    [SHEET_LIMIT_OHM] = {"or", "MΩ", NULL, COLUMN_NUMBER, 6.5, 1},
     [SHEET_EARLIER] = {"earlier", "time, µA", NULL, COLUMN_BLANK, 13, 1},
     [SHEET_AT_SOAK] = {"at_soak", "µA", NULL, COLUMN_BLANK, 13, 1},
-    [SHEET_MEASURED] = {"measured_c", NULL, NULL, COLUMN_BLANK, 9, 1},
-    [SHEET_DONE] = {"done", NULL, NULL, COLUMN_BLANK, 10.5, 1},
+    [SHEET_MEASURED] = {"measured", NULL, NULL, COLUMN_BLANK, 8.5, 1},
+    [SHEET_DONE] = {"done", NULL, NULL, COLUMN_BLANK, 9.5, 1},
 };
 
 static void set_marked(const struct composition *composition, struct cell *cell,
@@ -55,8 +55,11 @@ static void set_test(const struct composition *composition, struct cell *cells,
         return;
     /* Rounded up: a part at the printed figure is never above its limit. */
     double ohm = round_figures(part->sheet_limit_ohm, 2, true);
+    bool in_kiloohms = ohm >= 1e3 && ohm < 1e4; /* no finer than a third decimal */
+    if (in_kiloohms)
+        ohm = round_figures(part->sheet_limit_ohm, 1, true);
     cells[SHEET_LIMIT_OHM].figures =
-        figures_plain(composition, ohm, 1e6, decimals_for(ohm, 1e6, 2));
+        figures_plain(composition, ohm, 1e6, in_kiloohms ? 3 : decimals_for(ohm, 1e6, 2));
 }
 
 static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
@@ -66,8 +69,8 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
     const struct phrasing *say = &composition->say;
     struct mustache_value *values = part_values(say, composition->job, part);
     if (part->no_reading_passes)
-        table_note(builder, cell, phrase_of(say, "sheet.no_reading_passes", values));
-    else if (part->sheet_not_with_this_meter)
+        return;
+    if (part->sheet_not_with_this_meter)
         table_note(builder, cell, phrase_of(say, "sheet.not_with_this_meter", values));
     else if (part->missing)
         table_note(builder, cell, phrase_of(say, "sheet.missing_fact", values));
@@ -75,14 +78,14 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
         table_note(builder, cell, phrase_of(say, "sheet.proves_a_fail", values));
     else if (part->limit_none)
         table_note(builder, cell, phrase_of(say, "sheet.limit_none", values));
-    if (part->sheet_instrument > 0 && !part->no_reading_passes &&
+    if (part->sheet_instrument > 0 &&
         strcmp(composition->job->instruments[part->sheet_instrument].name, "leakage") != 0)
         table_note(builder, cell,
                    phrase(say, "sheet.by_instrument", "instrument",
                           composition->job->instruments[part->sheet_instrument].name, NULL));
     if (part->why == WHY_OPEN_RESISTOR)
         table_note(builder, cell, phrase_of(say, "sheet.open_resistor", values));
-    if (isfinite(part->sheet_series_max_ohm) && !part->no_reading_passes)
+    if (isfinite(part->sheet_series_max_ohm))
         table_note(builder, cell,
                    phrase(say, "sheet.series_max", "ohm",
                           text_unit(composition, part->sheet_series_max_ohm, UNIT_RESISTANCE, 2),
@@ -114,7 +117,10 @@ static void add_part(struct table_builder *builder, size_t index)
                                     ? phrase(&composition->say, "sheet.not_tested", NULL)
                                     : phrase_in(&composition->say, "lift", place);
     set_marked(composition, &cells[SHEET_MARKED], &part.part->marked);
-    if (!part.no_reading_passes)
+    if (part.no_reading_passes)
+        cells[SHEET_SET].text = phrase_of(&composition->say, "sheet.no_reading_passes",
+                                          part_values(&composition->say, composition->job, &part));
+    else
         set_test(composition, cells, &part);
     add_sheet_notes(builder, &cells[SHEET_REF], &part);
 }
@@ -124,6 +130,8 @@ void exhibit_sheet_leakage(struct composition *composition, size_t index)
     (void)index;
     struct table_builder builder = table_begin(composition, "sheet-leakage", plan, SHEET_COLUMNS);
     builder.table->write_in = true;
+    builder.table->columns[SHEET_PLACE].unit = phrase(&composition->say, "head.end_to_lift", NULL);
+    builder.table->columns[SHEET_MEASURED].unit = "C";
     const size_t *order = capacitors_by_place(composition);
     for (size_t i = 0; i < composition->findings->capacitor_count; i++)
         add_part(&builder, order[i]);

@@ -79,8 +79,8 @@ bool reform_planned(const struct composition *composition, size_t index, struct 
 enum { REFORM_BLANKS = 8 };
 
 static const struct column_plan step_plan[] = {
-    {"step", NULL, NULL, COLUMN_TEXT, 12, 1},   {"set", NULL, NULL, COLUMN_NUMBER, 8, 1},
-    {"until", NULL, NULL, COLUMN_NUMBER, 8, 1}, {"at_once", "µA", NULL, COLUMN_BLANK, 9, 1},
+    {"step", NULL, NULL, COLUMN_TEXT, 12, 1},   {"set", "V", NULL, COLUMN_NUMBER, 8, 1},
+    {"until", "V", NULL, COLUMN_NUMBER, 8, 1},  {"at_once", "µA", NULL, COLUMN_BLANK, 9, 1},
     {"min_1", "µA", NULL, COLUMN_BLANK, 9, 1},  {"min_2", "µA", NULL, COLUMN_BLANK, 9, 1},
     {"min_5", "µA", NULL, COLUMN_BLANK, 9, 1},  {"min_10", "µA", NULL, COLUMN_BLANK, 9, 1},
     {"min_30", "µA", NULL, COLUMN_BLANK, 9, 1}, {"last", "time", NULL, COLUMN_BLANK, 9, 1},
@@ -118,13 +118,12 @@ void exhibit_sheet_reform(struct composition *composition, size_t index)
     for (size_t i = 0; i < REFORM_STEPS; i++) {
         struct cell *cells = table_row(&builder);
         cells[0].text = arena_print(composition->arena, "%zu", i + 1);
-        cells[1].figures = figures_unit(composition, plan.step_v[i], UNIT_VOLTAGE, 3);
-        cells[2].figures =
-            figures_unit(composition, STEP_REACHED * plan.step_v[i], UNIT_VOLTAGE, 3);
+        cells[1].figures = figures_plain(composition, plan.step_v[i], 1, 0);
+        cells[2].figures = figures_plain(composition, STEP_REACHED * plan.step_v[i], 1, 0);
     }
     struct cell *rest = table_row(&builder);
     rest[0].text = phrase(&composition->say, "sheet.after_rest", NULL);
-    rest[1].figures = figures_unit(composition, plan.end_v, UNIT_VOLTAGE, 3);
+    rest[1].figures = figures_plain(composition, plan.end_v, 1, 0);
     builder.table->remark = reform_remark(composition, *part, &plan);
     table_place(&builder, NUMBERED_SHEET,
                 phrase(&composition->say, "caption.sheet_reform", "ref", part->part->ref, NULL));

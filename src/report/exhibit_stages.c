@@ -1,4 +1,4 @@
-/* A stage as designed, found and left, beside what the set itself showed. */
+/* Stages as designed, found and left, beside what the set itself showed. */
 #include "report/composition.h"
 
 enum {
@@ -17,8 +17,8 @@ static const struct column_plan plan[STAGE_COLUMNS] = {
     [STAGE_PHASES + PHASE_DESIGNED] = {"designed", NULL, "designed", COLUMN_NUMBER, 12, 2},
     [STAGE_PHASES + PHASE_FOUND] = {"found", NULL, "found", COLUMN_NUMBER, 12, 1},
     [STAGE_PHASES + PHASE_LEFT] = {"left", NULL, "left", COLUMN_NUMBER, 12, 1},
-    [STAGE_SET_FOUND] = {"found_at_the_set", NULL, "found_at_the_set", COLUMN_NUMBER, 12, 2},
-    [STAGE_SET_LEFT] = {"left_at_the_set", NULL, "left_at_the_set", COLUMN_NUMBER, 12, 2},
+    [STAGE_SET_FOUND] = {"found", NULL, "found_at_the_set", COLUMN_NUMBER, 12, 2},
+    [STAGE_SET_LEFT] = {"left", NULL, "left_at_the_set", COLUMN_NUMBER, 12, 2},
     [STAGE_RATING] = {"rating", NULL, "rating", COLUMN_NUMBER, 12, 2},
 };
 
@@ -90,8 +90,12 @@ static double rating_of(const struct stage_findings *stage, size_t row)
                                            : NAN;
 }
 
+/* Without a screen the cathode's current is the anode's: said once. */
 static bool row_is_empty(const struct stage_findings *stage, const struct stage_row *row)
 {
+    const struct stage_solution *designed = &stage->phases[PHASE_DESIGNED].solution;
+    if (row->solution == offsetof(struct stage_solution, cathode_a) && isnan(designed->screen_v))
+        return true;
     for (int phase = 0; phase < PHASE_COUNT; phase++)
         if (isfinite(solution_value(&stage->phases[phase], row)))
             return false;
@@ -128,8 +132,9 @@ static void add_row(struct table_builder *builder, const struct stage_findings *
 
 static const char *stage_title(const struct composition *composition, const struct stage *stage)
 {
-    const char *parts[] = {stage->valve_ref, stage->valve_type};
-    return text_join(composition->arena, ", ", parts, 2);
+    const char *valve[] = {stage->valve_ref, stage->valve_type};
+    return phrase(&composition->say, "stage.group", "stage", stage->name, "valve",
+                  text_join(composition->arena, " ", valve, 2), NULL);
 }
 
 static const char *grid_current_note(const struct composition *composition,
@@ -165,33 +170,55 @@ static const char *not_judged_note(const struct composition *composition,
     return NULL;
 }
 
-static const char *remark(const struct composition *composition, const struct stage_findings *stage)
+/* What is to be said of one stage stands at its first row. */
+static void add_notes(struct table_builder *builder, const struct stage_findings *stage,
+                      struct cell *cell)
 {
+    const struct composition *composition = builder->composition;
     const struct phrasing *say = &composition->say;
-    const char *sentences[] = {
-        exceeds_rating(stage) ? phrase(say, "stage.bold", NULL) : NULL,
-        stage->near_rating ? phrase(say, "stage.near_rating", NULL) : NULL,
-        not_judged_note(composition, stage),
-        stage->law_status == LAW_WARN_MU12 ? phrase(say, "stage.mu12", NULL) : NULL,
-        grid_current_note(composition, stage),
-        phrase(say, "stage.book_valve", NULL),
-    };
-    return text_join(composition->arena, " ", sentences, sizeof sentences / sizeof *sentences);
+    table_note(builder, cell, stage->near_rating ? phrase(say, "stage.near_rating", NULL) : NULL);
+    table_note(builder, cell, not_judged_note(composition, stage));
+    table_note(builder, cell,
+               stage->law_status == LAW_WARN_MU12 ? phrase(say, "stage.mu12", NULL) : NULL);
+    table_note(builder, cell, grid_current_note(composition, stage));
 }
 
-void exhibit_stage(struct composition *composition, size_t index)
+/* A stage of which nothing is known gets no line. */
+static bool add_stage(struct table_builder *builder, const struct stage_findings *stage)
 {
-    if (index >= composition->findings->stage_count)
-        return;
-    const struct stage_findings *stage = &composition->findings->stages[index];
-    struct table_builder builder = table_begin(
-        composition, arena_print(composition->arena, "stage-%zu", index + 1), plan, STAGE_COLUMNS);
-    builder.table->lined = true;
+    struct table *table = builder->table;
+    size_t first = table->row_count + 1;
+    table_group(builder, stage_title(builder->composition, stage->stage));
     for (size_t i = 0; i < sizeof rows / sizeof *rows; i++)
-        add_row(&builder, stage, i);
-    builder.table->remark = remark(composition, stage);
+        add_row(builder, stage, i);
+    if (table->row_count == first) {
+        table->row_count--;
+        return false;
+    }
+    add_notes(builder, stage, &table->rows[first].cells[STAGE_LABEL]);
+    return true;
+}
+
+void exhibit_stages(struct composition *composition, size_t index)
+{
+    (void)index;
+    const struct findings *findings = composition->findings;
+    struct table_builder builder = table_begin(composition, "stage-figures", plan, STAGE_COLUMNS);
+    bool bold = false, any = false;
+    for (size_t i = 0; i < findings->stage_count; i++) {
+        any |= add_stage(&builder, &findings->stages[i]);
+        bold |= exceeds_rating(&findings->stages[i]);
+    }
+    if (!any)
+        return;
+    const char *at_the_set = phrase(&composition->say, "head.at_the_set", NULL);
+    builder.table->columns[STAGE_SET_FOUND].unit = at_the_set;
+    builder.table->columns[STAGE_SET_LEFT].unit = at_the_set;
+    const char *sentences[] = {
+        bold ? phrase(&composition->say, "stage.bold", NULL) : NULL,
+        phrase(&composition->say, "stage.book_valve", NULL),
+    };
+    builder.table->remark = text_join(composition->arena, " ", sentences, 2);
     table_drop_empty(&builder);
-    table_place(&builder, NUMBERED_TABLE,
-                phrase(&composition->say, "caption.stage", "stage", stage->stage->name, "valve",
-                       stage_title(composition, stage->stage), NULL));
+    table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.stages", NULL));
 }

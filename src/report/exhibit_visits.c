@@ -16,7 +16,7 @@ static const char *moved_text(const struct composition *composition, double then
 }
 
 static struct figures visit_figures(const struct composition *composition, double current_a,
-                                      enum bound bound)
+                                    enum bound bound)
 {
     struct figures figures = figures_micro(composition, current_a, 2);
     if (figures.whole && bound != BOUND_NONE)

@@ -95,11 +95,6 @@ static bool is_reformed(const struct composition *composition, size_t index)
     return part_of(composition, index)->state == STATE_REFORMED;
 }
 
-static bool is_untested(const struct composition *composition, size_t index)
-{
-    return capacitor_done(composition, index) == DONE_KEPT_UNTESTED;
-}
-
 static bool replaced_unmeasured(const struct composition *composition, size_t index)
 {
     const struct capacitor_findings *part = part_of(composition, index);
@@ -126,7 +121,6 @@ static const struct {
     {limit_is_heat, "note.limit_is_heat"},
     {limit_none, "note.limit_none"},
     {is_reformed, "note.reformed"},
-    {is_untested, "note.untested"},
     {replaced_unmeasured, "note.replaced_unmeasured"},
 };
 

@@ -79,6 +79,8 @@ static const char *effect_phrase(const struct phrasing *say, const struct job *j
     enum unit unit = effect->unit;
     bool at_most = effect->at_most;
     bool of_line = strncmp(effect->key, "line_", 5) == 0;
+    if (unit == UNIT_NONE && effect->value > RATIO_MOST)
+        return phrase(say, "effect.none", NULL);
     double share = effect->of > 0 ? 100 * effect->value / effect->of : NAN;
     if (share < least_shown(UNIT_PERCENT))
         share = NAN; /* the figure itself says enough */
@@ -93,13 +95,25 @@ static const char *effect_phrase(const struct phrasing *say, const struct job *j
 
 /* ---- reasons */
 
+/* Two figures; more where the value would read like its limit. */
+static unsigned telling_digits(const struct phrasing *say, const struct criterion *criterion)
+{
+    unsigned digits = 2;
+    while (digits < 4 && isfinite(criterion->value) && isfinite(criterion->limit) &&
+           strcmp(quantity_text(say->arena, criterion->value, criterion->unit, digits),
+                  quantity_text(say->arena, criterion->limit, criterion->unit, digits)) == 0)
+        digits++;
+    return digits;
+}
+
 const char *criterion_phrase(const struct phrasing *say, const struct criterion *criterion)
 {
     struct mustache_value *values = mustache_map(say->arena);
+    unsigned digits = telling_digits(say, criterion);
     mustache_set_text(say->arena, values, "value",
-                      quantity_or_null(say->arena, criterion->value, criterion->unit, 2));
+                      quantity_or_null(say->arena, criterion->value, criterion->unit, digits));
     mustache_set_text(say->arena, values, "limit",
-                      quantity_or_null(say->arena, criterion->limit, criterion->unit, 2));
+                      quantity_or_null(say->arena, criterion->limit, criterion->unit, digits));
     mustache_set_text(say->arena, values, "rule",
                       criterion->rule ? text_with_micro(say->arena, criterion->rule) : NULL);
     mustache_set_flag(say->arena, values, "joint", criterion->joint);

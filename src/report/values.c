@@ -1,4 +1,5 @@
 /* What templates see: strings made once from the findings, each number with its unit. */
+#include "base/memory.h"
 #include "report/composition.h"
 
 #include <stdlib.h>
@@ -327,6 +328,17 @@ static const char *unjudged_text(const struct composition *composition,
         "valve", stage->stage->valve_type, NULL);
 }
 
+/* "RCA RC-19; seen in a text that quotes it"; NULL: the row has no source. */
+static const char *row_source(const struct composition *composition,
+                              const struct stage_findings *stage)
+{
+    if (!stage->row_source_text)
+        return NULL;
+    return arena_print(composition->arena, "%s; %s", stage->row_source_text,
+                       stage->row_given ? phrase(&composition->say, "methods.row_given", NULL)
+                                        : trust_words(composition, stage->row_trust));
+}
+
 static void put_stages(const struct filler *root)
 {
     struct mustache_value *list = mustache_list(root->arena);
@@ -338,6 +350,7 @@ static void put_stages(const struct filler *root)
         put(&item, "valve", stage->stage->valve_type);
         put(&item, "valve_ref", stage->stage->valve_ref);
         put(&item, "row", row_text(root->composition, stage));
+        put(&item, "row_source", row_source(root->composition, stage));
         put(&item, "unjudged", unjudged_text(root->composition, stage));
         put_flag(&item, "without_gm", stage->row && isnan(stage->row->gm_s));
         mustache_push(root->arena, list, item.map);
@@ -397,6 +410,8 @@ static bool mentions(const char *text, const char *word)
     utf8proc_ssize_t length =
         utf8proc_map((const utf8proc_uint8_t *)text, 0, &folded,
                      UTF8PROC_NULLTERM | UTF8PROC_STABLE | UTF8PROC_CASEFOLD | UTF8PROC_COMPOSE);
+    if (length == UTF8PROC_ERROR_NOMEM)
+        memory_exhausted();
     bool found = length > 0 && strstr((const char *)folded, word) != NULL;
     free(folded);
     return found;
@@ -450,6 +465,7 @@ struct mustache_value *values_of(struct composition *composition)
     put_reforms(&root);
     put_reform_plans(&root);
     put_hazards(&root);
+    methods_values(composition, root.map);
     if (composition->kind == DOCUMENT_MANUAL)
         manual_values(composition, root.map);
     return root.map;

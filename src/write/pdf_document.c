@@ -11,7 +11,7 @@ static const struct position nowhere = {0, 0};
 static bool is_figure(const struct exhibit *exhibit)
 {
     return exhibit && (exhibit->kind == EXHIBIT_PLOT || exhibit->kind == EXHIBIT_PLATE ||
-                       exhibit->kind == EXHIBIT_TABLE);
+                       exhibit->kind == EXHIBIT_TABLE || exhibit->kind == EXHIBIT_FINGERPRINT);
 }
 
 /* A short paragraph is not parted from the figure or table that it introduces. */

@@ -189,7 +189,7 @@ static void test_measurements(void **state)
     assert_string_equal(touch[1].figures.unit, "µA");
     assert_string_equal(touch[2].figures.whole, "40");
     assert_string_equal(touch[3].text, "230\u00A0V");
-    const struct cell *stage = cells_of(table_of(document, "stage-1"), "cathode");
+    const struct cell *stage = cells_of(table_of(document, "stage-figures"), "cathode");
     assert_string_equal(stage[5].figures.whole, "16");
     assert_string_equal(stage[5].figures.fraction, ".2");
     sample_end(sample, document);

@@ -28,7 +28,7 @@ struct sample {
     struct instrument instrument;
     struct resistor resistor;
     struct photo photos[2];
-    struct report_picture pictures[2];
+    struct report_picture pictures[3]; /* two photographs, no logo */
     struct named_prose removed;
     struct reform reform;
     struct reading log[4];
