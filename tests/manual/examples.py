@@ -5,6 +5,7 @@
 ```console        $ commands, run in the archive, each with status 0; the lines below must be printed
 Other blocks are formulas. Commands in `code` that begin with gridleak are run too.
 """
+import json
 import os
 import re
 import subprocess
@@ -85,6 +86,16 @@ def try_console(line, body):
             mistake(line, f"not printed: '{typed}'", output)
 
 
+def choices_of(schema, key):
+    """The choices of a key, wherever the schema has it."""
+    if isinstance(schema, list):
+        return next((found for item in schema if (found := choices_of(item, key))), None)
+    if not isinstance(schema, dict):
+        return None
+    own = schema.get("properties", {}).get(key, {}).get("enum")
+    return own or choices_of(list(schema.values()), key)
+
+
 def main():
     text = manual_text("manual")
     whole, jobs, pieces, commands = None, 0, 0, 0
@@ -121,6 +132,10 @@ def main():
             commands += body.count("$ ")
             try_console(line, body)
     print(f"{jobs} jobs, {pieces} pieces, {commands} commands of the manual, {len(mistakes)} mistakes")
+    places = json.loads(run("gridleak fields --schema").stdout)
+    for place in choices_of(places, "place"):
+        if f"place: {place}\n" not in text:
+            mistakes.append(f"no example for the place '{place}'")
     if jobs < 4 or pieces < 10 or commands < 15:
         mistakes.append("too few examples were found")
     sys.exit("\n".join(mistakes) or 0)
