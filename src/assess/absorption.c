@@ -38,23 +38,31 @@ struct series {
     const struct absorption_reading *readings;
     size_t count;
     double *weights, *basis;
+    double
+        *steps; /* from one place of the grid of n to the next the basis is multiplied by these */
 };
 
-/* I_s and A for a given shape: a weighted straight line. false: the readings do not tell them
-   apart. */
+static void set_basis(const struct decay *decay, const struct series *series)
+{
+    for (size_t i = 0; i < series->count; i++)
+        series->basis[i] = decay_basis(decay->law, series->readings[i].time_s, decay->shape);
+}
+
+/* I_s and A for the basis of a given shape: a weighted straight line. false: the readings do not
+   tell them apart. */
 static bool fit_line(struct decay *decay, const struct series *series)
 {
     double w = 0, wx = 0, wy = 0, wxx = 0, wxy = 0;
     for (size_t i = 0; i < series->count; i++) {
-        series->basis[i] = decay_basis(decay->law, series->readings[i].time_s, decay->shape);
         w += series->weights[i];
         wx += series->weights[i] * series->basis[i];
         wy += series->weights[i] * series->readings[i].current_a;
     }
+    double mean_x = wx / w, mean_y = wy / w;
     for (size_t i = 0; i < series->count; i++) {
-        double x = series->basis[i] - wx / w;
+        double x = series->basis[i] - mean_x;
         wxx += series->weights[i] * x * x;
-        wxy += series->weights[i] * x * (series->readings[i].current_a - wy / w);
+        wxy += series->weights[i] * x * (series->readings[i].current_a - mean_y);
     }
     if (!(wxx > 0) || !isfinite(wxx))
         return false;
@@ -142,12 +150,19 @@ static size_t search_grid(enum decay_law law, const struct series *series, struc
     double first_s = series->readings[0].time_s;
     double last_s = series->readings[series->count - 1].time_s;
     size_t best_place = 0;
+    for (size_t i = 0; law == DECAY_POWER && i < series->count; i++)
+        series->steps[i] = pow(series->readings[i].time_s / power_time_s, -n_step);
     for (size_t place = 0; place < grid_size(law); place++) {
         struct decay trial = {.fitted = true,
                               .law = law,
                               .freedom = series->count - 3,
                               .steady_error_a = NAN,
                               .shape = grid_shape(law, place, first_s, last_s)};
+        if (law == DECAY_POWER && place > 0)
+            for (size_t i = 0; i < series->count; i++)
+                series->basis[i] *= series->steps[i];
+        else
+            set_basis(&trial, series);
         if (fit_line(&trial, series) && trial.chi2 < best->chi2) {
             *best = trial;
             best_place = place;
@@ -161,8 +176,8 @@ struct decay decay_fit(enum decay_law law, const struct absorption_reading *read
     struct decay best = {.law = law, .chi2 = INFINITY};
     if (count <= 3)
         return best;
-    double *space = memory_get_cleared(2 * count, sizeof *space);
-    struct series series = {readings, count, space, space + count};
+    double *space = memory_get_cleared(3 * count, sizeof *space);
+    struct series series = {readings, count, space, space + count, space + 2 * count};
     for (size_t i = 0; i < count; i++)
         series.weights[i] = 1 / (readings[i].sigma_a * readings[i].sigma_a);
     size_t place = search_grid(law, &series, &best);

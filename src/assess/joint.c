@@ -54,14 +54,32 @@ static bool together(const struct assessment *assessment, size_t a, size_t b)
     return false;
 }
 
+/* All that share the line, the stage or the can with a part, the part itself among them. */
+struct company {
+    const size_t *parts;
+    size_t count;
+};
+
+static struct company company_of(const struct assessment *assessment, size_t index)
+{
+    size_t *parts = arena_array(assessment->arena, assessment->job->capacitor_count, sizeof *parts);
+    struct company company = {parts, 0};
+    for (size_t i = 0; i < assessment->job->capacitor_count; i++)
+        if (i == index || (takes_part(assessment, i) && together(assessment, index, i)))
+            parts[company.count++] = i;
+    return company;
+}
+
 /* What moves by its standard uncertainty: what one instrument's readings share, one reading's own
    last step, or one measured resistor. */
 struct shift {
+    const struct company *company;
     int instrument; /* NOT_SHIFTED: none */
     int own;        /* part; NOT_SHIFTED: none; OWN_OF_ALL */
     bool bench;     /* the bench's temperature, for all */
     const struct stage_step *step;
-    bool certain; /* others of which only an upper figure is known count as nothing */
+    bool feed, source; /* what the part itself hangs on, where that was measured */
+    bool certain;      /* others of which only an upper figure is known count as nothing */
 };
 enum { NOT_SHIFTED = -2, OWN_OF_ALL = -3 };
 /* With more parts than this on one line their last steps move together: an upper figure, and the
@@ -92,6 +110,8 @@ static void evaluate_with(const struct assessment *assessment, size_t index,
                           const struct shift *shift, struct place_values *values)
 {
     struct place_case place = assessment->work[index].place;
+    place.feed_ohm += shift->feed ? place.feed_u_ohm : 0;
+    place.source_ohm += shift->source ? place.source_u_ohm : 0;
     struct stage_circuit circuits[STAGE_GROUP_MAX];
     enum joint_kind kind = kind_of(&place);
     if (kind == JOINT_STAGE) {
@@ -100,9 +120,9 @@ static void evaluate_with(const struct assessment *assessment, size_t index,
                place.group->count * sizeof *circuits);
         place.circuits = circuits;
     }
-    for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
-        if (i == index || !takes_part(assessment, i) || !together(assessment, index, i) ||
-            (shift->certain && !assessment->work[i].leak.proves_fail))
+    for (size_t k = 0; k < shift->company->count; k++) {
+        size_t i = shift->company->parts[k];
+        if (i == index || (shift->certain && !assessment->work[i].leak.proves_fail))
             continue;
         const struct part_work *other = &assessment->work[i];
         double leak_s = shifted_leak(assessment, i, shift);
@@ -135,22 +155,14 @@ static void add_shift(const struct assessment *assessment, size_t index, const s
     }
 }
 
-/* How many parts share the line, the stage or the can, this one included. */
-static size_t company_of(const struct assessment *assessment, size_t index)
-{
-    size_t count = 0;
-    for (size_t i = 0; i < assessment->job->capacitor_count; i++)
-        count += takes_part(assessment, i) && (i == index || together(assessment, index, i));
-    return count;
-}
-
 /* Covariance by cause: all readings of one instrument move together, all cold readings with the
    bench's temperature, the rest one by one. */
-static void find_figures(const struct assessment *assessment, size_t index, bool certain,
-                         struct joint_figures *figures)
+static void find_figures(const struct assessment *assessment, size_t index,
+                         const struct company *company, bool certain, struct joint_figures *figures)
 {
     const struct place_case *place = &assessment->work[index].place;
-    const struct shift none = {.instrument = NOT_SHIFTED, .own = NOT_SHIFTED, .certain = certain};
+    const struct shift none = {
+        .company = company, .instrument = NOT_SHIFTED, .own = NOT_SHIFTED, .certain = certain};
     struct shift shift = none;
     *figures = (struct joint_figures){0};
     evaluate_with(assessment, index, &none, &figures->at);
@@ -162,16 +174,23 @@ static void find_figures(const struct assessment *assessment, size_t index, bool
     shift.bench = true;
     add_shift(assessment, index, &shift, figures);
     shift = none;
-    if (company_of(assessment, index) > ONE_BY_ONE_MAX) {
+    if (company->count > ONE_BY_ONE_MAX) {
         shift.own = OWN_OF_ALL;
         add_shift(assessment, index, &shift, figures);
     } else {
-        for (size_t i = 0; i < assessment->job->capacitor_count; i++)
-            if (takes_part(assessment, i) && (i == index || together(assessment, index, i))) {
-                shift.own = (int)i;
-                add_shift(assessment, index, &shift, figures);
-            }
+        for (size_t k = 0; k < company->count; k++) {
+            shift.own = (int)company->parts[k];
+            add_shift(assessment, index, &shift, figures);
+        }
     }
+    shift = none;
+    shift.feed = true;
+    if (place->feed_u_ohm > 0)
+        add_shift(assessment, index, &shift, figures);
+    shift = none;
+    shift.source = true;
+    if (place->source_u_ohm > 0)
+        add_shift(assessment, index, &shift, figures);
     shift = none;
     for (size_t i = 0; kind_of(place) == JOINT_STAGE && i < place->group->step_count; i++) {
         shift.step = &place->group->steps[i];
@@ -188,21 +207,18 @@ static const struct criterion *single_of(const struct judgement *judgement, enum
 }
 
 /* The share of a joint figure that one part brings, by what each does alone. */
-static double share_of(const struct assessment *assessment, size_t index, enum criterion_key key,
-                       size_t *count)
+static double share_of(const struct assessment *assessment, size_t index,
+                       const struct company *company, enum criterion_key key)
 {
     double own = 0, all = 0;
-    *count = 0;
-    for (size_t i = 0; i < assessment->job->capacitor_count; i++) {
-        if (!takes_part(assessment, i) || (i != index && !together(assessment, index, i)))
-            continue;
-        ++*count;
+    for (size_t k = 0; k < company->count; k++) {
+        size_t i = company->parts[k];
         struct place_values alone, bare;
         place_evaluate(&assessment->work[i].place, assessment->work[i].leak.conductance_s, &alone);
         place_evaluate(&assessment->work[i].place, 0, &bare);
-        for (size_t k = 0; k < alone.count && k < bare.count; k++)
-            if (alone.items[k].key == key) {
-                double effect = fmax(alone.items[k].value - bare.items[k].value, 0);
+        for (size_t n = 0; n < alone.count && n < bare.count; n++)
+            if (alone.items[n].key == key) {
+                double effect = fmax(alone.items[n].value - bare.items[n].value, 0);
                 all += effect;
                 own = i == index ? effect : own;
             }
@@ -211,7 +227,8 @@ static double share_of(const struct assessment *assessment, size_t index, enum c
 }
 
 static struct criterion joint_criterion(const struct assessment *assessment, size_t index,
-                                        const struct place_value *at, double u)
+                                        const struct company *company, const struct place_value *at,
+                                        double u)
 {
     const struct part_work *work = &assessment->work[index];
     const struct criterion *single = single_of(&work->final, at->key);
@@ -232,10 +249,9 @@ static struct criterion joint_criterion(const struct assessment *assessment, siz
     if (criterion.outcome == OUTCOME_PASS || criterion.outcome == OUTCOME_NOT_JUDGED) {
         criterion.why = criterion.outcome == OUTCOME_PASS ? WHY_NONE : WHY_STAGE;
     } else if (criterion.outcome >= OUTCOME_CONDITIONAL_FAIL) {
-        size_t count;
-        double share = share_of(assessment, index, at->key, &count);
-        criterion.outcome = share >= 1 / (2.0 * (double)count) ? OUTCOME_CONDITIONAL_FAIL
-                                                               : OUTCOME_CONDITIONAL_PASS;
+        double share = share_of(assessment, index, company, at->key);
+        criterion.outcome = share >= 1 / (2.0 * (double)company->count) ? OUTCOME_CONDITIONAL_FAIL
+                                                                        : OUTCOME_CONDITIONAL_PASS;
     }
     return criterion;
 }
@@ -248,17 +264,17 @@ static bool is_joint_figure(enum joint_kind kind, enum criterion_key key)
     return key != CRITERION_LEAKAGE_RULE;
 }
 
-static void judge_figures(const struct assessment *assessment, size_t index, bool certain,
-                          struct judgement *judgement)
+static void judge_figures(const struct assessment *assessment, size_t index,
+                          const struct company *company, bool certain, struct judgement *judgement)
 {
     enum joint_kind kind = kind_of(&assessment->work[index].place);
     struct joint_figures figures;
     *judgement = (struct judgement){0};
-    find_figures(assessment, index, certain, &figures);
+    find_figures(assessment, index, company, certain, &figures);
     for (size_t i = 0; i < figures.at.count; i++)
         if (is_joint_figure(kind, figures.at.items[i].key)) {
-            struct criterion criterion = joint_criterion(assessment, index, &figures.at.items[i],
-                                                         2 * sqrt(figures.variance[i]));
+            struct criterion criterion = joint_criterion(
+                assessment, index, company, &figures.at.items[i], 2 * sqrt(figures.variance[i]));
             judge_add(judgement, &criterion);
         }
 }
@@ -266,12 +282,13 @@ static void judge_figures(const struct assessment *assessment, size_t index, boo
 /* A reading that is only a bound, too early or still falling says how much at most: with it a joint
    figure may pass, and only without it may the figure fail; a part known by such a reading alone
    cannot be blamed. */
-static void judge_jointly(struct assessment *assessment, size_t index, struct judgement *result)
+static void judge_jointly(struct assessment *assessment, size_t index,
+                          const struct company *company, struct judgement *result)
 {
     struct judgement joint;
-    judge_figures(assessment, index, false, &joint);
+    judge_figures(assessment, index, company, false, &joint);
     if (joint.outcome >= OUTCOME_CONDITIONAL_FAIL)
-        judge_figures(assessment, index, true, &joint);
+        judge_figures(assessment, index, company, true, &joint);
     bool blameless = assessment->capacitors[index].test_bound != BOUND_NONE ||
                      !assessment->work[index].leak.proves_fail;
     for (size_t i = 0; i < joint.count; i++)
@@ -286,8 +303,11 @@ static void assess_together(struct assessment *assessment)
     /* All are judged on the single outcomes before any of them is changed. */
     for (size_t i = 0; i < count; i++) {
         results[i] = assessment->work[i].final;
-        if (takes_part(assessment, i) && company_of(assessment, i) > 1)
-            judge_jointly(assessment, i, &results[i]);
+        if (kind_of(&assessment->work[i].place) == JOINT_NONE || !takes_part(assessment, i))
+            continue;
+        struct company company = company_of(assessment, i);
+        if (company.count > 1)
+            judge_jointly(assessment, i, &company, &results[i]);
     }
     for (size_t i = 0; i < count; i++) {
         assessment->work[i].final = results[i];

@@ -1028,6 +1028,15 @@ def main():
                         at_certain, u_certain = spread(part, [(part, chosen[1])] + certain, to20)
                     limits = [v for _, v, _, _ in part.values(limit_s, to20=to20)]
                     whole = [v for _, v, _, _ in part.values(limit_s * part.margin, to20=to20)]
+                    worst_of_all = False
+                    for i, (k, bare_value, limit, _) in enumerate(bare):
+                        if k in ("heat", "leakage rule"):
+                            continue
+                        binding = abs(whole[i] / limit - 1) < 1e-3
+                        after = limit if part.margin == 1 else limits[i] if binding else max(bare_value + (limit - bare_value) / part.margin, limits[i])
+                        fails = verdict(at[i], after, u[i], "") in ("fail", "conditional fail")
+                        share = effect_share(part, chosen, mates, i) >= 1 / (2 * (1 + len(mates)))
+                        worst_of_all = worst_of_all or (fails and share)
                     for i, (k, bare_value, limit, _) in enumerate(bare):
                         if k in ("heat", "leakage rule"):
                             continue
@@ -1037,9 +1046,12 @@ def main():
                         theirs = [c for c in its[ref]["criteria"] if c["joint"] and c["key"] == k]
                         if key == "outcome" and not theirs and proven:
                             mistakes.append(f"{job.y['job']} {ref}: no joint {k}")
-                        if key == "outcome" and theirs and proven:
-                            hold(f"{job.y['job']} {ref} joint {k}", at[i], theirs[0]["value"], 5e-3)
-                            hold(f"{job.y['job']} {ref} joint U of {k}", u[i], theirs[0]["uncertainty"], 5e-2)
+                        # A joint fail counts only what may fail, and shows that; else all is shown.
+                        all_shown = proven or not worst_of_all
+                        shown = (at[i], u[i]) if all_shown else (at_certain[i], u_certain[i]) if alone[ref][4] else None
+                        if key == "outcome" and theirs and shown:
+                            hold(f"{job.y['job']} {ref} joint {k}", shown[0], theirs[0]["value"], 5e-3)
+                            hold(f"{job.y['job']} {ref} joint U of {k}", shown[1], theirs[0]["uncertainty"], 5e-2)
                         if not proven and joint in ("fail", "conditional fail"):
                             joint = verdict(at_certain[i], after, u_certain[i], "") if alone[ref][4] else "pass"
                         if joint in ("fail", "conditional fail"):
