@@ -74,6 +74,10 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
         table_note(builder, cell, phrase_of(say, "sheet.not_with_this_meter", values));
     else if (part->missing)
         table_note(builder, cell, phrase_of(say, "sheet.missing_fact", values));
+    else if (isnan(part->sheet_voltage_v) && part->part->marked.rated.set)
+        table_note(builder, cell,
+                   phrase(say, "sheet.no_volts", "rated",
+                          text_quantity(composition, &part->part->marked.rated), NULL));
     else if (part->sheet_proves_fail_only)
         table_note(builder, cell, phrase_of(say, "sheet.proves_a_fail", values));
     else if (part->limit_none)

@@ -96,6 +96,15 @@ def choices_of(schema, key):
     return own or choices_of(list(schema.values()), key)
 
 
+def reasons():
+    """What may stand under an outcome, from words.yaml."""
+    with open(os.path.join(templates, "words.yaml"), encoding="utf-8") as file:
+        section = re.search(r"^reason:\n((?:  .*\n)+)", file.read(), re.M).group(1)
+    phrases = [line.split(": ", 1)[1].strip('"') for line in section.splitlines()]
+    assert len(phrases) > 10
+    return [phrase.replace("{{term.valve}}", "valve") for phrase in phrases]
+
+
 def main():
     text = manual_text("manual")
     whole, jobs, pieces, commands = None, 0, 0, 0
@@ -136,6 +145,9 @@ def main():
     for place in choices_of(places, "place"):
         if f"place: {place}\n" not in text:
             mistakes.append(f"no example for the place '{place}'")
+    for reason in reasons():
+        if f"*{reason}*" not in text:
+            mistakes.append(f"the manual does not say what '{reason}' means")
     if jobs < 4 or pieces < 10 or commands < 15:
         mistakes.append("too few examples were found")
     sys.exit("\n".join(mistakes) or 0)
