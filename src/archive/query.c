@@ -87,12 +87,12 @@ static const char *date_of(const struct columns *columns, size_t job)
 static bool meets_year(const struct columns *columns, size_t job, const char *value)
 {
     char *end;
-    double from = strtod(value, &end), to = from;
+    long from = strtol(value, &end, 10), to = from;
     if (strncmp(end, "..", 2) == 0)
-        to = end[2] ? strtod(end + 2, NULL) : 9999;
+        to = end[2] ? strtol(end + 2, NULL, 10) : 9999;
     double first = column_number(&columns->jobs[JOB_YEAR_FIRST], job),
            last = column_number(&columns->jobs[JOB_YEAR_LAST], job);
-    return first > 0 && first <= to && last >= from;
+    return first > 0 && first <= (double)to && last >= (double)from;
 }
 
 /* At or before a date that may be cut short: 2031-02 is to the end of February. */
