@@ -102,6 +102,7 @@ struct criterion {
     enum unit unit;
     bool upper; /* passes at or below the limit; false: at or above */
     bool joint; /* all parts of the line or stage together */
+    enum bound bound; /* of the value: UNDER at most this, OVER at least this */
     enum outcome outcome;
     enum reason why;
     enum source_key source;

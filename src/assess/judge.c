@@ -65,7 +65,8 @@ static void add_resistor_spread(struct spread *spread, const struct place_case *
 }
 
 /* A figure held as its inverse is printed as people say it: R_L over R, at least 20. */
-static struct criterion printed(const struct place_value *value, double limit, double u)
+static struct criterion printed(const struct place_value *value, double limit, double u,
+                                enum bound bound)
 {
     struct criterion criterion = {.key = value->key,
                                   .value = value->value,
@@ -73,6 +74,7 @@ static struct criterion printed(const struct place_value *value, double limit, d
                                   .limit = limit,
                                   .unit = value->unit,
                                   .upper = true,
+                                  .bound = bound,
                                   .source = value->source,
                                   .rule = value->rule};
     if (value->inverse) {
@@ -80,6 +82,10 @@ static struct criterion printed(const struct place_value *value, double limit, d
         criterion.limit = 1 / limit;
         criterion.value = value->value > 0 ? 1 / value->value : INFINITY;
         criterion.uncertainty = value->value > 0 ? u / (value->value * value->value) : NAN;
+        /* A leak of at most so much is an insulation of at least so much. */
+        criterion.bound = bound == BOUND_UNDER  ? BOUND_OVER
+                          : bound == BOUND_OVER ? BOUND_UNDER
+                                                : BOUND_NONE;
     }
     return criterion;
 }
@@ -138,7 +144,7 @@ void judge_leak(const struct judge_case *given, struct judgement *judgement)
         const struct place_value *value = &spread.values.items[i];
         double limit = i < given->limit->count ? given->limit->limits[i] : NAN;
         double u = 2 * sqrt(spread.variance[i]);
-        struct criterion criterion = printed(value, limit, u);
+        struct criterion criterion = printed(value, limit, u, given->bound);
         struct verdict_case judged = {.value = value->value,
                                       .limit = limit,
                                       .guard = place->policy->guard_band * u,

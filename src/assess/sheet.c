@@ -8,7 +8,7 @@
 #include <math.h>
 #include <strings.h>
 
-static const double series_share = 0.05; /* of the service volts, dropped at the limit */
+static const double series_share = 0.05; /* of the service volts, may drop at the limit */
 static const double volts_step = 10;     /* what a supply that can be set to anything is set to */
 
 /* The instrument for leakage: the one so named, else the first that reads current or insulation. */
@@ -222,6 +222,9 @@ void sheet_plan(struct assessment *assessment, size_t index)
         return;
     part->sheet_limit_a = limit_a;
     part->sheet_limit_ohm = volts_v / limit_a;
-    part->sheet_series_max_ohm = series_share * plan.service_v / limit_a;
+    /* At the limit the part is still to see 0.95 of its service volts. */
+    part->sheet_series_max_ohm =
+        fmax(series_share * plan.service_v, volts_v - VOLTAGE_SHARE_AT * plan.service_v) /
+        plan.limit_a;
     say_what_would_do(&plan, part);
 }

@@ -10,6 +10,7 @@ static void write_criterion(const struct criterion *criterion, struct buffer *ou
     json_number_member(out, "value", criterion->value);
     json_choice_member(out, "unit",
                        criterion->unit == UNIT_NONE ? NULL : unit_name(criterion->unit));
+    json_text_member(out, "bound", json_bound(criterion->bound));
     json_number_member(out, "uncertainty", criterion->uncertainty);
     json_number_member(out, "limit", criterion->limit);
     json_flag_member(out, "upper", criterion->upper);

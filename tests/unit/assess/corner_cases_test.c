@@ -246,6 +246,11 @@ static void test_effects_that_say_what_goes_wrong(void **state)
     assert_string_equal(part->effects[0].key, "capacitance");
     assert_close(part->effects[0].value, -20, 1e-9);
     assert_close(part->effects[0].of, -5, 1e-9);
+    /* over 20000 M is a leak of at most so much, and a ratio of at least 20000 M over 10 k */
+    const struct criterion *ratio = bench_criterion(part, CRITERION_CIRCUIT_RATIO, false);
+    assert_int_equal(part->readings[0].bound, BOUND_UNDER);
+    assert_int_equal(ratio->bound, BOUND_OVER);
+    assert_relative(ratio->value, 2e6, 1e-6);
     /* anode at the supply: what leaks flows through the output primary */
     const struct effect *primary = bench_effect(bench_part(&bench, "C2"), "primary_current");
     assert_non_null(primary);
@@ -335,10 +340,12 @@ static void test_volts_of_the_sheet(void **state)
         "  C7:\n    type: paper\n    marked: 0.1 uF 150 V\n    place: other\n    feed: 10k\n"
         "    shift: 0.5 V\n    service: 200 V\n");
     /* clang-format on */
-    /* 100 nA at 10 V, 250 nA at 25 V: the lowest setting does */
+    /* 100 nA at 10 V, 250 nA at 25 V: the lowest setting does. In series at most what leaves 9.5 V
+       of the 25 V on a part that passes 100 nA: 155 M. */
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_close(part->sheet_voltage_v, 25, 1e-9);
     assert_relative(part->sheet_limit_a, 250e-9, 1e-3);
+    assert_relative(part->sheet_series_max_ohm, 155e6, 1e-3);
     /* 9.09 nA at 10 V: 22.7 nA at 25 V and 45.5 nA at 50 V are too little, 90.9 nA at 100 V is
      * enough */
     part = bench_part(&bench, "C2");
