@@ -3,8 +3,8 @@
 enum file_status manual_page_write(struct page_frame *frame)
 {
     const struct archive *archive = frame->archive;
-    struct document *document = report_compose_manual(archive->shop, archive->templates,
-                                                      frame->arena, frame->diagnostics);
+    struct document *document =
+        report_compose_manual(archive->shop, archive->templates, frame->arena, frame->diagnostics);
     if (!document)
         return FILE_OK;
     struct buffer page = {0};

@@ -1,6 +1,6 @@
 /*
- * output/manual.html, the manual beside the list of the archive: the document that manual.md and its
- * partials make, in the wording, colours and paper of the shop.
+ * output/manual.html, the manual beside the list of the archive: the document that manual.md and
+ * its partials make, in the wording, colours and paper of the shop.
  */
 #ifndef ARCHIVE_MANUAL_PAGE_H
 #define ARCHIVE_MANUAL_PAGE_H
