@@ -106,7 +106,7 @@ enum file_status folder_image_lay(struct folder_image *image, const char *folder
         buffer_print(&path, "%s/%s", folder, file->name);
         const char *name = buffer_string(&path);
         size_t folder_length = (size_t)(strrchr(name, '/') - name);
-        if (last_folder.length != folder_length ||
+        if (!last_folder.data || last_folder.length != folder_length ||
             memcmp(last_folder.data, name, folder_length) != 0) {
             buffer_clear(&last_folder);
             buffer_append(&last_folder, name, folder_length);

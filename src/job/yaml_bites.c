@@ -225,15 +225,15 @@ static const char *tight_colon(const struct cut_line *line)
 
 static bool bites_inside(struct arena *arena, const struct cut_line *line, struct bite *bite)
 {
-    const char *colon;
     if (line->value < line->value_end && strchr("\"'{[", *line->value))
         return false;
-    if ((line->has_key || line->is_item) && (colon = colon_in(line->value, line->value_end))) {
+    if ((line->has_key || line->is_item) && colon_in(line->value, line->value_end)) {
         bite->text = "a colon and a space inside a value begin a new key";
         bite->hint = as_block(arena, line);
         return true;
     }
-    if ((colon = tight_colon(line))) {
+    const char *colon = tight_colon(line);
+    if (colon) {
         bite->text = "no space after the colon";
         bite->hint = arena_print(arena, "write it so: %.*s: %.*s", (int)(colon - line->body),
                                  line->body, (int)(line->value_end - colon - 1), colon + 1);

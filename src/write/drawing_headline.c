@@ -49,7 +49,7 @@ static unsigned draw_strokes(struct sketch *sketch, const struct layout *layout,
             sketch_stroke(
                 sketch, (enum stroke)stroke,
                 (struct point){layout->strokes_x + layout->pitch * (drawn % layout->a_line),
-                               top + 22 * (drawn / layout->a_line)});
+                               top + 22.0 * (double)(drawn / layout->a_line)});
     unsigned lines = (total + layout->a_line - 1) / layout->a_line;
     for (unsigned line = 0; line < lines; line++) {
         unsigned here = line + 1 < lines ? layout->a_line : total - line * layout->a_line;

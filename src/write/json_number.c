@@ -187,7 +187,7 @@ static void printed_digits(double value, struct digits *digits)
     for (; *c != 'e'; c++)
         if (*c != '.')
             digits->text[digits->count++] = *c;
-    digits->exponent10 = atoi(c + 1) - (digits->count - 1);
+    digits->exponent10 = (int)strtol(c + 1, NULL, 10) - (digits->count - 1);
 }
 
 static void put_zeros(struct buffer *out, int count)

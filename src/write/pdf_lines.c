@@ -192,7 +192,7 @@ static struct spot skip_spaces(const struct breaker *breaker, struct spot place)
 /* One line from `from`; the answer is where the next begins. */
 static struct spot break_line(struct breaker *breaker, struct spot from)
 {
-    struct spot at = from, candidate = from, last = from;
+    struct spot at = from, candidate = from, last;
     bool has_candidate = false;
     uint32_t before = 0;
     while (at.run < breaker->runs->count) {

@@ -68,7 +68,8 @@ static size_t cells_width(const struct layout *layout, size_t column)
     size_t widest = 0;
     for (size_t i = 0; i < table->row_count; i++) {
         const char *text = table_text_cell(&layout->text, i, column);
-        size_t width = table->rows[i].group ? 0 : text_columns(text, strlen(text));
+        bool runs_on = table->rows[i].group || table_text_runs_on(table, i, column);
+        size_t width = runs_on ? 0 : text_columns(text, strlen(text));
         widest = width > widest ? width : widest;
     }
     return widest;
@@ -148,16 +149,25 @@ static void fold_heads(struct layout *layout)
         fold_head(layout, i, layout->text.widths[i]);
 }
 
-/* When all that is not enough: the widest column of words goes below, then the next. */
-static void make_more_room(struct layout *layout)
+/* The widest column of words or numbers that stands beside others; 0: none. */
+static size_t widest_column(const struct layout *layout)
 {
     const struct table *table = layout->text.table;
+    size_t widest = 0;
+    for (size_t i = 1; i < table->column_count; i++) {
+        enum column_kind kind = table->columns[i].kind;
+        if (stands_inline(layout, i) && (kind == COLUMN_TEXT || kind == COLUMN_NUMBER) &&
+            (widest == 0 || width_of(layout, i) > width_of(layout, widest)))
+            widest = i;
+    }
+    return widest;
+}
+
+/* When all that is not enough: the widest column goes below, then the next. */
+static void make_more_room(struct layout *layout)
+{
     while (inline_width(layout) > layout->terminal->columns) {
-        size_t widest = 0;
-        for (size_t i = 1; i < table->column_count; i++)
-            if (stands_inline(layout, i) && table->columns[i].kind == COLUMN_TEXT &&
-                (widest == 0 || width_of(layout, i) > width_of(layout, widest)))
-                widest = i;
+        size_t widest = widest_column(layout);
         if (widest == 0)
             return;
         layout->places[widest] = BELOW;
