@@ -116,7 +116,23 @@ speed: check-packages
 	tests/speed/speed.sh $(BUILD) $(SPEED_N)
 
 lint:
-	tests/lint/run.sh
+	LINT=all tests/lint/run.sh
+
+# Longer than the few seconds, and more calls than the sample, of make check.
+fuzz:
+	FUZZ_SECONDS=$(or $(FUZZ_SECONDS),300) tests/fuzz/run.sh $(BUILD)
+
+fault: all
+	FAULT_RUNS=$(or $(FAULT_RUNS),2000) tests/fault/run.sh $(BUILD)
+
+check-memory: all
+	MEMORY=all tests/memory/run.sh $(BUILD)
+
+coverage:
+	tests/coverage.sh $(BUILD)
+
+golden-update: all
+	UPDATE=1 tests/golden/run.sh $(BUILD)
 
 format:
 	clang-format -i $$(git ls-files 'src/*.[ch]' 'tests/*.[ch]')
@@ -138,5 +154,5 @@ clean:
 	rm -rf $(BUILD) asan
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
-.PHONY: all man schema unit packages check-packages demo check lint format install uninstall clean
+.PHONY: all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
 .SECONDARY:
