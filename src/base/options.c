@@ -90,8 +90,8 @@ static void option_words(const struct option_row *row, struct buffer *out)
 void options_help_command(const struct option_row *options, const struct command_row *command,
                           struct buffer *out)
 {
-    buffer_print(out, "gridleak %s %s\n%s\n\n%s\n", command->name, command->usage,
-                 command->summary, command->details);
+    buffer_print(out, "gridleak %s %s\n%s\n\n%s\n", command->name, command->usage, command->summary,
+                 command->details);
     for (; options->name; options++) {
         if (!(options->commands & command->bit))
             continue;
