@@ -316,6 +316,8 @@ const char *text_with_micro(struct arena *arena, const char *text)
         } else if (strncmp(at, root, strlen(root)) == 0) {
             buffer_text(&signs, "√");
             at += strlen(root) - 1;
+        } else if (*at == '-' && (at == text || at[-1] == ' ') && at[1] >= '0' && at[1] <= '9') {
+            buffer_text(&signs, "−");
         } else if (*at == '*') {
             buffer_text(&signs, "×");
         } else {

@@ -6,11 +6,11 @@
 enum { CHANGED_REF, CHANGED_WAS, CHANGED_NOW, CHANGED_WHY, CHANGED_WHERE, CHANGED_COLUMNS };
 
 static const struct column_plan plan[CHANGED_COLUMNS] = {
-    [CHANGED_REF] = {"ref", NULL, NULL, COLUMN_REF, 8, 1},
-    [CHANGED_WAS] = {"original", NULL, "was", COLUMN_TEXT, 22, 1},
-    [CHANGED_NOW] = {"now", NULL, "now", COLUMN_TEXT, 24, 1},
-    [CHANGED_WHY] = {"why", NULL, "why", COLUMN_TEXT, 24, 1},
-    [CHANGED_WHERE] = {"the_original", NULL, "where", COLUMN_TEXT, 22, 1},
+    [CHANGED_REF] = {"ref", NULL, NULL, COLUMN_REF, 6, 1},
+    [CHANGED_WAS] = {"original", NULL, "was", COLUMN_TEXT, 22.5, 1},
+    [CHANGED_NOW] = {"now", NULL, "now", COLUMN_TEXT, 24.5, 1},
+    [CHANGED_WHY] = {"why", NULL, "why", COLUMN_TEXT, 27, 1},
+    [CHANGED_WHERE] = {"the_original", NULL, "where", COLUMN_TEXT, 20, 1},
 };
 
 /* One changed part, of whatever kind. */

@@ -13,15 +13,17 @@ static const char *done_text_of(const struct composition *composition, enum acti
     return text_join(composition->arena, "; ", parts, 2);
 }
 
-/* "+12 %": measured against marked; NULL when either is missing or a bound. */
-static const char *change_text(const struct composition *composition,
-                               const struct quantity *measured, const struct quantity *marked)
+/* "+12" of measured against marked, in whole per cent; empty when either is missing or a bound. */
+static struct figures change_figures(const struct composition *composition,
+                                     const struct quantity *measured, const struct quantity *marked)
 {
     if (!measured->set || measured->bound != BOUND_NONE || !marked->set || marked->value == 0)
-        return NULL;
-    double percent = 100 * (measured->value / marked->value - 1);
-    return text_signed(composition->arena, fabs(percent) < 0.5 ? 0 : percent, UNIT_PERCENT,
-                       fabs(percent) < 10 ? 1 : 2);
+        return (struct figures){0};
+    double percent = round(100 * (measured->value / marked->value - 1));
+    struct figures figures = figures_plain(composition, percent, 1, 0);
+    if (percent > 0)
+        figures.whole = arena_print(composition->arena, "+%s", figures.whole);
+    return figures;
 }
 
 static const char *tolerance_text(const struct composition *composition,
@@ -30,12 +32,12 @@ static const char *tolerance_text(const struct composition *composition,
     if (!marked->tolerance_set)
         return NULL;
     const char *high =
-        quantity_text(composition->arena, marked->tolerance_high_percent, UNIT_PERCENT, 2);
+        text_set(composition->arena, marked->tolerance_high_percent, UNIT_PERCENT, 2);
     if (marked->tolerance_low_percent == -marked->tolerance_high_percent)
         return arena_print(composition->arena, "±%s", high);
-    return arena_print(
-        composition->arena, "%s/+%s",
-        quantity_text(composition->arena, marked->tolerance_low_percent, UNIT_PERCENT, 2), high);
+    return arena_print(composition->arena, "%s/+%s",
+                       text_set(composition->arena, marked->tolerance_low_percent, UNIT_PERCENT, 2),
+                       high);
 }
 
 static bool out_of_tolerance(const struct quantity *measured, const struct marking *marked)
@@ -55,7 +57,7 @@ void exhibit_resistors(struct composition *composition, size_t index)
         {"rating", NULL, "rating", COLUMN_NUMBER, 10, 2},
         {"tolerance", NULL, "tolerance", COLUMN_TEXT, 11, 2},
         {"measured", NULL, "measured", COLUMN_NUMBER, 14, 1},
-        {"change", NULL, "change", COLUMN_TEXT, 10, 2},
+        {"change", "%", "change", COLUMN_NUMBER, 10, 2},
         {"done", NULL, NULL, COLUMN_TEXT, 32, 1},
     };
     struct table_builder builder =
@@ -70,7 +72,7 @@ void exhibit_resistors(struct composition *composition, size_t index)
         cells[2].figures = figures_quantity(composition, &part->marked.rated);
         cells[3].text = tolerance_text(composition, &part->marked);
         cells[4].figures = figures_quantity(composition, &part->measured);
-        cells[5].text = change_text(composition, &part->measured, &part->marked.value);
+        cells[5].figures = change_figures(composition, &part->measured, &part->marked.value);
         cells[5].strong = cells[4].strong = outside;
         cells[6].text = done_text_of(composition, part->done, part->was);
         if (outside && (part->done == DONE_KEPT || part->done == DONE_OPEN))

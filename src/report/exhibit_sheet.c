@@ -22,16 +22,16 @@ enum {
 
 static const struct column_plan plan[SHEET_COLUMNS] = {
     [SHEET_REF] = {"ref", NULL, NULL, COLUMN_REF, 5.5, 1},
-    [SHEET_PLACE] = {"place", NULL, NULL, COLUMN_TEXT, 14.5, 1},
+    [SHEET_PLACE] = {"place", NULL, NULL, COLUMN_TEXT, 16, 1},
     [SHEET_MARKED] = {"marked", NULL, NULL, COLUMN_NUMBER, 10.5, 1},
     [SHEET_SET] = {"set", NULL, NULL, COLUMN_NUMBER, 6, 1},
     [SHEET_SOAK] = {"soak", NULL, NULL, COLUMN_NUMBER, 6, 1},
     [SHEET_LIMIT] = {"limit", "µA", NULL, COLUMN_NUMBER, 7, 1},
     [SHEET_LIMIT_OHM] = {"or", "MΩ", NULL, COLUMN_NUMBER, 6.5, 1},
-    [SHEET_EARLIER] = {"earlier", "time, µA", NULL, COLUMN_BLANK, 13, 1},
-    [SHEET_AT_SOAK] = {"at_soak", "µA", NULL, COLUMN_BLANK, 13, 1},
+    [SHEET_EARLIER] = {"earlier", "time, µA", NULL, COLUMN_BLANK, 12.5, 1},
+    [SHEET_AT_SOAK] = {"at_soak", "µA", NULL, COLUMN_BLANK, 12.5, 1},
     [SHEET_MEASURED] = {"measured", NULL, NULL, COLUMN_BLANK, 8.5, 1},
-    [SHEET_DONE] = {"done", NULL, NULL, COLUMN_BLANK, 9.5, 1},
+    [SHEET_DONE] = {"done", NULL, NULL, COLUMN_BLANK, 9, 1},
 };
 
 static void set_marked(const struct composition *composition, struct cell *cell,

@@ -79,7 +79,7 @@ static unsigned row_decimals(const struct stage_findings *stage, const struct st
     }
     double shown = largest / row_scale(row);
     if (row->kind == ROW_POWER)
-        return 1;
+        return shown > 0 && shown < 0.1 ? 2 : 1;
     return shown >= 100 ? 0 : shown >= 10 ? 1 : row->kind == ROW_CURRENT && shown >= 3 ? 1 : 2;
 }
 

@@ -303,7 +303,9 @@ static const char *row_text(const struct composition *composition,
 {
     const struct valve_row *row = stage->row;
     if (!row)
-        return stage->stage->row.set ? stage->stage->row.written : NULL;
+        return stage->stage->row.set
+                   ? text_with_micro(composition->arena, stage->stage->row.written)
+                   : NULL;
     const char *figures[] = {
         text_unit(composition, row->va_v, UNIT_VOLTAGE, 3),
         text_unit(composition, row->vg2_v, UNIT_VOLTAGE, 3),

@@ -508,7 +508,7 @@ static void lay_out_volts(struct layout *layout)
     if (!layout->has_volts)
         return;
     double step = scale_step(high * 1.1, 3);
-    layout->volts = (struct scale){.high = ceil(high * 1.1 / step) * step, .from = 268, .to = 204};
+    layout->volts = (struct scale){.high = ceil(high * 1.1 / step) * step, .from = 246, .to = 188};
 }
 
 void drawing_curves(struct sketch *sketch, const struct curves *curves)
@@ -517,7 +517,7 @@ void drawing_curves(struct sketch *sketch, const struct curves *curves)
                             .narrow = sketch->drawing.width < 500,
                             .panel_count = curves->panel_count};
     lay_out_volts(&layout);
-    lay_out_current(&layout, 26, layout.has_volts ? 178 : 166);
+    lay_out_current(&layout, 26, layout.has_volts ? 162 : 166);
     layout.floor = layout.has_volts ? layout.volts.from : layout.current.from;
     lay_out_panels(&layout, sketch->drawing.width, sketch->arena);
     sketch->drawing.height = layout.floor + 24;

@@ -34,8 +34,10 @@ static void compose_document(struct composer *composer)
         cmark_node *next = cmark_node_next(node);
         const struct exhibit *exhibit = document_exhibit(node);
         size_t first = composer->flow.count;
-        if (cmark_node_get_type(node) == CMARK_NODE_HEADING)
+        if (cmark_node_get_type(node) == CMARK_NODE_HEADING) {
             composer->body = type_body;
+            composer->measure = composer->flow.page->measure;
+        }
         if (exhibit)
             compose_exhibit(composer, exhibit, &next);
         else

@@ -254,7 +254,7 @@ static double kept_height(const struct flow *flow)
 static void compose_plot(struct composer *composer, const char *number, const struct plot *plot)
 {
     const double units = 720;
-    const double least_scale = 0.86 * mm(168) / units; /* its text then is 6.5 pt */
+    const double least_scale = 0.83 * mm(168) / units; /* its text then is 6.3 pt */
     struct flow *flow = &composer->flow;
     struct drawing *drawing = arena_get(flow->arena, sizeof *drawing);
     *drawing = drawing_of_plot(plot, units, flow->arena);
@@ -306,7 +306,7 @@ static void compose_plate(struct composer *composer, const char *number, const s
     size_t first = flow->count;
     flow_space(flow, mm(5));
     struct strip *strip = flow_strip(flow, height);
-    strip->least_scale = 0.75;
+    strip->least_scale = 0.68;
     struct row_box boxes[2] = {{.x = 0}};
     double x = 0;
     for (size_t i = 0; i < count; i++) {
@@ -565,6 +565,7 @@ void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, c
         break;
     case EXHIBIT_SMALL:
         composer->body = (struct type_size){7.5, 11.2};
+        composer->measure = figure_text_pt;
         break;
     }
 }

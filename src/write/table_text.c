@@ -199,6 +199,17 @@ static void compose_numbers(const struct composing *composing, struct table_text
                 composing, &parts[i], table->rows[i].cells[column].figures.whole, &slots);
 }
 
+bool table_text_runs_on(const struct table *table, size_t row, size_t column)
+{
+    const struct cell *cells = table->rows[row].cells;
+    if (table->columns[column].kind != COLUMN_NUMBER || cells[column].figures.whole)
+        return false;
+    for (size_t i = column + 1; i < table->column_count; i++)
+        if (cells[i].figures.whole || (cells[i].text && cells[i].text[0]))
+            return false;
+    return true;
+}
+
 static void compose_column(const struct composing *composing, struct table_text *text,
                            size_t column)
 {
@@ -216,7 +227,8 @@ static void compose_column(const struct composing *composing, struct table_text 
             *made = column == 0 ? escaped(composing, "", cell->text, "") : "";
         else if (kind != COLUMN_NUMBER)
             *made = words_text(composing, cell, kind);
-        if (!table->rows[i].group)
+        bool runs_on = composing->style->reasons_apart && table_text_runs_on(table, i, column);
+        if (!table->rows[i].group && !runs_on)
             text->widths[column] = larger(text->widths[column], columns_of(*made));
     }
 }

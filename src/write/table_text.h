@@ -27,6 +27,10 @@ struct table_text {
 struct table_text table_text_of(const struct table *table, const struct table_text_style *style,
                                 struct arena *arena);
 
+/* Words in a column of numbers with nothing behind them in their row, a group line not asked for:
+   on a terminal they run on over the columns behind. */
+bool table_text_runs_on(const struct table *table, size_t row, size_t column);
+
 const char *table_text_cell(const struct table_text *text, size_t row, size_t column);
 
 #endif
