@@ -401,7 +401,7 @@
   }
 
   /* The rows that fit a screen or two at once; the rest when the typing pauses. */
-  var AT_ONCE = 40, PAUSE_MS = 150, rest = { sets: 0, parts: 0 };
+  var AT_ONCE = 24, PAUSE_MS = 150, rest = { sets: 0, parts: 0 };
   function draw(name, rows, rowOf) {
     var order = orders[name][sort[name].key];
     var shown = order ? first(rows, order, sort[name].down, SHOWN) : [];

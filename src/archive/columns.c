@@ -162,7 +162,9 @@ static size_t read_group(struct columns *columns, struct summary_scan *scan,
                 push_code(column, column->codes[column->count - 1]);
             else
                 column_push(column, &columns->arena, text.text, text.length);
-            last = text.copied ? (struct scan_text){0} : text;
+            last = text;
+            if (text.copied)
+                last.text = NULL; /* its place is written over by the next */
         }
         if (column->count > longest)
             longest = column->count;

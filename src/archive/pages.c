@@ -4,6 +4,7 @@
 #include "archive/page_frame.h"
 
 #include <dirent.h>
+#include <pthread.h>
 #include <stdlib.h>
 #include <string.h>
 #include <unistd.h>
@@ -150,6 +151,21 @@ static void gather_summaries(struct pages_work *work)
 
 /* ---- writing */
 
+/* summaries.jsonl is by far the largest file and needs nothing of the others: written beside them,
+   by a thread of its own. */
+struct summaries_task {
+    const char *path;
+    const struct buffer *summaries;
+    enum file_status status;
+};
+
+static void *write_summaries(void *context)
+{
+    struct summaries_task *task = context;
+    task->status = file_write(task->path, task->summaries->data, task->summaries->length, NULL);
+    return NULL;
+}
+
 static enum file_status write_pages(struct pages_work *work, struct diagnostics *diagnostics)
 {
     struct page_frame frame = {
@@ -161,12 +177,25 @@ static enum file_status write_pages(struct pages_work *work, struct diagnostics 
         .diagnostics = diagnostics,
         .failed = work->failed,
     };
-    enum file_status (*const writers[])(struct page_frame *) = {
-        page_style_write, page_index_write, page_search_write, page_models_write,
-        page_statistics_write, manual_page_write};
-    enum file_status status = page_write_file(&frame, "summaries.jsonl", &work->summaries);
+    static enum file_status (*const writers[])(struct page_frame *) = {
+        page_style_write,  page_index_write,      page_search_write,
+        page_models_write, page_statistics_write, manual_page_write};
+    struct summaries_task task = {
+        arena_print(&work->arena, "%s/summaries.jsonl", work->request->output), &work->summaries,
+        FILE_OK};
+    pthread_t thread;
+    bool beside = pthread_create(&thread, NULL, write_summaries, &task) == 0;
+    if (!beside)
+        write_summaries(&task);
+    enum file_status status = FILE_OK;
     for (size_t i = 0; i < sizeof writers / sizeof *writers && status == FILE_OK; i++)
         status = writers[i](&frame);
+    if (beside)
+        pthread_join(thread, NULL);
+    if (status == FILE_OK && task.status != FILE_OK) {
+        status = task.status;
+        buffer_text(work->failed, task.path);
+    }
     return status;
 }
 
