@@ -10,6 +10,7 @@
 #ifndef ASSESS_ABSORPTION_H
 #define ASSESS_ABSORPTION_H
 
+#include "assess/decay.h"
 #include "assess/findings.h"
 
 #include <stdbool.h>
@@ -40,19 +41,6 @@ double absorption_sigma(double current_a, double repeatability_share, double res
 struct absorption absorption_fit(const struct absorption_reading *readings, size_t count,
                                  double limit_a);
 
-enum decay_law { DECAY_POWER, DECAY_EXPONENTIAL, DECAY_COUNT };
-
-struct decay {
-    bool fitted;
-    enum decay_law law;
-    double steady_a, steady_error_a; /* s as above */
-    double amplitude_a;
-    double shape; /* n, or tau in seconds */
-    bool at_end;  /* the shape ran into an end of its grid: not resolved */
-    double chi2;
-    size_t freedom;
-};
-
 /* One law through a series; fitted is false when there are no more than 3 readings. */
 struct decay decay_fit(enum decay_law law, const struct absorption_reading *readings, size_t count);
 
@@ -67,14 +55,6 @@ double decay_time_to(const struct decay *decay, double limit_a, double steady_sh
  * ABSORPTION_READINGS_MIN, else none. `better` has the smaller chi^2; when the ratio of the sums is
  * below exp(4/N) neither is preferred and `better` is the more cautious one, the higher plateau.
  */
-struct decay_comparison {
-    struct decay laws[DECAY_COUNT];
-    int better; /* of laws[]; -1: no fit */
-    bool preferred;
-    double to_limit_s;                        /* of the better one; INFINITY: never; NaN: no fit */
-    double to_limit_early_s, to_limit_late_s; /* with the plateau lower and higher by t95*s */
-    double horizon_s; /* 10 x the last time: beyond it nothing is to be printed */
-};
 struct decay_comparison decay_compare(const struct absorption_reading *readings, size_t count,
                                       double limit_a);
 

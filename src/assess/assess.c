@@ -1,6 +1,7 @@
 /* The order of things: stages, each part alone, parts together, what follows from it. */
 #include "assess/assessment.h"
 
+#include "assess/bench.h"
 #include "assess/facts.h"
 #include "assess/mains.h"
 #include "assess/originality.h"
@@ -248,5 +249,6 @@ struct findings *assess_job(const struct job *job, const struct shop *shop, cons
         .originality = originality_count(job, assessment.capacitors),
         .diagnostics = diagnostics,
     };
+    bench_assess_job(&assessment, findings);
     return findings;
 }

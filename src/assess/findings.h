@@ -39,6 +39,9 @@
     X(WHY_WITHIN_UNCERTAINTY, "within uncertainty")                                                \
     X(WHY_RISING, "rising")                                                                        \
     X(WHY_JOINT, "joint")                 /* fails together with others */                         \
+    X(WHY_NO_FIGURE, "no figure")         /* nobody publishes one */                               \
+    X(WHY_OUT_OF_ORDER, "out of order")   /* times or volts of a log fall */                       \
+    X(WHY_IMPOSSIBLE, "impossible")       /* more than the limiter can pass */                     \
     X(WHY_OPEN_RESISTOR, "open resistor") /* what feeds the part, or its stage, read open */
 
 #define ADVICES(X)                                                                                 \
@@ -269,22 +272,24 @@ enum visit_kind { VISIT_CAPACITOR, VISIT_RESISTOR, VISIT_WINDING };
 struct visit_change {
     enum visit_kind kind;
     const char *ref;
-    enum action done_then;      /* at the earlier visit */
-    int capacitor;              /* index into job->capacitors, NOT_LISTED for other kinds */
-    double test_v;              /* V of both readings */
-    double then_a, now_a;       /* A, as read */
+    enum action done_then; /* at the earlier visit */
+    int capacitor;         /* index into job->capacitors, NOT_LISTED for other kinds */
+    double test_v;         /* V of both readings */
+    double then_a, now_a;  /* A, as read */
     enum bound then_bound, now_bound;
-    double then_s, now_s;       /* s, soak of each; NaN: not said */
+    double then_s, now_s;         /* s, soak of each; NaN: not said */
     double then_value, now_value; /* F or ohm, measured */
 };
 struct visit_changes {
-    const char *earlier; /* its job number */
+    const char *earlier;              /* its job number */
     const char *then_date, *now_date; /* returned then, received now; NULL: not given */
-    double years;        /* between them; NaN: not known */
-    double then_c, now_c; /* C of the bench; NaN: not given */
+    double years;                     /* between them; NaN: not known */
+    double then_c, now_c;             /* C of the bench; NaN: not given */
     const struct visit_change *items;
     size_t count;
 };
+
+#include "assess/bench_findings.h" /* needs the outcomes and reasons above */
 
 struct findings {
     const char *program; /* version */
@@ -298,6 +303,7 @@ struct findings {
     const struct stage_findings *stages; /* one for each of job->stages */
     size_t stage_count;
     struct originality originality;
+    struct bench_findings bench;       /* all that is no capacitor's leakage */
     const struct visit_changes *since; /* the earlier visit; NULL: none, or it cannot be read */
     const char *fingerprint; /* SHA-256 in hex of this copy's findings.json; NULL: not yet */
     const struct diagnostics *diagnostics;

@@ -102,6 +102,23 @@ static void shift_read(struct reader *reader, const struct field *field, const s
     quantity_check(reader, shift, "the shift allowed", LIMIT_ABOVE_ZERO);
 }
 
+static void hum_read(struct reader *reader, const struct field *field, const struct node *node,
+                     void *record)
+{
+    struct capacitor *part = record;
+    struct line line;
+    if (!reader_line(reader, field->key, node, &line))
+        return;
+    const struct named_value names[] = {
+        {"found", UNIT_VOLTAGE, true, &part->hum_found, NULL},
+        {"left", UNIT_VOLTAGE, true, &part->hum_left, NULL},
+    };
+    if (!line_named_values(&line, names, FIELD_COUNT_OF(names)))
+        reader_tell_line(reader, &line);
+    quantity_check(reader, &part->hum_found, "hum", LIMIT_NOT_NEGATIVE);
+    quantity_check(reader, &part->hum_left, "hum", LIMIT_NOT_NEGATIVE);
+}
+
 static const struct field capacitor_fields[] = {
     {.key = "type",
      .kind = FIELD_CHOICE,
@@ -209,6 +226,12 @@ static const struct field capacitor_fields[] = {
      .chassis = true,
      .text = "ripple frequency; default twice the mains, on a live chassis once",
      .example = "100 Hz"},
+    {.key = "hum",
+     .kind = FIELD_LINE,
+     .offset = AT(hum_found),
+     .read = hum_read,
+     .text = "reservoir, smoothing: a.c. volts measured across it, found and left",
+     .example = "found 2.1 V, left 1.4 V"},
     {.key = "circuit",
      .kind = FIELD_QUANTITY,
      .offset = AT(circuit),

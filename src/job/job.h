@@ -60,6 +60,8 @@ struct marking {
     enum safety_class safety_class;
     unsigned class_count;   /* 2 for `two Y2 in series`; else 1 */
     struct dimensions size; /* of `fitted`, when given */
+    const char *colours;    /* the colours that value and tolerance were read from; NULL: none */
+    bool colours_unknown;   /* no table has them: the value is not known from them */
 };
 
 /* Which state of the part a reading shows. */
@@ -116,6 +118,8 @@ struct capacitor {
     struct quantity ripple;     /* Hz */
     struct quantity circuit;    /* ohm: tuning */
     struct quantity shift;      /* V or per cent: other */
+    struct quantity hum_found;  /* V a.c. measured across it: reservoir, smoothing */
+    struct quantity hum_left;
     struct quantity service;    /* V: highest d.c. in service, when given */
     bool near_heat;             /* within 50 mm of an output valve, rectifier or dropper */
     bool pulse;                 /* vibrator timing, buffer: no d.c. reading passes */

@@ -93,8 +93,10 @@ enum marking_kind {
  * `class X2 0.1 uF 310 V a.c.`, `two Y2 2200 pF 250 V a.c. in series` (value: each of the two).
  * `type` is looked for only in what was fitted; `400 V test`, `525 V surge` or `peak` is no rating
  * and goes to other_words with whatever words are left; so do a temperature and the limiting volts
- * of a resistor. Of `X1/Y2` the Y counts. The value may be missing (a part with
- * its marks gone): marking.value.set is false then, but something must be there.
+ * of a resistor. Of `X1/Y2` the Y counts. Three to six colours stand for the value, `yellow violet
+ * yellow silver`, or `body red end violet dot yellow`; a code that no table has leaves it unset.
+ * The value may be missing (a part with its marks gone): marking.value.set is false then, but
+ * something must be there.
  */
 bool line_marking(struct line *line, enum marking_kind kind, bool fitted, struct marking *marking);
 

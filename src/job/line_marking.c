@@ -1,5 +1,6 @@
 /* What is written on a part, or was fitted. */
 #include "job/line_scan.h"
+#include "reference/colour_code.h"
 
 #include <string.h>
 
@@ -338,9 +339,93 @@ static bool is_coded_value(struct marking_reader *reader, struct span span)
                                                        &form, &quantity, NULL) == QUANTITY_OK;
 }
 
+/* ---- colours ---- */
+
+/* How many tokens from `next` on are colours, at most COLOURS_MAX; `colours` takes them. */
+static size_t colours_at(const struct marking_reader *reader, enum colour *colours)
+{
+    size_t count = 0;
+    while (count < COLOURS_MAX && reader->next + count < reader->count) {
+        struct span word = token_span(reader, reader->next + count);
+        if (!colour_read(word.start, word.length, &colours[count]))
+            break;
+        count++;
+    }
+    return count;
+}
+
+/* `body red end violet dot yellow`: the oldest resistors; how many tokens that is, 0: not so. */
+static size_t body_end_dot_at(const struct marking_reader *reader, enum colour *colours)
+{
+    static const char *const names[][4] = {
+        {"body", NULL}, {"end", "tip", NULL}, {"dot", "band", NULL}};
+    if (reader->next + 6 > reader->count)
+        return 0;
+    for (size_t i = 0; i < 3; i++) {
+        struct span word = token_span(reader, reader->next + 2 * i + 1);
+        if (!span_is_any(token_span(reader, reader->next + 2 * i), names[i]) ||
+            !colour_read(word.start, word.length, &colours[i]))
+            return 0;
+    }
+    return 6;
+}
+
+static void set_colours(struct marking_reader *reader, const struct colour_value *value,
+                        struct span span)
+{
+    struct marking *marking = &reader->marking;
+    bool capacitor = reader->kind == MARKING_CAPACITOR;
+    marking->value = (struct quantity){
+        .set = true,
+        .value = value->value,
+        .unit = capacitor ? UNIT_CAPACITANCE : UNIT_RESISTANCE,
+        .written = marking->colours,
+        .at = line_position(reader->line, (size_t)(span.start - reader->line->text))};
+    if (value->tolerance_set && !reader->low_set && !reader->high_set) {
+        marking->tolerance_set = reader->low_set = reader->high_set = true;
+        marking->tolerance_low_percent = -value->tolerance_percent;
+        marking->tolerance_high_percent = value->tolerance_percent;
+    }
+    if (capacitor && value->rated_v > 0 && !marking->rated.set)
+        marking->rated = (struct quantity){.set = true,
+                                           .value = value->rated_v,
+                                           .unit = UNIT_VOLTAGE,
+                                           .written = marking->colours,
+                                           .at = marking->value.at};
+}
+
+/* Colours in the place of the value; false: none stand at `next`. A code that no table has gives no
+   value, and the reader says so. */
+static bool take_colours(struct marking_reader *reader)
+{
+    enum { FEWEST = 3 };
+    enum colour colours[COLOURS_MAX];
+    if (reader->kind == MARKING_WINDING || reader->marking.value.set || reader->marking.colours)
+        return false;
+    size_t tokens = body_end_dot_at(reader, colours), count = 3;
+    if (tokens == 0)
+        tokens = count = colours_at(reader, colours);
+    if (count < FEWEST)
+        return false;
+    struct span first = token_span(reader, reader->next);
+    struct span last = token_span(reader, reader->next + tokens - 1);
+    struct span all = {first.start, (size_t)(last.start + last.length - first.start)};
+    struct colour_value value;
+    bool known = reader->kind == MARKING_RESISTOR ? colour_resistor(colours, count, &value)
+                                                  : colour_capacitor(colours, count, &value);
+    reader->marking.colours = line_written(reader->line, all);
+    reader->marking.colours_unknown = !known;
+    reader->next += tokens;
+    if (known)
+        set_colours(reader, &value, all);
+    return true;
+}
+
 static bool take_word(struct marking_reader *reader, struct span span)
 {
     enum safety_class class;
+    if (take_colours(reader))
+        return true;
     enum dielectric type = DIELECTRIC_UNKNOWN;
     size_t tokens =
         reader->fitted && reader->kind == MARKING_CAPACITOR ? type_at(reader, &type) : 0;

@@ -20,6 +20,14 @@ static void marking_read(struct reader *reader, const struct field *field, const
         return;
     }
     reader_note_units(reader, &line);
+    if (marking->colours_unknown)
+        reader_tell(reader, marking->at, DIAGNOSTIC_COLOURS_UNKNOWN,
+                    kind == MARKING_RESISTOR
+                        ? "two or three figures, zeros, tolerance: yellow violet yellow silver; or "
+                          "write the value"
+                        : "six dots, top row first: white brown red grey silver red; or write the "
+                          "value",
+                    "no table has the colours '%s'", marking->colours);
     quantity_check(reader, &marking->value,
                    kind == MARKING_CAPACITOR ? "a capacitance" : "a resistance",
                    kind == MARKING_CAPACITOR ? LIMIT_ABOVE_ZERO : LIMIT_NOT_NEGATIVE);

@@ -109,7 +109,8 @@ const char *text_join(struct arena *arena, const char *separator, const char *co
 /* A sentence of a text as typed: its first letter; its full stop. NULL stays NULL. */
 const char *text_sentence(struct arena *arena, const char *text);
 const char *text_stopped(struct arena *arena, const char *text);
-/* A text as typed with its signs: "0.02 uA", "3 sqrt(CV)", "2*10" as "0.02 µA", "3 √(CV)", "2×10". */
+/* A text as typed with its signs: "0.02 uA", "3 sqrt(CV)", "-2 V" as "0.02 µA", "3 √(CV)", "−2 V".
+ */
 const char *text_with_micro(struct arena *arena, const char *text);
 
 /* ---- what several exhibits ask of a part */
@@ -142,19 +143,11 @@ exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents
     exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stages, exhibit_voltages,
     exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_instruments,
     exhibit_visits, exhibit_write_on, exhibit_sheet_leakage, exhibit_sheet_reform,
-    exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages,
-    exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
+    exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages, exhibit_fields,
+    exhibit_policy_limits, exhibit_rule_sources;
 
-/* ---- reforming: the plan of one electrolytic, for the bench sheet.
-   Limiter R = max(V_end/I_ceiling, V_end^2/(4*P_ceiling)); steps of V_end; the bleeder R*C*ln(V/10
-   V) with C measured, else twice the marked (an old electrolytic may hold +100 %). */
-enum { REFORM_STEPS = 5 };
-struct reform_plan {
-    double end_v;
-    double limiter_ohm, limiter_w;
-    double step_v[REFORM_STEPS];
-    double bleed_ohm, bleed_w, bleed_s, energy_j;
-};
+/* ---- reforming: the plan of one electrolytic, for the bench sheet */
+
 /* Whether the sheet plans to reform this part; *plan is set when it does. */
 bool reform_planned(const struct composition *composition, size_t index, struct reform_plan *plan);
 

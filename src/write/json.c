@@ -139,6 +139,7 @@ void json_write_findings(const struct findings *findings, struct buffer *out)
     json_write_stages(findings, out);
     write_originality(&findings->originality, out);
     json_write_work(findings, out);
+    json_write_bench(findings, out);
     json_write_visits(findings, out);
     write_policy(&findings->shop->policy, out);
     write_diagnostics(findings, out);

@@ -39,6 +39,7 @@ void json_write_other_parts(const struct findings *findings, struct buffer *out)
 void json_write_work(const struct findings *findings, struct buffer *out);
 void json_write_capacitors(const struct findings *findings, struct buffer *out);
 void json_write_stages(const struct findings *findings, struct buffer *out);
+void json_write_bench(const struct findings *findings, struct buffer *out);
 void json_write_visits(const struct findings *findings, struct buffer *out);
 
 #endif

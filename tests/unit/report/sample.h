@@ -5,6 +5,7 @@
 #ifndef TESTS_REPORT_SAMPLE_H
 #define TESTS_REPORT_SAMPLE_H
 
+#include "assess/reforming.h"
 #include "report/report.h"
 
 #include <math.h>
@@ -352,8 +353,29 @@ static inline const struct templates *sample_templates(struct sample *sample)
     return templates_open(NULL, ".", &sample->shop, &sample->arena, &sample->diagnostics);
 }
 
+/* The plans of reforming follow from the marked volts and the service volts: they are not made by
+   hand. */
+static inline void sample_plans(struct sample *sample)
+{
+    const struct job *job = &sample->job;
+    const struct reform_plan **plans =
+        arena_array(&sample->arena, sample->findings.capacitor_count + 1, sizeof *plans);
+    for (size_t i = 0; i < sample->findings.capacitor_count; i++) {
+        const struct capacitor *part = &sample->capacitors[i];
+        struct reforming_case given = {job, &sample->shop.policy, &sample->parts[i], 19};
+        enum action done = part->done == DONE_OPEN && part->can != NOT_LISTED && job->cans
+                               ? job->cans[part->can].done
+                               : part->done;
+        struct reform_plan *plan = arena_get(&sample->arena, sizeof *plan);
+        if (reforming_wanted(&given, done) && reforming_plan(&given, plan))
+            plans[i] = plan;
+    }
+    sample->findings.bench.plans = plans;
+}
+
 static inline struct document *sample_compose(struct sample *sample, enum document_kind kind)
 {
+    sample_plans(sample);
     const struct templates *templates = sample_templates(sample);
     report_explain(&sample->findings, templates_words(templates), &sample->arena);
     return report_compose(&sample->findings, kind, templates, sample->pictures, &sample->arena,
