@@ -104,10 +104,20 @@ void table_note(struct table_builder *builder, struct cell *cell, const char *te
 {
     if (!text || !*text)
         return;
+    struct arena *arena = builder->composition->arena;
     size_t number = note_index(builder, text) + 1;
-    cell->notes = cell->notes
-                      ? arena_print(builder->composition->arena, "%s %zu", cell->notes, number)
-                      : arena_print(builder->composition->arena, "%zu", number);
+    const char *at = cell->notes; /* the first sign that stands behind this one */
+    if (!at) {
+        cell->notes = arena_print(arena, "%zu", number);
+        return;
+    }
+    while (*at && strtoul(at, NULL, 10) < number) {
+        at += strcspn(at, " ");
+        at += strspn(at, " ");
+    }
+    cell->notes =
+        *at ? arena_print(arena, "%.*s%zu %s", (int)(at - cell->notes), cell->notes, number, at)
+            : arena_print(arena, "%s %zu", cell->notes, number);
 }
 
 static bool cell_is_empty(const struct cell *cell)
