@@ -41,11 +41,11 @@ void exhibit_instruments(struct composition *composition, size_t index)
 {
     (void)index;
     static const struct column_plan plan[] = {
-        {"instrument", NULL, NULL, COLUMN_REF, 14, 1},
-        {"description", NULL, "description", COLUMN_TEXT, 24, 1},
-        {"accuracy", NULL, "accuracy", COLUMN_TEXT, 20, 1},
-        {"details", NULL, "details", COLUMN_TEXT, 28, 1},
-        {"compared", NULL, "compared", COLUMN_TEXT, 14, 1},
+        {"instrument", NULL, NULL, COLUMN_REF, 11, 1},
+        {"description", NULL, "description", COLUMN_TEXT, 28, 1},
+        {"accuracy", NULL, "accuracy", COLUMN_TEXT, 17, 1},
+        {"details", NULL, "details", COLUMN_TEXT, 31, 1},
+        {"compared", NULL, "compared", COLUMN_TEXT, 13, 1},
     };
     struct table_builder builder =
         table_begin(composition, "instruments", plan, sizeof plan / sizeof *plan);

@@ -30,7 +30,7 @@ static void fill_leakage(const struct composition *composition, const struct vis
     bool bound = change->then_bound != BOUND_NONE || change->now_bound != BOUND_NONE;
     if (isnan(change->then_a))
         return;
-    cells[1].figures = figures_plain(composition, change->test_v, 1, 0);
+    cells[1].figures = figures_unit(composition, change->test_v, UNIT_VOLTAGE, 3);
     cells[2].figures = visit_figures(composition, change->then_a, change->then_bound);
     cells[3].figures = visit_figures(composition, change->now_a, change->now_bound);
     if (!bound)
@@ -53,7 +53,7 @@ void exhibit_visits(struct composition *composition, size_t index)
     (void)index;
     static const struct column_plan plan[] = {
         {"ref", NULL, NULL, COLUMN_REF, 8, 1},
-        {"tested_at", "V", "tested_at", COLUMN_NUMBER, 11, 2},
+        {"tested_at", NULL, "tested_at", COLUMN_NUMBER, 11, 2},
         {"leakage_then", "µA", "then", COLUMN_NUMBER, 13, 1},
         {"leakage_now", "µA", "now", COLUMN_NUMBER, 13, 1},
         {"moved", NULL, "moved", COLUMN_TEXT, 13, 1},
