@@ -277,12 +277,18 @@ static bool instrument_too_coarse(const struct assessment *assessment, size_t in
                                   const struct reading_findings *reading)
 {
     double limit_a = limit_at_reading(assessment, index, reading);
+    /* Of an insulation tester the amperes that it cannot tell grow with the square of the current:
+       at 200 M it knows well that a part is above 1 M, which its own steps of 1 M could not show.
+     */
+    double at_a = reading->reading->value.unit == UNIT_RESISTANCE
+                      ? fmin(limit_a, reading->current_a)
+                      : limit_a;
     struct leak_case given = {
         .reading = reading,
         .bench = {instrument_of(assessment->job, reading->reading->instrument), assessment->policy,
                   assessment->bench_c}};
     return limit_a > 0 &&
-           leak_reading_u(&given, limit_a) > assessment->policy->instrument_share * limit_a;
+           leak_reading_u(&given, at_a) > assessment->policy->instrument_share * limit_a;
 }
 
 /* A part that rises is not stable: it fails from a tenth of its limit on. */

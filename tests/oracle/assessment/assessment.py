@@ -492,7 +492,8 @@ class Reading:
             self.current = reading["volts"] / (max(reading["value"], 0) + self.series)
             scale = self.current ** 2 / reading["volts"]
             self.step_a, self.abs_a = self.step * scale, self.a * scale + self.in_amperes
-            if first(i.get("resolution"), "A"):
+            self.step_in_amperes = first(i.get("resolution"), "A") is not None
+            if self.step_in_amperes:
                 self.step_a = first(i["resolution"], "A")
         else:
             self.bound = reading["bound"]
@@ -509,6 +510,12 @@ class Reading:
                 ("bench", 0.0 if self.r["hot"] is not None else 1 / third)]
 
     def u_at(self, current):
+        if self.r["kind"] == "R":  # ohms: what it cannot tell grows with the square of the current
+            current = min(current, self.current)
+            scale = current ** 2 / self.r["volts"]
+            step = self.step_a if self.step_in_amperes else self.step * scale
+            absolute = self.a * scale + self.in_amperes
+            return 2 * math.hypot((self.p * current + absolute) / math.sqrt(3), step / math.sqrt(12))
         return 2 * math.hypot((self.p * current + self.abs_a) / math.sqrt(3), self.step_a / math.sqrt(12))
 
 

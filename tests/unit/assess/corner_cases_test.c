@@ -100,6 +100,29 @@ static void test_a_rule_does_not_turn_on_the_chassis(void **state)
     bench_release(&bench);
 }
 
+/* Ohms in steps of 3 M against a limit of 2 M (0.5 V over 10 k at 100 V is 50 uA): 200 M are a
+   pass, though at 2 M the tester, in steps of 3 M, could tell nothing; 2.2 M are not judged. */
+static void test_insulation_in_coarse_steps(void **state)
+{
+    (void)state;
+    struct bench bench;
+    /* clang-format off */
+    bench_assess(&bench,
+        HEAD
+        "instruments:\n  megohms:\n    accuracy: 5 %\n    resolution: 3 M\n"
+        "capacitors:\n"
+        BYPASS("C1", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 200 M by megohms\n"
+        BYPASS("C2", "paper", "0.1 uF 400 V")
+        "    readings:\n"
+        "      - 100 V 60 s 2.2 M by megohms\n");
+    /* clang-format on */
+    expect(&bench, "C1", OUTCOME_PASS, WHY_NONE);
+    expect(&bench, "C2", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
+    bench_release(&bench);
+}
+
 /* Two sections still falling at 100 V, warm and brought to service volts too hot together: they
    are reformed, not failed. The same of an AVC line read too early. */
 static void test_what_may_not_fail_alone_does_not_fail_jointly(void **state)
@@ -409,6 +432,7 @@ int main(void)
         cmocka_unit_test(test_a_rise_read_too_early),
         cmocka_unit_test(test_a_rule_does_not_turn_on_the_chassis),
         cmocka_unit_test(test_what_may_not_fail_alone_does_not_fail_jointly),
+        cmocka_unit_test(test_insulation_in_coarse_steps),
         cmocka_unit_test(test_a_bypass_across_its_own_feed),
         cmocka_unit_test(test_open_resistors),
         cmocka_unit_test(test_effects_that_say_what_goes_wrong),
