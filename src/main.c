@@ -638,9 +638,10 @@ static void fill_man_page(struct buffer *out)
         .name = "gridleak",
         .version = GRIDLEAK_VERSION,
         .headline = headline,
-        .exit_status = "0 done; 1 the answer is no (--strict and a warning, prove with a "
-                       "difference); 2 wrong input\n"
-                       "(command line, job, template); 3 the system failed.",
+        .exit_status =
+            "0 done; 1 the answer is no (--strict and a warning, find without a hit,\n"
+            "prove with a difference); 2 wrong input (command line, job, template); 3 the\n"
+            "system failed.",
         .files = "shop.yaml marks the archive's folder and holds the shop's policy;\n"
                  "<job>.yaml is a job. Templates and words are looked for in the archive's\n"
                  "templates folder first, then where they were installed.",

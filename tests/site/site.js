@@ -45,7 +45,12 @@ async function axeOn(page, name) {
   check(result.passes.length > 10, `${name}: axe looked at nothing`);
 }
 
-const heads = (page, table) => page.$$eval(`#${table} tbody th`, (all) => all.map((th) => th.textContent));
+// Rows beyond the first screens are drawn when the typing pauses.
+const PAUSE = 220;
+const heads = async (page, table) => {
+  await page.waitForTimeout(PAUSE);
+  return page.$$eval(`#${table} tbody th`, (all) => all.map((th) => th.textContent));
+};
 
 function find(folder, terms) {
   try {
