@@ -19,7 +19,8 @@
 
 /* |actual - expected| <= tolerance * |expected|. */
 #define assert_relative(actual, expected, tolerance)                                               \
-    kit_assert_close((actual), (expected), (tolerance)*fabs((double)(expected)), #actual, __FILE__, __LINE__)
+    kit_assert_close((actual), (expected), (tolerance)*fabs((double)(expected)), #actual,          \
+                     __FILE__, __LINE__)
 
 static inline void kit_assert_close(double actual, double expected, double tolerance,
                                     const char *what, const char *file, int line)

@@ -103,8 +103,8 @@ struct criterion {
     enum criterion_key key;
     double value, uncertainty, limit; /* uncertainty: expanded, k = 2 */
     enum unit unit;
-    bool upper; /* passes at or below the limit; false: at or above */
-    bool joint; /* all parts of the line or stage together */
+    bool upper;       /* passes at or below the limit; false: at or above */
+    bool joint;       /* all parts of the line or stage together */
     enum bound bound; /* of the value: UNDER at most this, OVER at least this */
     enum outcome outcome;
     enum reason why;

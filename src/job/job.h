@@ -110,15 +110,15 @@ struct capacitor {
     struct quantity source_volts;        /* coupling, avc feed: `source: 90 V 220k` */
     struct resistance source_resistance; /* {0}: work it out, or 0 */
     struct position source_at;
-    struct resistance feed;     /* ohm, d.c., that the place hangs on */
-    const char *line;           /* name of the AVC line */
-    struct quantity delay;      /* V of the AVC delay */
-    struct quantity current;    /* A: of the HT line, the rail or the battery */
-    struct prose rule;          /* name of the leakage rule */
-    struct quantity ripple;     /* Hz */
-    struct quantity circuit;    /* ohm: tuning */
-    struct quantity shift;      /* V or per cent: other */
-    struct quantity hum_found;  /* V a.c. measured across it: reservoir, smoothing */
+    struct resistance feed;    /* ohm, d.c., that the place hangs on */
+    const char *line;          /* name of the AVC line */
+    struct quantity delay;     /* V of the AVC delay */
+    struct quantity current;   /* A: of the HT line, the rail or the battery */
+    struct prose rule;         /* name of the leakage rule */
+    struct quantity ripple;    /* Hz */
+    struct quantity circuit;   /* ohm: tuning */
+    struct quantity shift;     /* V or per cent: other */
+    struct quantity hum_found; /* V a.c. measured across it: reservoir, smoothing */
     struct quantity hum_left;
     struct quantity service;    /* V: highest d.c. in service, when given */
     bool near_heat;             /* within 50 mm of an output valve, rectifier or dropper */

@@ -36,8 +36,7 @@ SOURCE(LARGE_CAN_SHEETS, TRUST_SECOND_HAND, "large-can-sheets",
        "makers' sheets of large can electrolytics, 3 √(CV) after 5 min (root sign recalled)")
 SOURCE(IEC_60063, TRUST_SEEN, "iec-60063", "IEC 60063, preferred number series")
 SOURCE(IEC_60063_E3, TRUST_RECALLED, "iec-60063-e3", "IEC 60063, series E3")
-SOURCE(VALVE_BOOK, TRUST_SECOND_HAND, "valve-book",
-       "makers' manuals, as named beside the row")
+SOURCE(VALVE_BOOK, TRUST_SECOND_HAND, "valve-book", "makers' manuals, as named beside the row")
 SOURCE(GRID_CURRENT_LAW, TRUST_RECALLED, "grid-current-law",
        "grid current 15 µA × exp(Vgk/0.23 V), labelled default")
 SOURCE(THREE_HALVES_LAW, TRUST_DERIVED, "three-halves-law",

@@ -3,31 +3,12 @@
 #include "assess/findings.h"
 
 /* Keys of effects, as findings.h lists them. */
-static const char *const effects[] = {"grid_volts",
-                                      "cathode_current",
-                                      "anode_watts",
-                                      "grid_shift",
-                                      "line_loss",
-                                      "line_volts",
-                                      "screen_fall",
-                                      "rail_drop",
-                                      "part_watts",
-                                      "bias_loss",
-                                      "ht_share",
-                                      "short_watts",
-                                      "control_volts",
-                                      "circuit_ratio",
-                                      "battery_share",
-                                      "mains_fire",
-                                      "earth_current",
-                                      "touch_current",
-                                      "discharge_resistor",
-                                      "pulse_peak",
-                                      "shift",
-                                      "linear_ratio",
-                                     "primary_current",
-                                     "capacitance",
-                                      NULL};
+static const char *const effects[] = {
+    "grid_volts", "cathode_current", "anode_watts",     "grid_shift",         "line_loss",
+    "line_volts", "screen_fall",     "rail_drop",       "part_watts",         "bias_loss",
+    "ht_share",   "short_watts",     "control_volts",   "circuit_ratio",      "battery_share",
+    "mains_fire", "earth_current",   "touch_current",   "discharge_resistor", "pulse_peak",
+    "shift",      "linear_ratio",    "primary_current", "capacitance",        NULL};
 
 /* A group of phrases and the keys below it; `from` skips the unset choice. */
 static const struct {
