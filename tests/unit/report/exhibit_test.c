@@ -3,6 +3,8 @@
 
 #include "kit.h"
 
+#include <stdlib.h>
+
 struct opened {
     struct sample *sample;
     struct document *document;
@@ -86,6 +88,44 @@ static void test_leakage_table(void **state)
     assert_null(unread[7].second); /* "kept untested" says it */
     assert_int_equal(unread[7].mark, MARK_NOT_JUDGED);
     assert_string_equal(row_of(table, "C22")->cells[7].second, "no safety class");
+    close_record(&opened);
+}
+
+/* The picture behind the last photograph stands in the letterhead; without it there is none. */
+static void test_logo(void **state)
+{
+    (void)state;
+    struct opened opened = record_of(sample_begin());
+    assert_null(sample_exhibit(opened.document, "title")->title.logo);
+    close_record(&opened);
+    struct sample *sample = sample_begin();
+    sample->pictures[2] = (struct report_picture){"logo.png", 400, 200, NULL};
+    opened = record_of(sample);
+    const struct plate_picture *logo = sample_exhibit(opened.document, "title")->title.logo;
+    assert_non_null(logo);
+    assert_string_equal(logo->file, "logo.png");
+    assert_int_equal(logo->width_px, 400);
+    close_record(&opened);
+}
+
+/* C9 has the note of C14 and one of its own that is found before it: the signs of a cell rise. */
+static void test_note_signs_rise(void **state)
+{
+    (void)state;
+    struct sample *sample = sample_begin();
+    sample->parts[0].turns_on_temperature = true;
+    for (size_t i = 1; i < 5; i++)
+        sample->parts[i].tested_above_marked = sample->parts[i].turns_on_temperature = true;
+    struct opened opened = record_of(sample);
+    const char *notes = row_of(table_of(&opened, "leakage"), "C9")->cells[0].notes;
+    assert_non_null(strchr(notes, ' '));
+    for (unsigned long last = 0; *notes;) {
+        char *end;
+        unsigned long number = strtoul(notes, &end, 10);
+        assert_true(number > last);
+        last = number;
+        notes = end;
+    }
     close_record(&opened);
 }
 
@@ -360,6 +400,8 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(test_leakage_table),
+        cmocka_unit_test(test_logo),
+        cmocka_unit_test(test_note_signs_rise),
         cmocka_unit_test(test_leakage_notes),
         cmocka_unit_test(test_notes_are_shared),
         cmocka_unit_test(test_glance),
