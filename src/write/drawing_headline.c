@@ -45,11 +45,11 @@ static unsigned draw_strokes(struct sketch *sketch, const struct layout *layout,
 {
     unsigned drawn = 0, total = strokes_of(kind);
     for (int stroke = 0; stroke < STROKE_COUNT; stroke++)
-        for (unsigned i = 0; i < kind->strokes[stroke]; i++, drawn++)
-            sketch_stroke(
-                sketch, (enum stroke)stroke,
-                (struct point){layout->strokes_x + layout->pitch * (drawn % layout->a_line),
-                               top + 22.0 * (double)(drawn / layout->a_line)});
+        for (unsigned i = 0; i < kind->strokes[stroke]; i++, drawn++) {
+            unsigned line = drawn / layout->a_line, place = drawn % layout->a_line;
+            struct point at = {layout->strokes_x + layout->pitch * place, top + 22 * line};
+            sketch_stroke(sketch, (enum stroke)stroke, at);
+        }
     unsigned lines = (total + layout->a_line - 1) / layout->a_line;
     for (unsigned line = 0; line < lines; line++) {
         unsigned here = line + 1 < lines ? layout->a_line : total - line * layout->a_line;

@@ -176,15 +176,16 @@ static void write_identity(const struct findings *findings, const struct capacit
 static void write_action(const struct job *job, const struct capacitor *part, struct buffer *out)
 {
     const struct can *can = part->can == NOT_LISTED ? NULL : &job->cans[part->can];
-    bool own = part->done != DONE_OPEN || !can;
+    /* what was done to the can was done to it */
+    const struct can *of = part->done == DONE_OPEN ? can : NULL;
     const struct marking *fitted = part->fitted.set || !can ? &part->fitted : &can->fitted;
-    json_choice_member(out, "done", action_text(own ? part->done : can->done));
+    json_choice_member(out, "done", action_text(of ? of->done : part->done));
     json_text_member(out, "fitted", fitted->set ? fitted->written : NULL);
     json_choice_member(out, "fitted_type", fitted->set ? dielectric_text(fitted->type) : NULL);
     json_quantity_member(out, "fitted_f", &fitted->value);
     json_quantity_member(out, "fitted_rated_v", &fitted->rated);
     json_choice_member(out, "fitted_class", safety_class_text(fitted->safety_class));
-    json_text_member(out, "age", fitted->set ? age_text(own ? part->age : can->age) : NULL);
+    json_text_member(out, "age", fitted->set ? age_text(of ? of->age : part->age) : NULL);
     json_text_member(out, "batch", part->batch || !can ? part->batch : can->batch);
     json_prose_member(out, "signed",
                       part->signed_where.text || !can ? &part->signed_where : &can->signed_where);
