@@ -59,7 +59,7 @@ struct valve_findings valve_test_assess(const struct job *job, const struct poli
     /* the tester's own accuracy is part of its good figure; only the digit read counts */
     found.share = (struct held){.value = 100 * found.value / found.good,
                                 .uncertainty = 0,
-                                .low = 100 * policy->valve_good,
+                                .low = 100 * policy->valve_least,
                                 .high = NAN,
                                 .unit = UNIT_PERCENT,
                                 .source = SOURCE_POLICY};

@@ -1,6 +1,8 @@
 /* Current against time: soaking under voltage, and reforming step by step. */
 #include "report/composition.h"
 
+#include "assess/absorption.h"
+
 #include <string.h>
 
 enum { FIT_POINTS = 40 };
@@ -257,6 +259,28 @@ static void add_after_rest(const struct composition *composition, const struct r
     curves->deciding_text = text_micro(composition->arena, decides->y, 2);
 }
 
+/* The better law of each step that has one, over the readings it was fitted to. */
+static void add_fits(const struct composition *composition, const struct reform_findings *found,
+                     struct curve_panel *panel)
+{
+    for (size_t i = 0; i < found->step_count && i < panel->curve_count; i++) {
+        const struct reform_step *step = &found->steps[i];
+        struct curve *curve = &panel->curves[i];
+        if (step->decay.better < 0 || curve->point_count < 2)
+            continue;
+        const struct decay *decay = &step->decay.laws[step->decay.better];
+        double from_s = curve->points[0].x_s, to_s = curve->points[curve->point_count - 1].x_s;
+        double begun_s = to_s - step->duration_s;
+        curve->fit_from_s = from_s;
+        curve->fit_to_s = to_s;
+        curve->fit_count = FIT_POINTS;
+        curve->fit_y = arena_array(composition->arena, FIT_POINTS, sizeof *curve->fit_y);
+        for (size_t k = 0; k < FIT_POINTS; k++)
+            curve->fit_y[k] = decay_current(
+                decay, from_s + (to_s - from_s) * (double)k / (FIT_POINTS - 1) - begun_s);
+    }
+}
+
 void exhibit_reform_curves(struct composition *composition, size_t index)
 {
     if (index >= composition->job->reform_count)
@@ -276,6 +300,8 @@ void exhibit_reform_curves(struct composition *composition, size_t index)
     curves->panels[curves->panel_count++] =
         panel_of(composition, reform->log, reform->log_count, true);
     add_step_volts(composition, reform->log, reform->log_count, &curves->panels[0]);
+    if (composition->findings->bench.reforms)
+        add_fits(composition, &composition->findings->bench.reforms[index], &curves->panels[0]);
     if (reform->after_rest_count)
         add_after_rest(composition, reform, curves);
     struct table_builder numbers = numbers_begin(composition, id);

@@ -1,5 +1,5 @@
 /* Registers: resistors, windings, switches and controls, valves. */
-#include "report/composition.h"
+#include "report/held_words.h"
 
 /* What was done and what is there now, for the last column. */
 static const char *done_text_of(const struct composition *composition, enum action done,
@@ -48,6 +48,30 @@ static bool out_of_tolerance(const struct quantity *measured, const struct marki
     return percent > marked->tolerance_high_percent || percent < marked->tolerance_low_percent;
 }
 
+/* What a resistor does in its stage by what it measures, and its watts. */
+static void resistor_notes(struct table_builder *builder, const struct resistor_findings *found,
+                           struct cell *cell)
+{
+    const struct composition *composition = builder->composition;
+    const struct phrasing *say = &composition->say;
+    if (held_fails(&found->tolerance) && found->stage)
+        table_note(
+            builder, cell,
+            phrase(say, found->harmless ? "note.resistor_harmless" : "note.resistor_moves", "stage",
+                   found->stage, "percent",
+                   text_signed(composition->arena,
+                               fabs(found->effect_percent) < 0.05 ? 0 : found->effect_percent,
+                               UNIT_PERCENT, 2),
+                   NULL));
+    if (isfinite(found->dissipation.value))
+        table_note(
+            builder, cell,
+            phrase(
+                say, held_fails(&found->dissipation) ? "note.resistor_hot" : "note.resistor_watts",
+                "watts", quantity_text(composition->arena, found->dissipation.value, UNIT_POWER, 2),
+                "rating", text_unit(composition, found->dissipation.high, UNIT_POWER, 2), NULL));
+}
+
 void exhibit_resistors(struct composition *composition, size_t index)
 {
     (void)index;
@@ -79,12 +103,41 @@ void exhibit_resistors(struct composition *composition, size_t index)
             table_note(&builder, &cells[0],
                        phrase(&composition->say, "note.resistor_outside", "reason",
                               text_stopped(composition->arena, part->reason.text), NULL));
+        if (part->marked.colours_unknown)
+            table_note(&builder, &cells[1],
+                       phrase(&composition->say, "note.colours_unknown", "colours",
+                              part->marked.colours, NULL));
+        else if (part->marked.colours)
+            table_note(
+                &builder, &cells[1],
+                phrase(&composition->say, "note.colours", "colours", part->marked.colours, NULL));
+        if (composition->findings->bench.resistors)
+            resistor_notes(&builder, &composition->findings->bench.resistors[i], &cells[4]);
         table_note(
             &builder, &cells[0],
             text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
     }
     table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.resistors", NULL));
+}
+
+/* Off the marked value brought to the temperature of the copper. */
+static void winding_figures(struct table_builder *builder, const struct winding_findings *found,
+                            struct cell *cells)
+{
+    const struct composition *composition = builder->composition;
+    double percent = found->resistance.value;
+    if (isfinite(percent)) {
+        cells[3].text = text_signed(composition->arena, fabs(percent) < 0.5 ? 0 : percent,
+                                    UNIT_PERCENT, fabs(percent) < 10 ? 1 : 2);
+        cells[3].strong = cells[2].strong = held_fails(&found->resistance);
+    }
+    cells[4].strong = held_fails(&found->insulation);
+    if (held_fails(&found->insulation))
+        table_note(builder, &cells[4],
+                   phrase(&composition->say, "note.winding_insulation", "limit",
+                          held_limits(composition, &found->insulation), "source",
+                          source_words(composition, found->insulation.source), NULL));
 }
 
 void exhibit_windings(struct composition *composition, size_t index)
@@ -94,8 +147,9 @@ void exhibit_windings(struct composition *composition, size_t index)
         {"ref", NULL, NULL, COLUMN_REF, 12, 1},
         {"marked", NULL, "marked", COLUMN_NUMBER, 15, 1},
         {"measured", NULL, "measured", COLUMN_NUMBER, 15, 1},
+        {"change", NULL, "change", COLUMN_TEXT, 12, 2},
         {"insulation", NULL, "insulation", COLUMN_NUMBER, 16, 2},
-        {"done", NULL, NULL, COLUMN_TEXT, 42, 1},
+        {"done", NULL, NULL, COLUMN_TEXT, 30, 1},
     };
     struct table_builder builder =
         table_begin(composition, "windings", plan, sizeof plan / sizeof *plan);
@@ -106,8 +160,10 @@ void exhibit_windings(struct composition *composition, size_t index)
         cells[0].text = part->ref;
         cells[1].figures = figures_quantity(composition, &part->marked.value);
         cells[2].figures = figures_quantity(composition, &part->measured);
-        cells[3].figures = figures_quantity(composition, &part->insulation);
-        cells[4].text = done_text_of(composition, part->done, part->was);
+        cells[4].figures = figures_quantity(composition, &part->insulation);
+        cells[5].text = done_text_of(composition, part->done, part->was);
+        if (composition->findings->bench.windings)
+            winding_figures(&builder, &composition->findings->bench.windings[i], cells);
         const char *warm = text_quantity(composition, &part->temperature);
         if (warm)
             table_note(&builder, &cells[2],
@@ -142,6 +198,23 @@ void exhibit_controls(struct composition *composition, size_t index)
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.controls", NULL));
 }
 
+static void valve_figures(struct table_builder *builder, const struct valve_findings *found,
+                          struct cell *cell)
+{
+    const struct composition *composition = builder->composition;
+    const struct phrasing *say = &composition->say;
+    if (isfinite(found->share.value) && found->unit != UNIT_PERCENT)
+        cell->second = phrase(say, "valve_test.share", "percent",
+                              text_unit(composition, found->share.value, UNIT_PERCENT, 2), NULL);
+    cell->strong = held_fails(&found->share);
+    if (held_fails(&found->share))
+        table_note(builder, cell,
+                   phrase(say, "valve_test.weak", "limit",
+                          text_unit(composition, found->share.low, UNIT_PERCENT, 2), NULL));
+    if (isfinite(found->value) && isnan(found->good))
+        table_note(builder, cell, phrase(say, "valve_test.no_good", NULL));
+}
+
 void exhibit_valves(struct composition *composition, size_t index)
 {
     (void)index;
@@ -162,6 +235,8 @@ void exhibit_valves(struct composition *composition, size_t index)
         cells[1].text = part->type;
         cells[2].text = part->maker;
         cells[3].text = part->tested.text;
+        if (composition->findings->bench.valves)
+            valve_figures(&builder, &composition->findings->bench.valves[i], &cells[3]);
         cells[4].text = done_text_of(composition, part->done, part->was);
     }
     table_drop_empty(&builder);

@@ -170,6 +170,76 @@ static const char *not_judged_note(const struct composition *composition,
     return NULL;
 }
 
+static const char *node_name(const struct composition *composition, size_t node)
+{
+    static const char *const keys[STAGE_NODE_COUNT] = {"grid", "cathode", "anode", "screen"};
+    return phrase_in(&composition->say, "stage_row", keys[node]);
+}
+
+/* "cathode 2.1 V above": what no leak and no spread of the valve explains. */
+static const char *unexplained_words(const struct composition *composition,
+                                     const struct reconciled_phase *phase)
+{
+    const char *words[STAGE_NODE_COUNT] = {0};
+    for (size_t i = 0; i < STAGE_NODE_COUNT; i++) {
+        double volts = phase->nodes[i].unexplained_v;
+        if (isfinite(volts) && volts != 0)
+            words[i] =
+                phrase(&composition->say, volts > 0 ? "stage.above" : "stage.below", "node",
+                       node_name(composition, i), "volts",
+                       quantity_text(composition->arena, fabs(volts), UNIT_VOLTAGE, 2), NULL);
+    }
+    return text_join(composition->arena, ", ", words, STAGE_NODE_COUNT);
+}
+
+/* What of the set's own figures in a phase is not explained; NULL: nothing, or not compared. */
+static const char *unexplained_note(const struct composition *composition,
+                                    const struct reconciled_findings *found, enum phase phase)
+{
+    const struct phrasing *say = &composition->say;
+    const struct reconciled_phase *at = &found->phases[phase];
+    const char *unexplained = at->compared ? unexplained_words(composition, at) : NULL;
+    if (!unexplained)
+        return NULL;
+    const char *grid = NULL;
+    if (isfinite(at->grid_current_a))
+        grid = phrase(
+            say, "stage.grid_estimate", "current",
+            quantity_text(composition->arena, at->grid_current_a, UNIT_CURRENT, 2), "error",
+            quantity_text(composition->arena, at->grid_current_error_a, UNIT_CURRENT, 1), NULL);
+    return phrase(say, "stage.unexplained", "phase",
+                  phrase(say, phase == PHASE_LEFT ? "head.left" : "head.found", NULL), "volts",
+                  unexplained, "grid", grid, NULL);
+}
+
+static const char *explained_note(const struct composition *composition,
+                                  const struct reconciled_findings *found)
+{
+    for (int phase = PHASE_FOUND; phase < PHASE_COUNT; phase++)
+        if (found->phases[phase].compared && unexplained_words(composition, &found->phases[phase]))
+            return NULL;
+    return found->phases[PHASE_FOUND].compared || found->phases[PHASE_LEFT].compared
+               ? phrase(&composition->say, "stage.explained", NULL)
+               : NULL;
+}
+
+static const char *bounds_note(const struct composition *composition,
+                               const struct reconciled_findings *found)
+{
+    if (!found->phases[PHASE_FOUND].compared && !found->phases[PHASE_LEFT].compared)
+        return NULL;
+    return phrase(
+        &composition->say, "stage.bounds", "law",
+        isfinite(found->law_bound) ? text_unit(composition, 100 * found->law_bound, UNIT_PERCENT, 2)
+                                   : NULL,
+        "valve",
+        found->valve_bound > 0 ? text_unit(composition, 100 * found->valve_bound, UNIT_PERCENT, 2)
+                               : NULL,
+        "anchored",
+        found->anchored ? text_unit(composition, 100 * found->anchor_scale, UNIT_PERCENT, 3) : NULL,
+        NULL);
+}
+
 /* What is to be said of one stage stands at its first row. */
 static void add_notes(struct table_builder *builder, const struct stage_findings *stage,
                       struct cell *cell)
@@ -180,7 +250,16 @@ static void add_notes(struct table_builder *builder, const struct stage_findings
     table_note(builder, cell, not_judged_note(composition, stage));
     table_note(builder, cell,
                stage->law_status == LAW_WARN_MU12 ? phrase(say, "stage.mu12", NULL) : NULL);
-    table_note(builder, cell, grid_current_note(composition, stage));
+    const struct reconciled_findings *all = composition->findings->bench.reconciled;
+    if (!all) {
+        table_note(builder, cell, grid_current_note(composition, stage));
+        return;
+    }
+    const struct reconciled_findings *found = &all[stage - composition->findings->stages];
+    table_note(builder, cell, unexplained_note(composition, found, PHASE_FOUND));
+    table_note(builder, cell, unexplained_note(composition, found, PHASE_LEFT));
+    table_note(builder, cell, explained_note(composition, found));
+    table_note(builder, cell, bounds_note(composition, found));
 }
 
 /* A stage of which nothing is known gets no line. */

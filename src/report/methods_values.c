@@ -9,6 +9,10 @@
 #define EVERYWHERE      0u
 #define SAID_ELSEWHERE  (1u << 31) /* in the section's text; listed when the shop changed it */
 
+/* Held against something besides a leakage: which list of the job. */
+enum { LIST_VOLTAGES, LIST_WINDINGS, LIST_VALVES, LIST_REFORMS };
+#define OF_LIST(list) (SAID_ELSEWHERE | (1u << LIST_##list))
+
 _Static_assert(CRITERION_COUNT < 31, "a bit for each criterion");
 
 /* One limit: which member, how it is written, which figures are held against it. */
@@ -53,6 +57,11 @@ static const struct policy_row {
     ROW(default_accuracy, UNIT_PERCENT, 100, SAID_ELSEWHERE),
     ROW(volts_accuracy, UNIT_PERCENT, 100, EVERYWHERE),
     ROW(repeatability, UNIT_PERCENT, 100, EVERYWHERE),
+    ROW(voltage_tolerance, UNIT_PERCENT, 100, OF_LIST(VOLTAGES)),
+    ROW(winding_tolerance, UNIT_PERCENT, 100, OF_LIST(WINDINGS)),
+    ROW(valve_least, UNIT_PERCENT, 100, OF_LIST(VALVES)),
+    ROW(reform_current_a, UNIT_CURRENT, 1, OF_LIST(REFORMS)),
+    ROW(reform_power_w, UNIT_POWER, 1, OF_LIST(REFORMS)),
 #undef ROW
 };
 
@@ -71,10 +80,18 @@ static unsigned criteria_of(const struct findings *findings)
     return criteria;
 }
 
-static bool is_listed(const struct policy_row *row, unsigned criteria, bool changed)
+/* A bit for each list of the job that has anything in it. */
+static unsigned lists_of(const struct job *job)
 {
-    if (row->criteria == SAID_ELSEWHERE)
-        return changed;
+    return (job->voltages.point_count > 0) << LIST_VOLTAGES |
+           (job->winding_count > 0) << LIST_WINDINGS | (job->valve_count > 0) << LIST_VALVES |
+           (job->reform_count > 0) << LIST_REFORMS;
+}
+
+static bool is_listed(const struct policy_row *row, unsigned criteria, unsigned lists, bool changed)
+{
+    if (row->criteria & SAID_ELSEWHERE)
+        return changed || (row->criteria & ~SAID_ELSEWHERE & lists);
     return row->criteria == EVERYWHERE || row->criteria & criteria;
 }
 
@@ -89,13 +106,14 @@ static void put_policy(const struct composition *composition, struct mustache_va
 {
     const struct shop defaults = shop_default();
     unsigned criteria = criteria_of(composition->findings);
+    unsigned lists = lists_of(composition->job);
     struct arena *arena = composition->arena;
     struct mustache_value *list = mustache_list(arena);
     for (size_t i = 0; i < sizeof rows / sizeof *rows; i++) {
         double value = policy_value(&composition->shop->policy, &rows[i]);
         double usual = policy_value(&defaults.policy, &rows[i]);
         bool changed = value != usual;
-        if (!is_listed(&rows[i], criteria, changed))
+        if (!is_listed(&rows[i], criteria, lists, changed))
             continue;
         struct mustache_value *item = mustache_map(arena);
         mustache_set_text(arena, item, "name", phrase_in(&composition->say, "policy", rows[i].key));
@@ -138,6 +156,46 @@ static void mark_used(const struct findings *findings, bool *used)
     }
 }
 
+static void mark_held(bool *used, const struct held *held)
+{
+    if (held->outcome != OUTCOME_NOT_JUDGED)
+        mark_source(used, held->source);
+}
+
+/* What the bench was held against. */
+static void mark_bench(const struct findings *findings, bool *used)
+{
+    const struct bench_findings *bench = &findings->bench;
+    const struct job *job = findings->job;
+    if (!bench->resistors) /* not assessed */
+        return;
+    for (size_t i = 0; i < job->reform_count; i++)
+        mark_held(used, &bench->reforms[i].rest);
+    for (size_t i = 0; i < job->resistor_count; i++)
+        mark_held(used, &bench->resistors[i].tolerance);
+    for (size_t i = 0; i < job->winding_count; i++) {
+        mark_held(used, &bench->windings[i].resistance);
+        mark_held(used, &bench->windings[i].insulation);
+        if (bench->windings[i].resistance.outcome != OUTCOME_NOT_JUDGED)
+            mark_source(used, SOURCE_COPPER);
+    }
+    for (size_t i = 0; i < job->voltages.point_count; i++)
+        for (int k = 0; k < 2; k++)
+            mark_held(used, &bench->voltages[i].compared[k]);
+    for (size_t i = 0; i < job->safety_count; i++)
+        mark_held(used, &bench->safety[i].value);
+    for (size_t i = 0; i < bench->replacement_count; i++)
+        for (size_t k = 0; k < REPLACEMENT_CHECK_COUNT; k++)
+            if (bench->replacements[i].checked[k])
+                mark_held(used, &bench->replacements[i].checks[k]);
+    for (size_t i = 0; i < bench->date_count; i++)
+        if (bench->dates[i].known)
+            mark_source(used, bench->dates[i].code.source);
+    for (size_t i = 0; i < bench->node_count; i++)
+        if (bench->nodes[i].judged)
+            mark_source(used, SOURCE_RIPPLE);
+}
+
 const char *trust_words(const struct composition *composition, enum trust trust)
 {
     return phrase_in(&composition->say, "trust", trust_text(trust));
@@ -174,6 +232,7 @@ static void put_sources(const struct composition *composition, struct mustache_v
 {
     bool used[SOURCE_COUNT] = {false};
     mark_used(composition->findings, used);
+    mark_bench(composition->findings, used);
     struct mustache_value *list = mustache_list(composition->arena);
     for (int trust = 0; trust <= TRUST_DERIVED; trust++) {
         struct mustache_value *known = sources_known(composition, used, trust);

@@ -201,6 +201,9 @@ static void put_sections(const struct filler *root)
     put_flag(&has, "soak_curves", has_soak_curves(composition));
     put_flag(&has, "changed", has_changed(composition));
     put_flag(&has, "visits", composition->findings->since && composition->findings->since->count);
+    put_flag(&has, "replacements", has_replacements(composition));
+    put_flag(&has, "hum", composition->findings->bench.node_count > 0);
+    put_flag(&has, "date_codes", composition->findings->bench.date_count > 0);
     put_flag(&has, "removed", job->removed_count > 0);
     put_flag(&has, "stages", composition->findings->stage_count > 0);
     put_flag(&has, "resistors", job->resistor_count > 0);
