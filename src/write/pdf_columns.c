@@ -81,7 +81,9 @@ static double widest_text(const struct table_layout *layout, size_t index, bool 
             continue;
         const struct cell *cell = &row->cells[index];
         bool bold = cell->strong || layout->table->columns[index].kind == COLUMN_REF;
-        double notes = cell->notes ? table_text_width(layout, FACE_SEMIBOLD, cell->notes) * 0.7 : 0;
+        double notes = cell->notes ? 0.7 * (table_text_width(layout, FACE_SEMIBOLD, "\u2009") +
+                                            table_text_width(layout, FACE_SEMIBOLD, cell->notes))
+                                   : 0;
         widest =
             larger(widest, notes + table_text_width(layout, bold ? FACE_SEMIBOLD : FACE_REGULAR,
                                                     cell->text));

@@ -185,7 +185,9 @@ static struct text_runs cell_runs(const struct table_layout *layout, const struc
         struct text_style raised = cell_style(face, INK_TEXT);
         raised.size_pt *= 0.7;
         raised.raise_pt = 0.36 * type_table.size;
-        text_runs_add(&runs, cell->notes, raised);
+        /* a thin space, so that copied text does not run "C4" and "2" together */
+        text_runs_add(&runs, arena_print(layout->composer->flow.arena, "\u2009%s", cell->notes),
+                      raised);
     }
     if (cell->second && *cell->second) {
         if (runs.count > 0)
