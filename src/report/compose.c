@@ -51,6 +51,7 @@ static const struct {
     {"sheet_bleed", exhibit_sheet_bleed},
     {"assessed_capacitors", exhibit_assessed_capacitors},
     {"assessed_stages", exhibit_assessed_stages},
+    {"assessed_bench", exhibit_assessed_bench},
     {"fields", exhibit_fields},
     {"policy_limits", exhibit_policy_limits},
     {"rule_sources", exhibit_rule_sources},

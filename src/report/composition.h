@@ -142,10 +142,10 @@ exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents
     exhibit_leakage, exhibit_soak_curves, exhibit_changed, exhibit_removed, exhibit_resistors,
     exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stages, exhibit_voltages,
     exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_instruments,
-    exhibit_reform_steps, exhibit_hum, exhibit_replacements, exhibit_date_codes, exhibit_visits,
-    exhibit_write_on, exhibit_sheet_leakage, exhibit_sheet_reform, exhibit_sheet_bleed,
-    exhibit_assessed_capacitors, exhibit_assessed_stages, exhibit_fields, exhibit_policy_limits,
-    exhibit_rule_sources;
+    exhibit_assessed_bench, exhibit_reform_steps, exhibit_hum, exhibit_replacements,
+    exhibit_date_codes, exhibit_visits, exhibit_write_on, exhibit_sheet_leakage,
+    exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages,
+    exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
 
 /* ---- reforming: the plan of one electrolytic, for the bench sheet */
 

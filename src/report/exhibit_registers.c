@@ -212,7 +212,7 @@ static void valve_figures(struct table_builder *builder, const struct valve_find
                    phrase(say, "valve_test.weak", "limit",
                           text_unit(composition, found->share.low, UNIT_PERCENT, 2), NULL));
     if (isfinite(found->value) && isnan(found->good))
-        table_note(builder, cell, phrase(say, "valve_test.no_good", NULL));
+        table_note(builder, cell, phrase(say, "valve_test.no_figure", NULL));
 }
 
 void exhibit_valves(struct composition *composition, size_t index)
