@@ -313,6 +313,29 @@ static struct mustache_value *job_link(const struct statistics_work *work, size_
     return page_job_row(work->frame, job);
 }
 
+/* The query that finds a batch, for the fragment of an address: all but letters and digits as %XX.
+ */
+static const char *batch_query(const struct statistics_work *work, const char *batch)
+{
+    struct buffer text = {0}, query = {0};
+    bool quoted = strpbrk(batch, " \t") != NULL;
+    buffer_print(&text, "batch=%s%s%s", quoted ? "\"" : "", batch, quoted ? "\"" : "");
+    for (const char *at = buffer_string(&text); *at; at++) {
+        bool plain = (*at >= 'a' && *at <= 'z') || (*at >= 'A' && *at <= 'Z') ||
+                     (*at >= '0' && *at <= '9') || *at == '-' || *at == '.';
+        if (plain) {
+            buffer_byte(&query, *at);
+        } else {
+            buffer_byte(&query, '%');
+            buffer_hex(&query, (unsigned char)*at, 2);
+        }
+    }
+    const char *kept = arena_text(work->frame->arena, query.data, query.length);
+    buffer_release(&text);
+    buffer_release(&query);
+    return kept;
+}
+
 static struct mustache_value *batch_row(const struct statistics_work *work,
                                         const struct batch_row *batch)
 {
@@ -329,6 +352,7 @@ static struct mustache_value *batch_row(const struct statistics_work *work,
         mustache_push(arena, jobs, job_link(work, job));
     }
     mustache_set_text(arena, row, "batch", batch->batch);
+    mustache_set_text(arena, row, "query", batch_query(work, batch->batch));
     mustache_set_text(arena, row, "fitted",
                       column_text(&columns->parts[PART_FITTED], batch->parts[0]));
     mustache_set_text(arena, row, "parts", number_text(work, (double)batch->count));

@@ -63,7 +63,6 @@ function find(folder, terms) {
 }
 async function type(page, text) {
   await page.fill('#q', text);
-  await page.waitForTimeout(220); // the rest of the rows
 }
 
 // The page and the shell find the same parts and jobs.
@@ -220,6 +219,19 @@ async function onPaper(browser) {
 }
 
 // Which call-backs are due hangs on the day only.
+async function recall(browser) {
+  const page = await open(browser, { viewport: { width: 1280, height: 900 } }, out);
+  await page.goto(url(out, 'statistics.html'));
+  const links = await page.$$eval('.recall th a', (all) => all.map((a) => [a.textContent, a.href]));
+  check(links.some(([batch]) => batch.startsWith('<b>')), 'the hostile batch is listed');
+  for (const [batch, href] of links.filter(([batch]) => /^<b>|^2029-W14/.test(batch))) {
+    await page.goto(href);
+    check((await heads(page, 'parts')).length > 0, `the link of batch ${batch} finds its parts`);
+    await page.goto(url(out, 'statistics.html'));
+  }
+  await page.context().close();
+}
+
 async function callBacks(browser) {
   const page = await open(browser, { viewport: { width: 1280, height: 900 } }, out);
   await page.clock.setFixedTime(new Date('2038-01-01T12:00:00'));
@@ -238,6 +250,7 @@ async function callBacks(browser) {
   await withoutScript(browser);
   await onPaper(browser);
   await callBacks(browser);
+  await recall(browser);
   await views(browser);
   await browser.close();
   console.log(`${checks} checks in the browser, ${wrong} wrong`);
