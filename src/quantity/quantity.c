@@ -233,6 +233,8 @@ static const char *clock_hint(struct arena *arena, const char *text)
 {
     struct cut cut = cut_number(text);
     const char *colon = memchr(cut.number, ':', (size_t)(cut.rest - cut.number));
+    if (!colon) /* it stands further on, as in `1 h 12:30` */
+        return "write 12 min 30 s or 12 h 30 min";
     int first = (int)(colon - cut.number);
     const char *second = colon + 1;
     const char *again = memchr(second, ':', (size_t)(cut.rest - second));

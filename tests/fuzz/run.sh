@@ -12,6 +12,10 @@ make -s BUILD="$build" EXTRA="$sanitize" $libraries >&2
 # shellcheck disable=SC2086
 ${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc tests/fuzz/reader_fuzz.c $libraries \
     -lyaml -lnettle -lm -o "$build/reader_fuzz"
+# shellcheck disable=SC2086
+${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc tests/fuzz/line_fuzz.c $libraries \
+    -lyaml -lnettle -lm -o "$build/line_fuzz"
+"$build/line_fuzz" "${FUZZ_SECONDS:-10}" "${FUZZ_SEED:-1}"
 cd "$build"
 ./reader_fuzz "${FUZZ_SECONDS:-10}" "${FUZZ_SEED:-1}" "$root"/tests/golden/diagnostics/*.yaml \
     $(find "$root/jobs-example" -name '*.yaml')
