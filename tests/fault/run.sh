@@ -2,14 +2,14 @@
 # run.sh BUILD: each allocation, and each writing call of the system, made to fail in turn while a
 # small archive is published, a job assessed and its sheet written. The program ends with exit 3 and a
 # sentence, never by a signal, and no file stands half written under its final name.
-# Where there are more calls than FAULT_RUNS (default 120), as many of them, spread evenly.
+# Where there are more calls than FAULT_RUNS (default 60), as many of them, spread evenly.
 set -u
 build=$(cd "$1" && pwd)
 here=$(cd "$(dirname "$0")" && pwd)
 root=$(cd "$here/../.." && pwd)
 program=$build/gridleak
 work=$build/tests/fault
-runs=${FAULT_RUNS:-120}
+runs=${FAULT_RUNS:-60}
 rm -rf "$work"
 mkdir -p "$work"
 ${CC:-gcc} -shared -fPIC -O1 -Wall -o "$work/fail_at.so" "$here/fail_at.c" -ldl || exit 1
