@@ -195,6 +195,7 @@ static void texts_are_refused(void **state)
          "write 12345.67 ohm, without marks between thousands"},
         {"12:30", UNIT_TIME, QUANTITY_CLOCK, "write 12 min 30 s or 12 h 30 min"},
         {"12:30 min", UNIT_TIME, QUANTITY_CLOCK, "write 12 min 30 s or 12 h 30 min"},
+        {"1 h 12:30", UNIT_TIME, QUANTITY_CLOCK, "write 12 min 30 s or 12 h 30 min"},
         {"1:02:03", UNIT_TIME, QUANTITY_CLOCK, "write 1 h 02 min 03 s"},
         {"80", UNIT_VOLTAGE, QUANTITY_NO_UNIT, "add the unit, as in 250 V"},
         {"1.5", UNIT_COUNT, QUANTITY_NO_UNIT, NULL},
