@@ -155,4 +155,3 @@ clean:
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
 .PHONY: all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
-.SECONDARY:

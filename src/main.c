@@ -396,7 +396,7 @@ static int command_publish(struct session *session)
         fprintf(stderr, "%zu jobs: %zu made, %zu unchanged, %zu left out for mistakes\n",
                 result.jobs, result.jobs - result.broken - result.unchanged, result.unchanged,
                 result.broken);
-    return exit_of(session, result.broken, result.warned);
+    return exit_of(session, result.broken + result.pages_wrong, result.warned);
 }
 
 /* ---- find */

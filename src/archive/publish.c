@@ -93,6 +93,21 @@ static struct job_work *next_job(struct publish_work *work)
     return job;
 }
 
+/* The state knows nothing of jobs published by name since: such a job leaves its name here, and is
+   made again by the next whole publish. */
+static const char *named_mark(const struct publish_work *work, const char *job, struct arena *arena)
+{
+    return arena_print(arena, "%s/.gridleak/named/%s", work->request->output, job);
+}
+
+static enum file_status mark_named(const struct publish_work *work, struct job_work *job)
+{
+    enum file_status status =
+        folder_make(arena_print(&job->arena, "%s/.gridleak/named", work->request->output));
+    return status == FILE_OK ? file_write(named_mark(work, job->name, &job->arena), "", 0, NULL)
+                             : status;
+}
+
 static void publish_one(const struct publish_work *work, struct job_work *job)
 {
     job->diagnostics = diagnostics_in(&job->arena);
@@ -105,9 +120,13 @@ static void publish_one(const struct publish_work *work, struct job_work *job)
     }
     struct job_files_request request = {work->archive, job->path, work->request->output,
                                         &job->arena, &job->diagnostics};
-    if (work->named)
+    if (work->named) {
         lock_job(&work->lock, job->name);
-    job->files = job_files_publish(&request);
+        job->files.failure = mark_named(work, job);
+        job->files.failed_path = named_mark(work, job->name, &job->arena);
+    }
+    if (job->files.failure == FILE_OK)
+        job->files = job_files_publish(&request);
     if (work->named)
         unlock_job(&work->lock, job->name);
     diagnostics_sort(&job->diagnostics);
@@ -192,7 +211,8 @@ static void list_archive(struct publish_work *work, struct state *old)
             continue;
         const char *summary =
             arena_print(work->arena, "%s/jobs/%s/summary.json", work->request->output, job->name);
-        if (access(summary, F_OK) != 0)
+        if (access(summary, F_OK) != 0 ||
+            access(named_mark(work, job->name, work->arena), F_OK) == 0)
             continue;
         job->finished = true;
         job->state = state;
@@ -241,7 +261,7 @@ static void publish_pages(struct publish_work *work, const struct job_names *cha
     if (diagnostics.count) {
         struct publish_event event = {"", work->count, work->count, &diagnostics};
         work->request->listener(&event, work->request->listener_context);
-        work->result->broken += diagnostics.errors > 0;
+        work->result->pages_wrong = diagnostics.errors > 0;
     }
     buffer_release(&failed);
     arena_release(&arena);
@@ -266,6 +286,10 @@ static void publish_all(struct publish_work *work)
     /* Also after a failure: what was made need not be made again. */
     enum file_status status = state_write(work->request->output, jobs, work->count);
     fail(work, status, work->request->output);
+    if (work->result->failure == FILE_OK) {
+        const char *named = arena_print(work->arena, "%s/.gridleak/named", work->request->output);
+        fail(work, folder_remove(named), named);
+    }
     state_release(&old);
 }
 

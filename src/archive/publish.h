@@ -27,6 +27,7 @@ struct publish_request {
 
 struct publish_result {
     size_t jobs, unchanged, broken, warned; /* warned: jobs with warnings, unchanged ones too */
+    bool pages_wrong;                       /* a template of the pages has mistakes */
     bool busy;                /* another publish holds the output folder: nothing was done */
     long holder;              /* its process number, 0: not known */
     enum file_status failure; /* FILE_OK, or the first file that could not be written */
