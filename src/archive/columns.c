@@ -210,7 +210,8 @@ static bool read_line(struct columns *columns, struct summary_scan *scan, bool *
     return true;
 }
 
-bool columns_add(struct columns *columns, const char *line, size_t length)
+/* false: the line is no summary of this version and nothing was added. */
+static bool add_line(struct columns *columns, const char *line, size_t length)
 {
     struct summary_scan scan = {line, line + length, false, {0}};
     struct scan_text name = {0};
@@ -240,7 +241,7 @@ size_t columns_add_all(struct columns *columns, const char *text, size_t length)
     for (const char *end = text + length; text < end;) {
         const char *line_end = memchr(text, '\n', (size_t)(end - text));
         size_t line_length = (size_t)((line_end ? line_end : end) - text);
-        bad += !columns_add(columns, text, line_length);
+        bad += !add_line(columns, text, line_length);
         text += line_length + 1;
     }
     return bad;

@@ -112,13 +112,10 @@ struct columns {
 };
 
 /*
- * Add the job of one line, without its line end. false: the line is no summary of this version and
- * nothing was added. {0} is empty and valid; columns_release. `line` of a broken job is kept as it
- * is given: it must outlive the columns.
+ * Add the jobs of all lines of summaries.jsonl. Returns how many lines were no summary of this
+ * version and added nothing. {0} is empty and valid; columns_release. The lines of broken jobs are
+ * kept as they are given: `text` must outlive the columns.
  */
-bool columns_add(struct columns *columns, const char *line, size_t length);
-
-/* Add all lines of summaries.jsonl; how many were none. */
 size_t columns_add_all(struct columns *columns, const char *text, size_t length);
 
 /* The text of row `index` of a column. */

@@ -2,7 +2,8 @@
 
 #include <math.h>
 
-double date_years_off(const struct date_reading *reading, const struct year_span *years)
+/* Years of a reading before the set's first (negative) or after its last (positive); 0 within. */
+static double years_off(const struct date_reading *reading, const struct year_span *years)
 {
     /* months count: a part of December in a set of the next year is normal stock */
     double at = reading->year;
@@ -35,7 +36,7 @@ static struct date_findings assess_one(const struct job *job, const struct dated
         return found;
     found.refutes = true;
     for (size_t i = 0; i < found.code.count; i++) {
-        double off = date_years_off(&found.code.readings[i], &job->set.year);
+        double off = years_off(&found.code.readings[i], &job->set.year);
         found.refutes = found.refutes && off > 0;
         bool nearer = found.nearest < 0 || fabs(off) < fabs(found.years_off);
         if (nearer) {

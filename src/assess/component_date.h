@@ -6,9 +6,6 @@
 
 #include "assess/findings.h"
 
-/* Years of a reading before the set's first (negative) or after its last (positive); 0 within. */
-double date_years_off(const struct date_reading *reading, const struct year_span *years);
-
 /* All parts with a date code: cans, capacitors, resistors, valves. An original of which every
    reading is later than the set is a warning. */
 const struct date_findings *component_dates_assess(const struct job *job, struct arena *arena,

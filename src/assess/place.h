@@ -92,7 +92,6 @@ struct place_limit {
     double limits[PLACE_VALUES_MAX]; /* of each figure, after the margin; NaN: already outside */
     size_t count;
 };
-struct place_limit place_find_limit(const struct place_case *place);
 
 /* Find it and, where heat in the part limits the leak sooner than its place does, have heat judged
    too: a screen fed through 1 k would bear a leak that cooks any paper capacitor. */

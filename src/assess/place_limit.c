@@ -91,7 +91,7 @@ static struct place_limit heat_limit_of(const struct place_case *place)
     return limit;
 }
 
-struct place_limit place_find_limit(const struct place_case *place)
+static struct place_limit place_find_limit(const struct place_case *place)
 {
     struct place_limit limit = {.leak_s = NAN};
     struct place_values bare;

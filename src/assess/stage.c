@@ -13,7 +13,9 @@ static const double no_grid_leak_ohm = 1;
 /* Small-signal valves draw less at their row. */
 static const double output_from_a = 15e-3;
 
-double resistance_uncertainty(const struct job *job, const struct policy *policy, double ohm)
+/* The standard uncertainty of a measured resistance: by the job's instrument for ohms, else the
+   policy's default accuracy. */
+static double resistance_uncertainty(const struct job *job, const struct policy *policy, double ohm)
 {
     for (size_t i = 0; i < job->instrument_count; i++)
         if (job->instruments[i].accuracy_set &&

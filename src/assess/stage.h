@@ -105,8 +105,4 @@ struct found_ohms ohms_as_found(const struct job *job, const struct policy *poli
 /* Whether a stage of the group has an open resistor as found; unmended: and none fitted for it. */
 bool stage_group_open(const struct stage_set *set, const struct stage_group *group, bool unmended);
 
-/* The standard uncertainty of a measured resistance: by the job's instrument for ohms, else the
-   policy's default accuracy. */
-double resistance_uncertainty(const struct job *job, const struct policy *policy, double ohm);
-
 #endif

@@ -32,7 +32,7 @@ bool dielectric_is_electrolytic(enum dielectric dielectric)
            dielectric == DIELECTRIC_TANTALUM;
 }
 
-bool dielectric_is_film(enum dielectric dielectric)
+static bool is_film(enum dielectric dielectric)
 {
     return dielectric == DIELECTRIC_POLYSTYRENE || dielectric == DIELECTRIC_POLYESTER ||
            dielectric == DIELECTRIC_POLYPROPYLENE;
@@ -42,7 +42,7 @@ double temperature_factor(enum dielectric dielectric, double reading_c, double w
 {
     if (hot && reading_c >= working_c - TEMPERATURE_HOT_ENOUGH_K)
         return 1;
-    if (dielectric_is_film(dielectric))
+    if (is_film(dielectric))
         reading_c = fmax(reading_c, 20);
     return fmax(1, exp2((working_c - reading_c) / doublings[dielectric].theta_k));
 }

@@ -31,6 +31,5 @@ double temperature_factor(enum dielectric dielectric, double reading_c, double w
 double temperature_to_20c(enum dielectric dielectric, double reading_c);
 
 bool dielectric_is_electrolytic(enum dielectric dielectric);
-bool dielectric_is_film(enum dielectric dielectric);
 
 #endif

@@ -56,10 +56,6 @@ bool reader_line(struct reader *reader, const char *key, const struct node *node
     while (end > start && is_space(end[-1]))
         end--;
     struct position at = node->at;
-    if (node->style == STYLE_BLOCK) {
-        at.line++; /* behind the | */
-        at.column = 1;
-    }
     for (; start < end && is_space(*start); at.column++)
         start++;
     if (memchr(start, '\n', (size_t)(end - start))) {
@@ -345,8 +341,9 @@ static void many_read(struct reader *reader, const struct field *field, const st
     *(size_t *)member(record, field->count_offset) = count;
 }
 
-void field_value_read(struct reader *reader, const struct field *field, const struct node *node,
-                      void *record)
+/* Read one value into its member: what the kind says. */
+static void value_read(struct reader *reader, const struct field *field, const struct node *node,
+                       void *record)
 {
     if (node_is_empty(node)) /* nothing written: not given */
         return;
@@ -466,7 +463,7 @@ void record_read(struct reader *reader, const struct record *record, const struc
     for (const struct node *child = node->first; child; before = child, child = child->next) {
         const struct field *field = field_of(record, child->key, &hit);
         if (field)
-            field_value_read(reader, field, child, out);
+            value_read(reader, field, child, out);
         else if (!tell_flow_bite(reader, node, before, child))
             reader_tell(reader, child->key_at, DIAGNOSTIC_UNKNOWN_KEY,
                         keys_hint(reader, record, child->key), "unknown key '%s'", child->key);

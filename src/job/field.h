@@ -112,10 +112,6 @@ extern const struct record shop_record;
 void record_read(struct reader *reader, const struct record *record, const struct node *node,
                  void *out);
 
-/* Read one value into its member: what the kind says. */
-void field_value_read(struct reader *reader, const struct field *field, const struct node *node,
-                      void *record);
-
 /* What the value of a key is, in words for the manual and the schema: "volts", "yes or no",
    "ohm, or the ref of a resistor or winding". */
 const char *field_value_text(const struct field *field);

@@ -40,14 +40,14 @@ void capacitor_marking_read(struct reader *reader, const struct field *field,
     marking_read(reader, field, node, record, MARKING_CAPACITOR);
 }
 
-void resistor_marking_read(struct reader *reader, const struct field *field,
-                           const struct node *node, void *record)
+static void resistor_marking_read(struct reader *reader, const struct field *field,
+                                  const struct node *node, void *record)
 {
     marking_read(reader, field, node, record, MARKING_RESISTOR);
 }
 
-void winding_marking_read(struct reader *reader, const struct field *field, const struct node *node,
-                          void *record)
+static void winding_marking_read(struct reader *reader, const struct field *field,
+                                 const struct node *node, void *record)
 {
     marking_read(reader, field, node, record, MARKING_WINDING);
 }

@@ -79,8 +79,6 @@ int ref_index(struct reader *reader, enum ref_kind kind, const char *ref, struct
 /* later_read for a struct resistance that line.h has read: resolve its ref. */
 later_read resistance_resolve;
 
-const char *ref_kind_text(enum ref_kind kind); /* "capacitor" */
-
 /* ---- checks.c ---- */
 
 /* What no single key can tell: dates, places, cans, pairs, the job's number. */

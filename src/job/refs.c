@@ -20,11 +20,6 @@ static const struct {
     [REF_VALVE] = {"valve", "valves"},
 };
 
-const char *ref_kind_text(enum ref_kind kind)
-{
-    return kinds[kind].name;
-}
-
 /* ---- listing ---- */
 
 static int compare(const void *a, const void *b)

@@ -23,8 +23,8 @@ extern const struct record voltages_record; /* bench_fields.c */
 extern const struct record performance_record;
 extern const struct record safety_record;
 
-/* Markings, common to all parts: field_read for `marked` and `fitted`. */
-field_read capacitor_marking_read, resistor_marking_read, winding_marking_read;
+/* `marked` and `fitted` of a section, which capacitors and cans share. */
+field_read capacitor_marking_read;
 
 /* `readings`, `log`, `after_rest`: read when the instruments are known. */
 field_read readings_read;

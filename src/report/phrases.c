@@ -106,7 +106,8 @@ static unsigned telling_digits(const struct phrasing *say, const struct criterio
     return digits;
 }
 
-const char *criterion_phrase(const struct phrasing *say, const struct criterion *criterion)
+/* "cathode current rises by 22 %, 10 % allowed": one criterion that is not met. */
+static const char *criterion_phrase(const struct phrasing *say, const struct criterion *criterion)
 {
     struct mustache_value *values = mustache_map(say->arena);
     unsigned digits = telling_digits(say, criterion);
@@ -121,7 +122,8 @@ const char *criterion_phrase(const struct phrasing *say, const struct criterion 
                      values);
 }
 
-const struct criterion *criterion_deciding(const struct capacitor_findings *part)
+/* The criterion that made the outcome what it is; NULL: none. */
+static const struct criterion *criterion_deciding(const struct capacitor_findings *part)
 {
     for (size_t i = 0; i < part->criterion_count; i++)
         if (part->criteria[i].outcome == part->outcome)

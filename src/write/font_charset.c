@@ -69,12 +69,8 @@ const struct font_face *font_charset_face(const struct font_charset *set)
     return set->face;
 }
 
-size_t font_charset_count(const struct font_charset *set)
-{
-    return set->count - 1;
-}
-
-uint16_t font_charset_cid(const struct font_charset *set, uint32_t code_point)
+/* Number of a character; 0 when it is not in the set. */
+static uint16_t cid_of(const struct font_charset *set, uint32_t code_point)
 {
     if (code_point >= PAGE_COUNT * 256)
         return 0;
@@ -84,7 +80,7 @@ uint16_t font_charset_cid(const struct font_charset *set, uint32_t code_point)
 
 uint16_t font_charset_add(struct font_charset *set, uint32_t code_point)
 {
-    uint16_t cid = font_charset_cid(set, code_point);
+    uint16_t cid = cid_of(set, code_point);
     if (cid != 0 || set->sealed || set->count > CID_MAX)
         return cid;
     uint16_t glyph = font_face_glyph(set->face, code_point);
@@ -97,11 +93,6 @@ uint16_t font_charset_add(struct font_charset *set, uint32_t code_point)
     (*page)[code_point & 255] = cid;
     append_character(set, code_point, glyph);
     return cid;
-}
-
-uint16_t font_charset_advance(const struct font_charset *set, uint16_t cid)
-{
-    return cid < set->count ? set->characters[cid].advance : 0;
 }
 
 /*

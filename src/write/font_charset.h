@@ -37,20 +37,11 @@ void font_charset_destroy(struct font_charset *set);
 
 const struct font_face *font_charset_face(const struct font_charset *set);
 
-/* How many characters, .notdef not counted. */
-size_t font_charset_count(const struct font_charset *set);
-
 /*
  * Number of a character, added if need be. 0 when the face has no glyph for it,
  * the set is full (65,535), or it is sealed and the character is not in it.
  */
 uint16_t font_charset_add(struct font_charset *set, uint32_t code_point);
-
-/* Number of a character; 0 when it is not in the set. */
-uint16_t font_charset_cid(const struct font_charset *set, uint32_t code_point);
-
-/* Advance in thousandths of the em; the number that W gives to viewers. */
-uint16_t font_charset_advance(const struct font_charset *set, uint16_t cid);
 
 /*
  * Make the streams and seal the set. level: of deflation, 1 to 12.

@@ -44,18 +44,13 @@ static inline struct text_runs runs_in(const struct composer *composer)
 /* A top-level heading, paragraph, list, quotation or code block, nested to any depth. */
 void compose_prose(struct composer *composer, cmark_node *node);
 
-/* "Table 1" 600, then the text: lines of at most `width`; as lines, and set. */
-struct text_lines caption_lines(struct composer *composer, const char *number, const char *text,
-                                double width);
+/* "Table 1" semibold, then the text, set in lines of at most `width` points. */
 void compose_caption(struct composer *composer, const char *number, const char *text, double width);
 
 void compose_table(struct composer *composer, const char *number, const struct table *table);
 
 /* *next: the node behind the exhibit; moved on when the exhibit takes it in. */
 void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, cmark_node **next);
-
-/* The mark of an outcome with its middle at `at`, as large as the look wants it in text. */
-void compose_mark(struct composer *composer, struct strip *strip, enum mark mark, struct point at);
 
 /* A row of boxes side by side, in strips of at most `line_limit` lines. */
 struct row_box {

@@ -60,8 +60,8 @@ struct strip *compose_row(struct composer *composer, const struct row_box *boxes
     return first;
 }
 
-struct text_lines caption_lines(struct composer *composer, const char *number, const char *text,
-                                double width)
+static struct text_lines caption_lines(struct composer *composer, const char *number,
+                                       const char *text, double width)
 {
     struct text_runs runs = runs_in(composer);
     text_runs_add(&runs, number, style_of(FACE_SEMIBOLD, type_caption, INK_TEXT));
@@ -78,7 +78,9 @@ void compose_caption(struct composer *composer, const char *number, const char *
     flow_lines(&composer->flow, &lines, &setting);
 }
 
-void compose_mark(struct composer *composer, struct strip *strip, enum mark mark, struct point at)
+/* The mark of an outcome with its middle at `at`, as large as the look wants it in text. */
+static void compose_mark(struct composer *composer, struct strip *strip, enum mark mark,
+                         struct point at)
 {
     if (mark == MARK_NONE)
         return;

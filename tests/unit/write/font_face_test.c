@@ -187,7 +187,6 @@ static void test_characters_have_numbers_of_their_own(void **state)
     assert_true(ohm != 0 && omega != 0 && ohm != omega);
     assert_int_equal(font_charset_add(set, 0x2126), ohm);
     assert_int_equal(font_charset_add(set, 0x65E5), 0);
-    assert_int_equal(font_charset_count(set), 2);
     assert_int_equal(font_charset_seal(set, 1), FONT_OK);
     assert_int_equal(font_charset_add(set, 'A'), 0); /* sealed */
     font_charset_destroy(set);
