@@ -115,6 +115,10 @@ speed: check-packages
 	$(MAKE) all
 	tests/speed/speed.sh $(BUILD) $(SPEED_N)
 
+# One row for each check against something outside the project.
+oracle: all
+	DRAWS=1000000 tests/oracle/run.sh $(BUILD)
+
 lint:
 	LINT=all tests/lint/run.sh
 
@@ -154,4 +158,4 @@ clean:
 	rm -rf $(BUILD) asan
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
-.PHONY: all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
+.PHONY: oracle all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean

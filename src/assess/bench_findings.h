@@ -66,7 +66,10 @@ struct reform_findings {
     const double *part_v; /* volts across the part, one for each reading of the log */
     const struct reform_step *steps;
     size_t step_count;
-    int plateau_step; /* the last step with a fit; -1: none */
+    int plateau_step;  /* the last step with a fit; -1: none */
+    int plateau_law;   /* of its fits: the better one, or the more cautious one where ... */
+    bool between_laws; /* ... neither follows the log (chi^2 above its 99 % point): the plateau is
+                          then known to lie between them, and the error spans both */
     double plateau_a;
     double plateau_error_a;                               /* expanded: fit and meter */
     double to_limit_s, to_limit_early_s, to_limit_late_s; /* from the step's beginning; INFINITY:

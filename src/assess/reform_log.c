@@ -194,10 +194,37 @@ static const struct decay *better_of(const struct reform_step *step)
     return step->decay.better >= 0 ? &step->decay.laws[step->decay.better] : NULL;
 }
 
-/* Expanded: what the fit cannot tell, and the meter's accuracy, which all its readings share. */
+/* Whether a law follows the log at all. */
+static bool follows(const struct decay *decay)
+{
+    return decay->fitted && decay->freedom > 0 && !decay->at_end &&
+           decay->chi2 <= numeric_chi2_quantile(0.99, decay->freedom);
+}
+
+/*
+ * Which law the plateau is taken from. Absorption is seldom one exponential and seldom a pure power
+ * law: the first levels too early and too high, the second too late and too low. Where the better
+ * of them does not follow the log the truth lies between, and the higher one is the cautious one.
+ */
+static void choose_law(struct reform_findings *found, const struct reform_step *step)
+{
+    const struct decay *laws = step->decay.laws;
+    found->plateau_law = step->decay.better;
+    if (follows(&laws[step->decay.better]) || !laws[DECAY_POWER].fitted ||
+        !laws[DECAY_EXPONENTIAL].fitted)
+        return;
+    found->between_laws = true;
+    found->plateau_law = laws[DECAY_POWER].steady_a > laws[DECAY_EXPONENTIAL].steady_a
+                             ? DECAY_POWER
+                             : DECAY_EXPONENTIAL;
+}
+
+/* Expanded: what the fit cannot tell, the other law where neither follows, and the meter's
+   accuracy, which all its readings share. */
 static double plateau_error(const struct log_case *log, const struct reform_step *step)
 {
-    const struct decay *decay = better_of(step);
+    const struct decay *decay = &step->decay.laws[log->found->plateau_law];
+    const struct decay *other = &step->decay.laws[1 - log->found->plateau_law];
     const struct instrument *instrument = instrument_at(log, step->first + step->count - 1);
     double share = log->given->policy->default_accuracy, absolute_a = 0;
     if (instrument && instrument->accuracy_set && instrument->accuracy_unit == UNIT_CURRENT) {
@@ -205,6 +232,8 @@ static double plateau_error(const struct log_case *log, const struct reform_step
         absolute_a = instrument->accuracy_absolute;
     }
     double fit_a = numeric_t95((double)decay->freedom) * decay->steady_error_a;
+    if (log->found->between_laws)
+        fit_a = fmax(fit_a, decay->steady_a - other->steady_a);
     return hypot(fit_a, 2 * uncertainty_of_accuracy(decay->steady_a, share, absolute_a));
 }
 
@@ -217,12 +246,16 @@ static void find_plateau(const struct log_case *log)
     if (found->plateau_step < 0)
         return;
     const struct reform_step *step = &found->steps[found->plateau_step];
-    found->plateau_a = better_of(step)->steady_a;
+    choose_law(found, step);
+    const struct decay *decay = &step->decay.laws[found->plateau_law];
+    found->plateau_a = decay->steady_a;
     found->plateau_error_a = plateau_error(log, step);
-    found->to_limit_s = step->decay.to_limit_s;
-    found->to_limit_early_s = step->decay.to_limit_early_s;
-    found->to_limit_late_s = step->decay.to_limit_late_s;
     found->horizon_s = step->decay.horizon_s;
+    if (isnan(step->limit_a))
+        return;
+    found->to_limit_s = decay_time_to(decay, step->limit_a, 0);
+    found->to_limit_early_s = decay_time_to(decay, step->limit_a, -found->plateau_error_a);
+    found->to_limit_late_s = decay_time_to(decay, step->limit_a, found->plateau_error_a);
 }
 
 static void find_stop(const struct log_case *log)

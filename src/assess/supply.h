@@ -8,7 +8,8 @@
 
 /*
  * Reservoir: the first harmonic of the charge that the load takes between two charging pulses,
- * sqrt(2)*I*sqrt(ESR^2 + (1/(2 pi f C))^2). An upper figure: charging takes time.
+ * sqrt(2)*I*sqrt(ESR^2 + (1/(2 pi f C))^2). An upper figure: charging takes time. A choke behind it
+ * tunes with it, by 1/(1 - 1/(w^2 L C)), which is left out.
  * frequency_hz: of the ripple, twice the mains for full wave.
  */
 double supply_ripple(double current_a, double frequency_hz, double capacitance_f, double esr_ohm);

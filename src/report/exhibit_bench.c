@@ -73,8 +73,11 @@ static const char *plateau_words(const struct composition *composition,
         phrase(say, "reform.plateau", "step",
                arena_print(composition->arena, "%d", reform->plateau_step + 1), "steady",
                text_micro(composition->arena, reform->plateau_a, 3), "error",
-               text_micro(composition->arena, reform->plateau_error_a, 2), "preferred",
-               reform->steps[reform->plateau_step].decay.preferred ? "yes" : NULL, NULL),
+               text_micro(composition->arena, reform->plateau_error_a, 2), "between",
+               reform->between_laws ? "yes" : NULL, "alike",
+               !reform->between_laws && !reform->steps[reform->plateau_step].decay.preferred ? "yes"
+                                                                                             : NULL,
+               NULL),
         within && !met
             ? phrase(say, "reform.to_limit", "time", time_text(composition, reform->to_limit_s),
                      "early", time_text(composition, reform->to_limit_early_s), "late", late, NULL)

@@ -85,12 +85,16 @@ static struct position position_in(struct position at, cmark_node *node)
     return at;
 }
 
-/* An opening and a closing tag of one line are one mistake. */
+/* An opening and a closing tag of one line are one mistake, and so is what stands in each copy. */
 static bool is_told(const struct diagnostics *list, const struct source *source, struct position at,
                     enum diagnostic_code code)
 {
-    const struct diagnostic *last = list->count ? &list->items[list->count - 1] : NULL;
-    return last && last->code == code && last->path == source->path && last->at.line == at.line;
+    for (size_t i = 0; i < list->count; i++) {
+        const struct diagnostic *item = &list->items[i];
+        if (item->code == code && item->path == source->path && item->at.line == at.line)
+            return true;
+    }
+    return false;
 }
 
 static void warn(struct composition *composition, const struct source *source, struct position at,
@@ -98,17 +102,21 @@ static void warn(struct composition *composition, const struct source *source, s
 {
     struct diagnostics *list = composition->diagnostics;
     at = position_in(at, node);
-    if (is_html(node) && is_told(list, source, at, DIAGNOSTIC_RAW_HTML_DROPPED))
+    bool picture = cmark_node_get_type(node) == CMARK_NODE_IMAGE;
+    enum diagnostic_code code = is_html(node) ? DIAGNOSTIC_RAW_HTML_DROPPED
+                                : picture     ? DIAGNOSTIC_PICTURE_DROPPED
+                                              : DIAGNOSTIC_LINK_DROPPED;
+    if (is_told(list, source, at, code))
         return;
     if (is_html(node))
-        diagnostic_add(list, source, at, DIAGNOSTIC_RAW_HTML_DROPPED,
+        diagnostic_add(list, source, at, code,
                        "write it in Markdown, or put a backslash before the <",
                        "raw HTML is left out of the record");
-    else if (cmark_node_get_type(node) == CMARK_NODE_IMAGE)
-        diagnostic_add(list, source, at, DIAGNOSTIC_PICTURE_DROPPED, "list it under photos",
+    else if (picture)
+        diagnostic_add(list, source, at, code, "list it under photos",
                        "a picture in a text is left out of the record, its words are kept");
     else
-        diagnostic_add(list, source, at, DIAGNOSTIC_LINK_DROPPED,
+        diagnostic_add(list, source, at, code,
                        "links may begin with http:, https:, mailto: or tel:",
                        "a link is left out of the record, its words are kept");
 }

@@ -100,6 +100,7 @@ static void write_reform(const struct findings *findings, const struct reform_fi
     }
     json_close(out, ']');
     json_number_member(out, "plateau_a", reform->plateau_a);
+    json_flag_member(out, "plateau_between_laws", reform->between_laws);
     json_number_member(out, "plateau_uncertainty_a", reform->plateau_error_a);
     json_number_member(out, "to_limit_s", reform->to_limit_s);
     json_number_member(out, "to_limit_early_s", reform->to_limit_early_s);

@@ -1,5 +1,7 @@
 #!/bin/sh
-# run.sh BUILD: the stage solver against ngspice on the same circuits, within 0.1 %.
+# run.sh BUILD: the program against sources outside it. The stage solver against ngspice on the same
+# circuits, within 0.1 %; supplies and reforms against ngspice transients; published figures and a
+# Monte Carlo, a row each (table.sh); the assessment of whole jobs against a second calculation.
 set -eu
 build=$1
 here=$(dirname "$0")
@@ -20,7 +22,11 @@ for case in $cases; do
     grep "^case=$case " "$work/stages.txt" >"$work/$case.txt"
     awk -f "$here/netlist.awk" "$work/$case.txt" >"$work/$case.cir"
     ngspice -b "$work/$case.cir" >"$work/$case.out" 2>&1 || true
-    awk -f "$here/compare.awk" "$work/$case.txt" "$work/$case.out" || failed=$((failed + 1))
+    said=$(awk -f "$here/compare.awk" "$work/$case.txt" "$work/$case.out") && good=ok || { failed=$((failed + 1)); good=DIFFERS; }
+    echo "$said"
+    worst=$(echo "$said" | sed -n 's/.*worst \([0-9.]*\) %$/\1/p')
+    printf 'Stages\t%s, worst figure (%%)\tngspice, operating point, on the same law\tseen\t0\t%s\t0.1\t%s\n' \
+        "$case" "$worst" "$good" >>"$work/stages.tsv"
 done
 # The comparison itself: another circuit's figures must not pass.
 set -- $cases
@@ -29,6 +35,9 @@ if awk -f "$here/compare.awk" "$work/$1.txt" "$work/$2.out" >/dev/null; then
     failed=$((failed + 1))
 fi
 echo "$count circuits, $failed differ"
-[ "$failed" = 0 ] && [ "$count" -ge 20 ]
+[ "$failed" = 0 ] && [ "$count" -ge 20 ] || exit 1
 make -s BUILD="$build" "$build/gridleak"
+"$here/supply/run.sh" "$build"
+"$here/reform/run.sh" "$build"
+DRAWS=${DRAWS:-100000} "$here/table.sh" "$build"
 "$here/assessment/check.sh" "$build"

@@ -41,11 +41,20 @@ def quantities(text):
     return found
 
 
+BANDS = "black brown red orange yellow green blue violet grey white".split()
+
+
+def bands(text):
+    """Ohms of `red violet brown silver` (IEC 60062: two figures, zeros, tolerance)."""
+    colours = [BANDS.index(word) for word in text.split() if word in BANDS]
+    return (10 * colours[0] + colours[1]) * 10.0 ** colours[2] if len(colours) >= 3 else None
+
+
 def first(text, kind):
     for k, value, _ in quantities(text or ""):
         if k == kind:
             return value
-    return None
+    return bands(text or "") if kind == "R" else None
 
 
 def last_digit(number, scale):
