@@ -195,6 +195,16 @@ static bool wants_key(const struct parse *parse)
     return parse->depth && !parse->waiting && parse->open[parse->depth - 1]->kind == NODE_MAPPING;
 }
 
+/* Where the text behind a | begins: libyaml marks the | itself. */
+static struct position block_start(struct parse *parse, yaml_mark_t mark)
+{
+    struct position at = {(unsigned)mark.line + 2, 1};
+    const char *line = line_at(parse, at.line);
+    for (; line && line < parse->end && *line == ' '; line++)
+        at.column++;
+    return line && line < parse->end ? at : position_of(mark);
+}
+
 static bool take_scalar(struct parse *parse, const yaml_event_t *event)
 {
     struct node *node = node_begin(parse, event);
@@ -216,6 +226,8 @@ static bool take_scalar(struct parse *parse, const yaml_event_t *event)
         node->damaged = true;
         return true;
     }
+    if (block && event->data.scalar.length)
+        node->at = block_start(parse, event->start_mark);
     node->length = event->data.scalar.length;
     node->text = scalar_text(parse, event, node->at, &node->damaged);
     if (plain && node->length)

@@ -48,6 +48,33 @@ for source in *.yaml; do
         bad=$((bad + 1))
     fi
 done
+# What publishing says about an archive: photographs, copies, templates, fonts, visits. archive/NAME/
+# is published from a copy; two of them lack what the project's own files have.
+make -s -C "$root" BUILD="$build" all >&2
+${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g ${EXTRA:-} -I"$root/src" "$root/tests/golden/publish_folder.c" \
+    $(for module in archive write report assess job reference quantity base; do echo "$build/lib$module.a"; done) \
+    $(make -s -C "$root" --eval='print-libraries: ; @echo $(LDLIBS)' print-libraries) -o "$work/publish_folder"
+rm -rf "$work/archive"
+cp -r "$root/tests/golden/archive" "$work/archive"
+cp -r "$build/share/gridleak" "$work/archive/share"
+cp -r "$build/share/gridleak" "$work/archive/no-font"
+echo 'no font' >"$work/archive/no-font/fonts/OpenSans-Italic.ttf"
+mkdir "$work/archive/word-missing/templates"
+sed '/^outcome:/,/^[a-z]/{/^  pass:/d}' "$root/templates/words.yaml" >"$work/archive/word-missing/templates/words.yaml"
+cd "$work/archive"
+for folder in */shop.yaml; do
+    name=${folder%/shop.yaml}
+    share=share
+    [ "$name" != font-unusable ] || share=no-font
+    "$work/publish_folder" $share "out/$name" "$name" >"$name.out"
+    expected=$root/tests/golden/archive/$name.expected
+    count=$((count + 1))
+    if [ "${UPDATE:-}" ]; then
+        cp "$name.out" "$expected"
+    elif ! diff -u "$expected" "$name.out"; then
+        bad=$((bad + 1))
+    fi
+done
 echo "$count files of diagnostics, $bad differ"
 
 missing=0

@@ -52,6 +52,8 @@ static void test_places(void **state)
     const struct node *work = node_child(tree.root, "work");
     assert_int_equal(work->style, STYLE_BLOCK);
     assert_string_equal(work->text, "two\nlines\n");
+    assert_int_equal(work->at.line, work->key_at.line + 1); /* of the text, not of the | */
+    assert_int_equal(work->at.column, 3);
     assert_string_equal(node_child(tree.root, "next")->text, "6E5");
     assert_null(node_child(tree.root, "other"));
     arena_release(&tree.arena);

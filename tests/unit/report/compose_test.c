@@ -149,7 +149,7 @@ static void test_sheet_and_assessment(void **state)
     sample_end(sample, assessment);
 }
 
-/* What a note may try, and how many warnings of each kind it earns. */
+/* What a note may try, and how many warnings of each kind it earns: one a line. */
 static void test_forging(void **state)
 {
     (void)state;
@@ -168,9 +168,9 @@ static void test_forging(void **state)
         {"<script>alert(1)</script>\n\ntext <b onclick=x>bold</b>", 2, 0},
         {"<details>\n<summary>\n\n## Methods and sources", 1, 0},
         {"[a](javascript:alert(1)) [b](JaVaScRiPt:x) [c](data:text/html,x) <file:///etc/passwd>", 0,
-         4},
+         1},
         {"[a](https://a.example) [b](HTTP://b.example) [c](mailto:c@d.example) [t](tel:1)", 0, 0},
-        {"[a](#cautions) [b](other.html) [c](&#106;avascript:x) [d](//e.example)", 0, 4},
+        {"[a](#cautions) [b](other.html) [c](&#106;avascript:x) [d](//e.example)", 0, 1},
         {"[out\n\n](x", 0, 0},
         {"* * *\n\n1. a\n2. b\n\n    code\n", 0, 0},
         {"\\", 0, 0},
