@@ -19,7 +19,7 @@ BUILD_PACKAGES = gcc make libc6-dev pkg-config libyaml-dev libcmark-dev libhpdf-
     fonts-open-sans fonts-dejavu-core fonts-dejavu-extra icc-profiles-free
 CHECK_PACKAGES = libcmocka-dev clang-format clang-tidy cppcheck valgrind jq ngspice qpdf poppler-utils \
     openjdk-17-jre-headless libpdfbox2-java libactivation-java libjaxb-api-java nodejs npm chromium \
-    python3 git openssh-client
+    python3 python3-yaml python3-jsonschema git openssh-client
 
 # From low to high: a module may use those before it and no other.
 MODULES = base quantity reference job assess report write archive

@@ -151,6 +151,12 @@ expect 0 "$program" fields
 for key in grid_leak readings place marked fitted after_rest; do says "$key"; done
 expect 0 "$program" fields --schema
 jq -e '."$schema" | test("draft-07")' "$work/stdout" >/dev/null || say_failed "the schema is not draft-07"
+cp "$work/stdout" "$work/job.schema.json"
+# Debian's own Python has the two packages; another one first in PATH may not.
+python=python3
+"$python" -c 'import jsonschema, yaml' 2>/dev/null || python=/usr/bin/python3
+expect 0 "$python" "$here/schema.py" "$work/job.schema.json" "$example"/2*.yaml "$root/tests/golden/diagnostics/2031-014.yaml"
+says '^7 jobs accepted'
 
 # ---- start
 archive_of "$work/start" 2031-001
