@@ -2,6 +2,7 @@
 
 #include "archive/columns.h"
 #include "assess/visit.h"
+#include "job/part.h"
 #include "write/json.h"
 
 #include <math.h>
@@ -87,7 +88,7 @@ static void take_capacitor(struct summary_work *work, size_t index)
     enum action done = part->done == DONE_OPEN && can ? can->done : part->done;
     *row = (struct row){{
         [PART_REF] = part->ref,
-        [PART_KIND] = "capacitor",
+        [PART_KIND] = part_kind_text(KIND_CAPACITOR),
         [PART_TYPE] = dielectric_text(part->type),
         [PART_MAKER] = part->maker || !can ? part->maker : can->maker,
         [PART_MARKED] = part->marked.written,
@@ -110,57 +111,23 @@ static void take_capacitor(struct summary_work *work, size_t index)
 
 static void take_others(struct summary_work *work)
 {
+    static const enum part_kind kinds[] = {KIND_RESISTOR, KIND_WINDING, KIND_CONTROL, KIND_VALVE};
     const struct job *job = work->findings->job;
-    for (size_t i = 0; i < job->resistor_count; i++) {
-        const struct resistor *part = &job->resistors[i];
-        work->rows[work->row_count++] = (struct row){{
-            [PART_REF] = part->ref,
-            [PART_KIND] = "resistor",
-            [PART_MAKER] = part->maker,
-            [PART_MARKED] = part->marked.written,
-            [PART_WAS] = origin_text(part->was),
-            [PART_DONE] = action_text(part->done),
-            [PART_FITTED] = part->fitted.written,
-            [PART_BATCH] = part->batch,
-        }};
-    }
-    for (size_t i = 0; i < job->winding_count; i++) {
-        const struct winding *part = &job->windings[i];
-        work->rows[work->row_count++] = (struct row){{
-            [PART_REF] = part->ref,
-            [PART_KIND] = "winding",
-            [PART_MAKER] = part->maker,
-            [PART_MARKED] = part->marked.written,
-            [PART_WAS] = origin_text(part->was),
-            [PART_DONE] = action_text(part->done),
-            [PART_FITTED] = part->fitted.written,
-            [PART_BATCH] = part->batch,
-        }};
-    }
-    for (size_t i = 0; i < job->control_count; i++) {
-        const struct control *part = &job->controls[i];
-        work->rows[work->row_count++] = (struct row){{
-            [PART_REF] = part->ref,
-            [PART_KIND] = "control",
-            [PART_MARKED] = part->what.text,
-            [PART_WAS] = origin_text(part->was),
-            [PART_DONE] = action_text(part->done),
-            [PART_FITTED] = part->fitted.text,
-        }};
-    }
-    for (size_t i = 0; i < job->valve_count; i++) {
-        const struct valve *part = &job->valves[i];
-        work->rows[work->row_count++] = (struct row){{
-            [PART_REF] = part->ref,
-            [PART_KIND] = "valve",
-            [PART_MAKER] = part->maker,
-            [PART_MARKED] = part->type,
-            [PART_VALVES] = part->type,
-            [PART_WAS] = origin_text(part->was),
-            [PART_DONE] = action_text(part->done),
-            [PART_FITTED] = part->fitted.text,
-        }};
-    }
+    for (size_t k = 0; k < sizeof kinds / sizeof *kinds; k++)
+        for (size_t i = 0; i < part_count(job, kinds[k]); i++) {
+            struct part part = part_of(job, kinds[k], i);
+            work->rows[work->row_count++] = (struct row){{
+                [PART_REF] = part.ref,
+                [PART_KIND] = part_kind_text(kinds[k]),
+                [PART_MAKER] = part.maker,
+                [PART_MARKED] = part.marked_text,
+                [PART_VALVES] = kinds[k] == KIND_VALVE ? part.marked_text : NULL,
+                [PART_WAS] = origin_text(part.was),
+                [PART_DONE] = action_text(part.done),
+                [PART_FITTED] = part.fitted_text,
+                [PART_BATCH] = part.batch,
+            }};
+        }
 }
 
 /* One column of `count` rows, `stride` texts apart; one without any text is left out. */

@@ -2,6 +2,7 @@
 #include "assess/assessment.h"
 
 #include "assess/mains.h"
+#include "job/part.h"
 
 static enum advice for_not_judged(const struct capacitor_findings *part)
 {
@@ -43,7 +44,7 @@ static bool went_against(const struct assessment *assessment, const struct capac
     case ADVICE_NONE:
         return false;
     case ADVICE_KEEP:
-        return done == DONE_RESTUFFED || done == DONE_REPLACED || done == DONE_DISCONNECTED;
+        return action_is_change(done);
     case ADVICE_REFORM:
         return was_kept(done);
     case ADVICE_MEASURE_AGAIN: /* leaving it unmeasured has a word of its own */

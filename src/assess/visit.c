@@ -1,5 +1,7 @@
 #include "assess/visit.h"
 
+#include "job/part.h"
+
 #include <math.h>
 #include <strings.h>
 
@@ -8,13 +10,6 @@ static const double days_per_year = 365.25;
 bool visit_was_kept(enum action done)
 {
     return done == DONE_KEPT || done == DONE_KEPT_UNTESTED || done == DONE_REFORMED;
-}
-
-/* What works in the set since then is another part, or another inside: what was read before the
-   work does not speak of it. */
-static bool is_new_inside(enum action done)
-{
-    return done == DONE_RESTUFFED || done == DONE_REPLACED || done == DONE_DISCONNECTED;
 }
 
 static enum action done_of(const struct job *job, const struct capacitor *part)
@@ -62,7 +57,8 @@ static bool same_volts(const struct reading *then, const struct reading *now)
 static void compare_leakage(const struct job *then_job, const struct capacitor *then,
                             const struct capacitor *now, struct visit_change *change)
 {
-    bool left_only = is_new_inside(done_of(then_job, then));
+    /* What was read before the work does not speak of what works in the set since. */
+    bool left_only = action_is_change(done_of(then_job, then));
     double nearest = INFINITY;
     for (size_t i = 0; i < then->reading_count; i++) {
         const struct reading *old = &then->readings[i];
@@ -141,7 +137,7 @@ static void compare_capacitors(const struct job *then, const struct job *now,
             begin(VISIT_CAPACITOR, part->ref, done, &change)->capacitor = (int)j;
             compare_leakage(then, old, part, &change);
             /* `measured` of a part that was changed then may be the old one's. */
-            if (!is_new_inside(done))
+            if (!action_is_change(done))
                 compare_values(&old->measured.value, &part->measured.value, &change);
             keep_if_compared(comparison, &change);
         }
@@ -155,7 +151,7 @@ static void compare_resistors(const struct job *then, const struct job *now,
     for (size_t j = 0; j < now->resistor_count; j++)
         for (size_t i = 0; now->resistors[j].ref && i < then->resistor_count; i++) {
             const struct resistor *old = &then->resistors[i], *part = &now->resistors[j];
-            if (!old->ref || strcasecmp(old->ref, part->ref) != 0 || is_new_inside(old->done))
+            if (!old->ref || strcasecmp(old->ref, part->ref) != 0 || action_is_change(old->done))
                 continue;
             begin(VISIT_RESISTOR, part->ref, old->done, &change);
             compare_values(&old->measured, &part->measured, &change);
@@ -170,7 +166,7 @@ static void compare_windings(const struct job *then, const struct job *now,
     for (size_t j = 0; j < now->winding_count; j++)
         for (size_t i = 0; now->windings[j].ref && i < then->winding_count; i++) {
             const struct winding *old = &then->windings[i], *part = &now->windings[j];
-            if (!old->ref || strcasecmp(old->ref, part->ref) != 0 || is_new_inside(old->done))
+            if (!old->ref || strcasecmp(old->ref, part->ref) != 0 || action_is_change(old->done))
                 continue;
             begin(VISIT_WINDING, part->ref, old->done, &change);
             compare_values(&old->measured, &part->measured, &change);

@@ -1,6 +1,8 @@
 /* What was changed and where the original is; what was removed. */
 #include "report/composition.h"
 
+#include "job/part.h"
+
 #include <string.h>
 
 enum { CHANGED_REF, CHANGED_WAS, CHANGED_NOW, CHANGED_WHY, CHANGED_WHERE, CHANGED_COLUMNS };
@@ -21,23 +23,6 @@ struct change {
     enum age age;
     const char *original, *measured, *fitted, *batch, *signed_where, *price, *reason;
 };
-
-static bool is_change(enum action done)
-{
-    switch (done) {
-    case DONE_RESTUFFED:
-    case DONE_REPLACED:
-    case DONE_DISCONNECTED:
-        return true;
-    case DONE_OPEN:
-    case DONE_KEPT:
-    case DONE_KEPT_UNTESTED:
-    case DONE_REFORMED:
-    case ACTION_COUNT:
-        break;
-    }
-    return false;
-}
 
 /* The ref stands in the text as a word of its own: C1 is not in "C14 C15". */
 static bool names_ref(const char *text, const char *ref)
@@ -119,22 +104,33 @@ static const char *reason_of(const struct capacitor_findings *findings)
     return findings->part->reason.text ? findings->part->reason.text : findings->why_text;
 }
 
+/* What a part of any kind says of its change. */
+static struct change part_change(const struct composition *composition, enum part_kind kind,
+                                 size_t index)
+{
+    struct part part = part_of(composition->job, kind, index);
+    return (struct change){
+        .ref = part.ref,
+        .was = part.was,
+        .done = part.done,
+        .age = part.age,
+        .original = part.marked ? text_marking(composition, part.marked) : part.marked_text,
+        .fitted = part.fitted ? text_marking(composition, part.fitted) : part.fitted_text,
+        .batch = part.batch,
+        .signed_where = part.signed_where,
+        .price = part.price,
+        .reason = part.reason,
+    };
+}
+
 static struct change capacitor_change(const struct composition *composition, size_t index)
 {
     const struct capacitor_findings *findings = &composition->findings->capacitors[index];
-    const struct capacitor *part = findings->part;
-    return (struct change){
-        .ref = part->ref,
-        .was = capacitor_was(composition, index),
-        .done = part->done,
-        .age = part->age,
-        .original = capacitor_words(composition, part),
-        .fitted = text_marking(composition, &part->fitted),
-        .batch = part->batch,
-        .signed_where = part->signed_where.text,
-        .price = part->price.text,
-        .reason = reason_of(findings),
-    };
+    struct change change = part_change(composition, KIND_CAPACITOR, index);
+    change.was = capacitor_was(composition, index);
+    change.original = capacitor_words(composition, findings->part);
+    change.reason = reason_of(findings);
+    return change;
 }
 
 /* Why a can was changed: the first reason that one of its sections gives. */
@@ -160,101 +156,51 @@ static struct change can_change(const struct composition *composition, size_t in
         sections[i] = arena_print(composition->arena, "%s %s", section->ref,
                                   capacitor_words(composition, section));
     }
-    return (struct change){
-        .ref = can->ref,
-        .was = can->was,
-        .done = can->done,
-        .age = can->age,
-        .original = text_join(composition->arena, "; ", sections, can->hold_count),
-        .fitted = text_marking(composition, &can->fitted),
-        .batch = can->batch,
-        .signed_where = can->signed_where.text,
-        .price = can->price.text,
-        .reason = can_reason(composition, can),
-    };
+    struct change change = part_change(composition, KIND_CAN, index);
+    change.original = text_join(composition->arena, "; ", sections, can->hold_count);
+    change.reason = can_reason(composition, can);
+    return change;
 }
 
 static struct change resistor_change(const struct composition *composition, size_t index)
 {
-    const struct resistor *part = &composition->job->resistors[index];
-    return (struct change){
-        .ref = part->ref,
-        .was = part->was,
-        .done = part->done,
-        .age = part->age,
-        .original = text_marking(composition, &part->marked),
-        .measured = text_quantity(composition, &part->measured),
-        .fitted = text_marking(composition, &part->fitted),
-        .batch = part->batch,
-        .price = part->price.text,
-        .reason = part->reason.text,
-    };
+    struct change change = part_change(composition, KIND_RESISTOR, index);
+    change.measured = text_quantity(composition, &composition->job->resistors[index].measured);
+    return change;
 }
 
 static struct change winding_change(const struct composition *composition, size_t index)
 {
-    const struct winding *part = &composition->job->windings[index];
-    return (struct change){
-        .ref = part->ref,
-        .was = part->was,
-        .done = part->done,
-        .age = part->age,
-        .original = text_marking(composition, &part->marked),
-        .measured = text_quantity(composition, &part->measured),
-        .fitted = text_marking(composition, &part->fitted),
-        .batch = part->batch,
-        .price = part->price.text,
-        .reason = part->reason.text,
-    };
+    struct change change = part_change(composition, KIND_WINDING, index);
+    change.measured = text_quantity(composition, &composition->job->windings[index].measured);
+    return change;
 }
 
 static struct change control_change(const struct composition *composition, size_t index)
 {
-    const struct control *part = &composition->job->controls[index];
-    return (struct change){
-        .ref = part->ref,
-        .was = part->was,
-        .done = part->done,
-        .age = part->age,
-        .original = part->what.text,
-        .fitted = part->fitted.text,
-        .price = part->price.text,
-        .reason = part->reason.text,
-    };
+    return part_change(composition, KIND_CONTROL, index);
 }
 
 static struct change valve_change(const struct composition *composition, size_t index)
 {
-    const struct valve *part = &composition->job->valves[index];
-    return (struct change){
-        .ref = part->ref,
-        .was = part->was,
-        .done = part->done,
-        .original = part->type,
-        .measured = part->tested.text,
-        .fitted = part->fitted.text,
-        .price = part->price.text,
-        .reason = part->reason.text,
-    };
+    struct change change = part_change(composition, KIND_VALVE, index);
+    change.measured = composition->job->valves[index].tested.text;
+    return change;
 }
 
 typedef void change_visitor(void *data, const struct change *change);
 
 static void visit_changes(const struct composition *composition, change_visitor *visit, void *data)
 {
-    const struct job *job = composition->job;
-    const struct {
-        size_t count;
-        struct change (*change)(const struct composition *, size_t);
-    } kinds[] = {
-        {job->capacitor_count, capacitor_change}, {job->can_count, can_change},
-        {job->resistor_count, resistor_change},   {job->winding_count, winding_change},
-        {job->control_count, control_change},     {job->valve_count, valve_change},
+    static struct change (*const change_of[PART_KIND_COUNT])(const struct composition *, size_t) = {
+        [KIND_CAPACITOR] = capacitor_change, [KIND_CAN] = can_change,
+        [KIND_RESISTOR] = resistor_change,   [KIND_WINDING] = winding_change,
+        [KIND_CONTROL] = control_change,     [KIND_VALVE] = valve_change,
     };
-    for (size_t kind = 0; kind < sizeof kinds / sizeof *kinds; kind++)
-        for (size_t i = 0; i < kinds[kind].count; i++) {
-            struct change change = kinds[kind].change(composition, i);
-            if (is_change(change.done))
+    for (enum part_kind kind = 0; kind < PART_KIND_COUNT; kind++)
+        for (size_t i = 0; i < part_count(composition->job, kind); i++) {
+            struct change change = change_of[kind](composition, i);
+            if (action_is_change(change.done))
                 visit(data, &change);
         }
 }

@@ -1,5 +1,5 @@
-/* The job as the record shows it: particulars, texts, instruments, and every part but capacitors.
- */
+/* The job itself: particulars, texts, instruments, and every part but capacitors. */
+#include "job/part.h"
 #include "write/json_pieces.h"
 
 #include <math.h>
@@ -99,18 +99,7 @@ void json_write_job(const struct findings *findings, struct buffer *out)
 /* ---- parts */
 
 /* What every part has in common. */
-struct part_facts {
-    const char *ref, *maker;
-    enum seen seen;
-    enum origin was;
-    enum action done;
-    enum age age;
-    const struct marking *fitted;
-    const char *batch;
-    const struct prose *price, *reason, *note;
-};
-
-static void write_part(const struct part_facts *part, struct buffer *out)
+static void write_part(const struct part *part, struct buffer *out)
 {
     bool fitted = part->fitted && part->fitted->set;
     json_text_member(out, "ref", part->ref);
@@ -118,12 +107,12 @@ static void write_part(const struct part_facts *part, struct buffer *out)
     json_text_member(out, "seen", seen_text(part->seen));
     json_text_member(out, "was", origin_text(part->was));
     json_choice_member(out, "done", action_text(part->done));
-    json_text_member(out, "fitted", fitted ? part->fitted->written : NULL);
+    json_text_member(out, "fitted", fitted ? part->fitted_text : NULL);
     json_text_member(out, "age", fitted ? age_text(part->age) : NULL);
     json_text_member(out, "batch", part->batch);
-    json_prose_member(out, "price", part->price);
-    json_prose_member(out, "reason", part->reason);
-    json_text_member(out, "note", part->note ? part->note->text : NULL);
+    json_text_member(out, "price", part->price);
+    json_text_member(out, "reason", part->reason);
+    json_text_member(out, "note", part->note);
 }
 
 static void write_cans(const struct job *job, struct buffer *out)
@@ -132,10 +121,8 @@ static void write_cans(const struct job *job, struct buffer *out)
     for (size_t i = 0; i < job->can_count; i++) {
         const struct can *can = &job->cans[i];
         json_open(out, NULL, '{');
-        write_part(&(struct part_facts){can->ref, can->maker, can->seen, can->was, can->done,
-                                        can->age, &can->fitted, can->batch, &can->price,
-                                        &can->reason, &can->note},
-                   out);
+        struct part common = part_of(job, KIND_CAN, i);
+        write_part(&common, out);
         json_open(out, "holds", '[');
         for (size_t k = 0; k < can->hold_count; k++) {
             if (k > 0)
@@ -157,10 +144,8 @@ static void write_resistors(const struct job *job, struct buffer *out)
     for (size_t i = 0; i < job->resistor_count; i++) {
         const struct resistor *part = &job->resistors[i];
         json_open(out, NULL, '{');
-        write_part(&(struct part_facts){part->ref, part->maker, part->seen, part->was, part->done,
-                                        part->age, &part->fitted, part->batch, &part->price,
-                                        &part->reason, &part->note},
-                   out);
+        struct part common = part_of(job, KIND_RESISTOR, i);
+        write_part(&common, out);
         json_text_member(out, "marked", part->marked.set ? part->marked.written : NULL);
         json_quantity_member(out, "marked_ohm", &part->marked.value);
         json_quantity_member(out, "rated_w", &part->marked.rated);
@@ -180,10 +165,8 @@ static void write_windings(const struct job *job, struct buffer *out)
     for (size_t i = 0; i < job->winding_count; i++) {
         const struct winding *part = &job->windings[i];
         json_open(out, NULL, '{');
-        write_part(&(struct part_facts){part->ref, part->maker, part->seen, part->was, part->done,
-                                        part->age, &part->fitted, part->batch, &part->price,
-                                        &part->reason, &part->note},
-                   out);
+        struct part common = part_of(job, KIND_WINDING, i);
+        write_part(&common, out);
         json_text_member(out, "marked", part->marked.set ? part->marked.written : NULL);
         json_quantity_member(out, "marked_ohm", &part->marked.value);
         json_measured_members(out, "measured_ohm", "measured", "measured_bound", &part->measured);
@@ -202,9 +185,8 @@ static void write_controls(const struct job *job, struct buffer *out)
     for (size_t i = 0; i < job->control_count; i++) {
         const struct control *part = &job->controls[i];
         json_open(out, NULL, '{');
-        write_part(&(struct part_facts){part->ref, NULL, part->seen, part->was, part->done,
-                                        part->age, NULL, NULL, &part->price, &part->reason, NULL},
-                   out);
+        struct part common = part_of(job, KIND_CONTROL, i);
+        write_part(&common, out);
         json_prose_member(out, "what", &part->what);
         json_prose_member(out, "fitted_text", &part->fitted);
         json_close(out, '}');
@@ -218,9 +200,8 @@ static void write_valves(const struct job *job, struct buffer *out)
     for (size_t i = 0; i < job->valve_count; i++) {
         const struct valve *part = &job->valves[i];
         json_open(out, NULL, '{');
-        write_part(&(struct part_facts){part->ref, part->maker, part->seen, part->was, part->done,
-                                        AGE_MODERN, NULL, NULL, &part->price, &part->reason, NULL},
-                   out);
+        struct part common = part_of(job, KIND_VALVE, i);
+        write_part(&common, out);
         json_text_member(out, "type", part->type);
         json_prose_member(out, "tested", &part->tested);
         json_prose_member(out, "date_code", &part->date_code);

@@ -84,7 +84,7 @@ static const struct option_row rows[] = {
     {0},
 };
 static const struct command_row commands[] = {
-    {"do", "FILE", "does it", "At length.\n", 1},
+    {"do", "FILE", "does it", "At length.\n", 1, 1, 1},
     {0},
 };
 

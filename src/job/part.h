@@ -1,0 +1,51 @@
+/*
+ * What the parts of a job have in common, whatever their kind: for those who list, count or print
+ * parts of all kinds alike. What only one kind has stands in its own struct (job.h).
+ */
+#ifndef JOB_PART_H
+#define JOB_PART_H
+
+#include "job/job.h"
+
+#include <stdbool.h>
+#include <stddef.h>
+
+enum part_kind {
+    KIND_CAPACITOR,
+    KIND_CAN,
+    KIND_RESISTOR,
+    KIND_WINDING,
+    KIND_CONTROL,
+    KIND_VALVE,
+    PART_KIND_COUNT
+};
+
+/* Texts are the job's own; NULL: not said, or nothing that this kind has. */
+struct part {
+    const char *ref;
+    const char *maker;
+    enum seen seen;
+    enum origin was;
+    enum action done;
+    enum age age;                 /* of what was fitted; of a valve AGE_MODERN */
+    const struct marking *marked; /* NULL: a can, a control, a valve */
+    const struct marking *fitted; /* NULL: a control, a valve */
+    const char *marked_text;      /* as written; of a control what it is, of a valve its type */
+    const char *fitted_text;      /* as written */
+    const char *batch, *signed_where, *price, *reason, *note;
+};
+
+/* "capacitor", "can", "resistor", "winding", "control", "valve". */
+const char *part_kind_text(enum part_kind kind);
+
+/* How many parts of the kind the job lists. */
+size_t part_count(const struct job *job, enum part_kind kind);
+
+/* The index-th part of the kind; index < part_count. */
+struct part part_of(const struct job *job, enum part_kind kind, size_t index);
+
+/* What works in the set since then is another part, or another inside: restuffed, replaced,
+   disconnected. */
+bool action_is_change(enum action done);
+
+#endif
