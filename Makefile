@@ -119,6 +119,13 @@ speed: check-packages
 oracle: all
 	DRAWS=1000000 tests/oracle/run.sh $(BUILD)
 
+# Jobs whose physics is known to the check alone: SEED and COUNT may be given.
+SEED = 20310203
+COUNT = 500
+blind: all
+	@mkdir -p $(BUILD)/oracle/blind
+	python3 tests/oracle/blind/blind.py $(BUILD)/gridleak $(BUILD)/oracle/blind $(SEED) $(COUNT)
+
 lint:
 	LINT=all tests/lint/run.sh
 
@@ -158,4 +165,4 @@ clean:
 	rm -rf $(BUILD) asan
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
-.PHONY: oracle all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
+.PHONY: oracle blind all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
