@@ -88,10 +88,26 @@ static bool add_document(const struct copy_work *work, const struct document *do
     return good;
 }
 
+/* The diagnostics so far, each file by its name alone: what is published does not depend on where
+   the archive lies, nor on how its folder was typed. */
+static const struct diagnostics *placeless(const struct copy_work *work)
+{
+    struct diagnostics *list = arena_get(work->arena, sizeof *list);
+    *list = *work->diagnostics;
+    list->items = arena_array(work->arena, list->count + 1, sizeof *list->items);
+    for (size_t i = 0; i < list->count; i++) {
+        list->items[i] = work->diagnostics->items[i];
+        const char *path = list->items[i].path, *slash = path ? strrchr(path, '/') : NULL;
+        list->items[i].path = slash ? slash + 1 : path;
+    }
+    return list;
+}
+
 static bool add_record(const struct copy_work *work, enum copy copy, const char *stem,
                        struct folder_image *image)
 {
     struct findings *findings = findings_for_copy(work->opened->findings, copy, work->arena);
+    findings->diagnostics = placeless(work);
     struct buffer *json = folder_image_add(image, "findings.json");
     json_write_findings(findings, json);
     struct hash hash = hash_of(json->data, json->length);
