@@ -151,11 +151,7 @@ static void write_facts(const struct column_data *group, const char *const *keys
     for (size_t i = 0; keys[i]; i++) {
         if (group == NULL || group[i].count <= row || strcmp(keys[i], "page") == 0)
             continue;
-        const char *text = column_text(&group[i], row);
-        if (out->data[out->length - 1] != '{')
-            buffer_byte(out, ',');
-        buffer_print(out, "\"%s\":", keys[i]);
-        json_string(out, *text ? text : NULL);
+        json_choice_member(out, keys[i], column_text(&group[i], row));
     }
 }
 

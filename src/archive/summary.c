@@ -23,31 +23,6 @@ struct summary_work {
     size_t row_count;
 };
 
-static void key(struct buffer *out, const char *name)
-{
-    if (out->length && out->data[out->length - 1] != '{' && out->data[out->length - 1] != '[')
-        buffer_byte(out, ',');
-    buffer_print(out, "\"%s\":", name);
-}
-
-static void text_member(struct buffer *out, const char *name, const char *text)
-{
-    key(out, name);
-    json_string(out, text && *text ? text : NULL);
-}
-
-static void number_member(struct buffer *out, const char *name, double value)
-{
-    key(out, name);
-    json_number(out, value);
-}
-
-static void flag_member(struct buffer *out, const char *name, bool value)
-{
-    key(out, name);
-    buffer_text(out, value ? "true" : "false");
-}
-
 /* ---- the parts as columns */
 
 /* uA to two figures, without an exponent: few different texts, and what the record shows. */
@@ -139,15 +114,14 @@ static void write_column(struct buffer *out, const char *name, const char *const
         any = texts[i * stride] && *texts[i * stride];
     if (!any)
         return;
-    key(out, name);
-    buffer_byte(out, '[');
+    json_open(out, name, '[');
     for (size_t i = 0; i < count; i++) {
         const char *text = texts[i * stride];
         if (i)
             buffer_byte(out, ',');
         json_string(out, text ? text : "");
     }
-    buffer_byte(out, ']');
+    json_close(out, ']');
 }
 
 static void write_parts(struct summary_work *work)
@@ -161,12 +135,11 @@ static void write_parts(struct summary_work *work)
     for (size_t i = 0; i < findings->capacitor_count; i++)
         take_capacitor(work, i);
     take_others(work);
-    key(work->out, "parts");
-    buffer_byte(work->out, '{');
+    json_open(work->out, "parts", '{');
     for (int i = 0; i < PART_COLUMN_COUNT && work->row_count; i++)
         write_column(work->out, part_column_keys[i], &work->rows[0].texts[i], PART_COLUMN_COUNT,
                      work->row_count);
-    buffer_byte(work->out, '}');
+    json_close(work->out, '}');
 }
 
 /* ---- parts measured again */
@@ -209,11 +182,10 @@ static void write_again(struct summary_work *work)
             rows[count++] = again_of(work, since, &since->items[i]);
     if (count == 0)
         return;
-    key(work->out, "again");
-    buffer_byte(work->out, '{');
+    json_open(work->out, "again", '{');
     for (int i = 0; i < AGAIN_COLUMN_COUNT; i++)
         write_column(work->out, again_column_keys[i], &rows[0].texts[i], AGAIN_COLUMN_COUNT, count);
-    buffer_byte(work->out, '}');
+    json_close(work->out, '}');
 }
 
 /* ---- the set */
@@ -232,14 +204,14 @@ static const char *all_valves(struct summary_work *work)
 static void write_years(struct summary_work *work)
 {
     const struct year_span *year = &work->findings->job->set.year;
-    text_member(work->out, job_column_keys[JOB_YEAR], year->written);
+    json_choice_member(work->out, job_column_keys[JOB_YEAR], year->written);
     if (!year->set)
         return;
-    number_member(work->out, job_column_keys[JOB_YEAR_FIRST], year->first);
-    number_member(work->out, job_column_keys[JOB_YEAR_LAST], year->last);
+    json_count_member(work->out, job_column_keys[JOB_YEAR_FIRST], year->first);
+    json_count_member(work->out, job_column_keys[JOB_YEAR_LAST], year->last);
     int middle = (year->first + year->last) / 2;
-    text_member(work->out, job_column_keys[JOB_DECADE],
-                arena_print(&work->arena, "%ds", middle / 10 * 10));
+    json_choice_member(work->out, job_column_keys[JOB_DECADE],
+                       arena_print(&work->arena, "%ds", middle / 10 * 10));
 }
 
 static void write_set(struct summary_work *work)
@@ -263,7 +235,7 @@ static void write_set(struct summary_work *work)
         {JOB_VALVES, all_valves(work)},
     };
     for (size_t i = 0; i < sizeof texts / sizeof *texts; i++)
-        text_member(work->out, job_column_keys[texts[i].column], texts[i].text);
+        json_choice_member(work->out, job_column_keys[texts[i].column], texts[i].text);
     write_years(work);
 }
 
@@ -273,40 +245,42 @@ void summary_write(const struct findings *findings, struct buffer *out)
     unsigned failed = 0;
     for (size_t i = 0; i < findings->capacitor_count; i++)
         failed += findings->capacitors[i].outcome_found == OUTCOME_FAIL;
-    buffer_print(out, "{\"summary\":%d", SUMMARY_VERSION);
-    text_member(out, job_column_keys[JOB_NUMBER], findings->job->number);
-    flag_member(out, "broken", false);
-    flag_member(out, job_column_keys[JOB_IN_PROGRESS], findings->in_progress);
+    json_open(out, NULL, '{');
+    json_count_member(out, "summary", SUMMARY_VERSION);
+    json_choice_member(out, job_column_keys[JOB_NUMBER], findings->job->number);
+    json_flag_member(out, "broken", false);
+    json_flag_member(out, job_column_keys[JOB_IN_PROGRESS], findings->in_progress);
     write_set(&work);
-    number_member(out, job_column_keys[JOB_KEPT], findings->originality.total.kept);
-    number_member(out, job_column_keys[JOB_OF], findings->originality.total.of);
-    number_member(out, job_column_keys[JOB_FAILED], failed);
-    number_member(out, job_column_keys[JOB_CAPACITORS], (double)findings->capacitor_count);
+    json_count_member(out, job_column_keys[JOB_KEPT], findings->originality.total.kept);
+    json_count_member(out, job_column_keys[JOB_OF], findings->originality.total.of);
+    json_count_member(out, job_column_keys[JOB_FAILED], failed);
+    json_count_member(out, job_column_keys[JOB_CAPACITORS], (long long)findings->capacitor_count);
     write_parts(&work);
     write_again(&work);
-    buffer_text(out, "}\n");
+    json_close(out, '}');
+    buffer_byte(out, '\n');
     arena_release(&work.arena);
 }
 
 void summary_write_broken(const char *name, const struct diagnostics *diagnostics,
                           struct buffer *out)
 {
-    buffer_print(out, "{\"summary\":%d", SUMMARY_VERSION);
-    text_member(out, "job", name);
-    flag_member(out, "broken", true);
-    key(out, "diagnostics");
-    buffer_byte(out, '[');
-    bool first = true;
+    json_open(out, NULL, '{');
+    json_count_member(out, "summary", SUMMARY_VERSION);
+    json_choice_member(out, "job", name);
+    json_flag_member(out, "broken", true);
+    json_open(out, "diagnostics", '[');
     for (size_t i = 0; i < diagnostics->count; i++) {
         const struct diagnostic *item = &diagnostics->items[i];
         if (item->severity != SEVERITY_ERROR)
             continue;
-        buffer_text(out, first ? "{" : ",{");
-        first = false;
-        number_member(out, "line", item->at.line);
-        number_member(out, "column", item->at.column);
-        text_member(out, "text", item->text);
-        buffer_byte(out, '}');
+        json_open(out, NULL, '{');
+        json_count_member(out, "line", item->at.line);
+        json_count_member(out, "column", item->at.column);
+        json_choice_member(out, "text", item->text);
+        json_close(out, '}');
     }
-    buffer_text(out, "]}\n");
+    json_close(out, ']');
+    json_close(out, '}');
+    buffer_byte(out, '\n');
 }

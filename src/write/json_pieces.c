@@ -40,7 +40,7 @@ static void comma(struct buffer *out)
         buffer_byte(out, ',');
 }
 
-void json_key(struct buffer *out, const char *key)
+static void write_key(struct buffer *out, const char *key)
 {
     comma(out);
     buffer_byte(out, '"');
@@ -51,7 +51,7 @@ void json_key(struct buffer *out, const char *key)
 void json_open(struct buffer *out, const char *key, char bracket)
 {
     if (key)
-        json_key(out, key);
+        write_key(out, key);
     else
         comma(out);
     buffer_byte(out, bracket);
@@ -64,25 +64,25 @@ void json_close(struct buffer *out, char bracket)
 
 void json_text_member(struct buffer *out, const char *key, const char *text)
 {
-    json_key(out, key);
+    write_key(out, key);
     json_string(out, text);
 }
 
 void json_number_member(struct buffer *out, const char *key, double value)
 {
-    json_key(out, key);
+    write_key(out, key);
     json_number(out, value);
 }
 
 void json_count_member(struct buffer *out, const char *key, long long value)
 {
-    json_key(out, key);
+    write_key(out, key);
     buffer_decimal(out, value);
 }
 
 void json_flag_member(struct buffer *out, const char *key, bool value)
 {
-    json_key(out, key);
+    write_key(out, key);
     buffer_text(out, value ? "true" : "false");
 }
 
