@@ -58,8 +58,7 @@ static enum picture_status decode(const struct named_picture *named, const struc
 {
     const struct picture_limits limits = {.longest_side_px = named->longest_side_px,
                                           .opened_px = OPENED_PX_MAX,
-                                          .jpeg_quality = JPEG_QUALITY,
-                                          .file_bytes = PHOTO_BYTES_MAX};
+                                          .jpeg_quality = JPEG_QUALITY};
     return picture_decode((const unsigned char *)file->data, file->length, &limits, picture);
 }
 

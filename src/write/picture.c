@@ -1,9 +1,9 @@
 #include "write/picture.h"
 
-#include "base/file.h"
 #include "write/picture_pixels.h"
 
 #include <png.h>
+#include <stdbool.h>
 #include <string.h>
 
 const char *picture_status_text(enum picture_status status)
@@ -11,8 +11,6 @@ const char *picture_status_text(enum picture_status status)
     switch (status) {
     case PICTURE_OK:
         return "no error";
-    case PICTURE_NOT_READABLE:
-        return "the file cannot be read";
     case PICTURE_UNKNOWN:
         return "neither JPEG nor PNG";
     case PICTURE_DAMAGED:
@@ -41,17 +39,6 @@ enum picture_status picture_decode(const unsigned char *file, size_t length,
     if (length > sizeof jpeg && memcmp(file, jpeg, sizeof jpeg) == 0)
         return jpeg_decode(file, length, limits, picture);
     return PICTURE_UNKNOWN;
-}
-
-enum picture_status picture_read(const char *path, const struct picture_limits *limits,
-                                 struct picture *picture)
-{
-    struct buffer file = {0};
-    enum picture_status status = PICTURE_NOT_READABLE;
-    if (file_read(path, limits->file_bytes, &file) == FILE_OK)
-        status = picture_decode((const unsigned char *)file.data, file.length, limits, picture);
-    buffer_release(&file);
-    return status;
 }
 
 enum picture_status png_decode(const unsigned char *file, size_t length,

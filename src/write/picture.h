@@ -21,11 +21,10 @@ enum picture_kind {
 
 enum picture_status {
     PICTURE_OK,
-    PICTURE_NOT_READABLE, /* no such file, or no permission */
-    PICTURE_UNKNOWN,      /* neither JPEG nor PNG */
-    PICTURE_DAMAGED,      /* cut off, its codes broken, or an odd JPEG sampling (4x2, 3x1) */
-    PICTURE_TOO_LARGE,    /* more pixels than picture_limits allow to be opened */
-    PICTURE_UNSUPPORTED   /* CMYK or another kind that cannot go into an RGB archive */
+    PICTURE_UNKNOWN,    /* neither JPEG nor PNG */
+    PICTURE_DAMAGED,    /* cut off, its codes broken, or an odd JPEG sampling (4x2, 3x1) */
+    PICTURE_TOO_LARGE,  /* more pixels than picture_limits allow to be opened */
+    PICTURE_UNSUPPORTED /* CMYK or another kind that cannot go into an RGB archive */
 };
 
 /* English, without capital or full stop; for a message after "cannot use picture 'x': ". */
@@ -35,7 +34,6 @@ struct picture_limits {
     unsigned longest_side_px; /* a longer picture is scaled down to this */
     uint64_t opened_px;       /* a picture with more pixels is refused unopened */
     int jpeg_quality;         /* 1 to 100, for a JPEG that has to be scaled */
-    size_t file_bytes;        /* picture_read refuses a larger file */
 };
 
 struct picture {
@@ -58,10 +56,6 @@ struct picture {
  */
 enum picture_status picture_decode(const unsigned char *file, size_t length,
                                    const struct picture_limits *limits, struct picture *picture);
-
-/* The same for the file `path`. */
-enum picture_status picture_read(const char *path, const struct picture_limits *limits,
-                                 struct picture *picture);
 
 void picture_release(struct picture *picture);
 

@@ -4,6 +4,7 @@
 #ifndef TESTS_PDF_KIT_H
 #define TESTS_PDF_KIT_H
 
+#include "base/file.h"
 #include "write/picture.h"
 #include "write/writer.h"
 
@@ -24,11 +25,16 @@ static inline char *pdf_fonts_folder(const char *program)
 
 static inline struct picture pdf_picture(const char *path)
 {
-    const struct picture_limits limits = {1600, 40000000, 85, 40000000};
+    const struct picture_limits limits = {1600, 40000000, 85};
     struct picture picture = {0};
-    enum picture_status status = picture_read(path, &limits, &picture);
-    if (status != PICTURE_OK) {
-        fprintf(stderr, "%s: %s\n", path, picture_status_text(status));
+    struct buffer file = {0};
+    enum file_status read = file_read(path, 40000000, &file);
+    enum picture_status status =
+        picture_decode((const unsigned char *)file.data, file.length, &limits, &picture);
+    buffer_release(&file);
+    if (read != FILE_OK || status != PICTURE_OK) {
+        fprintf(stderr, "%s: %s\n", path,
+                read != FILE_OK ? file_status_text(read) : picture_status_text(status));
         exit(1);
     }
     return picture;

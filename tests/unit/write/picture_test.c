@@ -29,7 +29,7 @@ static struct buffer contents_of(const char *path)
 static enum picture_status decode(const struct buffer *file, unsigned longest_side,
                                   struct picture *picture)
 {
-    const struct picture_limits limits = {longest_side, 4000000, 80, 1u << 24};
+    const struct picture_limits limits = {longest_side, 4000000, 80};
     return picture_decode((const unsigned char *)file->data, file->length, &limits, picture);
 }
 
