@@ -1,13 +1,5 @@
 #include "job/choices.h"
 
-#define CHOICE_TEXT(name, text) [name] = text,
-#define CHOICE_TABLE(type, LIST, count)                                                            \
-    const char *const type##_choices[count + 1] = {LIST(CHOICE_TEXT)};                             \
-    const char *type##_text(enum type value)                                                       \
-    {                                                                                              \
-        return type##_choices[value];                                                              \
-    }
-
 CHOICE_TABLE(supply, SUPPLIES, SUPPLY_COUNT)
 CHOICE_TABLE(dielectric, DIELECTRICS, DIELECTRIC_COUNT)
 CHOICE_TABLE(place, PLACES, PLACE_COUNT)

@@ -103,6 +103,15 @@
     const char *type##_text(enum type value);  /* English spelling; "" for the unset one */        \
     extern const char *const type##_choices[]; /* all spellings by value, then NULL */
 
+/* The words of such a list, once for all, in a .c file. */
+#define CHOICE_TEXT(name, text) [name] = text,
+#define CHOICE_TABLE(type, LIST, count)                                                            \
+    const char *const type##_choices[count + 1] = {LIST(CHOICE_TEXT)};                             \
+    const char *type##_text(enum type value)                                                       \
+    {                                                                                              \
+        return type##_choices[value];                                                              \
+    }
+
 CHOICE_TYPE(supply, SUPPLIES, SUPPLY_COUNT)
 CHOICE_TYPE(dielectric, DIELECTRICS, DIELECTRIC_COUNT)
 CHOICE_TYPE(place, PLACES, PLACE_COUNT)
