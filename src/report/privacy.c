@@ -96,7 +96,13 @@ static size_t match_at(const char *place, const char *wanted)
     return (size_t)(at - place);
 }
 
-/* As words of their own: an owner named Wax does not stand in "waxed". */
+static bool ends_at(const char *start, const char *end)
+{
+    return !is_word_at(end) || !is_word_before(start, end);
+}
+
+/* As words of their own: an owner named Wax does not stand in "waxed". The family does in the
+   plural: "the Estcourts". */
 static const char *find_words(const char *text, const char *wanted)
 {
     for (const char *at = text; *at; at++) {
@@ -105,8 +111,8 @@ static const char *find_words(const char *text, const char *wanted)
             continue;
         const char *end = at + length;
         bool begins = !is_word_before(text, at) || !is_word_at(at);
-        bool ends = !is_word_at(end) || !is_word_before(at, end);
-        if (begins && ends)
+        size_t plural = strncmp(end, "es", 2) == 0 ? 2 : *end == 's';
+        if (begins && (ends_at(at, end) || ends_at(at, end + plural)))
             return at;
     }
     return NULL;

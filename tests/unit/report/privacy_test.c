@@ -27,7 +27,10 @@ static void test_texts(void **state)
         {"Maud Estcourt", NULL, "Maud Estcourt asked", false},
         {"Maud Estcourt", NULL, "MAUD\n  ESTCOURT", false},
         {"Maud Estcourt", NULL, "Mrs. Estcourt’s set", false},
-        {"Maud Estcourt", NULL, "Mrs. Estcourts", true},
+        {"Maud Estcourt", NULL, "for the Estcourts", false}, /* the family */
+        {"Maud Estcourt", NULL, "the Estcourt's", false},
+        {"Ada Finch", NULL, "the Finches asked", false},
+        {"Ada Finch", NULL, "finchley, finching", true},
         {"Maud Estcourt", NULL, "maud was here", true}, /* a first name alone is nobody */
         {"M. Éstcoürt", NULL, "for estcourt", false},
         {"M. Estcourt", NULL, "for E\u0301stcou\u0308rt", false},
