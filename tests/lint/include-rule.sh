@@ -8,13 +8,13 @@ bad=0
 say() { echo "$1" >&2; bad=1; }
 # Only includes that the checks below can read: from src/, plainly written.
 for line in $(grep -n -E '^[[:space:]]*#[[:space:]]*include' -r src --include='*.[ch]' |
-    grep -v -E ':#include (<[A-Za-z0-9_/.-]+>|"[a-z_]+/[a-z0-9_]+\.h")( /\*|$)' | cut -d: -f1,2); do
+    grep -v -E ':#include (<[A-Za-z0-9_/.-]+>|"([a-z_]+/)?[a-z0-9_]+\.h")( /\*|$)' | cut -d: -f1,2); do
     say "$line: write it #include \"module/name.h\" or <library.h>"
 done
 for file in $(find src -mindepth 1 -name '*.[ch]'); do
     module=${file#src/}
     module=${module%%/*}
-    case " $modules main.c " in *" $module "*) ;; *) say "$file: belongs to no module" ;; esac
+    case " $modules main.c command_rows.h " in *" $module "*) ;; *) say "$file: belongs to no module" ;; esac
 done
 below=
 for module in $modules; do
