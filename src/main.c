@@ -140,8 +140,11 @@ static int assess_one(struct session *session, const struct archive *archive, co
     if (diagnostics->errors)
         return EXIT_INPUT;
     struct document *document =
-        report_compose(opened.findings, DOCUMENT_ASSESSMENT, archive->templates, NULL,
-                       diagnostics->arena, diagnostics);
+        session->options.working
+            ? report_compose_working(opened.findings, session->options.working, archive->templates,
+                                     diagnostics->arena, diagnostics)
+            : report_compose(opened.findings, DOCUMENT_ASSESSMENT, archive->templates, NULL,
+                             diagnostics->arena, diagnostics);
     if (!document)
         return EXIT_INPUT;
     terminal_write(document, TERMINAL_COLUMNS, bold_allowed(), out);

@@ -1,6 +1,7 @@
 #include "assess/bench.h"
 
 #include "assess/component_date.h"
+#include "assess/part_working.h"
 #include "assess/performance.h"
 #include "assess/reconcile.h"
 #include "assess/reforming.h"
@@ -95,6 +96,11 @@ void bench_assess_job(const struct assessment *assessment, struct findings *find
         replacements_assess(findings, arena, assessment->diagnostics, &bench->replacement_count);
     bench->dates =
         component_dates_assess(assessment->job, arena, assessment->diagnostics, &bench->date_count);
+    struct part_working *workings =
+        arena_array(arena, findings->capacitor_count + 1, sizeof *workings);
+    for (size_t i = 0; i < findings->capacitor_count; i++)
+        workings[i] = part_working_of(assessment, findings->stages, i);
+    bench->workings = workings;
     struct reconciled_findings *reconciled =
         arena_array(arena, findings->stage_count + 1, sizeof *reconciled);
     for (size_t i = 0; i < findings->stage_count; i++)

@@ -207,7 +207,24 @@ struct reconciled_findings {
     double valve_bound;  /* 0.25: a real valve against the book's; 0 when anchored */
 };
 
+/* What the calculation of one capacitor went through, for the working shown: facts of its place,
+   and its stage without the leak and with this part's leak alone. NaN: not used there. */
+struct part_working {
+    double series_ohm;                                                 /* of tester and meter */
+    double instrument_share, instrument_absolute_a, instrument_step_a; /* of the reading's U */
+    double feed_ohm, circuit_ohm, source_v, source_ohm, current_a;
+    double conductance_s;        /* warm, of the deciding reading; NaN: none */
+    double rule_limit_a, to_20c; /* leakage rule at rated volts, 20 C; the reading's share there */
+    const char *rule;
+    double heat_limit_w;
+    bool staged; /* solved in a stage: what follows is set */
+    const struct stage_findings *stage;
+    double d0_v, ik0_a, exponent; /* of the law */
+    struct stage_solution bare, leaking;
+};
+
 struct bench_findings {
+    const struct part_working *workings;    /* one for each capacitor */
     const struct reform_plan *const *plans; /* one for each capacitor; NULL: none planned */
     const struct reform_findings *reforms;  /* as job->reforms */
     const struct supply_node *nodes;

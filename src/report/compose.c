@@ -52,6 +52,7 @@ static const struct {
     {"assessed_capacitors", exhibit_assessed_capacitors},
     {"assessed_stages", exhibit_assessed_stages},
     {"assessed_bench", exhibit_assessed_bench},
+    {"working", exhibit_working},
     {"fields", exhibit_fields},
     {"policy_limits", exhibit_policy_limits},
     {"rule_sources", exhibit_rule_sources},
@@ -177,6 +178,8 @@ static const char *template_name(enum document_kind kind)
         return "sheet.md";
     case DOCUMENT_ASSESSMENT:
         return "assessment.md";
+    case DOCUMENT_WORKING:
+        return "working.md";
     case DOCUMENT_MANUAL:
         return "manual.md";
     }
@@ -192,6 +195,8 @@ static const char *title_key(enum document_kind kind)
         return "document.sheet";
     case DOCUMENT_ASSESSMENT:
         return "document.assessment";
+    case DOCUMENT_WORKING:
+        return "document.working";
     case DOCUMENT_MANUAL:
         return "document.manual";
     }
@@ -255,12 +260,32 @@ static bool render(struct composition *composition, const struct source *templat
     return mustache_render(template, values_of(composition), &target, composition->text);
 }
 
+static struct document *compose(struct composition *composition)
+{
+    struct buffer text = {0};
+    size_t errors = composition->diagnostics->errors;
+    const char *name = template_name(composition->kind);
+    const struct source *template = templates_find(composition->templates, name);
+    struct document *document = NULL;
+    composition->text = &text;
+    if (!template)
+        diagnostic_add(composition->diagnostics, NULL, (struct position){0, 0},
+                       DIAGNOSTIC_FILE_UNREADABLE, NULL, "there is no templates/%s", name);
+    else if (render(composition, template))
+        document = make_document(composition, build_tree(composition, template));
+    buffer_release(&text);
+    if (document && composition->diagnostics->errors > errors) {
+        document_release(document);
+        document = NULL;
+    }
+    return document;
+}
+
 struct document *report_compose(const struct findings *findings, enum document_kind kind,
                                 const struct templates *templates,
                                 const struct report_picture *pictures, struct arena *arena,
                                 struct diagnostics *diagnostics)
 {
-    struct buffer text = {0};
     struct composition composition = {
         .findings = findings,
         .job = findings->job,
@@ -271,22 +296,32 @@ struct document *report_compose(const struct findings *findings, enum document_k
         .arena = arena,
         .diagnostics = diagnostics,
         .say = {templates_words(templates), arena, diagnostics},
-        .text = &text,
     };
-    size_t errors = diagnostics->errors;
-    const struct source *template = templates_find(templates, template_name(kind));
-    struct document *document = NULL;
-    if (!template)
-        diagnostic_add(diagnostics, NULL, (struct position){0, 0}, DIAGNOSTIC_FILE_UNREADABLE, NULL,
-                       "there is no templates/%s", template_name(kind));
-    else if (render(&composition, template))
-        document = make_document(&composition, build_tree(&composition, template));
-    buffer_release(&text);
-    if (document && diagnostics->errors > errors) {
-        document_release(document);
-        document = NULL;
+    return compose(&composition);
+}
+
+struct document *report_compose_working(const struct findings *findings, const char *ref,
+                                        const struct templates *templates, struct arena *arena,
+                                        struct diagnostics *diagnostics)
+{
+    struct composition composition = {
+        .findings = findings,
+        .job = findings->job,
+        .shop = findings->shop,
+        .kind = DOCUMENT_WORKING,
+        .templates = templates,
+        .arena = arena,
+        .diagnostics = diagnostics,
+        .say = {templates_words(templates), arena, diagnostics},
+    };
+    size_t number;
+    if (!working_find(&composition, ref, &number)) {
+        diagnostic_add(diagnostics, &findings->job->source, (struct position){0, 0},
+                       DIAGNOSTIC_REF_UNKNOWN, NULL, "no part '%s' in this job", ref);
+        return NULL;
     }
-    return document;
+    composition.working_of = number + 1;
+    return compose(&composition);
 }
 
 struct document *report_compose_manual(const struct shop *shop, const struct templates *templates,

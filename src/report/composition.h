@@ -29,6 +29,7 @@ struct composition {
     struct arena *arena;
     struct diagnostics *diagnostics;
     struct phrasing say;
+    size_t working_of; /* 1 + which part's working is wanted; 0: as the template says */
     unsigned numbers[NUMBERED_COUNT]; /* handed out so far */
     struct buffer *text;              /* the template, rendered so far */
     struct piece *pieces;
@@ -142,10 +143,10 @@ exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents
     exhibit_leakage, exhibit_soak_curves, exhibit_changed, exhibit_removed, exhibit_resistors,
     exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stages, exhibit_voltages,
     exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_instruments,
-    exhibit_assessed_bench, exhibit_reform_steps, exhibit_hum, exhibit_replacements,
-    exhibit_date_codes, exhibit_visits, exhibit_write_on, exhibit_sheet_leakage,
-    exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors, exhibit_assessed_stages,
-    exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
+    exhibit_assessed_bench, exhibit_working, exhibit_reform_steps, exhibit_hum,
+    exhibit_replacements, exhibit_date_codes, exhibit_visits, exhibit_write_on,
+    exhibit_sheet_leakage, exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors,
+    exhibit_assessed_stages, exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
 
 /* ---- reforming: the plan of one electrolytic, for the bench sheet */
 
@@ -154,6 +155,8 @@ bool reform_planned(const struct composition *composition, size_t index, struct 
 
 /* ---- whether an exhibit would hold anything; for the values of a template */
 bool has_changed(const struct composition *composition);
+/* The part of a ref, without regard to case, as exhibit_working counts them; false: none. */
+bool working_find(const struct composition *composition, const char *ref, size_t *number);
 bool has_replacements(const struct composition *composition);
 bool has_plates(const struct composition *composition);
 bool has_soak_curves(const struct composition *composition);

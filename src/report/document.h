@@ -16,7 +16,13 @@
 
 #include <cmark.h>
 
-enum document_kind { DOCUMENT_RECORD, DOCUMENT_SHEET, DOCUMENT_MANUAL, DOCUMENT_ASSESSMENT };
+enum document_kind {
+    DOCUMENT_RECORD,
+    DOCUMENT_SHEET,
+    DOCUMENT_MANUAL,
+    DOCUMENT_ASSESSMENT,
+    DOCUMENT_WORKING
+};
 
 struct document {
     enum document_kind kind;

@@ -233,6 +233,7 @@ struct working {
     const char *heading;
     struct working_line *lines;
     size_t line_count;
+    bool screen_only; /* left out on paper, where it cannot be folded away */
 };
 
 /* The fingerprint: a hash in groups of eight. */

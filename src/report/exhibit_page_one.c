@@ -49,6 +49,10 @@ static void name_document(const struct composition *composition, struct title_bl
             phrase(say, "title.assessment", "job", job, "in_progress", in_progress, NULL);
         block->subtitle = set_line(composition);
         break;
+    case DOCUMENT_WORKING:
+        block->title = phrase(say, "title.working", "job", job, NULL);
+        block->subtitle = set_line(composition);
+        break;
     case DOCUMENT_MANUAL:
         block->title = phrase(say, "title.manual", NULL);
         break;

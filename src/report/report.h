@@ -45,6 +45,12 @@ struct document *report_compose(const struct findings *findings, enum document_k
                                 const struct report_picture *pictures, struct arena *arena,
                                 struct diagnostics *diagnostics);
 
+/* The calculation of one part line by line, from working.md; NULL after a template error, or when the
+   job has no part of that ref (a diagnostic). */
+struct document *report_compose_working(const struct findings *findings, const char *ref,
+                                        const struct templates *templates, struct arena *arena,
+                                        struct diagnostics *diagnostics);
+
 /* The manual, DOCUMENT_MANUAL from manual.md, which speaks of no job; NULL after a template error.
  */
 struct document *report_compose_manual(const struct shop *shop, const struct templates *templates,

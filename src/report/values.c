@@ -363,6 +363,23 @@ static void put_stages(const struct filler *root)
     mustache_set(root->arena, root->map, "stages", list);
 }
 
+/* Parts whose working the shop's copy folds away: those that were read or solved. */
+static void put_workings(const struct filler *root)
+{
+    const struct findings *findings = root->composition->findings;
+    struct mustache_value *list = mustache_list(root->arena);
+    for (size_t i = 0; i < findings->capacitor_count && findings->bench.workings; i++) {
+        if (findings->copy != COPY_SHOP || findings->capacitors[i].deciding < 0)
+            continue;
+        struct filler item = fill(root->composition);
+        put(&item, "index", arena_print(root->arena, "%zu", i));
+        put(&item, "ref", findings->capacitors[i].part->ref);
+        mustache_push(root->arena, list, item.map);
+    }
+    mustache_set(root->arena, root->map, "workings", list);
+    put_flag(root, "any_working", list->count > 0);
+}
+
 static void put_reforms(const struct filler *root)
 {
     const struct job *job = root->composition->job;
@@ -468,6 +485,7 @@ struct mustache_value *values_of(struct composition *composition)
     put_temperature(&root);
     put_stages(&root);
     put_reforms(&root);
+    put_workings(&root);
     put_reform_plans(&root);
     put_hazards(&root);
     methods_values(composition, root.map);

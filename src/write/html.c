@@ -395,6 +395,8 @@ static const char *kind_name(enum document_kind kind)
         return "page";
     case DOCUMENT_ASSESSMENT:
         return "assessment";
+    case DOCUMENT_WORKING:
+        return "working";
     }
     return "";
 }

@@ -553,7 +553,8 @@ void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, c
         compose_write_on(composer, &exhibit->write_on);
         break;
     case EXHIBIT_WORKING:
-        compose_working(composer, exhibit->number, &exhibit->working);
+        if (!exhibit->working.screen_only)
+            compose_working(composer, exhibit->number, &exhibit->working);
         break;
     case EXHIBIT_FINGERPRINT:
         compose_fingerprint(composer, &exhibit->fingerprint);
