@@ -39,6 +39,7 @@ bool archive_open(struct archive *archive, const char *folder, const char *share
 bool archive_open_pdf(struct archive *archive, struct arena *arena,
                       struct diagnostics *diagnostics);
 
+/* Give back what archive_open_pdf opened; all else belongs to the arena. */
 void archive_close(struct archive *archive);
 
 /* Names of the job files directly in the folder, without ".yaml", sorted. */

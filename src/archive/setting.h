@@ -8,6 +8,7 @@
 #include "archive/archive.h"
 #include "base/hash.h"
 
+/* By the files as they lie there now; lower-case hexadecimal with a NUL behind it. */
 void setting_hash(const struct archive *archive, char hash[HASH_TEXT_BYTES]);
 
 #endif

@@ -36,6 +36,7 @@ bool scan_scalar(struct summary_scan *scan, struct scan_text *value);
 /* Pass over any value. */
 void scan_skip(struct summary_scan *scan);
 
+/* Whether the text is this word, letter by letter. */
 bool scan_is(const struct scan_text *text, const char *word);
 
 #endif

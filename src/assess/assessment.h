@@ -50,11 +50,16 @@ void advice_give(struct assessment *assessment, size_t index);
 /* place_effect.c: what the leak does there. leaks false: no reading, only what needs none. */
 void place_effects(struct assessment *assessment, size_t index);
 
-/* assessment.c: the leak of a reading; the instrument of a reading, NULL: none named. */
+/* assess.c: a reading (its index among the part's) as leak.h wants it; the instrument with this
+   index, NULL: none named. */
 struct leak_case part_leak_case(const struct assessment *assessment, size_t index, int reading);
 const struct instrument *instrument_of(const struct job *job, int index);
+
+/* What was done with a capacitor, and what was fitted: the can's, where a section says nothing. */
 enum action part_action(const struct job *job, const struct capacitor *part);
-bool part_is_new(enum action done, const struct marking *fitted);
 const struct marking *part_fitted(const struct job *job, const struct capacitor *part);
+
+/* Whether what works there since the work is new: what was read before does not speak of it. */
+bool part_is_new(enum action done, const struct marking *fitted);
 
 #endif

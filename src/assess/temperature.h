@@ -30,6 +30,7 @@ double temperature_factor(enum dielectric dielectric, double reading_c, double w
 /* Factor from reading_c to the 20 C that leakage rules are written for; may be below 1. */
 double temperature_to_20c(enum dielectric dielectric, double reading_c);
 
+/* Wet and tantalum ones too. */
 bool dielectric_is_electrolytic(enum dielectric dielectric);
 
 #endif

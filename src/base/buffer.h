@@ -17,6 +17,8 @@ struct buffer {
 /* Make room for more_bytes behind the present end. */
 void buffer_reserve(struct buffer *buffer, size_t more_bytes);
 
+/* Append bytes; a text; one byte; what printf makes; a decimal number. Texts end with NUL, and
+   their NUL is not appended. */
 void buffer_append(struct buffer *buffer, const void *data, size_t length);
 void buffer_text(struct buffer *buffer, const char *text);
 void buffer_byte(struct buffer *buffer, char byte);

@@ -54,6 +54,7 @@ struct diagnostics {
     size_t errors, warnings; /* how many of each */
 };
 
+/* An empty list whose texts will belong to the arena. */
 struct diagnostics diagnostics_in(struct arena *arena);
 
 /*
@@ -66,6 +67,7 @@ void diagnostic_add(struct diagnostics *list, const struct source *source, struc
 
 /* "unknown-key": stable, for JSON and tests. */
 const char *diagnostic_code_text(enum diagnostic_code code);
+/* "error", "warning", "note". */
 const char *severity_text(enum severity severity);
 
 /* Sort by path, line, column; equal ones keep their order. */

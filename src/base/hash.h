@@ -12,6 +12,7 @@ struct hash {
     unsigned char bytes[HASH_BYTES];
 };
 
+/* The digest of length bytes; data may be NULL when there are none. */
 struct hash hash_of(const void *data, size_t length);
 
 /* Lower-case hexadecimal with a NUL behind it. */

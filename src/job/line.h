@@ -60,6 +60,7 @@ bool line_resistance(struct line *line, struct resistance *resistance);
 #define LINE_OPEN_OHM 100e6 /* convention: what a common meter cannot show any more */
 bool line_measured_resistance(struct line *line, struct quantity *quantity);
 
+/* The whole line is a date; one year or a span of years; the size of a case. */
 bool line_date(struct line *line, struct date *date);
 bool line_years(struct line *line, struct year_span *years);
 bool line_dimensions(struct line *line, struct dimensions *dimensions);

@@ -31,6 +31,7 @@ struct safety_figure {
     enum source_key source;
 };
 
+/* The row of a kind below SAFETY_KIND_COUNT. */
 const struct safety_figure *safety_figure(enum safety_kind kind);
 
 /*

@@ -28,8 +28,10 @@ struct source_row {
     const char *title;
 };
 
+/* The row of a key below SOURCE_COUNT. */
 const struct source_row *source_row(enum source_key key);
-const char *
-trust_text(enum trust trust); /* "seen", "second-hand", "recalled", "common practice" ... */
+
+/* "seen", "second-hand", "recalled", "common practice" ... */
+const char *trust_text(enum trust trust);
 
 #endif

@@ -17,6 +17,7 @@ const char *not_judged_words(const struct composition *composition, enum reason 
 /* "≤ 0.5 mA", "≥ 1 MΩ", "−10 % to +10 %"; NULL: no limit. */
 const char *held_limits(const struct composition *composition, const struct held *held);
 
+/* Fail or conditional fail. */
 bool held_fails(const struct held *held);
 
 /* "EN 50678 ...; seen in a text that quotes it": a source with its trust. NULL: none. */

@@ -10,6 +10,7 @@
    what: "the note of C14". */
 typedef void shown_text_visitor(void *data, const char *text, struct position at, const char *what);
 
+/* Call visit for each of them; data is handed on. */
 void shown_text_visit(const struct job *job, shown_text_visitor *visit, void *data);
 
 #endif

@@ -26,6 +26,7 @@ struct lettering {
     bool small;
 };
 
+/* Add a shape; points in units from the upper left corner, y downward. Points are copied. */
 void sketch_line(struct sketch *sketch, struct point from, struct point to, enum line_class line);
 void sketch_path(struct sketch *sketch, const struct point *points, size_t count,
                  enum line_class line);
@@ -63,6 +64,7 @@ double scale_step(double range, unsigned max_steps);
 /* A plain number for an axis: true minus, thin space from five digits on. */
 const char *scale_number(struct arena *arena, double value);
 
+/* Each draws its plot into a sketch whose drawing has a width, and sets the height. */
 void drawing_glance(struct sketch *sketch, const struct glance *glance);
 void drawing_curves(struct sketch *sketch, const struct curves *curves);
 void drawing_shares(struct sketch *sketch, const struct shares *shares);

@@ -35,6 +35,7 @@ struct font_streams {
 struct font_charset *font_charset_create(const struct font_face *face);
 void font_charset_destroy(struct font_charset *set);
 
+/* The face that the set was made on. */
 const struct font_face *font_charset_face(const struct font_charset *set);
 
 /*

@@ -24,6 +24,7 @@ void html_caption(struct html *html, const struct exhibit *exhibit, const char *
 /* A number of our own, at most 2 decimals. */
 void html_number(struct html *html, double value);
 
+/* One exhibit of its kind, from its opening to its closing tag. */
 void html_table(struct html *html, const struct exhibit *exhibit);
 void html_plot(struct html *html, const struct exhibit *exhibit);
 void html_plate(struct html *html, const struct exhibit *exhibit);

@@ -96,6 +96,7 @@ void flow_keep(struct flow *flow, size_t first);
 /* Where the baseline is in a line of this leading. */
 double line_baseline(double leading_pt, double size_pt);
 
+/* Put something into a strip; points from its upper left corner, y downward. */
 void strip_item(struct flow *flow, struct strip *strip, const struct item *item);
 void strip_rule(struct flow *flow, struct strip *strip, struct point from, struct point to,
                 double line_pt, enum ink ink);

@@ -57,6 +57,7 @@ void pdf_canvas_end(struct pdf_canvas *canvas);
 void pdf_canvas_text(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
                      const char *text, size_t length);
 
+/* Shapes; points in points from the upper left corner of the page, y downward. */
 void pdf_canvas_line(struct pdf_canvas *canvas, struct point from, struct point to, double line_pt,
                      enum ink ink);
 void pdf_canvas_path(struct pdf_canvas *canvas, const struct point *points, size_t count,

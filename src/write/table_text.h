@@ -31,6 +31,7 @@ struct table_text table_text_of(const struct table *table, const struct table_te
    on a terminal they run on over the columns behind. */
 bool table_text_runs_on(const struct table *table, size_t row, size_t column);
 
+/* The text of one cell; "" when it is empty. */
 const char *table_text_cell(const struct table_text *text, size_t row, size_t column);
 
 #endif

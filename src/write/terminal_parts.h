@@ -37,6 +37,8 @@ void terminal_continued(struct terminal *terminal, const char *text, struct inde
 void terminal_caption(struct terminal *terminal, const struct exhibit *exhibit,
                       const char *caption);
 
+/* As wide as the terminal: columns that do not fit go below their row by rank, blanks are left out.
+ */
 void terminal_table(struct terminal *terminal, const struct table *table);
 /* The picture of all capacitors with letters, shares as lines of text; curves: their numbers. */
 void terminal_plot(struct terminal *terminal, const struct exhibit *exhibit);
