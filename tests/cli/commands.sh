@@ -81,6 +81,20 @@ expect 0 "$program" assess --json "$example/2031-014.yaml" "$example/2029-003.ya
 [ "$(jq -r .job.number "$work/stdout" 2>/dev/null || jq -r .job "$work/stdout")" != null ] || say_failed "assess --json: no job"
 jq -e '.findings == 1 and .copy == "shop" and (.capacitors | length) > 10' "$work/stdout" >/dev/null ||
     say_failed "assess --json: not the keys of version 1"
+# The keys that the manual promises: unknown is null, never left out.
+jq -e -s 'def all_have($names): all(.[]; . as $one | all($names[]; . as $name | $one | has($name)));
+    ([.[].capacitors[]] | all_have(["ref", "can", "was", "type", "maker", "value_f", "rated_v", "place", "stage", "seen",
+        "state", "done", "outcome_found", "outcome", "advice", "service_v", "leakage_a", "leakage_warm_a",
+        "uncertainty_a", "limit_a", "bench_limit_a", "sheet_limit_a", "sheet_voltage_v", "effect", "criteria", "readings"])) and
+    ([.[].capacitors[].effect | values] | length > 10 and all_have(["key", "value", "unit", "text"])) and
+    ([.[].capacitors[].criteria[]] | length > 10 and
+        all_have(["key", "value", "unit", "uncertainty", "limit", "outcome", "source"])) and
+    ([.[].stages[] | .designed, .found, .left] | length > 10 and all_have(["grid_v", "cathode_v", "anode_v", "screen_v",
+        "anode_a", "screen_a", "cathode_a", "anode_w", "screen_w"])) and
+    ([.[].originality] | all_have(["kept", "of", "by_kind", "seen", "restuffed", "replaced", "replaced_unmeasured",
+        "earlier_repairs", "missing"])) and
+    ([.[].diagnostics[]] | length > 0 and all_have(["path", "line", "column", "severity", "code", "text", "hint"]))' \
+    "$work/stdout" >/dev/null || say_failed "assess --json: a key is left out"
 cat "$example/2029-003.yaml" >"$work/piped"
 expect 0 sh -c "'$program' assess --archive '$example' - <'$work/piped'"
 says '^Findings 2029-003'
