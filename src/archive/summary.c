@@ -57,10 +57,10 @@ static void take_capacitor(struct summary_work *work, size_t index)
 {
     const struct capacitor_findings *found = &work->findings->capacitors[index];
     const struct capacitor *part = found->part;
-    const struct can *can = part->can == NOT_LISTED ? NULL : &work->findings->job->cans[part->can];
+    const struct job *job = work->findings->job;
+    const struct can *can = part_can(job, part);
     bool as_found = !isnan(found->found_leakage_a);
     struct row *row = &work->rows[work->row_count++];
-    enum action done = part->done == DONE_OPEN && can ? can->done : part->done;
     *row = (struct row){{
         [PART_REF] = part->ref,
         [PART_KIND] = part_kind_text(KIND_CAPACITOR),
@@ -69,8 +69,8 @@ static void take_capacitor(struct summary_work *work, size_t index)
         [PART_MARKED] = part->marked.written,
         [PART_PLACE] = place_text(part->place),
         [PART_VALVES] = valves_of_part(work, part),
-        [PART_WAS] = origin_text(can ? can->was : part->was),
-        [PART_DONE] = action_text(done),
+        [PART_WAS] = origin_text(part_origin(job, part)),
+        [PART_DONE] = action_text(part_action(job, part)),
         [PART_OUTCOME] = outcome_text(found->outcome_found),
         [PART_LEFT] = outcome_text(found->outcome),
         [PART_LEAKAGE] =
@@ -79,7 +79,7 @@ static void take_capacitor(struct summary_work *work, size_t index)
         [PART_LIMIT] = micro_text(
             &work->arena, as_found ? found->found_limit_a : found->test_limit_a, BOUND_NONE),
         [PART_UNREAD] = found->replaced_unmeasured ? "unread" : NULL,
-        [PART_FITTED] = part->fitted.set || !can ? part->fitted.written : can->fitted.written,
+        [PART_FITTED] = part_fitted(job, part)->written,
         [PART_BATCH] = part->batch || !can ? part->batch : can->batch,
     }};
 }

@@ -13,25 +13,6 @@ static const double default_bench_c = 20;
 /* Peak of the secondary with the mains a tenth high. */
 static const double no_load_rise = 1.414 * 1.1;
 
-const struct instrument *instrument_of(const struct job *job, int index)
-{
-    return index >= 0 && (size_t)index < job->instrument_count ? &job->instruments[index] : NULL;
-}
-
-enum action part_action(const struct job *job, const struct capacitor *part)
-{
-    if (part->done != DONE_OPEN || part->can == NOT_LISTED)
-        return part->done;
-    return job->cans[part->can].done;
-}
-
-const struct marking *part_fitted(const struct job *job, const struct capacitor *part)
-{
-    if (part->fitted.set || part->can == NOT_LISTED)
-        return &part->fitted;
-    return &job->cans[part->can].fitted;
-}
-
 bool part_is_new(enum action done, const struct marking *fitted)
 {
     return done == DONE_RESTUFFED || done == DONE_REPLACED ||
@@ -104,11 +85,10 @@ static void other_rules(struct assessment *assessment, size_t index)
 static void set_state(struct assessment *assessment, size_t index)
 {
     struct capacitor_findings *part = &assessment->capacitors[index];
-    const struct can *can =
-        part->part->can == NOT_LISTED ? NULL : &assessment->job->cans[part->part->can];
+    const struct can *can = part_can(assessment->job, part->part);
     enum action done = assessment->work[index].done;
     bool own = part->part->done != DONE_OPEN;
-    struct part_story story = {.was = can ? can->was : part->part->was,
+    struct part_story story = {.was = part_origin(assessment->job, part->part),
                                .done = done,
                                .age = can && !own ? can->age : part->part->age,
                                .tested = part->deciding >= 0};

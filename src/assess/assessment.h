@@ -6,6 +6,7 @@
 
 #include "assess/judge.h"
 #include "assess/place.h"
+#include "job/part.h"
 
 /* One part being assessed, beside its findings. */
 struct part_work {
@@ -50,14 +51,8 @@ void advice_give(struct assessment *assessment, size_t index);
 /* place_effect.c: what the leak does there. leaks false: no reading, only what needs none. */
 void place_effects(struct assessment *assessment, size_t index);
 
-/* assess.c: a reading (its index among the part's) as leak.h wants it; the instrument with this
-   index, NULL: none named. */
+/* assess.c: a reading (its index among the part's) as leak.h wants it. */
 struct leak_case part_leak_case(const struct assessment *assessment, size_t index, int reading);
-const struct instrument *instrument_of(const struct job *job, int index);
-
-/* What was done with a capacitor, and what was fitted: the can's, where a section says nothing. */
-enum action part_action(const struct job *job, const struct capacitor *part);
-const struct marking *part_fitted(const struct job *job, const struct capacitor *part);
 
 /* Whether what works there since the work is new: what was read before does not speak of it. */
 bool part_is_new(enum action done, const struct marking *fitted);

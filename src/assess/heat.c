@@ -1,5 +1,7 @@
 #include "assess/heat.h"
 
+#include "job/part.h"
+
 #include "assess/temperature.h"
 
 #include <math.h>
@@ -18,9 +20,8 @@ double heat_surface(const struct dimensions *size)
 
 static const struct dimensions *case_of(const struct job *job, const struct capacitor *part)
 {
-    if (part->case_size.set || part->can == NOT_LISTED)
-        return &part->case_size;
-    return &job->cans[part->can].case_size;
+    const struct can *can = part_can(job, part);
+    return !part->case_size.set && can ? &can->case_size : &part->case_size;
 }
 
 bool heat_is_derived(const struct job *job, const struct capacitor *part)

@@ -12,12 +12,6 @@ bool visit_was_kept(enum action done)
     return done == DONE_KEPT || done == DONE_KEPT_UNTESTED || done == DONE_REFORMED;
 }
 
-static enum action done_of(const struct job *job, const struct capacitor *part)
-{
-    return part->can != NOT_LISTED && part->done == DONE_OPEN ? job->cans[part->can].done
-                                                              : part->done;
-}
-
 static bool is_usable(const struct reading *reading)
 {
     return !reading->in_circuit && !reading->hot.set && reading->set_volts.set &&
@@ -58,7 +52,7 @@ static void compare_leakage(const struct job *then_job, const struct capacitor *
                             const struct capacitor *now, struct visit_change *change)
 {
     /* What was read before the work does not speak of what works in the set since. */
-    bool left_only = action_is_change(done_of(then_job, then));
+    bool left_only = action_is_change(part_action(then_job, then));
     double nearest = INFINITY;
     for (size_t i = 0; i < then->reading_count; i++) {
         const struct reading *old = &then->readings[i];
@@ -133,7 +127,7 @@ static void compare_capacitors(const struct job *then, const struct job *now,
             const struct capacitor *old = &then->capacitors[i];
             if (!old->ref || strcasecmp(old->ref, part->ref) != 0)
                 continue;
-            enum action done = done_of(then, old);
+            enum action done = part_action(then, old);
             begin(VISIT_CAPACITOR, part->ref, done, &change)->capacitor = (int)j;
             compare_leakage(then, old, part, &change);
             /* `measured` of a part that was changed then may be the old one's. */

@@ -105,6 +105,34 @@ struct part part_of(const struct job *job, enum part_kind kind, size_t index)
     return (struct part){0};
 }
 
+const struct can *part_can(const struct job *job, const struct capacitor *part)
+{
+    return part->can == NOT_LISTED ? NULL : &job->cans[part->can];
+}
+
+enum action part_action(const struct job *job, const struct capacitor *part)
+{
+    const struct can *can = part_can(job, part);
+    return part->done == DONE_OPEN && can ? can->done : part->done;
+}
+
+const struct marking *part_fitted(const struct job *job, const struct capacitor *part)
+{
+    const struct can *can = part_can(job, part);
+    return !part->fitted.set && can ? &can->fitted : &part->fitted;
+}
+
+enum origin part_origin(const struct job *job, const struct capacitor *part)
+{
+    const struct can *can = part_can(job, part);
+    return can ? can->was : part->was;
+}
+
+const struct instrument *instrument_of(const struct job *job, int index)
+{
+    return index >= 0 && (size_t)index < job->instrument_count ? &job->instruments[index] : NULL;
+}
+
 bool action_is_change(enum action done)
 {
     return done == DONE_RESTUFFED || done == DONE_REPLACED || done == DONE_DISCONNECTED;

@@ -1,6 +1,7 @@
 /*
  * What the parts of a job have in common, whatever their kind: for those who list, count or print
- * parts of all kinds alike. What only one kind has stands in its own struct (job.h).
+ * parts of all kinds alike. What only one kind has stands in its own struct (job.h). And what a
+ * part says by pointing elsewhere in the job: to its can, to an instrument.
  */
 #ifndef JOB_PART_H
 #define JOB_PART_H
@@ -43,6 +44,19 @@ size_t part_count(const struct job *job, enum part_kind kind);
 
 /* The index-th part of the kind; index < part_count. */
 struct part part_of(const struct job *job, enum part_kind kind, size_t index);
+
+/* The can that holds a capacitor; NULL: it is a part by itself. */
+const struct can *part_can(const struct job *job, const struct capacitor *part);
+
+/* Of a capacitor, the can's where a section says nothing: what was done, what was fitted. */
+enum action part_action(const struct job *job, const struct capacitor *part);
+const struct marking *part_fitted(const struct job *job, const struct capacitor *part);
+
+/* How it came: a section as its can did. */
+enum origin part_origin(const struct job *job, const struct capacitor *part);
+
+/* The instrument with this index, as readings name it; NULL: none named. */
+const struct instrument *instrument_of(const struct job *job, int index);
 
 /* What works in the set since then is another part, or another inside: restuffed, replaced,
    disconnected. */

@@ -127,11 +127,9 @@ enum mark mark_of(enum outcome outcome);
 const char *date_text(const struct date *date);
 /* Indices of the capacitors in the order of places, those without a place last. */
 const size_t *capacitors_by_place(const struct composition *composition);
-/* What was done with a capacitor; of one in a can, with the can. */
+/* part_action and part_origin of the index-th capacitor. */
 enum action capacitor_done(const struct composition *composition, size_t index);
 enum origin capacitor_was(const struct composition *composition, size_t index);
-/* The instrument of a reading; NULL: none. */
-const struct instrument *reading_instrument(const struct job *job, const struct reading *reading);
 /* The current of a reading as typed: A; a resistance is turned into the current at its volts. */
 double reading_current(const struct reading *reading);
 

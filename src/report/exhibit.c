@@ -1,5 +1,7 @@
 #include "report/composition.h"
 
+#include "job/part.h"
+
 #include <stdlib.h>
 #include <string.h>
 
@@ -414,30 +416,14 @@ const size_t *capacitors_by_place(const struct composition *composition)
     return order;
 }
 
-static const struct can *can_of(const struct composition *composition, size_t index)
-{
-    int can = composition->findings->capacitors[index].part->can;
-    return can == NOT_LISTED ? NULL : &composition->job->cans[can];
-}
-
 enum action capacitor_done(const struct composition *composition, size_t index)
 {
-    const struct can *can = can_of(composition, index);
-    enum action own = composition->findings->capacitors[index].part->done;
-    return can && own == DONE_OPEN ? can->done : own;
+    return part_action(composition->job, composition->findings->capacitors[index].part);
 }
 
 enum origin capacitor_was(const struct composition *composition, size_t index)
 {
-    const struct can *can = can_of(composition, index);
-    return can ? can->was : composition->findings->capacitors[index].part->was;
-}
-
-const struct instrument *reading_instrument(const struct job *job, const struct reading *reading)
-{
-    return reading->instrument >= 0 && (size_t)reading->instrument < job->instrument_count
-               ? &job->instruments[reading->instrument]
-               : NULL;
+    return part_origin(composition->job, composition->findings->capacitors[index].part);
 }
 
 double reading_current(const struct reading *reading)

@@ -1,4 +1,5 @@
 /* The leakage table: every capacitor by its place, against its own limit. */
+#include "job/part.h"
 #include "report/leakage_notes.h"
 #include "report/phrases.h"
 
@@ -68,7 +69,7 @@ struct figures leakage_figures(const struct composition *composition,
         return bound_figures(composition, part);
     unsigned decimals = decimals_for(value, 1e-6, 3);
     const struct instrument *instrument =
-        reading_instrument(composition->job, part->readings[part->deciding].reading);
+        instrument_of(composition->job, part->readings[part->deciding].reading->instrument);
     if (instrument && instrument->resolution.set && instrument->resolution.unit == UNIT_CURRENT &&
         instrument->resolution.value > 0) {
         unsigned finest = decimals_for(instrument->resolution.value, 1e-6, 1);

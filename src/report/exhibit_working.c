@@ -4,6 +4,8 @@
  */
 #include "report/held_words.h"
 
+#include "job/part.h"
+
 #include <strings.h>
 
 enum { LINES_MAX = 60 };
@@ -62,7 +64,8 @@ static void add_reading(struct sheet_of_working *sheet, const struct capacitor_f
 {
     const struct reading_findings *found = &part->readings[part->deciding];
     const struct reading *reading = found->reading;
-    const struct instrument *instrument = reading_instrument(sheet->composition->job, reading);
+    const struct instrument *instrument =
+        instrument_of(sheet->composition->job, reading->instrument);
     add(sheet, "reading",
         FORMULA(sheet, "%s%s%s", reading->written, instrument ? ", " : "",
                 instrument ? instrument->name : ""),

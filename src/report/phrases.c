@@ -1,5 +1,6 @@
 #include "report/phrases.h"
 
+#include "job/part.h"
 #include "report/composition.h"
 
 #include <string.h>
@@ -137,7 +138,7 @@ static const char *resolution_text(const struct phrasing *say, const struct job 
     if (part->deciding < 0)
         return NULL;
     const struct instrument *instrument =
-        reading_instrument(job, part->readings[part->deciding].reading);
+        instrument_of(job, part->readings[part->deciding].reading->instrument);
     if (!instrument || !instrument->resolution.set)
         return NULL;
     if (instrument->resolution.unit == UNIT_CURRENT)

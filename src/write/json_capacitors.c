@@ -1,3 +1,4 @@
+#include "job/part.h"
 #include "write/json_pieces.h"
 
 #include <math.h>
@@ -138,10 +139,10 @@ static void write_identity(const struct findings *findings, const struct capacit
                            struct buffer *out)
 {
     const struct job *job = findings->job;
-    const struct can *can = part->can == NOT_LISTED ? NULL : &job->cans[part->can];
+    const struct can *can = part_can(job, part);
     json_text_member(out, "ref", part->ref);
     json_text_member(out, "can", can ? can->ref : NULL);
-    json_text_member(out, "was", origin_text(can ? can->was : part->was));
+    json_text_member(out, "was", origin_text(part_origin(job, part)));
     json_choice_member(out, "type", dielectric_text(part->type));
     json_text_member(out, "maker", part->maker ? part->maker : can ? can->maker : NULL);
     json_text_member(out, "marked", part->marked.set ? part->marked.written : NULL);
@@ -175,11 +176,11 @@ static void write_identity(const struct findings *findings, const struct capacit
 /* A section says what was done where the can does not. */
 static void write_action(const struct job *job, const struct capacitor *part, struct buffer *out)
 {
-    const struct can *can = part->can == NOT_LISTED ? NULL : &job->cans[part->can];
+    const struct can *can = part_can(job, part);
     /* what was done to the can was done to it */
     const struct can *of = part->done == DONE_OPEN ? can : NULL;
-    const struct marking *fitted = part->fitted.set || !can ? &part->fitted : &can->fitted;
-    json_choice_member(out, "done", action_text(of ? of->done : part->done));
+    const struct marking *fitted = part_fitted(job, part);
+    json_choice_member(out, "done", action_text(part_action(job, part)));
     json_text_member(out, "fitted", fitted->set ? fitted->written : NULL);
     json_choice_member(out, "fitted_type", fitted->set ? dielectric_text(fitted->type) : NULL);
     json_quantity_member(out, "fitted_f", &fitted->value);

@@ -61,6 +61,31 @@ static void every_kind(void **state)
     reading_release(&reading);
 }
 
+/* What is said of a can holds for its sections; C3 is in no can. */
+static void sections_of_a_can(void **state)
+{
+    (void)state;
+    struct reading_of_text reading;
+    read_text(&reading,
+              "job: 1\nset: {maker: x}\n"
+              "cans: {CAN1: {holds: C1 C2, was: earlier repair, done: restuffed, fitted: 22 uF}}\n"
+              "capacitors: {C1: {}, C2: {}, C3: {done: kept}}\n");
+    assert_int_equal(reading.diagnostics.errors, 0);
+    const struct job *job = reading.job;
+    const struct capacitor *parts = job->capacitors;
+    assert_ptr_equal(part_can(job, &parts[0]), &job->cans[0]);
+    assert_null(part_can(job, &parts[2]));
+    assert_int_equal(part_action(job, &parts[0]), DONE_RESTUFFED);
+    assert_int_equal(part_action(job, &parts[1]), DONE_RESTUFFED);
+    assert_int_equal(part_action(job, &parts[2]), DONE_KEPT);
+    assert_string_equal(part_fitted(job, &parts[0])->written, "22 uF");
+    assert_false(part_fitted(job, &parts[2])->set);
+    assert_int_equal(part_origin(job, &parts[1]), WAS_EARLIER_REPAIR);
+    assert_int_equal(part_origin(job, &parts[2]), WAS_ORIGINAL);
+    assert_null(instrument_of(job, NOT_LISTED));
+    reading_release(&reading);
+}
+
 static void changes(void **state)
 {
     (void)state;
@@ -72,6 +97,8 @@ static void changes(void **state)
 
 int main(void)
 {
-    const struct CMUnitTest tests[] = {cmocka_unit_test(every_kind), cmocka_unit_test(changes)};
+    const struct CMUnitTest tests[] = {cmocka_unit_test(every_kind),
+                                       cmocka_unit_test(sections_of_a_can),
+                                       cmocka_unit_test(changes)};
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
