@@ -45,7 +45,7 @@ struct policy {
     double reform_current_a;        /* 5e-3 ceiling */
     double reform_power_w;          /* 0.5 for a can */
     double winding_tolerance;       /* 0.15: windings without a marked tolerance */
-    double valve_least;              /* 0.60 of the tester's own good figure */
+    double valve_least;             /* 0.60 of the tester's own good figure */
     const char *leakage_rule;       /* "JAN-C-62" */
 };
 

@@ -45,8 +45,8 @@ struct document *report_compose(const struct findings *findings, enum document_k
                                 const struct report_picture *pictures, struct arena *arena,
                                 struct diagnostics *diagnostics);
 
-/* The calculation of one part line by line, from working.md; NULL after a template error, or when the
-   job has no part of that ref (a diagnostic). */
+/* The calculation of one part line by line, from working.md; NULL after a template error, or when
+   the job has no part of that ref (a diagnostic). */
 struct document *report_compose_working(const struct findings *findings, const char *ref,
                                         const struct templates *templates, struct arena *arena,
                                         struct diagnostics *diagnostics);

@@ -28,6 +28,8 @@ static const struct {
     {"advice", advice_choices, 1},
     {"advice_short", advice_choices, 1},
     {"over", criterion_key_choices, 0},
+    {"criterion", criterion_key_choices, 0},
+    {"held", outcome_choices, 0},
     {"copy", copy_choices, 0},
     {"supply", supply_choices, 1},
     {"effect", effects, 0},

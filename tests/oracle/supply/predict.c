@@ -1,5 +1,5 @@
-/* predict F_RIPPLE I C1 ESR1 RS LS C2 ESR2 R_LOAD: hum across the reservoir (V rms), the share of it
-   behind the section, and the textbook's peak to peak. */
+/* predict F_RIPPLE I C1 ESR1 RS LS C2 ESR2 R_LOAD: hum across the reservoir (V rms), the share of
+   it behind the section, and the textbook's peak to peak. */
 #include "assess/supply.h"
 
 #include <stdio.h>

@@ -979,7 +979,7 @@ static void sample_methods(struct document *document)
         {"cathode current", "book valve, Rk 150 Ω", "66.0 mA", "valve book, EL84"}};
     struct working *working =
         &sample_append(document, EXHIBIT_WORKING, "working-c17", NULL)->working;
-    *working = (struct working){"Working for C17", lines, SAMPLE_COUNT(lines)};
+    *working = (struct working){"Working for C17", lines, SAMPLE_COUNT(lines), false};
     sample_append(document, EXHIBIT_SMALL, "small", NULL);
     sample_prose(document,
                  "Leakage meter: 2 % + 0.01 µA, resolution 0.01 µA, 10 kΩ in series; compared "
