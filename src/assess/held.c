@@ -1,5 +1,6 @@
 #include "assess/held.h"
 
+#include "assess/accuracy.h"
 #include "assess/reading.h"
 #include "assess/uncertainty.h"
 #include "assess/verdict.h"
@@ -62,14 +63,7 @@ void held_judge(struct held *held, const struct policy *policy, enum bound bound
 double held_uncertainty(const struct job *job, const struct policy *policy,
                         const struct quantity *quantity)
 {
-    double share = policy->default_accuracy, absolute = reading_last_digit(quantity);
-    for (size_t i = 0; i < job->instrument_count; i++) {
-        const struct instrument *instrument = &job->instruments[i];
-        if (instrument->accuracy_set && instrument->accuracy_unit == quantity->unit) {
-            share = instrument->accuracy_percent / 100;
-            absolute = instrument->accuracy_absolute;
-            break;
-        }
-    }
-    return 2 * uncertainty_of_accuracy(quantity->value, share, absolute);
+    struct accuracy accuracy =
+        accuracy_in_job(job, quantity->unit, policy, reading_last_digit(quantity));
+    return 2 * uncertainty_of_accuracy(quantity->value, accuracy.share, accuracy.absolute);
 }

@@ -2,6 +2,7 @@
 #include "assess/reforming.h"
 
 #include "assess/absorption.h"
+#include "assess/accuracy.h"
 #include "assess/heat.h"
 #include "assess/held.h"
 #include "assess/numeric.h"
@@ -226,15 +227,12 @@ static double plateau_error(const struct log_case *log, const struct reform_step
     const struct decay *decay = &step->decay.laws[log->found->plateau_law];
     const struct decay *other = &step->decay.laws[1 - log->found->plateau_law];
     const struct instrument *instrument = instrument_at(log, step->first + step->count - 1);
-    double share = log->given->policy->default_accuracy, absolute_a = 0;
-    if (instrument && instrument->accuracy_set && instrument->accuracy_unit == UNIT_CURRENT) {
-        share = instrument->accuracy_percent / 100;
-        absolute_a = instrument->accuracy_absolute;
-    }
+    struct accuracy accuracy = accuracy_of(instrument, UNIT_CURRENT, log->given->policy, 0);
     double fit_a = numeric_t95((double)decay->freedom) * decay->steady_error_a;
     if (log->found->between_laws)
         fit_a = fmax(fit_a, decay->steady_a - other->steady_a);
-    return hypot(fit_a, 2 * uncertainty_of_accuracy(decay->steady_a, share, absolute_a));
+    return hypot(fit_a,
+                 2 * uncertainty_of_accuracy(decay->steady_a, accuracy.share, accuracy.absolute));
 }
 
 static void find_plateau(const struct log_case *log)

@@ -1,5 +1,6 @@
 #include "assess/stage.h"
 
+#include "assess/accuracy.h"
 #include "assess/uncertainty.h"
 
 #include <math.h>
@@ -17,12 +18,8 @@ static const double output_from_a = 15e-3;
    policy's default accuracy. */
 static double resistance_uncertainty(const struct job *job, const struct policy *policy, double ohm)
 {
-    for (size_t i = 0; i < job->instrument_count; i++)
-        if (job->instruments[i].accuracy_set &&
-            job->instruments[i].accuracy_unit == UNIT_RESISTANCE)
-            return uncertainty_of_accuracy(ohm, job->instruments[i].accuracy_percent / 100,
-                                           job->instruments[i].accuracy_absolute);
-    return uncertainty_of_accuracy(ohm, policy->default_accuracy, 0);
+    struct accuracy accuracy = accuracy_in_job(job, UNIT_RESISTANCE, policy, 0);
+    return uncertainty_of_accuracy(ohm, accuracy.share, accuracy.absolute);
 }
 
 static bool read_open(const struct job *job, const struct resistance *resistance)

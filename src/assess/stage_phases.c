@@ -4,6 +4,7 @@
  */
 #include "assess/assessment.h"
 
+#include "assess/accuracy.h"
 #include "assess/uncertainty.h"
 
 #include <math.h>
@@ -188,18 +189,15 @@ static void reconcile(const struct assessment *assessment, const struct stage_mo
     if (!grid->set || !explained->judged || !(leak_ohm > 0))
         return;
     const struct instrument *meter = voltmeter_of(assessment->job);
-    double share = assessment->policy->default_accuracy, absolute_v = reading_last_digit(grid);
-    if (meter && meter->accuracy_set && meter->accuracy_unit == UNIT_VOLTAGE) {
-        share = meter->accuracy_percent / 100;
-        absolute_v = meter->accuracy_absolute;
-    }
+    struct accuracy accuracy =
+        accuracy_of(meter, UNIT_VOLTAGE, assessment->policy, reading_last_digit(grid));
     double seen_ohm = meter ? 1 / (1 / leak_ohm + 1 / meter->input.value) : leak_ohm;
     double loading = seen_ohm / leak_ohm;
     double return_v = explained->solution.return_v;
     double most_v = fmax(explained->grid_cold_v, explained->grid_warm_v);
     double seen_most_v = return_v * loading + (most_v - return_v) * loading;
     double excess_v = grid->value - seen_most_v;
-    double u_v = 2 * uncertainty_of_accuracy(grid->value, share, absolute_v);
+    double u_v = 2 * uncertainty_of_accuracy(grid->value, accuracy.share, accuracy.absolute);
     if (excess_v <= u_v)
         return;
     findings->grid_current_a = excess_v / seen_ohm;
