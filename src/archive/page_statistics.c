@@ -136,14 +136,26 @@ static void fill_cells(const struct statistics_work *work, enum grouping groupin
     cells[8].figures = whole_figures(work, group->outcomes[OUTCOME_NOT_JUDGED]);
 }
 
+/* A table of the page with these columns; its cells are empty. */
+static struct table *begin_table(struct page_frame *frame, const char *id,
+                                 const struct column *columns, size_t column_count, size_t rows)
+{
+    struct table *table = &page_exhibit(frame, EXHIBIT_TABLE, id)->table;
+    *table = (struct table){.column_count = column_count, .row_count = rows, .lined = true};
+    table->columns = arena_array(frame->arena, column_count, sizeof *table->columns);
+    memcpy(table->columns, columns, column_count * sizeof *columns);
+    table->rows = arena_array(frame->arena, rows + 1, sizeof *table->rows);
+    for (size_t i = 0; i < rows; i++)
+        table->rows[i].cells = arena_array(frame->arena, column_count, sizeof(struct cell));
+    return table;
+}
+
 static void add_table(struct statistics_work *work, enum grouping grouping)
 {
     struct page_frame *frame = work->frame;
     const struct share_groups *groups = &work->statistics.groups[grouping];
     size_t rows = groups->count < TABLE_ROWS_MAX ? groups->count : TABLE_ROWS_MAX;
     const char *name = grouping_names[grouping];
-    struct exhibit *exhibit =
-        page_exhibit(frame, EXHIBIT_TABLE, arena_print(frame->arena, "table_%s", name));
     const struct column columns[] = {
         page_column(frame, name, COLUMN_REF, 19, 1),
         page_column(frame, "failed", COLUMN_NUMBER, 8, 1),
@@ -155,17 +167,11 @@ static void add_table(struct statistics_work *work, enum grouping grouping)
         page_column(frame, "if_unread", COLUMN_TEXT, 14, 2),
         page_column(frame, "not_judged", COLUMN_NUMBER, 8, 2),
     };
-    enum { COLUMNS = sizeof columns / sizeof *columns };
-    struct table *table = &exhibit->table;
-    *table = (struct table){.column_count = COLUMNS, .row_count = rows, .lined = true};
-    table->columns = arena_array(frame->arena, COLUMNS, sizeof *table->columns);
-    memcpy(table->columns, columns, sizeof columns);
+    struct table *table = begin_table(frame, arena_print(frame->arena, "table_%s", name), columns,
+                                      sizeof columns / sizeof *columns, rows);
     table->columns[4].unit = table->columns[5].unit = table->columns[7].unit = "%";
-    table->rows = arena_array(frame->arena, rows + 1, sizeof *table->rows);
-    for (size_t i = 0; i < rows; i++) {
-        table->rows[i].cells = arena_array(frame->arena, COLUMNS, sizeof(struct cell));
+    for (size_t i = 0; i < rows; i++)
         fill_cells(work, grouping, &groups->groups[i], table->rows[i].cells);
-    }
     table->caption = say(work, arena_print(frame->arena, "table.%s", name));
     if (rows < groups->count)
         table->remark = phrase(&frame->say, "statistics.more_rows", "count",
@@ -270,7 +276,6 @@ static void add_drift(struct statistics_work *work)
     const struct statistics *statistics = &work->statistics;
     if (statistics->drift_count == 0)
         return;
-    struct exhibit *exhibit = page_exhibit(frame, EXHIBIT_TABLE, "table_drift");
     const struct column columns[] = {
         page_column(frame, "kept_parts", COLUMN_REF, 20, 1),
         page_column(frame, "parts", COLUMN_NUMBER, 9, 1),
@@ -279,18 +284,12 @@ static void add_drift(struct statistics_work *work)
         page_column(frame, "leakage_drift", COLUMN_TEXT, 27, 2),
         page_column(frame, "value_drift", COLUMN_TEXT, 26, 2),
     };
-    enum { COLUMNS = sizeof columns / sizeof *columns };
-    struct table *table = &exhibit->table;
-    *table = (struct table){
-        .column_count = COLUMNS, .row_count = statistics->drift_count, .lined = true};
-    table->columns = arena_array(frame->arena, COLUMNS, sizeof *table->columns);
-    memcpy(table->columns, columns, sizeof columns);
-    table->rows = arena_array(frame->arena, statistics->drift_count, sizeof *table->rows);
+    struct table *table = begin_table(frame, "table_drift", columns,
+                                      sizeof columns / sizeof *columns, statistics->drift_count);
     for (size_t i = 0; i < statistics->drift_count; i++) {
         const struct drift_group *group = &statistics->drifts[i];
-        struct cell *cells = arena_array(frame->arena, COLUMNS, sizeof *cells);
+        struct cell *cells = table->rows[i].cells;
         bool other = strcmp(group->label, "resistor") == 0 || strcmp(group->label, "winding") == 0;
-        table->rows[i].cells = cells;
         cells[0].text = other ? say(work, group->label) : label_text(work, BY_TYPE, group->label);
         cells[1].figures = whole_figures(work, group->parts);
         if (!other) {
