@@ -260,21 +260,21 @@ static bool render(struct composition *composition, const struct source *templat
     return mustache_render(template, values_of(composition), &target, composition->text);
 }
 
-static struct document *compose(struct composition *composition)
+static struct document *compose(struct composition composition)
 {
     struct buffer text = {0};
-    size_t errors = composition->diagnostics->errors;
-    const char *name = template_name(composition->kind);
-    const struct source *template = templates_find(composition->templates, name);
+    size_t errors = composition.diagnostics->errors;
+    const char *name = template_name(composition.kind);
+    const struct source *template = templates_find(composition.templates, name);
     struct document *document = NULL;
-    composition->text = &text;
+    composition.text = &text;
     if (!template)
-        diagnostic_add(composition->diagnostics, NULL, (struct position){0, 0},
+        diagnostic_add(composition.diagnostics, NULL, (struct position){0, 0},
                        DIAGNOSTIC_FILE_UNREADABLE, NULL, "there is no templates/%s", name);
-    else if (render(composition, template))
-        document = make_document(composition, build_tree(composition, template));
+    else if (render(&composition, template))
+        document = make_document(&composition, build_tree(&composition, template));
     buffer_release(&text);
-    if (document && composition->diagnostics->errors > errors) {
+    if (document && composition.diagnostics->errors > errors) {
         document_release(document);
         document = NULL;
     }
@@ -297,7 +297,7 @@ struct document *report_compose(const struct findings *findings, enum document_k
         .diagnostics = diagnostics,
         .say = {templates_words(templates), arena, diagnostics},
     };
-    return compose(&composition);
+    return compose(composition);
 }
 
 struct document *report_compose_working(const struct findings *findings, const char *ref,
@@ -321,7 +321,7 @@ struct document *report_compose_working(const struct findings *findings, const c
         return NULL;
     }
     composition.working_of = number + 1;
-    return compose(&composition);
+    return compose(composition);
 }
 
 struct document *report_compose_manual(const struct shop *shop, const struct templates *templates,
