@@ -177,16 +177,19 @@ void exhibit_hum(struct composition *composition, size_t index)
     static const struct column_plan plan[] = {
         {"ref", NULL, NULL, COLUMN_REF, 9, 1},
         {"fed_through", NULL, "fed_through", COLUMN_TEXT, 17, 2},
-        {"calculated_found", "V", "calculated_found", COLUMN_NUMBER, 13, 1},
-        {"measured_found", "V", "measured_found", COLUMN_NUMBER, 13, 1},
-        {"calculated_left", "V", "calculated_left", COLUMN_NUMBER, 13, 1},
-        {"measured_left", "V", "measured_left", COLUMN_NUMBER, 13, 1},
-        {"change", NULL, "change", COLUMN_TEXT, 22, 2},
+        {"found", NULL, "calculated_found", COLUMN_NUMBER, 12, 1},
+        {"found", NULL, "measured_found", COLUMN_NUMBER, 12, 1},
+        {"left", NULL, "calculated_left", COLUMN_NUMBER, 12, 1},
+        {"left", NULL, "measured_left", COLUMN_NUMBER, 12, 1},
+        {"change", NULL, "change", COLUMN_TEXT, 26, 2},
     };
     const struct bench_findings *bench = bench_of(composition);
     struct table_builder builder =
         table_begin(composition, "hum", plan, sizeof plan / sizeof *plan);
     builder.table->lined = true;
+    for (size_t i = 2; i <= 5; i++)
+        builder.table->columns[i].unit =
+            phrase(&composition->say, i % 2 ? "head.measured_v" : "head.calculated_v", NULL);
     for (size_t i = 0; i < bench->node_count; i++) {
         const struct supply_node *node = &bench->nodes[i];
         struct cell *cells = table_row(&builder);

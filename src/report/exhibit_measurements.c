@@ -123,7 +123,7 @@ static void hold_safety(struct table_builder *builder, const struct safety_findi
     cells[2].strong = held_fails(&found->second);
     table_note(builder, &cells[3], source_words(composition, found->value.source));
     if (isfinite(found->predicted_a))
-        table_note(builder, &cells[1],
+        table_note(builder, &cells[0],
                    phrase(say, "safety.predicted", "current",
                           text_unit(composition, found->predicted_a, UNIT_CURRENT, 2), NULL));
 }

@@ -104,7 +104,7 @@ void exhibit_resistors(struct composition *composition, size_t index)
                        phrase(&composition->say, "note.resistor_outside", "reason",
                               text_stopped(composition->arena, part->reason.text), NULL));
         if (part->marked.colours_unknown)
-            table_note(&builder, &cells[1],
+            table_note(&builder, &cells[0],
                        phrase(&composition->say, "note.colours_unknown", "colours",
                               part->marked.colours, NULL));
         else if (part->marked.colours)
@@ -112,7 +112,7 @@ void exhibit_resistors(struct composition *composition, size_t index)
                 &builder, &cells[1],
                 phrase(&composition->say, "note.colours", "colours", part->marked.colours, NULL));
         if (composition->findings->bench.resistors)
-            resistor_notes(&builder, &composition->findings->bench.resistors[i], &cells[4]);
+            resistor_notes(&builder, &composition->findings->bench.resistors[i], &cells[0]);
         table_note(
             &builder, &cells[0],
             text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
@@ -134,7 +134,7 @@ static void winding_figures(struct table_builder *builder, const struct winding_
     }
     cells[4].strong = held_fails(&found->insulation);
     if (held_fails(&found->insulation))
-        table_note(builder, &cells[4],
+        table_note(builder, &cells[0],
                    phrase(&composition->say, "note.winding_insulation", "limit",
                           held_limits(composition, &found->insulation), "source",
                           source_words(composition, found->insulation.source), NULL));
