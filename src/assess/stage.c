@@ -518,7 +518,30 @@ static void solve_bare(struct stage_group *group)
                 group->bare[phase][i].status = SOLVE_IMPOSSIBLE;
 }
 
-/* One step for each measured resistor; a shared one moves in all stages that share it. */
+/* Whether two stages of the group share this resistor. */
+static bool is_shared(const struct stage_group *group, size_t a, size_t b, int which)
+{
+    return same_node(circuit_node(&group->circuits[PHASE_FOUND][a], which),
+                     circuit_node(&group->circuits[PHASE_FOUND][b], which));
+}
+
+/* The group as found with one resistor moved by its uncertainty, in all stages that share it. */
+static void add_step(struct stage_group *group, struct stage_step *steps, size_t stage, int which,
+                     double u_ohm)
+{
+    for (size_t before = 0; before < stage; before++)
+        if (is_shared(group, before, stage, which))
+            return; /* moved already */
+    struct stage_step *step = &steps[group->step_count];
+    memcpy(step->circuits, group->circuits[PHASE_FOUND], sizeof step->circuits);
+    for (size_t i = stage; i < group->count; i++)
+        if (i == stage || is_shared(group, i, stage, which))
+            *circuit_resistor(&step->circuits[i], which) += u_ohm;
+    if (stages_solve(step->circuits, group->count, step->bare) != SOLVE_IMPOSSIBLE)
+        group->step_count++;
+}
+
+/* One step for each measured resistor. */
 static void make_steps(const struct builder *builder, struct stage_group *group)
 {
     struct stage_step *steps =
@@ -526,21 +549,8 @@ static void make_steps(const struct builder *builder, struct stage_group *group)
     for (size_t i = 0; i < group->count; i++)
         for (int which = 0; which < STAGE_RESISTOR_COUNT; which++) {
             double u_ohm = builder->models[group->members[i]].resistor_u_ohm[which];
-            int node = circuit_node(&group->circuits[PHASE_FOUND][i], which);
-            bool before = false;
-            for (size_t j = 0; j < i; j++)
-                before = before ||
-                         same_node(node, circuit_node(&group->circuits[PHASE_FOUND][j], which));
-            if (u_ohm <= 0 || before)
-                continue;
-            struct stage_step *step = &steps[group->step_count];
-            memcpy(step->circuits, group->circuits[PHASE_FOUND], sizeof step->circuits);
-            for (size_t j = i; j < group->count; j++)
-                if (j == i ||
-                    same_node(node, circuit_node(&group->circuits[PHASE_FOUND][j], which)))
-                    *circuit_resistor(&step->circuits[j], which) += u_ohm;
-            if (stages_solve(step->circuits, group->count, step->bare) != SOLVE_IMPOSSIBLE)
-                group->step_count++;
+            if (u_ohm > 0)
+                add_step(group, steps, i, which, u_ohm);
         }
     group->steps = steps;
 }
