@@ -31,12 +31,12 @@ static void add(struct sheet_of_working *sheet, const char *key, const char *for
 
 static const char *amps(const struct sheet_of_working *sheet, double ampere)
 {
-    return text_micro(sheet->composition->arena, ampere, 4);
+    return text_micro(sheet->composition->arena, ampere, 3);
 }
 
 static const char *figure(const struct sheet_of_working *sheet, double value, enum unit unit)
 {
-    return isfinite(value) ? quantity_text(sheet->composition->arena, value, unit, 4) : NULL;
+    return text_unit(sheet->composition, value, unit, 4);
 }
 
 static const char *plain(const struct sheet_of_working *sheet, double value, unsigned digits)

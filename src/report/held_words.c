@@ -51,6 +51,8 @@ const char *source_words(const struct composition *composition, enum source_key 
     const struct source_row *row = source_row(source);
     if (source == SOURCE_NONE)
         return NULL;
+    if (source == SOURCE_JOB) /* the reader has it in hand */
+        return row->title;
     return arena_print(composition->arena, "%s; %s", row->title,
                        trust_words(composition, row->trust));
 }

@@ -119,6 +119,8 @@ static void write_policy(const struct policy *policy, struct buffer *out)
         {"volts_accuracy", policy->volts_accuracy},
         {"reform_current_a", policy->reform_current_a},
         {"reform_power_w", policy->reform_power_w},
+        {"winding_tolerance", policy->winding_tolerance},
+        {"valve_least", policy->valve_least},
     };
     json_open(out, "policy", '{');
     for (size_t i = 0; i < sizeof members / sizeof members[0]; i++)

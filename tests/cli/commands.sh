@@ -76,6 +76,15 @@ for job in "$example"/2*.yaml; do
     expect 0 "$program" sheet "$job"
     python3 "$here/columns.py" 80 <"$work/stdout" || say_failed "sheet $job is wider than 80 columns"
 done
+expect 0 "$program" assess --working c14 "$example/2031-014.yaml"
+says 'Working of C14'
+says 'V_c = V_set'
+says 'RCA'
+python3 "$here/columns.py" 80 <"$work/stdout" || say_failed "assess --working is wider than 80 columns"
+expect 0 "$program" assess --working R8 "$example/2031-014.yaml"
+says 'Off its marking'
+expect 2 "$program" assess --working C99 "$example/2031-014.yaml"
+tells "no part 'C99' in this job"
 expect 0 "$program" assess --json "$example/2031-014.yaml" "$example/2029-003.yaml"
 [ "$(wc -l <"$work/stdout")" = 2 ] || say_failed "assess --json: not one object a line"
 [ "$(jq -r .job.number "$work/stdout" 2>/dev/null || jq -r .job "$work/stdout")" != null ] || say_failed "assess --json: no job"
