@@ -131,14 +131,17 @@ static void gather_summaries(struct pages_work *work)
 {
     const struct pages_request *request = work->request;
     const char *path = arena_print(&work->arena, "%s/summaries.jsonl", request->output);
-    if (request->changed && pages_are_whole(request->output, request->setting))
+    /* NULL: no line of the old file may be taken over. */
+    const struct job_names *changed =
+        pages_are_whole(request->output, request->setting) ? request->changed : NULL;
+    if (changed)
         file_read(path, SUMMARIES_BYTES_MAX, &work->old);
     buffer_reserve(&work->summaries, work->old.length + 4096);
     const char *at = work->old.data;
     for (size_t i = 0; i < work->names.count; i++) {
         const char *name = work->names.names[i];
         struct old_line line;
-        if (work->old.length && !is_listed(request->changed, name) &&
+        if (changed && work->old.length && !is_listed(changed, name) &&
             find_old_line(&work->old, &at, name, &line)) {
             buffer_append(&work->summaries, line.text, line.length);
             buffer_byte(&work->summaries, '\n');

@@ -3,6 +3,7 @@
 #include "job/field.h"
 #include "job/yaml_tree.h"
 
+#include <assert.h>
 #include <string.h>
 
 enum { COMMENT_COLUMN = 33, COMMENT_WIDTH = 100 };
@@ -235,6 +236,7 @@ static void field_write(struct draft draft, const struct field *field, const str
 /* Of a part that is kept only its own blanks are asked for, not every fact it might have. */
 static void record_write(struct draft draft, const struct record *record, const struct node *like)
 {
+    assert(record->fields);
     for (size_t i = 0; i < record->field_count; i++) {
         const struct field *field = &record->fields[i];
         const struct node *child = like ? node_child(like, field->key) : NULL;

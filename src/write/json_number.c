@@ -10,6 +10,7 @@
  */
 #include "write/json.h"
 
+#include <assert.h>
 #include <math.h>
 #include <stdbool.h>
 #include <stdio.h>
@@ -187,6 +188,7 @@ static void printed_digits(double value, struct digits *digits)
     for (; *c != 'e'; c++)
         if (*c != '.')
             digits->text[digits->count++] = *c;
+    assert(digits->count > 0); /* %e always prints one */
     digits->exponent10 = (int)strtol(c + 1, NULL, 10) - (digits->count - 1);
 }
 

@@ -68,9 +68,10 @@ static void compose_letterhead(struct composer *composer, const struct title_blo
 {
     double block = block_width(composer);
     double logo = 0, logo_height = mm(11);
-    if (title->logo && title->logo->picture) {
-        logo = smaller(picture_width(title->logo, logo_height), block / 4);
-        logo_height = logo / picture_width(title->logo, 1);
+    const struct plate_picture *picture = title->logo && title->logo->picture ? title->logo : NULL;
+    if (picture) {
+        logo = smaller(picture_width(picture, logo_height), block / 4);
+        logo_height = logo / picture_width(picture, 1);
     }
     double indent = logo > 0 ? logo + mm(4) : 0;
     struct row_box boxes[2] = {
@@ -86,8 +87,8 @@ static void compose_letterhead(struct composer *composer, const struct title_blo
         return;
     struct row_setting setting = {.type = {8, 11}, .least_height = logo > 0 ? logo_height : 0};
     struct strip *strip = compose_row(composer, boxes, 2, &setting);
-    if (logo > 0)
-        put_picture(composer, strip, title->logo, (struct point){0, 0}, logo_height);
+    if (picture)
+        put_picture(composer, strip, picture, (struct point){0, 0}, logo_height);
 }
 
 static void compose_title(struct composer *composer, const struct title_block *title)
