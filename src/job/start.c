@@ -3,7 +3,6 @@
 #include "job/field.h"
 #include "job/yaml_tree.h"
 
-#include <assert.h>
 #include <string.h>
 
 enum { COMMENT_COLUMN = 33, COMMENT_WIDTH = 100 };
@@ -192,8 +191,9 @@ static void table_write(struct draft draft, const struct field *field, const str
     buffer_print(draft.out, "%s:\n", field->key);
     draft.indent += 2;
     for (const struct node *child = like->first; child; child = child->next) {
-        if (!field->record->fields && child->kind == NODE_SCALAR) {
-            line_without_readings(draft, child);
+        if (!field->record->fields) { /* one line an entry; anything else there was a mistake */
+            if (child->kind == NODE_SCALAR)
+                line_without_readings(draft, child);
             continue;
         }
         line_begin(&draft);
@@ -236,8 +236,7 @@ static void field_write(struct draft draft, const struct field *field, const str
 /* Of a part that is kept only its own blanks are asked for, not every fact it might have. */
 static void record_write(struct draft draft, const struct record *record, const struct node *like)
 {
-    assert(record->fields);
-    for (size_t i = 0; i < record->field_count; i++) {
+    for (size_t i = 0; record->fields && i < record->field_count; i++) {
         const struct field *field = &record->fields[i];
         const struct node *child = like ? node_child(like, field->key) : NULL;
         bool absent = record->keyed && field->chassis && (!child || node_is_empty(child));

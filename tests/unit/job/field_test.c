@@ -273,12 +273,33 @@ static void test_start_like(void **state)
     arena_release(&arena);
 }
 
+/* A mapping or a list where one line stands is no entry of its table: not kept. */
+static void test_start_like_mistaken(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    struct buffer text = {0};
+    static const char mistaken[] = "voltages:\n  points:\n    V4 anode: sheet 248 V\n"
+                                   "    V5 anode:\n      sheet: 90 V\n    V6 anode: [90 V]\n";
+    const struct source like = {"0.yaml", mistaken, sizeof mistaken - 1};
+    start_text(&text, &arena, &like);
+    assert_non_null(strstr(buffer_string(&text), "V4 anode: sheet 248 V"));
+    assert_null(strstr(buffer_string(&text), "V5 anode"));
+    assert_null(strstr(buffer_string(&text), "V6 anode"));
+    buffer_release(&text);
+    arena_release(&arena);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
-        cmocka_unit_test(test_rows),   cmocka_unit_test(test_examples),
-        cmocka_unit_test(test_manual), cmocka_unit_test(test_schema),
-        cmocka_unit_test(test_start),  cmocka_unit_test(test_start_like),
+        cmocka_unit_test(test_rows),
+        cmocka_unit_test(test_examples),
+        cmocka_unit_test(test_manual),
+        cmocka_unit_test(test_schema),
+        cmocka_unit_test(test_start),
+        cmocka_unit_test(test_start_like),
+        cmocka_unit_test(test_start_like_mistaken),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
