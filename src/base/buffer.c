@@ -6,15 +6,12 @@
 #include <stdarg.h>
 #include <stdio.h>
 #include <stdlib.h>
-#include <string.h>
 
-void buffer_reserve(struct buffer *buffer, size_t more_bytes)
+void buffer_enlarge(struct buffer *buffer, size_t more_bytes)
 {
     size_t needed = buffer->length + more_bytes;
     if (needed < more_bytes)
         memory_exhausted();
-    if (needed <= buffer->capacity)
-        return;
     size_t capacity = buffer->capacity ? buffer->capacity : 256;
     while (capacity < needed)
         capacity *= 2;
@@ -22,38 +19,22 @@ void buffer_reserve(struct buffer *buffer, size_t more_bytes)
     buffer->capacity = capacity;
 }
 
-void buffer_append(struct buffer *buffer, const void *data, size_t length)
-{
-    if (length == 0)
-        return;
-    buffer_reserve(buffer, length);
-    memcpy(buffer->data + buffer->length, data, length);
-    buffer->length += length;
-}
-
-void buffer_text(struct buffer *buffer, const char *text)
-{
-    buffer_append(buffer, text, strlen(text));
-}
-
-void buffer_byte(struct buffer *buffer, char byte)
-{
-    buffer_reserve(buffer, 1);
-    buffer->data[buffer->length++] = byte;
-}
-
 void buffer_print(struct buffer *buffer, const char *format, ...)
 {
+    enum { USUAL_BYTES = 128 };
     va_list arguments, again;
     va_start(arguments, format);
     va_copy(again, arguments);
-    int length = vsnprintf(NULL, 0, format, again);
+    buffer_reserve(buffer, USUAL_BYTES);
+    size_t room = buffer->capacity - buffer->length;
+    int length = vsnprintf(buffer->data + buffer->length, room, format, again);
     va_end(again);
-    if (length > 0) {
+    if (length > 0 && (size_t)length >= room) {
         buffer_reserve(buffer, (size_t)length + 1);
         vsnprintf(buffer->data + buffer->length, (size_t)length + 1, format, arguments);
-        buffer->length += (size_t)length;
     }
+    if (length > 0)
+        buffer->length += (size_t)length;
     va_end(arguments);
 }
 
@@ -102,12 +83,6 @@ void buffer_fixed(struct buffer *buffer, double value, unsigned decimals)
     long long rest = scaled % unit;
     for (long long place = unit / 10; place > 0; place /= 10)
         buffer_byte(buffer, (char)('0' + rest / place % 10));
-}
-
-void buffer_be16(struct buffer *buffer, uint16_t value)
-{
-    buffer_byte(buffer, (char)(value >> 8));
-    buffer_byte(buffer, (char)(value & 255));
 }
 
 const char *buffer_string(struct buffer *buffer)

@@ -7,6 +7,7 @@
 
 #include <stddef.h>
 #include <stdint.h>
+#include <string.h>
 
 struct buffer {
     char *data; /* not NUL-terminated, unless buffer_string was called last */
@@ -14,14 +15,41 @@ struct buffer {
     size_t capacity;
 };
 
+/* Larger memory, for buffer_reserve. */
+void buffer_enlarge(struct buffer *buffer, size_t more_bytes);
+
+/* The appends below are inline: a job's files are made of half a million of them, most of a byte or
+   a short literal, whose length the compiler then knows. */
+
 /* Make room for more_bytes behind the present end. */
-void buffer_reserve(struct buffer *buffer, size_t more_bytes);
+static inline void buffer_reserve(struct buffer *buffer, size_t more_bytes)
+{
+    if (buffer->capacity - buffer->length < more_bytes)
+        buffer_enlarge(buffer, more_bytes);
+}
 
 /* Append bytes; a text; one byte; what printf makes; a decimal number. Texts end with NUL, and
    their NUL is not appended. */
-void buffer_append(struct buffer *buffer, const void *data, size_t length);
-void buffer_text(struct buffer *buffer, const char *text);
-void buffer_byte(struct buffer *buffer, char byte);
+static inline void buffer_append(struct buffer *buffer, const void *data, size_t length)
+{
+    if (length == 0)
+        return;
+    buffer_reserve(buffer, length);
+    memcpy(buffer->data + buffer->length, data, length);
+    buffer->length += length;
+}
+
+static inline void buffer_text(struct buffer *buffer, const char *text)
+{
+    buffer_append(buffer, text, strlen(text));
+}
+
+static inline void buffer_byte(struct buffer *buffer, char byte)
+{
+    buffer_reserve(buffer, 1);
+    buffer->data[buffer->length++] = byte;
+}
+
 void buffer_print(struct buffer *buffer, const char *format, ...)
     __attribute__((format(printf, 2, 3)));
 void buffer_decimal(struct buffer *buffer, long long value);
@@ -34,7 +62,11 @@ void buffer_hex(struct buffer *buffer, uint32_t value, unsigned digits);
 void buffer_fixed(struct buffer *buffer, double value, unsigned decimals);
 
 /* Two bytes, high byte first. */
-void buffer_be16(struct buffer *buffer, uint16_t value);
+static inline void buffer_be16(struct buffer *buffer, uint16_t value)
+{
+    const char bytes[2] = {(char)(value >> 8), (char)(value & 255)};
+    buffer_append(buffer, bytes, sizeof bytes);
+}
 
 /* The contents with a NUL behind them; valid until the next append. */
 const char *buffer_string(struct buffer *buffer);

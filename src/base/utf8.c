@@ -1,6 +1,6 @@
 #include "base/utf8.h"
 
-uint32_t utf8_next(const char **cursor, const char *end)
+uint32_t utf8_next_long(const char **cursor, const char *end)
 {
     const unsigned char *at = (const unsigned char *)*cursor;
     size_t left = (size_t)(end - *cursor);

@@ -132,6 +132,36 @@ static void buffers_grow(void **state)
     assert_null(out.data);
 }
 
+/* Against the C library's own printf: texts joined, other formats, longer than any first guess. */
+static void printed_texts_are_those_of_printf(void **state)
+{
+    (void)state;
+    static const char *const joining[] = {"",       "plain", "%s",     "%s.%s",  "%s%s%s",
+                                          "a%sb%s", "%s/",   "%s.%sx", "(%s) %s"};
+    static const char *const other[] = {"%s %d%%", "%.2s %04d", "%%%s", "%10s|%d"};
+    static const size_t lengths[] = {0, 1, 20, 126, 127, 128, 129, 254, 255, 256, 257, 5000};
+    struct arena arena = {0};
+    for (size_t i = 0; i < sizeof lengths / sizeof *lengths; i++) {
+        char *text = arena_get(&arena, lengths[i] + 1), expected[20000];
+        memset(text, 'x', lengths[i]);
+        for (size_t j = 0; j < sizeof joining / sizeof *joining; j++) {
+            snprintf(expected, sizeof expected, joining[j], text, "yz", text);
+            assert_string_equal(arena_print(&arena, joining[j], text, "yz", text), expected);
+        }
+        for (size_t j = 0; j < sizeof other / sizeof *other; j++) {
+            struct buffer out = {0};
+            snprintf(expected, sizeof expected, other[j], text, -17);
+            assert_string_equal(arena_print(&arena, other[j], text, -17), expected);
+            buffer_text(&out, "before");
+            buffer_print(&out, other[j], text, -17);
+            assert_int_equal(out.length, strlen("before") + strlen(expected));
+            assert_string_equal(buffer_string(&out) + strlen("before"), expected);
+            buffer_release(&out);
+        }
+    }
+    arena_release(&arena);
+}
+
 static void arenas_hold_pieces_apart(void **state)
 {
     (void)state;
@@ -166,6 +196,7 @@ int main(void)
         cmocka_unit_test(hashes_are_sha256),
         cmocka_unit_test(fixed_numbers_agree_with_printf),
         cmocka_unit_test(buffers_grow),
+        cmocka_unit_test(printed_texts_are_those_of_printf),
         cmocka_unit_test(arenas_hold_pieces_apart),
     };
     return cmocka_run_group_tests_name("text", tests, NULL, NULL);
