@@ -2,7 +2,6 @@
 
 #include "base/memory.h"
 #include "base/utf8.h"
-#include "write/deflate.h"
 
 #include <stdio.h>
 #include <stdlib.h>
@@ -113,7 +112,7 @@ static void write_name(struct font_streams *streams, const struct font_charset *
 }
 
 static enum font_status write_program(struct font_streams *streams, const struct font_charset *set,
-                                      int level)
+                                      struct deflater *deflater)
 {
     uint16_t *glyphs = memory_get(2 * set->count * sizeof *glyphs);
     uint16_t *subset_glyphs = glyphs + set->count;
@@ -127,11 +126,11 @@ static enum font_status write_program(struct font_streams *streams, const struct
         memory_exhausted(); /* the face could be cut when it was opened */
     if (status == FONT_OK) {
         streams->program_length = plain.length;
-        deflate_append(&streams->program, plain.data, plain.length, level);
+        deflate_append(deflater, &streams->program, plain.data, plain.length);
         buffer_clear(&plain);
         for (size_t cid = 0; cid < set->count; cid++)
             buffer_be16(&plain, subset_glyphs[cid]);
-        deflate_append(&streams->glyph_map, plain.data, plain.length, level);
+        deflate_append(deflater, &streams->glyph_map, plain.data, plain.length);
     }
     buffer_release(&plain);
     free(glyphs);
@@ -239,23 +238,25 @@ static void write_to_unicode(struct buffer *cmap, const struct font_charset *set
     buffer_release(&range.entries);
 }
 
-enum font_status font_charset_seal(struct font_charset *set, int level)
+enum font_status font_charset_seal(struct font_charset *set, struct deflater *deflater)
 {
     if (set->sealed)
         return FONT_OK;
     struct font_streams streams = {.name = ""};
-    enum font_status status = write_program(&streams, set, level);
+    enum font_status status = write_program(&streams, set, deflater);
     if (status != FONT_OK) {
         release_streams(&streams);
         return status;
     }
     write_name(&streams, set);
     write_widths(&streams.widths, set);
-    write_cid_set(&streams.cid_set, set);
-    struct buffer cmap = {0};
-    write_to_unicode(&cmap, set);
-    deflate_append(&streams.to_unicode, cmap.data, cmap.length, level);
-    buffer_release(&cmap);
+    struct buffer plain = {0};
+    write_cid_set(&plain, set);
+    deflate_append(deflater, &streams.cid_set, plain.data, plain.length);
+    buffer_clear(&plain);
+    write_to_unicode(&plain, set);
+    deflate_append(deflater, &streams.to_unicode, plain.data, plain.length);
+    buffer_release(&plain);
     set->streams = streams;
     set->sealed = true;
     return FONT_OK;

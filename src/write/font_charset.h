@@ -13,6 +13,7 @@
 #define WRITE_FONT_CHARSET_H
 
 #include "base/buffer.h"
+#include "write/deflate.h"
 #include "write/font_face.h"
 
 #include <stdbool.h>
@@ -27,7 +28,7 @@ struct font_streams {
     size_t program_length;    /* the same before deflating */
     struct buffer glyph_map;  /* CIDToGIDMap, deflated */
     struct buffer to_unicode; /* ToUnicode CMap, deflated */
-    struct buffer cid_set;    /* CIDSet, plain */
+    struct buffer cid_set;    /* CIDSet, deflated */
     struct buffer widths;     /* text of the W array */
 };
 
@@ -45,10 +46,10 @@ const struct font_face *font_charset_face(const struct font_charset *set);
 uint16_t font_charset_add(struct font_charset *set, uint32_t code_point);
 
 /*
- * Make the streams and seal the set. level: of deflation, 1 to 12.
+ * Make the streams and seal the set.
  * On failure the set stays open and as it was. Sealing twice does nothing.
  */
-enum font_status font_charset_seal(struct font_charset *set, int level);
+enum font_status font_charset_seal(struct font_charset *set, struct deflater *deflater);
 
 /* NULL before the set is sealed. */
 const struct font_streams *font_charset_streams(const struct font_charset *set);

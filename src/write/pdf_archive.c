@@ -155,8 +155,11 @@ bool colour_profile_read(const char *path, struct colour_profile *profile)
     /* ICC.1 header: byte 8 major version, 16-19 colour space, 36-39 signature */
     good = good && plain.length >= 128 && plain.data[8] == 2 &&
            memcmp(plain.data + 16, "RGB ", 4) == 0 && memcmp(plain.data + 36, "acsp", 4) == 0;
-    if (good)
-        deflate_append(&profile->deflated, plain.data, plain.length, COMPRESSION_LEVEL);
+    if (good) {
+        struct deflater deflater = deflater_open(COMPRESSION_LEVEL);
+        deflate_append(&deflater, &profile->deflated, plain.data, plain.length);
+        deflater_close(&deflater);
+    }
     buffer_release(&plain);
     return good;
 }

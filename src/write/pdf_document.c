@@ -128,7 +128,7 @@ static void report_missing(const struct document *document, const struct pdf_fon
 struct making {
     const struct document *document;
     const struct pdf_resources *resources;
-    int level;
+    struct deflater deflater;
     struct arena arena;
     struct pdf_error error;
     struct pdf_fonts fonts;
@@ -148,13 +148,14 @@ static void draw(struct making *making)
     struct page_plan plan = flow_paginate(&composer.flow);
     struct page_writer writer = {.file = making->file,
                                  .fonts = &making->fonts,
+                                 .deflater = &making->deflater,
                                  .document = making->document,
                                  .geometry = &geometry,
                                  .accent = accent_of(making->document->accent),
                                  .arena = &making->arena,
                                  .hash = {0xCBF29CE484222325u, 0x84222325CBF29CE4u}};
     pdf_pages_draw(&writer, &plan);
-    enum font_status status = pdf_fonts_finish(&making->fonts, writer.resources, making->level);
+    enum font_status status = pdf_fonts_finish(&making->fonts, writer.resources, &making->deflater);
     if (status != FONT_OK)
         HPDF_RaiseError(&making->file->error, HPDF_INVALID_FONTDEF_DATA, (HPDF_STATUS)status);
     describe(making->file, making->document);
@@ -165,11 +166,12 @@ static void draw(struct making *making)
 bool pdf_write(const struct document *document, const struct pdf_resources *resources, int level,
                struct buffer *out, struct diagnostics *diagnostics)
 {
-    struct making making = {.document = document, .resources = resources, .level = level};
+    struct making making = {
+        .document = document, .resources = resources, .deflater = deflater_open(level)};
     making.file = pdf_file_create(&making.error);
     making.fonts = (struct pdf_fonts){.document = making.file, .resources = resources};
     draw(&making);
-    HPDF_STATUS status = pdf_file_save(making.file, level, out);
+    HPDF_STATUS status = pdf_file_save(making.file, out);
     if (status == HPDF_OK)
         report_missing(document, &making.fonts, diagnostics);
     else
@@ -179,6 +181,7 @@ bool pdf_write(const struct document *document, const struct pdf_resources *reso
                        (unsigned long)making.error.detail);
     HPDF_Free(making.file);
     pdf_fonts_release(&making.fonts);
+    deflater_close(&making.deflater);
     arena_release(&making.arena);
     return status == HPDF_OK;
 }

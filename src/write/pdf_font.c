@@ -39,7 +39,7 @@ static HPDF_Dict create_descriptor(HPDF_Doc document, const struct font_charset 
     HPDF_Dict_AddNumber(descriptor, "XHeight", metrics->x_height);
     HPDF_Dict_AddNumber(descriptor, "StemV", metrics->stem_v);
     HPDF_Dict_Add(descriptor, "FontFile2", program);
-    HPDF_Dict_Add(descriptor, "CIDSet", pdf_stream(document, &streams->cid_set));
+    HPDF_Dict_Add(descriptor, "CIDSet", pdf_stream_deflated(document, &streams->cid_set));
     return descriptor;
 }
 
@@ -75,9 +75,9 @@ static HPDF_Dict create_descendant(HPDF_Doc document, struct font_charset *set)
 }
 
 enum font_status pdf_font_finish(HPDF_Doc document, HPDF_Dict font, struct font_charset *set,
-                                 int level)
+                                 struct deflater *deflater)
 {
-    enum font_status status = font_charset_seal(set, level);
+    enum font_status status = font_charset_seal(set, deflater);
     if (status != FONT_OK)
         return status;
     const struct font_streams *streams = font_charset_streams(set);

@@ -14,10 +14,10 @@
 HPDF_Dict pdf_font_begin(HPDF_Doc document);
 
 /*
- * All text is shown: subset the face, seal the set and fill the font in. level: of deflation. The
- * set must outlive the document. On failure the font stays empty and the file must not be saved.
+ * All text is shown: subset the face, seal the set and fill the font in. The set must outlive the
+ * document. On failure the font stays empty and the file must not be saved.
  */
 enum font_status pdf_font_finish(HPDF_Doc document, HPDF_Dict font, struct font_charset *set,
-                                 int level);
+                                 struct deflater *deflater);
 
 #endif

@@ -112,13 +112,13 @@ static bool is_before_unit(uint32_t before, const char *at, const char *end)
     return false;
 }
 
-/* Whether a line may end behind code_point, which is no space. */
-static bool breaks_behind(uint32_t before, uint32_t code_point, uint32_t after)
+/* Whether a line may end behind code_point, which is no space; `at` is where the next begins. */
+static bool breaks_behind(uint32_t before, uint32_t code_point, const char *at, const char *end)
 {
     if (code_point == EM_DASH)
         return true;
     return (code_point == '-' || code_point == EN_DASH || code_point == '/') && is_letter(before) &&
-           is_letter(after);
+           is_letter(look_ahead(at, end));
 }
 
 static const char *run_end(const struct breaker *breaker, size_t run)
@@ -214,7 +214,7 @@ static struct spot break_line(struct breaker *breaker, struct spot from)
                 add_line(breaker, from, end_of_line);
                 return skip_spaces(breaker, end_of_line);
             }
-            if (breaks_behind(before, code_point, look_ahead(at.at, end))) {
+            if (breaks_behind(before, code_point, at.at, end)) {
                 candidate = at;
                 has_candidate = true;
             }

@@ -2,10 +2,8 @@
 
 #include "base/memory.h"
 #include "base/utf8.h"
-#include "write/deflate.h"
 
 #include <stdlib.h>
-#include <string.h>
 
 static void *allocate(HPDF_UINT size_bytes)
 {
@@ -28,63 +26,24 @@ HPDF_Doc pdf_file_create(struct pdf_error *error)
     return document;
 }
 
-static HPDF_STATUS write_flate_filter(HPDF_Dict dict, HPDF_Stream stream)
+/* libharu's own stream in memory copies byte by byte, once more for the file. */
+static HPDF_STATUS append_to_file(HPDF_Stream stream, const HPDF_BYTE *bytes, HPDF_UINT length)
 {
-    (void)dict;
-    return HPDF_Stream_WriteStr(stream, "/Filter /FlateDecode\n");
+    buffer_append(stream->attr, bytes, length);
+    return HPDF_OK;
 }
 
-static void append_stream(struct buffer *buffer, HPDF_Stream stream)
-{
-    HPDF_UINT count = HPDF_MemStream_GetBufCount(stream);
-    for (HPDF_UINT i = 0; i < count; i++) {
-        HPDF_UINT length;
-        const HPDF_BYTE *data = HPDF_MemStream_GetBufPtr(stream, i, &length);
-        buffer_append(buffer, data, length);
-    }
-}
-
-/* libharu would deflate with zlib at its default level: twice the time for the same size. */
-static void deflate_stream(HPDF_Dict dict, int level)
-{
-    struct buffer plain = {0};
-    struct buffer deflated = {0};
-    append_stream(&plain, dict->stream);
-    deflate_append(&deflated, plain.data, plain.length, level);
-    HPDF_MemStream_FreeData(dict->stream);
-    HPDF_Stream_Write(dict->stream, (const HPDF_BYTE *)deflated.data, (HPDF_UINT)deflated.length);
-    dict->write_fn = write_flate_filter;
-    buffer_release(&plain);
-    buffer_release(&deflated);
-}
-
-static HPDF_BOOL is_plain_stream(const void *object)
-{
-    const HPDF_Obj_Header *header = object;
-    if ((header->obj_class & HPDF_OCLASS_ANY) != HPDF_OCLASS_DICT)
-        return HPDF_FALSE;
-    HPDF_Dict dict = (HPDF_Dict)header;
-    if (!dict->stream || dict->filter != HPDF_STREAM_FILTER_NONE || dict->write_fn)
-        return HPDF_FALSE;
-    HPDF_Name type = HPDF_Dict_GetItem(dict, "Type", HPDF_OCLASS_NAME);
-    return !type || strcmp(type->value, "Metadata") != 0;
-}
-
-HPDF_STATUS pdf_file_save(HPDF_Doc document, int level, struct buffer *file)
+HPDF_STATUS pdf_file_save(HPDF_Doc document, struct buffer *file)
 {
     const struct pdf_error *error = document->error.user_data;
     if (HPDF_GetError(document) != HPDF_OK)
         return error->code != HPDF_OK ? error->code : HPDF_GetError(document);
-    for (HPDF_UINT i = 1; i < document->xref->entries->count; i++) {
-        HPDF_XrefEntry entry = HPDF_Xref_GetEntry(document->xref, i);
-        if (is_plain_stream(entry->obj))
-            deflate_stream(entry->obj, level);
-    }
+    size_t before = file->length;
+    document->stream = HPDF_CallbackWriter_New(document->mmgr, append_to_file, file);
     HPDF_STATUS status = HPDF_SaveToStream(document);
     if (status != HPDF_OK)
-        return status;
-    append_stream(file, document->stream);
-    return HPDF_OK;
+        file->length = before;
+    return status;
 }
 
 HPDF_Dict pdf_stream(HPDF_Doc document, const struct buffer *plain)
@@ -94,11 +53,26 @@ HPDF_Dict pdf_stream(HPDF_Doc document, const struct buffer *plain)
     return dict;
 }
 
+static HPDF_STATUS write_flate_filter(HPDF_Dict dict, HPDF_Stream stream)
+{
+    (void)dict;
+    return HPDF_Stream_WriteStr(stream, "/Filter /FlateDecode\n");
+}
+
 HPDF_Dict pdf_stream_deflated(HPDF_Doc document, const struct buffer *deflated)
 {
     HPDF_Dict dict = pdf_stream(document, deflated);
     dict->write_fn = write_flate_filter;
     return dict;
+}
+
+void pdf_stream_fill(HPDF_Dict dict, const struct buffer *plain, struct deflater *deflater)
+{
+    struct buffer deflated = {0};
+    deflate_append(deflater, &deflated, plain->data, plain->length);
+    HPDF_Stream_Write(dict->stream, (const HPDF_BYTE *)deflated.data, (HPDF_UINT)deflated.length);
+    dict->write_fn = write_flate_filter;
+    buffer_release(&deflated);
 }
 
 void *pdf_text_string(HPDF_Doc document, const char *utf8, size_t length)
@@ -125,12 +99,17 @@ void *pdf_text_string(HPDF_Doc document, const char *utf8, size_t length)
     return object;
 }
 
-HPDF_Image pdf_image(HPDF_Doc document, const struct picture *picture)
+HPDF_Image pdf_image(HPDF_Doc document, const struct picture *picture, struct deflater *deflater)
 {
-    HPDF_Dict image = pdf_stream(document, &picture->data);
+    HPDF_Dict image = HPDF_DictStream_New(document->mmgr, document->xref);
     image->header.obj_class |= HPDF_OSUBCLASS_XOBJECT;
-    if (picture->kind == PICTURE_JPEG)
+    if (picture->kind == PICTURE_JPEG) {
+        HPDF_Stream_Write(image->stream, (const HPDF_BYTE *)picture->data.data,
+                          (HPDF_UINT)picture->data.length);
         image->filter = HPDF_STREAM_FILTER_DCT_DECODE;
+    } else {
+        pdf_stream_fill(image, &picture->data, deflater);
+    }
     HPDF_Dict_AddName(image, "Type", "XObject");
     HPDF_Dict_AddName(image, "Subtype", "Image");
     HPDF_Dict_AddNumber(image, "Width", (HPDF_INT32)picture->width_px);

@@ -60,7 +60,7 @@ static unsigned image_number(struct page_writer *writer, const struct picture *p
     hash_contents(writer, &picture->data);
     char name[24];
     snprintf(name, sizeof name, "I%zu", writer->picture_count);
-    HPDF_Dict_Add(writer->images, name, pdf_image(writer->file, picture));
+    HPDF_Dict_Add(writer->images, name, pdf_image(writer->file, picture, writer->deflater));
     return (unsigned)writer->picture_count++;
 }
 
@@ -192,8 +192,7 @@ static void finish_page(struct page *page)
     pdf_canvas_end(&page->canvas);
     hash_contents(page->writer, &page->canvas.contents);
     HPDF_PageAttr attributes = page->page->attr;
-    HPDF_Stream_Write(attributes->contents->stream, (const HPDF_BYTE *)page->canvas.contents.data,
-                      (HPDF_UINT)page->canvas.contents.length);
+    pdf_stream_fill(attributes->contents, &page->canvas.contents, page->writer->deflater);
     pdf_canvas_release(&page->canvas);
 }
 

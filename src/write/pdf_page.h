@@ -14,6 +14,7 @@ struct page_geometry page_geometry_of(const struct document *document);
 struct page_writer {
     HPDF_Doc file;
     struct pdf_fonts *fonts;
+    struct deflater *deflater;
     const struct document *document;
     const struct page_geometry *geometry;
     struct rgb accent;

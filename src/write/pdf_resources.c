@@ -37,6 +37,7 @@ struct pdf_resources *pdf_resources_open(const char *folder, struct diagnostics 
     struct pdf_resources *resources = memory_get_cleared(1, sizeof *resources);
     bool good = open_faces(resources, folder, diagnostics);
     if (good) {
+        pdf_text_prepare(resources);
         char *path = arena_print(diagnostics->arena, "%s/sRGB.icc", folder);
         good = colour_profile_read(path, &resources->srgb);
         if (!good)

@@ -21,22 +21,18 @@ static const enum text_face chains[FACE_COUNT][CHAIN_MAX] = {
     [FACE_FALLBACK_OBLIQUE] = {FACE_FALLBACK_OBLIQUE, FACE_FALLBACK, FACE_MONO, FACE_FALLBACK},
 };
 
-struct glyph_place {
-    enum text_face face;
-    uint32_t code_point;
-    uint16_t glyph; /* 0: no face has it */
-};
-
 static struct glyph_place find_in_chain(const struct pdf_resources *resources, enum text_face face,
                                         uint32_t code_point)
 {
-    for (size_t i = 0; i < CHAIN_MAX; i++) {
-        enum text_face tried = chains[face][i];
-        uint16_t glyph = font_face_glyph(resources->faces[tried], code_point);
-        if (glyph != 0)
-            return (struct glyph_place){tried, code_point, glyph};
+    struct glyph_place place = {.face = FACE_FALLBACK, .code_point = code_point};
+    for (size_t i = 0; i < CHAIN_MAX && place.glyph == 0; i++) {
+        place.glyph = font_face_glyph(resources->faces[chains[face][i]], code_point);
+        if (place.glyph != 0)
+            place.face = chains[face][i];
     }
-    return (struct glyph_place){FACE_FALLBACK, code_point, 0};
+    place.advance = font_face_advance(resources->faces[place.face], place.glyph);
+    place.missing = place.glyph == 0;
+    return place;
 }
 
 /* Controls have glyphs of no width in some faces; a reader should see that there is something. */
@@ -45,24 +41,25 @@ static bool is_control(uint32_t code_point)
     return code_point < 0x20 || (code_point >= 0x7F && code_point < 0xA0);
 }
 
-static struct glyph_place find_glyph(const struct pdf_resources *resources, enum text_face face,
-                                     uint32_t code_point, bool *missing)
+struct glyph_place pdf_find_glyph(const struct pdf_resources *resources, enum text_face face,
+                                  uint32_t code_point)
 {
-    struct glyph_place place = {FACE_FALLBACK, code_point, 0};
+    struct glyph_place place = {.missing = true};
     if (!is_control(code_point))
         place = find_in_chain(resources, face, code_point);
-    *missing = place.glyph == 0;
-    if (*missing)
+    if (place.missing) {
         place = find_in_chain(resources, face, 0xFFFD);
+        place.missing = true;
+    }
     return place;
 }
 
-unsigned pdf_character_width(const struct pdf_resources *resources, enum text_face face,
-                             uint32_t code_point)
+void pdf_text_prepare(struct pdf_resources *resources)
 {
-    bool missing;
-    struct glyph_place place = find_glyph(resources, face, code_point, &missing);
-    return font_face_advance(resources->faces[place.face], place.glyph);
+    for (int face = 0; face < FACE_COUNT; face++)
+        for (uint32_t code_point = 0; code_point < LATIN_COUNT; code_point++)
+            resources->latin[face][code_point] =
+                pdf_find_glyph(resources, (enum text_face)face, code_point);
 }
 
 unsigned long pdf_text_width(const struct pdf_resources *resources, enum text_face face,
@@ -99,24 +96,34 @@ static struct font_charset *set_of(struct pdf_fonts *fonts, enum text_face face)
 enum text_face pdf_text_encode(struct pdf_fonts *fonts, enum text_face face, const char **text,
                                const char *end, struct buffer *codes)
 {
+    const struct pdf_resources *resources = fonts->resources;
     enum text_face shown = FACE_COUNT;
+    struct font_charset *set = NULL;
     while (*text < end) {
         const char *next = *text;
         uint32_t code_point = utf8_next(&next, end);
-        bool missing;
-        struct glyph_place place = find_glyph(fonts->resources, face, code_point, &missing);
-        if (shown != FACE_COUNT && place.face != shown)
+        struct glyph_place rare;
+        const struct glyph_place *place = &rare;
+        if (code_point < LATIN_COUNT)
+            place = &resources->latin[face][code_point];
+        else
+            rare = pdf_find_glyph(resources, face, code_point);
+        if (shown != FACE_COUNT && place->face != shown)
             break;
-        shown = place.face;
-        if (missing)
+        if (shown == FACE_COUNT) {
+            shown = place->face;
+            set = set_of(fonts, shown);
+        }
+        if (place->missing)
             note_missing(fonts, code_point);
-        buffer_be16(codes, font_charset_add(set_of(fonts, shown), place.code_point));
+        buffer_be16(codes, font_charset_add(set, place->code_point));
         *text = next;
     }
     return shown;
 }
 
-enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_dict, int level)
+enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_dict,
+                                  struct deflater *deflater)
 {
     HPDF_Dict names = HPDF_Dict_New(fonts->document->mmgr);
     HPDF_Dict_Add(resources_dict, "Font", names);
@@ -124,7 +131,7 @@ enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_d
         if (!fonts->sets[face])
             continue;
         enum font_status status =
-            pdf_font_finish(fonts->document, fonts->fonts[face], fonts->sets[face], level);
+            pdf_font_finish(fonts->document, fonts->fonts[face], fonts->sets[face], deflater);
         if (status != FONT_OK)
             return status;
         char name[8];

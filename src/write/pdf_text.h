@@ -26,8 +26,20 @@ enum text_face {
     FACE_COUNT
 };
 
+/* What shows a character: a glyph of one of the faces. */
+struct glyph_place {
+    enum text_face face;
+    uint32_t code_point; /* U+FFFD in place of a missing one */
+    uint16_t glyph;
+    uint16_t advance; /* in thousandths of the size */
+    bool missing;     /* no face has the character */
+};
+
+enum { LATIN_COUNT = 256 }; /* U+0000 to U+00FF: nearly all of a text */
+
 struct pdf_resources {
     struct font_face *faces[FACE_COUNT];
+    struct glyph_place latin[FACE_COUNT][LATIN_COUNT]; /* found once and for all */
     struct colour_profile srgb;
 };
 
@@ -44,13 +56,25 @@ struct pdf_fonts {
     size_t ill_formed; /* bytes that are not UTF-8 */
 };
 
+/* Find the places of the Latin characters, once the faces are open. */
+void pdf_text_prepare(struct pdf_resources *resources);
+
 /* Width in thousandths of the size: exactly what showing the text moves the pen by. */
 unsigned long pdf_text_width(const struct pdf_resources *resources, enum text_face face,
                              const char *text, size_t length);
 
-/* The same for one character, UTF8_ILL_FORMED allowed. */
-unsigned pdf_character_width(const struct pdf_resources *resources, enum text_face face,
-                             uint32_t code_point);
+/* Where the character is found, UTF8_ILL_FORMED allowed. */
+struct glyph_place pdf_find_glyph(const struct pdf_resources *resources, enum text_face face,
+                                  uint32_t code_point);
+
+/* The same as pdf_text_width for one character, UTF8_ILL_FORMED allowed. */
+static inline unsigned pdf_character_width(const struct pdf_resources *resources,
+                                           enum text_face face, uint32_t code_point)
+{
+    if (code_point < LATIN_COUNT)
+        return resources->latin[face][code_point].advance;
+    return pdf_find_glyph(resources, face, code_point).advance;
+}
 
 /*
  * Append the codes (two bytes each) of the characters from *text on that one face shows, and move
@@ -60,7 +84,8 @@ enum text_face pdf_text_encode(struct pdf_fonts *fonts, enum text_face face, con
                                const char *end, struct buffer *codes);
 
 /* Complete the font objects and name them F0, F1 ... by face in `resources_dict`. */
-enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_dict, int level);
+enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_dict,
+                                  struct deflater *deflater);
 
 /* After the document is freed. */
 void pdf_fonts_release(struct pdf_fonts *fonts);

@@ -224,7 +224,9 @@ static bool read_font(const struct buffer *file)
         struct font_charset *set = font_charset_create(face);
         for (uint32_t code_point = 0x20; code_point < 0x400; code_point++)
             font_charset_add(set, code_point);
-        font_charset_seal(set, 1);
+        struct deflater deflater = deflater_open(1);
+        font_charset_seal(set, &deflater);
+        deflater_close(&deflater);
         font_charset_destroy(set);
         font_face_close(face);
     }
