@@ -1,6 +1,5 @@
 #include "archive/folder_image.h"
 
-#include "base/hash.h"
 #include "base/memory.h"
 
 #include <dirent.h>
@@ -19,7 +18,21 @@ struct buffer *folder_image_add(struct folder_image *image, const char *name)
     size_t length = strlen(name) + 1;
     file->name = memcpy(memory_get(length), name, length);
     file->contents = (struct buffer){0};
+    file->hashed = false;
     return &file->contents;
+}
+
+static struct hash hash_once(struct image_file *file)
+{
+    if (!file->hashed)
+        file->hash = hash_of(file->contents.data, file->contents.length);
+    file->hashed = true;
+    return file->hash;
+}
+
+struct hash folder_image_hash_last(struct folder_image *image)
+{
+    return hash_once(&image->files[image->count - 1]);
 }
 
 static int by_name(const void *a, const void *b)
@@ -32,8 +45,8 @@ void folder_image_manifest(struct folder_image *image, struct buffer *manifest)
     if (image->count)
         qsort(image->files, image->count, sizeof *image->files, by_name);
     for (size_t i = 0; i < image->count; i++) {
-        const struct image_file *file = &image->files[i];
-        struct hash hash = hash_of(file->contents.data, file->contents.length);
+        struct image_file *file = &image->files[i];
+        struct hash hash = hash_once(file);
         char text[HASH_TEXT_BYTES];
         hash_text(&hash, text);
         buffer_print(manifest, "%s  %s\n", text, file->name);

@@ -7,10 +7,13 @@
 
 #include "base/buffer.h"
 #include "base/file.h"
+#include "base/hash.h"
 
 struct image_file {
     char *name; /* relative, "pictures/01.jpg" */
     struct buffer contents;
+    bool hashed; /* the contents are complete and `hash` is theirs */
+    struct hash hash;
 };
 
 /* {0} is empty and valid. */
@@ -21,6 +24,9 @@ struct folder_image {
 
 /* A new empty file; fill what is returned before the next call. name is copied. */
 struct buffer *folder_image_add(struct folder_image *image, const char *name);
+
+/* The hash of the file added last, now that it is complete; the manifest takes it from here. */
+struct hash folder_image_hash_last(struct folder_image *image);
 
 /* Append the lines of `sha256sum` for all files, sorted by name. */
 void folder_image_manifest(struct folder_image *image, struct buffer *manifest);

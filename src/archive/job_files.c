@@ -3,7 +3,6 @@
 #include "archive/photographs.h"
 #include "archive/summary.h"
 #include "archive/visits.h"
-#include "base/hash.h"
 #include "write/json.h"
 
 #include <string.h>
@@ -108,9 +107,8 @@ static bool add_record(const struct copy_work *work, enum copy copy, const char 
 {
     struct findings *findings = findings_for_copy(work->opened->findings, copy, work->arena);
     findings->diagnostics = placeless(work);
-    struct buffer *json = folder_image_add(image, "findings.json");
-    json_write_findings(findings, json);
-    struct hash hash = hash_of(json->data, json->length);
+    json_write_findings(findings, folder_image_add(image, "findings.json"));
+    struct hash hash = folder_image_hash_last(image);
     char *fingerprint = arena_get(work->arena, HASH_TEXT_BYTES);
     hash_text(&hash, fingerprint);
     findings->fingerprint = fingerprint;
