@@ -72,6 +72,8 @@ static const double powers[] = {1e0,  1e1,  1e2,  1e3,  1e4,  1e5,  1e6,  1e7,
                                 1e8,  1e9,  1e10, 1e11, 1e12, 1e13, 1e14, 1e15,
                                 1e16, 1e17, 1e18, 1e19, 1e20, 1e21, 1e22};
 
+#define LOG10_OF_2 0.30102999566398119
+
 static double times_power(double value, int exponent)
 {
     for (; exponent > 22; exponent -= 22)
@@ -91,12 +93,10 @@ static double round_half_up(double value)
 /* The power of ten of the first figure after rounding to `digits` figures; value > 0. */
 static int leading_power(double value, unsigned digits)
 {
-    int exponent = (int)floor(log10(value));
-    /* log10 may err by one next to a power of ten. */
-    if (times_power(value, -exponent) >= 10 * (1 - 1e-13))
+    /* From the power of two: never too high, and too low by one at most. */
+    int exponent = (int)floor(ilogb(value) * LOG10_OF_2);
+    while (times_power(value, -exponent) >= 10 * (1 - 1e-13))
         exponent++;
-    else if (times_power(value, -exponent) < 1 - 1e-13)
-        exponent--;
     double figures = round_half_up(times_power(value, (int)digits - 1 - exponent));
     return figures >= powers[digits] ? exponent + 1 : exponent;
 }

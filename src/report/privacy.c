@@ -26,9 +26,44 @@ struct search {
     bool found;
 };
 
-/* Without case and accents, runs of space as one, but line ends kept as '\n' when told so. */
+/* Runs of space as one, none at the end; line ends kept as '\n' when told so. In place. */
+static const char *close_gaps(char *text, bool keep_lines)
+{
+    char *end = text;
+    for (const char *at = text; *at; at++) {
+        bool space = *at == ' ' || *at == '\t' || *at == '\r' || (*at == '\n' && !keep_lines);
+        if (!space)
+            *end++ = *at;
+        else if (end > text && end[-1] != ' ' && end[-1] != '\n')
+            *end++ = ' ';
+    }
+    while (end > text && (end[-1] == ' ' || end[-1] == '\n'))
+        end--;
+    *end = '\0';
+    return text;
+}
+
+/* A copy in small letters, NULL when not all is ASCII. */
+static char *fold_ascii(struct arena *arena, const char *text)
+{
+    size_t length = 0;
+    while (text[length] > 0)
+        length++;
+    if (text[length] != '\0')
+        return NULL;
+    char *copy = arena_text(arena, text, length);
+    for (char *at = copy; *at; at++)
+        if (*at >= 'A' && *at <= 'Z')
+            *at = (char)(*at - 'A' + 'a');
+    return copy;
+}
+
+/* Without case and accents, gaps closed. */
 static const char *fold(struct arena *arena, const char *text, bool keep_lines)
 {
+    char *ascii = fold_ascii(arena, text); /* most texts are, and the tables of Unicode are slow */
+    if (ascii)
+        return close_gaps(ascii, keep_lines);
     utf8proc_uint8_t *folded = NULL;
     utf8proc_ssize_t length =
         utf8proc_map((const utf8proc_uint8_t *)text, 0, &folded,
@@ -38,21 +73,9 @@ static const char *fold(struct arena *arena, const char *text, bool keep_lines)
         memory_exhausted();
     if (length < 0)
         return arena_copy(arena, text);
-    char *copy = arena_get(arena, (size_t)length + 1);
-    size_t used = 0;
-    for (utf8proc_ssize_t i = 0; i < length; i++) {
-        char c = (char)folded[i];
-        bool space = c == ' ' || c == '\t' || c == '\r' || (c == '\n' && !keep_lines);
-        if (!space)
-            copy[used++] = c;
-        else if (used && copy[used - 1] != ' ' && copy[used - 1] != '\n')
-            copy[used++] = ' ';
-    }
-    while (used && (copy[used - 1] == ' ' || copy[used - 1] == '\n'))
-        used--;
-    copy[used] = '\0';
+    char *copy = arena_text(arena, (const char *)folded, (size_t)length);
     free(folded);
-    return copy;
+    return close_gaps(copy, keep_lines);
 }
 
 /* A letter or digit of any script begins here. */

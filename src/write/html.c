@@ -8,11 +8,6 @@
 #include <stdlib.h>
 #include <string.h>
 
-void html_raw(struct html *html, const char *markup)
-{
-    buffer_text(html->out, markup);
-}
-
 void html_text(struct html *html, const char *text)
 {
     escape_html(html->out, text);

@@ -16,7 +16,10 @@ struct html {
 };
 
 /* Raw markup of our own. */
-void html_raw(struct html *html, const char *markup);
+static inline void html_raw(struct html *html, const char *markup)
+{
+    buffer_text(html->out, markup);
+}
 /* Somebody's text. */
 void html_text(struct html *html, const char *text);
 /* <b>Table 1</b> and the caption, for <caption> and <figcaption>. */

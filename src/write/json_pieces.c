@@ -3,6 +3,33 @@
 #include <math.h>
 #include <string.h>
 
+static void write_escape(struct buffer *out, char c)
+{
+    switch (c) {
+    case '"':
+        buffer_text(out, "\\\"");
+        break;
+    case '\\':
+        buffer_text(out, "\\\\");
+        break;
+    case '\n':
+        buffer_text(out, "\\n");
+        break;
+    case '\t':
+        buffer_text(out, "\\t");
+        break;
+    default:
+        buffer_text(out, "\\u");
+        buffer_hex(out, (unsigned char)c, 4);
+    }
+}
+
+static bool is_plain(char c)
+{
+    unsigned char byte = (unsigned char)c;
+    return byte >= 0x20 && byte != '"' && byte != '\\' && byte != 0x7F;
+}
+
 void json_string(struct buffer *out, const char *text)
 {
     if (!text) {
@@ -10,42 +37,44 @@ void json_string(struct buffer *out, const char *text)
         return;
     }
     buffer_byte(out, '"');
-    const char *plain = text;
-    for (const char *c = text; *c; c++) {
-        unsigned char byte = (unsigned char)*c;
-        if (byte >= 0x20 && byte != '"' && byte != '\\' && byte != 0x7F)
-            continue;
-        buffer_append(out, plain, (size_t)(c - plain));
-        plain = c + 1;
-        if (byte == '"' || byte == '\\') {
-            buffer_byte(out, '\\');
-            buffer_byte(out, *c);
-        } else if (byte == '\n') {
-            buffer_text(out, "\\n");
-        } else if (byte == '\t') {
-            buffer_text(out, "\\t");
-        } else {
-            buffer_text(out, "\\u");
-            buffer_hex(out, byte, 4);
-        }
+    while (*text) {
+        const char *plain = text;
+        while (is_plain(*text))
+            text++;
+        buffer_append(out, plain, (size_t)(text - plain));
+        if (*text)
+            write_escape(out, *text++);
     }
-    buffer_append(out, plain, strlen(plain));
     buffer_byte(out, '"');
+}
+
+static bool needs_comma(const struct buffer *out)
+{
+    char last = out->length > 0 ? out->data[out->length - 1] : '[';
+    return last != '{' && last != '[' && last != ':' && last != '\n';
 }
 
 static void comma(struct buffer *out)
 {
-    char last = out->length > 0 ? out->data[out->length - 1] : '[';
-    if (last != '{' && last != '[' && last != ':' && last != '\n')
+    if (needs_comma(out))
         buffer_byte(out, ',');
 }
 
+/* Written as one piece: a job's findings have ten thousand keys. */
 static void write_key(struct buffer *out, const char *key)
 {
-    comma(out);
-    buffer_byte(out, '"');
-    buffer_text(out, key);
-    buffer_text(out, "\":");
+    size_t length = strlen(key);
+    bool apart = needs_comma(out);
+    buffer_reserve(out, length + 4);
+    char *at = out->data + out->length;
+    if (apart)
+        *at++ = ',';
+    *at++ = '"';
+    memcpy(at, key, length);
+    at += length;
+    *at++ = '"';
+    *at++ = ':';
+    out->length = (size_t)(at - out->data);
 }
 
 void json_open(struct buffer *out, const char *key, char bracket)

@@ -2,6 +2,7 @@
 
 #include "quantity/format.h"
 
+#include <stdlib.h>
 #include <string.h>
 
 #define NB    "\xC2\xA0"
@@ -166,6 +167,27 @@ static void texts_read_back(void **state)
     arena_release(&arena);
 }
 
+/* The first figure's place against that of the C library's "%.*e". A value rounds otherwise there
+   only within 1e-13 of a half, which random ones are not. */
+static void places_are_those_of_printf(void **state)
+{
+    (void)state;
+    unsigned long long bits = 88172645463325252ULL;
+    for (int i = 0; i < 1000000; i++) {
+        bits ^= bits << 13;
+        bits ^= bits >> 7;
+        bits ^= bits << 17;
+        double value = pow(10, (double)(bits % 44000) / 1000 - 22) * (1 + (double)(bits >> 40));
+        unsigned digits = 1 + (unsigned)(bits >> 20) % 12;
+        char text[40];
+        snprintf(text, sizeof text, "%.*e", (int)digits - 1, value);
+        long decimals = (long)digits - 1 - strtol(strchr(text, 'e') + 1, NULL, 10);
+        assert_int_equal(decimals_for(value, 1, digits), decimals < 0    ? 0
+                                                         : decimals > 18 ? 18
+                                                                         : decimals);
+    }
+}
+
 static void extremes_do_no_harm(void **state)
 {
     (void)state;
@@ -189,6 +211,7 @@ int main(void)
         cmocka_unit_test(fixed_places),
         cmocka_unit_test(places),
         cmocka_unit_test(texts_read_back),
+        cmocka_unit_test(places_are_those_of_printf),
         cmocka_unit_test(extremes_do_no_harm),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
