@@ -95,6 +95,13 @@ $(foreach module,$(MODULES),$(eval $(call unit_rule,$(module))))
 unit: $(UNIT_TESTS)
 	tests/run-unit.sh $(UNIT_TESTS)
 
+FUZZERS = $(patsubst %.c,$(BUILD)/%,$(wildcard tests/fuzz/*_fuzz.c))
+fuzzers: $(FUZZERS)
+$(FUZZERS): $(BUILD)/%: %.c $(wildcard tests/fuzz/*.h) $(call libraries_from,write)
+	@mkdir -p $(@D)
+	@echo "  link    $@"
+	@$(CC) $(CFLAGS) -Itests $(filter-out %.h,$^) $(LDLIBS) -o $@
+
 packages:
 	@tests/packages.sh $(BUILD_PACKAGES)
 
@@ -129,8 +136,9 @@ blind: all
 lint:
 	LINT=all tests/lint/run.sh
 
-# Longer than the few seconds, and more calls than the sample, of make check.
+# By time instead of a count, and more calls than the sample, of make check.
 fuzz:
+	@mkdir -p $(BUILD)
 	FUZZ_SECONDS=$(or $(FUZZ_SECONDS),300) tests/fuzz/run.sh $(BUILD)
 
 fault: all
@@ -165,4 +173,4 @@ clean:
 	rm -rf $(BUILD) asan
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
-.PHONY: oracle blind all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
+.PHONY: fuzzers oracle blind all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean

@@ -2,16 +2,12 @@
  * Quantities and lines of any bytes: no crash, bounded time, and what is read as a quantity is
  * finite, within the bounds that are promised, and read again from its own text to the same double.
  *
- * line_fuzz SECONDS SEED. The same seed makes the same lines.
+ * line_fuzz AMOUNT SEED.
  */
+#include "fuzz.h"
 #include "job/line.h"
 
 #include <math.h>
-#include <stdint.h>
-#include <stdio.h>
-#include <stdlib.h>
-#include <string.h>
-#include <time.h>
 
 static const char *const pieces[] = {
     "0",     "1",          "9",          "4n7",   "470k",     "1.5",          ".05",   ",",
@@ -26,20 +22,12 @@ static const char *const pieces[] = {
 };
 enum { PIECES = sizeof pieces / sizeof *pieces };
 
-static uint32_t draw(uint32_t *state, uint32_t count)
+static void draw_line(struct fuzz *fuzz, struct buffer *text)
 {
-    *state ^= *state << 13;
-    *state ^= *state >> 17;
-    *state ^= *state << 5;
-    return *state % count;
-}
-
-static void draw_line(uint32_t *state, struct buffer *text)
-{
-    uint32_t count = 1 + draw(state, 12), long_one = draw(state, 200) == 0;
+    size_t count = 1 + fuzz_below(fuzz, 12), long_one = fuzz_below(fuzz, 200) == 0;
     buffer_clear(text);
-    for (uint32_t i = 0; i < (long_one ? 3000 : count); i++)
-        buffer_text(text, pieces[draw(state, PIECES)]);
+    for (size_t i = 0; i < (long_one ? 3000 : count); i++)
+        buffer_text(text, pieces[fuzz_below(fuzz, PIECES)]);
 }
 
 /* What was read is a number, and its own text gives it again. */
@@ -96,18 +84,16 @@ static void read_as_everything(struct arena *arena, const struct buffer *text)
 
 int main(int count, char **words)
 {
-    double seconds = count > 1 ? strtod(words[1], NULL) : 10;
-    uint32_t state = count > 2 ? (uint32_t)strtoul(words[2], NULL, 10) | 1u : 1;
-    time_t start = time(NULL);
+    if (count != 3)
+        return 2;
+    struct fuzz fuzz = fuzz_begin(words[1], words[2]);
     struct buffer text = {0};
-    unsigned long lines = 0;
-    for (; difftime(time(NULL), start) < seconds; lines++) {
+    while (fuzz_next(&fuzz)) {
         struct arena arena = {0};
-        draw_line(&state, &text);
+        draw_line(&fuzz, &text);
         read_as_everything(&arena, &text);
         arena_release(&arena);
     }
-    printf("%lu lines\n", lines);
     buffer_release(&text);
-    return 0;
+    return fuzz_end(&fuzz, "lines");
 }

@@ -2,15 +2,11 @@
  * Notes and templates of any bytes. A note: every section and exhibit of the record is still there,
  * no raw HTML and no link but the allowed ones are left. A template: no crash, bounded time.
  *
- * prose_fuzz SECONDS SEED, from the top folder. The same seed makes the same texts.
+ * prose_fuzz AMOUNT SEED, from the top folder.
  */
-#include "unit/report/sample.h"
-
 #include "base/mustache.h"
-
-#include <stdint.h>
-#include <stdio.h>
-#include <time.h>
+#include "fuzz.h"
+#include "unit/report/sample.h"
 
 static const char *const pieces[] = {
     "<!--",
@@ -70,22 +66,13 @@ static const char *const pieces[] = {
 };
 enum { PIECES = sizeof pieces / sizeof *pieces };
 
-/* xorshift: the same everywhere. */
-static uint32_t draw(uint32_t *state, uint32_t count)
+static void draw_text(struct fuzz *fuzz, struct buffer *text)
 {
-    *state ^= *state << 13;
-    *state ^= *state >> 17;
-    *state ^= *state << 5;
-    return *state % count;
-}
-
-static void draw_text(uint32_t *state, struct buffer *text)
-{
-    uint32_t count = 1 + draw(state, 60), repeats = draw(state, 20) == 0 ? 40 : 1;
+    size_t count = 1 + fuzz_below(fuzz, 60), repeats = fuzz_below(fuzz, 20) == 0 ? 40 : 1;
     buffer_clear(text);
-    for (uint32_t i = 0; i < count; i++) {
-        const char *piece = pieces[draw(state, PIECES)];
-        for (uint32_t n = 0; n < repeats; n++)
+    for (size_t i = 0; i < count; i++) {
+        const char *piece = pieces[fuzz_below(fuzz, PIECES)];
+        for (size_t n = 0; n < repeats; n++)
             buffer_text(text, piece);
     }
 }
@@ -165,11 +152,11 @@ static void try_template(struct buffer *text)
     arena_release(&arena);
 }
 
-int main(int count, char **arguments)
+int main(int count, char **words)
 {
-    double seconds = count > 1 ? atof(arguments[1]) : 10;
-    uint32_t state = count > 2 ? (uint32_t)atoi(arguments[2]) * 2654435761u | 1u : 1;
-    time_t end = time(NULL) + (time_t)seconds;
+    if (count != 3)
+        return 2;
+    struct fuzz fuzz = fuzz_begin(words[1], words[2]);
     struct buffer text = {0};
     struct sample *sample = sample_begin();
     sample->job.work = sample->job.arrival = sample->job.hazards = sample_prose("plain", 70);
@@ -178,14 +165,12 @@ int main(int count, char **arguments)
         abort();
     struct census usual = census_of(document);
     sample_end(sample, document);
-    unsigned long tried = 0;
-    for (; time(NULL) < end; tried++) {
-        draw_text(&state, &text);
+    while (fuzz_next(&fuzz)) {
+        draw_text(&fuzz, &text);
         if (strstr(buffer_string(&text), "\xC3") == NULL) /* a job's texts are UTF-8 */
             try_note(buffer_string(&text), &usual);
         try_template(&text);
     }
     buffer_release(&text);
-    printf("%lu texts\n", tried);
-    return tried == 0;
+    return fuzz_end(&fuzz, "texts");
 }

@@ -1,21 +1,17 @@
 /*
- * The reader on any bytes: no crash, no leak, no text that is not UTF-8, bounded time.
+ * The reader, and what starts a job from another, on any bytes: no crash, no leak, no text that is
+ * not UTF-8, bounded time; a job started from a sound one is sound.
  *
- * With libFuzzer: clang -fsanitize=fuzzer,address -DLIBFUZZER. Else a program of its own:
- * reader_fuzz SECONDS SEED FILE... changes the files at random for so long, by the same seed the
- * same way. A failing input is left in reader_fuzz.failed of the working folder.
+ * reader_fuzz AMOUNT SEED FILE... changes the files at random; reader_fuzz file FILE reads one as
+ * it is. With libFuzzer: clang -fsanitize=fuzzer,address -DLIBFUZZER. A failing input is left in
+ * reader_fuzz.failed of the working folder.
  */
 #include "base/file.h"
 #include "base/utf8.h"
+#include "fuzz.h"
 #include "job/job.h"
 #include "job/shop.h"
 #include "job/start.h"
-
-#include <stdint.h>
-#include <stdio.h>
-#include <stdlib.h>
-#include <string.h>
-#include <time.h>
 
 int LLVMFuzzerTestOneInput(const uint8_t *data, size_t size);
 
@@ -53,6 +49,22 @@ static void check_job(const struct job *job)
         check_utf8(job->work.text);
 }
 
+/* A job started from a sound one is sound, and starting one from that gives the same again. */
+static void check_start(const struct source *like, struct arena *arena, bool sound)
+{
+    struct buffer first = {0}, second = {0};
+    struct diagnostics told = diagnostics_in(arena), of_start = diagnostics_in(arena);
+    start_write(&first, &(struct start){"2", NULL, like}, arena, &told);
+    check_utf8(buffer_string(&first));
+    const struct source started = {"2.yaml", buffer_string(&first), first.length};
+    job_read(&started, arena, &of_start);
+    start_write(&second, &(struct start){"2", NULL, &started}, arena, &told);
+    if (sound && (of_start.errors || strcmp(buffer_string(&first), buffer_string(&second)) != 0))
+        abort();
+    buffer_release(&first);
+    buffer_release(&second);
+}
+
 int LLVMFuzzerTestOneInput(const uint8_t *data, size_t size)
 {
     struct arena arena = {0};
@@ -60,7 +72,6 @@ int LLVMFuzzerTestOneInput(const uint8_t *data, size_t size)
     struct diagnostics diagnostics = diagnostics_in(&arena);
     struct source source = {
         .path = "1.yaml", .text = arena_text(&arena, (const char *)data, size), .length = size};
-    const struct start start = {"2", NULL, &source};
     const struct job *job = job_read(&source, &arena, &diagnostics);
     check_job(job);
     for (int copy = 0; copy < COPY_COUNT; copy++)
@@ -69,7 +80,7 @@ int LLVMFuzzerTestOneInput(const uint8_t *data, size_t size)
     diagnostics_format(&diagnostics, &shown);
     check_utf8(buffer_string(&shown));
     buffer_clear(&shown);
-    start_write(&shown, &start, &arena, &diagnostics);
+    check_start(&source, &arena, diagnostics.errors == 0);
     source.path = "shop.yaml";
     shop_read(&source, &arena, &diagnostics);
     buffer_release(&shown);
@@ -80,20 +91,6 @@ int LLVMFuzzerTestOneInput(const uint8_t *data, size_t size)
 #ifndef LIBFUZZER
 
 enum { INPUT_MAX = 1 << 18 };
-
-/* xorshift64*: the same changes for the same seed. */
-static uint64_t draw(uint64_t *seed)
-{
-    *seed ^= *seed >> 12;
-    *seed ^= *seed << 25;
-    *seed ^= *seed >> 27;
-    return *seed * 2685821657736338717u;
-}
-
-static size_t below(uint64_t *seed, size_t limit)
-{
-    return limit ? (size_t)(draw(seed) % limit) : 0;
-}
 
 static const char *const pieces[] = {": ",
                                      " #",
@@ -147,17 +144,17 @@ static void insert(struct buffer *text, size_t at, const char *piece, size_t len
     memcpy(text->data + at, piece, length);
 }
 
-static void change(struct buffer *text, uint64_t *seed)
+static void change(struct buffer *text, struct fuzz *fuzz)
 {
-    size_t at = below(seed, text->length + 1);
-    size_t length = below(seed, 40);
-    const char *piece = pieces[below(seed, sizeof pieces / sizeof *pieces)];
+    size_t at = fuzz_below(fuzz, text->length + 1);
+    size_t length = fuzz_below(fuzz, 40);
+    const char *piece = pieces[fuzz_below(fuzz, sizeof pieces / sizeof *pieces)];
     if (at + length > text->length)
         length = text->length - at;
-    switch (below(seed, 5)) {
+    switch (fuzz_below(fuzz, 5)) {
     case 0: /* a byte */
         if (at < text->length)
-            text->data[at] = (char)draw(seed);
+            text->data[at] = (char)fuzz_draw(fuzz);
         break;
     case 1: /* something that means something */
     case 2:
@@ -170,7 +167,7 @@ static void change(struct buffer *text, uint64_t *seed)
     case 4: { /* said twice */
         char copy[40];
         memcpy(copy, text->data + at, length);
-        insert(text, below(seed, text->length + 1), copy, length);
+        insert(text, fuzz_below(fuzz, text->length + 1), copy, length);
         break;
     }
     }
@@ -185,34 +182,36 @@ static void keep_input(const struct buffer *text)
     fclose(file);
 }
 
+static int read_as_is(const char *path)
+{
+    struct buffer text = {0};
+    if (file_read(path, INPUT_MAX, &text) != FILE_OK)
+        return 2;
+    LLVMFuzzerTestOneInput((const uint8_t *)text.data, text.length);
+    buffer_release(&text);
+    return 0;
+}
+
 int main(int count, char **words)
 {
-    if (count < 4) {
-        fprintf(stderr, "usage: reader_fuzz SECONDS SEED FILE...\n");
+    if (count == 3 && strcmp(words[1], "file") == 0)
+        return read_as_is(words[2]);
+    if (count < 4)
         return 2;
-    }
-    uint64_t seed = strtoull(words[2], NULL, 10) | 1;
-    time_t end = time(NULL) + atol(words[1]);
-    unsigned long runs = 0;
-    double slowest = 0;
-    while (time(NULL) < end) {
+    struct fuzz fuzz = fuzz_begin(words[1], words[2]);
+    while (fuzz_next(&fuzz)) {
         struct buffer text = {0};
-        const char *path = words[3 + below(&seed, (size_t)count - 3)];
-        if (file_read(path, INPUT_MAX, &text) == FILE_OK) {
-            for (size_t changes = 1 + below(&seed, 12); changes > 0; changes--)
-                change(&text, &seed);
-            keep_input(&text);
-            clock_t began = clock();
-            LLVMFuzzerTestOneInput((const uint8_t *)text.data, text.length);
-            double took = (double)(clock() - began) / CLOCKS_PER_SEC;
-            slowest = took > slowest ? took : slowest;
-            runs++;
-        }
+        const char *path = words[3 + fuzz_below(&fuzz, (size_t)count - 3)];
+        if (file_read(path, INPUT_MAX, &text) != FILE_OK)
+            return 2;
+        for (size_t changes = 1 + fuzz_below(&fuzz, 12); changes > 0; changes--)
+            change(&text, &fuzz);
+        keep_input(&text);
+        LLVMFuzzerTestOneInput((const uint8_t *)text.data, text.length);
         buffer_release(&text);
     }
     remove("reader_fuzz.failed");
-    printf("%lu inputs, the slowest %.3f s\n", runs, slowest);
-    return runs == 0 || slowest > 5;
+    return fuzz_end(&fuzz, "inputs");
 }
 
 #endif

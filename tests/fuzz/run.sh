@@ -1,30 +1,26 @@
 #!/bin/sh
-# run.sh BUILD: lines, the reader on changed files, notes and templates, under AddressSanitizer and UBSan, for FUZZ_SECONDS
-# (default 5) from FUZZ_SEED (default 1).
+# run.sh BUILD: random lines, job files, notes, templates and whole documents, under AddressSanitizer
+# and UBSan. FUZZ_SECONDS: how long each; without it a count of each, the same inputs on every machine.
+# FUZZ_SEED: default 1.
 set -eu
 root=$(cd "$(dirname "$0")/../.." && pwd)
-build=$(cd "$1" && pwd)/fuzz
+build=$(cd "$1" && pwd)/asan # as tests/memory/run.sh builds it
+seed=${FUZZ_SEED:-1}
+work=$build/tests/fuzz
 sanitize="-fsanitize=address,undefined -fno-sanitize-recover=undefined"
-mkdir -p "$build"
+export ASAN_OPTIONS=abort_on_error=1 UBSAN_OPTIONS=halt_on_error=1:abort_on_error=1:print_stacktrace=1
+export LC_ALL=C # the order of the files below
+mkdir -p "$work"
 cd "$root"
-libraries="$build/libjob.a $build/libreference.a $build/libquantity.a $build/libbase.a"
-make -s BUILD="$build" EXTRA="$sanitize" $libraries >&2
-# shellcheck disable=SC2086
-${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc tests/fuzz/reader_fuzz.c $libraries \
-    -lyaml -lnettle -lm -o "$build/reader_fuzz"
-# shellcheck disable=SC2086
-${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc tests/fuzz/line_fuzz.c $libraries \
-    -lyaml -lnettle -lm -o "$build/line_fuzz"
-"$build/line_fuzz" "${FUZZ_SECONDS:-5}" "${FUZZ_SEED:-1}"
-cd "$build"
-./reader_fuzz "${FUZZ_SECONDS:-5}" "${FUZZ_SEED:-1}" "$root"/tests/golden/diagnostics/*.yaml \
-    $(find "$root/jobs-example" -name '*.yaml')
-# Notes and templates.
-cd "$root"
-libraries="$build/libreport.a $build/libassess.a $build/libjob.a $build/libreference.a $build/libquantity.a
-    $build/libbase.a"
-make -s BUILD="$build" EXTRA="$sanitize" $libraries >&2
-# shellcheck disable=SC2086
-${CC:-gcc} -std=c11 -D_GNU_SOURCE -O1 -g $sanitize -Isrc -Itests tests/fuzz/prose_fuzz.c $libraries \
-    $(pkg-config --libs yaml-0.1 libcmark cminpack nettle) -lutf8proc -lm -o "$build/prose_fuzz"
-"$build/prose_fuzz" "${FUZZ_SECONDS:-5}" "${FUZZ_SEED:-1}"
+make -s -j2 BUILD="$build" OPTIMISE="-O1 -g" EXTRA="$sanitize" all fuzzers >"$work/build.log" 2>&1 || {
+    tail -n 40 "$work/build.log"
+    exit 1
+}
+amount() { # COUNT: so many, or the time that was asked for
+    if [ -n "${FUZZ_SECONDS:-}" ]; then echo "${FUZZ_SECONDS}s"; else echo "$1"; fi
+}
+"$work/line_fuzz" "$(amount 60000)" "$seed"
+"$work/prose_fuzz" "$(amount 1500)" "$seed"
+cd "$work"
+./reader_fuzz "$(amount 800)" "$seed" "$root"/tests/golden/diagnostics/*.yaml "$root"/jobs-example/*.yaml
+./document_fuzz "$(amount 70)" "$seed" "$build/share/gridleak" "$root"/jobs-example/2*.yaml
