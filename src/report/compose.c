@@ -23,6 +23,7 @@ static const struct {
     {"page_break", exhibit_page_break},
     {"small", exhibit_small},
     {"two_columns", exhibit_two_columns},
+    {"side_by_side", exhibit_side_by_side},
     {"fingerprint", exhibit_fingerprint},
     {"glance", exhibit_glance},
     {"leakage", exhibit_leakage},

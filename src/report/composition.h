@@ -110,6 +110,8 @@ const char *text_join(struct arena *arena, const char *separator, const char *co
 /* A sentence of a text as typed: its first letter; its full stop. NULL stays NULL. */
 const char *text_sentence(struct arena *arena, const char *text);
 const char *text_stopped(struct arena *arena, const char *text);
+/* Refs one after the other get commas between them: "C7, C14". NULL stays. */
+const char *text_refs(struct arena *arena, const char *text);
 /* A text as typed with its signs: "0.02 uA", "3 sqrt(CV)", "-2 V" as "0.02 µA", "3 √(CV)", "−2 V".
  */
 const char *text_with_micro(struct arena *arena, const char *text);
@@ -137,14 +139,15 @@ double reading_current(const struct reading *reading);
 
 typedef void exhibit_builder(struct composition *composition, size_t index);
 exhibit_builder exhibit_title, exhibit_facts, exhibit_headline, exhibit_contents,
-    exhibit_page_break, exhibit_small, exhibit_two_columns, exhibit_fingerprint, exhibit_glance,
-    exhibit_leakage, exhibit_soak_curves, exhibit_changed, exhibit_removed, exhibit_resistors,
-    exhibit_windings, exhibit_controls, exhibit_valves, exhibit_stages, exhibit_voltages,
-    exhibit_performance, exhibit_safety, exhibit_plates, exhibit_reform_curves, exhibit_instruments,
-    exhibit_assessed_bench, exhibit_working, exhibit_reform_steps, exhibit_hum,
-    exhibit_replacements, exhibit_date_codes, exhibit_visits, exhibit_write_on,
-    exhibit_sheet_leakage, exhibit_sheet_reform, exhibit_sheet_bleed, exhibit_assessed_capacitors,
-    exhibit_assessed_stages, exhibit_fields, exhibit_policy_limits, exhibit_rule_sources;
+    exhibit_page_break, exhibit_small, exhibit_two_columns, exhibit_side_by_side,
+    exhibit_fingerprint, exhibit_glance, exhibit_leakage, exhibit_soak_curves, exhibit_changed,
+    exhibit_removed, exhibit_resistors, exhibit_windings, exhibit_controls, exhibit_valves,
+    exhibit_stages, exhibit_voltages, exhibit_performance, exhibit_safety, exhibit_plates,
+    exhibit_reform_curves, exhibit_instruments, exhibit_assessed_bench, exhibit_working,
+    exhibit_reform_steps, exhibit_hum, exhibit_replacements, exhibit_date_codes, exhibit_visits,
+    exhibit_write_on, exhibit_sheet_leakage, exhibit_sheet_reform, exhibit_sheet_bleed,
+    exhibit_assessed_capacitors, exhibit_assessed_stages, exhibit_fields, exhibit_policy_limits,
+    exhibit_rule_sources;
 
 /* ---- reforming: the plan of one electrolytic, for the bench sheet */
 

@@ -107,7 +107,7 @@ void table_note(struct table_builder *builder, struct cell *cell, const char *te
     if (!text || !*text)
         return;
     struct arena *arena = builder->composition->arena;
-    size_t number = note_index(builder, text) + 1;
+    size_t number = note_index(builder, text_stopped(arena, text)) + 1;
     const char *at = cell->notes; /* the first sign that stands behind this one */
     if (!at) {
         cell->notes = arena_print(arena, "%zu", number);
@@ -317,6 +317,34 @@ const char *text_stopped(struct arena *arena, const char *text)
     return arena_print(arena, "%s.", text);
 }
 
+/* Length of a ref at the beginning of text: capitals, then figures, as C14 or VR1; 0: none. */
+static size_t ref_length(const char *text)
+{
+    size_t letters = strspn(text, "ABCDEFGHIJKLMNOPQRSTUVWXYZ");
+    size_t figures = strspn(text + letters, "0123456789");
+    size_t length = letters + figures;
+    return letters && letters <= 4 && figures && (!text[length] || strchr(" ,.;:", text[length]))
+               ? length
+               : 0;
+}
+
+const char *text_refs(struct arena *arena, const char *text)
+{
+    struct buffer out = {0};
+    if (!text)
+        return NULL;
+    for (bool begins = true; *text; begins = text[-1] == ' ') {
+        size_t length = begins ? ref_length(text) : 0;
+        bool listed = length && text[length] == ' ' && ref_length(text + length + 1);
+        buffer_append(&out, text, length ? length : 1);
+        buffer_text(&out, listed ? "," : "");
+        text += length ? length : 1;
+    }
+    const char *copy = arena_text(arena, out.data ? out.data : "", out.length);
+    buffer_release(&out);
+    return copy;
+}
+
 const char *text_with_micro(struct arena *arena, const char *text)
 {
     static const char root[] = "sqrt";
@@ -464,7 +492,13 @@ void exhibit_small(struct composition *composition, size_t index)
 void exhibit_two_columns(struct composition *composition, size_t index)
 {
     (void)index;
-    place_silent(composition, EXHIBIT_CAUTIONS, "two-columns");
+    place_silent(composition, EXHIBIT_TWO_COLUMNS, "two-columns");
+}
+
+void exhibit_side_by_side(struct composition *composition, size_t index)
+{
+    (void)index;
+    place_silent(composition, EXHIBIT_SIDE_BY_SIDE, "side-by-side");
 }
 
 void exhibit_fingerprint(struct composition *composition, size_t index)

@@ -248,7 +248,8 @@ enum exhibit_kind {
     EXHIBIT_TABLE,
     EXHIBIT_PLOT,
     EXHIBIT_PLATE,
-    EXHIBIT_CAUTIONS, /* the list that follows is set in two columns (bench sheet) */
+    EXHIBIT_TWO_COLUMNS, /* prose that follows, up to a heading or exhibit, is set in two columns */
+    EXHIBIT_SIDE_BY_SIDE, /* paper only: two short sections or exhibits that follow */
     EXHIBIT_WRITE_ON,
     EXHIBIT_WORKING, /* folded away on screen */
     EXHIBIT_FINGERPRINT,

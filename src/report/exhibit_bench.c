@@ -207,7 +207,7 @@ void exhibit_hum(struct composition *composition, size_t index)
                        not_judged_words(composition, node->why, node->missing));
         if (isfinite(node->found.textbook_v))
             table_note(
-                &builder, &cells[2],
+                &builder, &cells[0],
                 phrase(&composition->say, "hum.textbook", "found",
                        text_unit(composition, node->found.textbook_v, UNIT_VOLTAGE, 2), "left",
                        text_unit(composition, node->left.textbook_v, UNIT_VOLTAGE, 2), "frequency",

@@ -244,7 +244,7 @@ void exhibit_removed(struct composition *composition, size_t index)
     for (size_t i = 0; i < composition->job->removed_count; i++) {
         struct cell *cells = table_row(&builder);
         cells[0].text = composition->job->removed[i].name;
-        cells[1].text = composition->job->removed[i].value.text;
+        cells[1].text = text_refs(composition->arena, composition->job->removed[i].value.text);
     }
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.removed", NULL));
 }

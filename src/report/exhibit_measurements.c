@@ -117,8 +117,9 @@ static void hold_safety(struct table_builder *builder, const struct safety_findi
     const struct phrasing *say = &composition->say;
     if (found->kind == SAFETY_KIND_COUNT || isnan(safety_figure(found->kind)->limit))
         return;
-    cells[3].text = held_limits(composition, &found->value);
-    cells[3].second = held_words(composition, &found->value);
+    const char *words[] = {held_limits(composition, &found->value),
+                           held_words(composition, &found->value)};
+    cells[3].text = text_join(composition->arena, ", ", words, 2);
     cells[1].strong = held_fails(&found->value);
     cells[2].strong = held_fails(&found->second);
     table_note(builder, &cells[3], source_words(composition, found->value.source));
@@ -133,10 +134,10 @@ void exhibit_safety(struct composition *composition, size_t index)
     (void)index;
     static const struct column_plan plan[] = {
         {"measured", NULL, NULL, COLUMN_REF, 27, 1},
-        {"value", NULL, "value", COLUMN_NUMBER, 14, 1},
-        {"other_polarity", NULL, "other_polarity", COLUMN_NUMBER, 14, 2},
-        {"published_figure", NULL, "published_figure", COLUMN_TEXT, 20, 2},
-        {"conditions", NULL, "conditions", COLUMN_TEXT, 25, 3},
+        {"value", NULL, "value", COLUMN_NUMBER, 13, 1},
+        {"other_polarity", NULL, "other_polarity", COLUMN_NUMBER, 13, 2},
+        {"published_figure", NULL, "published_figure", COLUMN_TEXT, 23, 2},
+        {"conditions", NULL, "conditions", COLUMN_TEXT, 24, 3},
     };
     struct table_builder builder =
         table_begin(composition, "safety", plan, sizeof plan / sizeof *plan);

@@ -64,7 +64,7 @@ static const char *caption(const struct composition *composition, size_t first, 
     const char *dates[] = {date_text(&photo->taken), other ? date_text(&other->taken) : NULL};
     const char *taken =
         text_join(composition->arena, phrase(&composition->say, "plate.and", NULL), dates, 2);
-    char *shows = arena_copy(composition->arena, photo->shows.text);
+    char *shows = arena_copy(composition->arena, text_refs(composition->arena, photo->shows.text));
     size_t length = shows ? strlen(shows) : 0;
     if (length && shows[length - 1] == '.')
         shows[length - 1] = '\0';

@@ -109,10 +109,14 @@ void exhibit_resistors(struct composition *composition, size_t index)
                               part->marked.colours, NULL));
         else if (part->marked.colours)
             table_note(
-                &builder, &cells[1],
+                &builder, &cells[0],
                 phrase(&composition->say, "note.colours", "colours", part->marked.colours, NULL));
-        if (composition->findings->bench.resistors)
-            resistor_notes(&builder, &composition->findings->bench.resistors[i], &cells[0]);
+        const struct resistor_findings *found = composition->findings->bench.resistors;
+        if (found && part->marked.value.set && found[i].series == E_SERIES_COUNT)
+            table_note(&builder, &cells[0],
+                       phrase(&composition->say, "note.no_preferred_value", NULL));
+        if (found)
+            resistor_notes(&builder, &found[i], &cells[0]);
         table_note(
             &builder, &cells[0],
             text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
@@ -166,7 +170,7 @@ void exhibit_windings(struct composition *composition, size_t index)
             winding_figures(&builder, &composition->findings->bench.windings[i], cells);
         const char *warm = text_quantity(composition, &part->temperature);
         if (warm)
-            table_note(&builder, &cells[2],
+            table_note(&builder, &cells[0],
                        phrase(&composition->say, "note.winding_warm", "temperature", warm, NULL));
         table_note(
             &builder, &cells[0],

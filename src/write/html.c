@@ -221,13 +221,29 @@ static void write_contents(struct html *html, const struct exhibit *exhibit)
     buffer_release(&text);
 }
 
+/* Groups of eight for the eye, set apart without spaces: a copy is what sha256sum prints. */
+static void write_fingerprint(struct html *html, const char *text)
+{
+    enum { GROUP = 8 };
+    char group[GROUP + 1];
+    html_raw(html, "<p class=\"finger\"><code>");
+    for (size_t length; text && *text; text += length) {
+        length = strnlen(text, GROUP);
+        snprintf(group, sizeof group, "%.*s", GROUP, text);
+        html_raw(html, "<span>");
+        html_text(html, group);
+        html_raw(html, text[length] ? "</span><wbr>" : "</span>");
+    }
+    html_raw(html, "</code></p>\n");
+}
+
 /* ---- the walk */
 
 /* What an exhibit does to the nodes behind it. */
 struct walk {
     unsigned section;
     bool small;      /* a <div class="small"> is open up to the next heading */
-    bool in_columns; /* the next list is set in two columns */
+    bool in_columns; /* and one inside it up to the next heading or exhibit */
 };
 
 static void write_exhibit(struct html *html, const struct exhibit *exhibit, struct walk *walk)
@@ -251,8 +267,11 @@ static void write_exhibit(struct html *html, const struct exhibit *exhibit, stru
     case EXHIBIT_PLATE:
         html_plate(html, exhibit);
         break;
-    case EXHIBIT_CAUTIONS:
+    case EXHIBIT_TWO_COLUMNS:
+        html_raw(html, "<div class=\"before\">\n");
         walk->in_columns = true;
+        break;
+    case EXHIBIT_SIDE_BY_SIDE:
         break;
     case EXHIBIT_WRITE_ON:
         write_write_ons(html, &exhibit->write_on);
@@ -261,9 +280,7 @@ static void write_exhibit(struct html *html, const struct exhibit *exhibit, stru
         write_working(html, exhibit);
         break;
     case EXHIBIT_FINGERPRINT:
-        html_raw(html, "<p class=\"finger\"><code>");
-        html_text(html, exhibit->fingerprint.text);
-        html_raw(html, "</code></p>\n");
+        write_fingerprint(html, exhibit->fingerprint.text);
         break;
     case EXHIBIT_CONTENTS:
         write_contents(html, exhibit);
@@ -282,6 +299,10 @@ static void write_node(struct html *html, cmark_node *node, struct walk *walk)
 {
     const struct exhibit *exhibit = document_exhibit(node);
     bool heading = cmark_node_get_type(node) == CMARK_NODE_HEADING;
+    if ((heading || exhibit) && walk->in_columns) {
+        html_raw(html, "</div>\n");
+        walk->in_columns = false;
+    }
     if (heading && walk->small) {
         html_raw(html, "</div>\n");
         walk->small = false;
@@ -290,11 +311,6 @@ static void write_node(struct html *html, cmark_node *node, struct walk *walk)
         write_exhibit(html, exhibit, walk);
     } else if (is_section(node)) {
         write_heading(html, node, ++walk->section);
-    } else if (walk->in_columns && cmark_node_get_type(node) == CMARK_NODE_LIST) {
-        html_raw(html, "<div class=\"before\">\n");
-        write_prose(html, node);
-        html_raw(html, "</div>\n");
-        walk->in_columns = false;
     } else {
         write_prose(html, node);
     }
@@ -308,6 +324,7 @@ void html_write_body(const struct document *document, struct buffer *out)
     for (cmark_node *node = cmark_node_first_child(document->root); node;
          node = cmark_node_next(node))
         write_node(&html, node, &walk);
+    html_raw(&html, walk.in_columns ? "</div>\n" : "");
     html_raw(&html, walk.small ? "</div>\n" : "");
     for (size_t i = 0; i < sizeof html.marks / sizeof html.marks[0]; i++)
         buffer_release(&html.marks[i]);

@@ -209,7 +209,8 @@ static void write_exhibit(struct buffer *out, const struct exhibit *exhibit)
         buffer_text(out, exhibit->fingerprint.text);
         buffer_text(out, "\n\n");
         break;
-    case EXHIBIT_CAUTIONS:
+    case EXHIBIT_TWO_COLUMNS:
+    case EXHIBIT_SIDE_BY_SIDE:
     case EXHIBIT_CONTENTS: /* for the screen: a reader of Markdown makes its own */
     case EXHIBIT_PAGE_BREAK:
     case EXHIBIT_SMALL:

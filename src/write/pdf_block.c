@@ -107,6 +107,30 @@ void strip_overlay(struct flow *flow, struct strip *strip, const struct strip *o
     }
 }
 
+double strip_overlay_flow(struct flow *flow, struct strip *strip, const struct flow *narrow,
+                          size_t from, size_t to, double x)
+{
+    const double hairline_pt = 0.35;
+    double y = 0;
+    for (size_t i = from; i < to; i++) {
+        y += i > from ? narrow->strips[i]->before : 0;
+        if (narrow->strips[i]->top_rule && i > from)
+            strip_rule(flow, strip, (struct point){x, y},
+                       (struct point){x + narrow->page->text_width, y}, hairline_pt, INK_HAIR);
+        strip_overlay(flow, strip, narrow->strips[i], (struct point){x, y});
+        y += narrow->strips[i]->height;
+    }
+    return y;
+}
+
+double flow_height(const struct flow *flow, size_t from, size_t to)
+{
+    double height = 0;
+    for (size_t i = from; i < to; i++)
+        height += (i > from ? flow->strips[i]->before : 0) + flow->strips[i]->height;
+    return height;
+}
+
 void flow_lines(struct flow *flow, const struct text_lines *lines,
                 const struct text_setting *setting)
 {
@@ -116,6 +140,57 @@ void flow_lines(struct flow *flow, const struct text_lines *lines,
                    (struct point){setting->x, line_baseline(setting->leading, setting->size)});
         strip->keep_next = i + 1 < lines->count && (i == 0 || i + 2 == lines->count);
     }
+}
+
+/* ---- two columns */
+
+static bool may_end_column(const struct flow *column, size_t from, size_t to)
+{
+    return to > from && (to == column->count || !column->strips[to - 1]->keep_next);
+}
+
+/* Before which strip the second column begins so that both are short. */
+static size_t balanced_break(const struct flow *column, size_t from)
+{
+    double all = flow_height(column, from, column->count), best = all, left = 0;
+    size_t middle = column->count;
+    for (size_t i = from; i + 1 < column->count; i++) {
+        left += (i > from ? column->strips[i]->before : 0) + column->strips[i]->height;
+        double right = all - left - column->strips[i + 1]->before;
+        double higher = left > right ? left : right;
+        if (may_end_column(column, from, i + 1) && higher < best) {
+            best = higher;
+            middle = i + 1;
+        }
+    }
+    return middle;
+}
+
+/* Behind the last strip that a column of this height holds; one at least. */
+static size_t full_column(const struct flow *column, size_t from, double height)
+{
+    size_t end = from + 1;
+    double used = 0;
+    for (size_t i = from; i < column->count; i++) {
+        used += (i > from ? column->strips[i]->before : 0) + column->strips[i]->height;
+        if (used <= height && may_end_column(column, from, i + 1))
+            end = i + 1;
+    }
+    return end;
+}
+
+void flow_columns(struct flow *flow, const struct flow *narrow, double second_x)
+{
+    enum { LEAST_LINES = 4 };
+    if (narrow->count == 0)
+        return;
+    double all = flow_height(narrow, 0, balanced_break(narrow, 0));
+    double least = LEAST_LINES * narrow->strips[0]->height;
+    struct strip *strip = flow_strip(flow, all < least ? all : least);
+    struct flow *kept = arena_get(flow->arena, sizeof *kept);
+    *kept = *narrow;
+    strip->columns = kept;
+    strip->second_x = second_x;
 }
 
 /* ---- pages */
@@ -155,8 +230,41 @@ static double needed(const struct paginator *paginator, const struct strip *stri
     return strip->height + (paginator->at_top ? repeated_height(strip) : strip->before);
 }
 
+/* Both columns of one page; the answer is where those of the next begin. */
+static size_t put_columns(struct paginator *paginator, const struct strip *strip, size_t from)
+{
+    struct flow *flow = paginator->flow;
+    const struct flow *column = strip->columns;
+    double room = flow->page->bottom - paginator->y;
+    size_t middle = balanced_break(column, from), to = column->count;
+    if (flow_height(column, from, middle) > room || flow_height(column, middle, to) > room) {
+        middle = full_column(column, from, room);
+        to = middle < column->count ? full_column(column, middle, room) : middle;
+    }
+    struct strip *page = flow_loose_strip(flow, 0);
+    double left = strip_overlay_flow(flow, page, column, from, middle, 0);
+    double right = strip_overlay_flow(flow, page, column, middle, to, strip->second_x);
+    page->height = left > right ? left : right;
+    put(paginator, page, paginator->at_top);
+    paginator->at_top = false;
+    return to;
+}
+
+static void place_columns(struct paginator *paginator, const struct strip *strip)
+{
+    if (!paginator->at_top)
+        paginator->y += strip->before;
+    for (size_t from = put_columns(paginator, strip, 0); from < strip->columns->count;
+         from = put_columns(paginator, strip, from))
+        next_page(paginator);
+}
+
 static void place(struct paginator *paginator, const struct strip *strip)
 {
+    if (strip->columns) {
+        place_columns(paginator, strip);
+        return;
+    }
     bool begins = paginator->at_top;
     struct page_plan *plan = &paginator->plan;
     if (begins && strip->head && plan->count > 0)

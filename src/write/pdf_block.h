@@ -14,7 +14,7 @@ static inline double mm(double millimetres)
     return millimetres * 72 / 25.4;
 }
 
-enum item_kind { ITEM_TEXT, ITEM_RULE, ITEM_IMAGE, ITEM_DRAWING, ITEM_LINK };
+enum item_kind { ITEM_TEXT, ITEM_RULE, ITEM_IMAGE, ITEM_DRAWING, ITEM_LINK, ITEM_OUTLINE };
 
 struct item {
     enum item_kind kind;
@@ -24,6 +24,7 @@ struct item {
             const char *text;
             size_t length;
             struct text_style style;
+            const char *copied; /* what a copy of it gives, ASCII; NULL: the text itself */
         } text;
         struct {
             struct point to;
@@ -42,6 +43,10 @@ struct item {
             const char *uri;
             double width, height;
         } link;
+        struct {
+            const char *text; /* of a heading */
+            unsigned level;   /* 2: section, 3 and more: below it */
+        } outline;
     };
 };
 
@@ -57,8 +62,8 @@ struct strip {
     size_t item_count, item_capacity;
     const struct strip *head;      /* of its table, repeated when it begins a page; NULL: none */
     const struct strip *continued; /* line of its group, repeated below the head; NULL: none */
-    const char *outline;           /* of a heading: its text; NULL: none */
-    unsigned outline_level;        /* 2: section, 3 and more: below it */
+    const struct flow *columns;    /* set in two columns, as many pages as they need; NULL: none */
+    double second_x;               /* of the second column */
 };
 
 /* Measures of a page, in points. */
@@ -96,6 +101,13 @@ void flow_keep(struct flow *flow, size_t first);
 /* Where the baseline is in a line of this leading. */
 double line_baseline(double leading_pt, double size_pt);
 
+/* Height of strips from..to from the top of a column. */
+double flow_height(const struct flow *flow, size_t from, size_t to);
+
+/* Append strips of a narrow flow, kept until the pages are made, in two columns of one height; not
+   begun with less than a few lines. */
+void flow_columns(struct flow *flow, const struct flow *narrow, double second_x);
+
 /* Put something into a strip; points from its upper left corner, y downward. */
 void strip_item(struct flow *flow, struct strip *strip, const struct item *item);
 void strip_rule(struct flow *flow, struct strip *strip, struct point from, struct point to,
@@ -112,6 +124,11 @@ void strip_text(struct flow *flow, struct strip *strip, struct point at, struct 
 /* All items of another strip, moved. */
 void strip_overlay(struct flow *flow, struct strip *strip, const struct strip *other,
                    struct point by);
+
+/* All items of strips from..to of a narrow flow, one below the other from the strip's top on, with
+   the hairlines between them; the answer is their height. */
+double strip_overlay_flow(struct flow *flow, struct strip *strip, const struct flow *narrow,
+                          size_t from, size_t to, double x);
 
 struct text_setting {
     double x, leading, size;

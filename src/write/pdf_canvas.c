@@ -1,6 +1,7 @@
 #include "write/pdf_canvas.h"
 
 #include <math.h>
+#include <string.h>
 
 /* PDF 1.4, appendix C: reals up to 32,767. */
 static const double place_limit = 32000;
@@ -183,14 +184,10 @@ static void append_string(struct buffer *out, const struct buffer *codes)
     out->length = (size_t)(at - out->data);
 }
 
-void pdf_canvas_text(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
-                     const char *text, size_t length)
+static void show_text(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
+                      const char *text, size_t length)
 {
-    if (length == 0)
-        return;
     const char *end = text + length;
-    enter_text(canvas);
-    set_fill(canvas, style->ink);
     move_text(canvas, at.x, at.y - style->raise_pt);
     while (text < end) {
         buffer_clear(&canvas->codes);
@@ -199,6 +196,46 @@ void pdf_canvas_text(struct pdf_canvas *canvas, struct point at, const struct te
         set_font(canvas, face, style->size_pt);
         append_string(&canvas->contents, &canvas->codes);
     }
+}
+
+void pdf_canvas_text(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
+                     const char *text, size_t length)
+{
+    if (length == 0)
+        return;
+    enter_text(canvas);
+    set_fill(canvas, style->ink);
+    show_text(canvas, at, style, text, length);
+}
+
+/* Stroked only, with round joins; no part of what is read or copied. */
+void pdf_canvas_halo(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
+                     const char *text, double line_pt)
+{
+    leave_text(canvas);
+    buffer_text(&canvas->contents, "/Artifact BMC\n");
+    enter_text(canvas);
+    set_stroke(canvas, INK_PAPER, line_pt);
+    buffer_text(&canvas->contents, "1 Tr 1 j\n");
+    show_text(canvas, at, style, text, strlen(text));
+    buffer_text(&canvas->contents, "0 Tr 0 j\n");
+    leave_text(canvas);
+    buffer_text(&canvas->contents, "EMC\n");
+}
+
+void pdf_canvas_actual_text(struct pdf_canvas *canvas, const char *text)
+{
+    leave_text(canvas);
+    buffer_text(&canvas->contents, "/Span <</ActualText <");
+    for (; *text; text++)
+        buffer_print(&canvas->contents, "%02X", (unsigned)(unsigned char)*text);
+    buffer_text(&canvas->contents, ">>> BDC\n");
+}
+
+void pdf_canvas_actual_text_end(struct pdf_canvas *canvas)
+{
+    leave_text(canvas);
+    buffer_text(&canvas->contents, "EMC\n");
 }
 
 void pdf_canvas_line(struct pdf_canvas *canvas, struct point from, struct point to, double line_pt,

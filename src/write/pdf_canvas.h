@@ -57,6 +57,14 @@ void pdf_canvas_end(struct pdf_canvas *canvas);
 void pdf_canvas_text(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
                      const char *text, size_t length);
 
+/* Paper colour round a text that is to come at this place, so that lines do not cross it. */
+void pdf_canvas_halo(struct pdf_canvas *canvas, struct point at, const struct text_style *style,
+                     const char *text, double line_pt);
+
+/* What a copy of the text up to the end gives in its place (PDF 1.4, 9.8.3): ASCII. */
+void pdf_canvas_actual_text(struct pdf_canvas *canvas, const char *text);
+void pdf_canvas_actual_text_end(struct pdf_canvas *canvas);
+
 /* Shapes; points in points from the upper left corner of the page, y downward. */
 void pdf_canvas_line(struct pdf_canvas *canvas, struct point from, struct point to, double line_pt,
                      enum ink ink);

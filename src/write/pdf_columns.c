@@ -209,6 +209,32 @@ static void keep_unbroken(const struct table_layout *layout, struct wish *wishes
     }
 }
 
+static double widest_word(const struct table_layout *layout, const char *text)
+{
+    double widest = 0;
+    for (size_t length; text && *text; text += length + strspn(text + length, " ")) {
+        length = strcspn(text, " ");
+        widest = larger(widest, (double)pdf_text_width(layout->composer->flow.resources,
+                                                       FACE_SEMIBOLD, text, length) *
+                                    type_table.size / 1000);
+    }
+    return widest;
+}
+
+/* Whether a word of a head would be broken, or what may not be broken is. */
+static bool is_crowded(const struct table_layout *layout, const struct wish *wishes)
+{
+    const double slack_pt = 0.5;
+    for (size_t i = 0; i < layout->table->column_count; i++) {
+        double width = layout->columns[i].width + slack_pt;
+        double reach = layout->table->columns[i].kind == COLUMN_NUMBER && i > 0 ? head_reach_pt : 0;
+        if (wishes[i].least > width + reach ||
+            widest_word(layout, layout->table->columns[i].head) > width + reach)
+            return true;
+    }
+    return false;
+}
+
 void table_columns(struct table_layout *layout)
 {
     const struct table *table = layout->table;
@@ -229,6 +255,7 @@ void table_columns(struct table_layout *layout)
     }
     keep_unbroken(layout, wishes);
     settle(layout, wishes);
+    layout->composer->crowded |= is_crowded(layout, wishes);
     double x = 0;
     for (size_t i = 0; i < table->column_count; i++) {
         struct column_layout *column = &layout->columns[i];

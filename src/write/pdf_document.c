@@ -27,24 +27,27 @@ static void keep_introduction(struct composer *composer, cmark_node *node, size_
         flow->strips[i]->keep_next = true;
 }
 
+cmark_node *compose_node(struct composer *composer, cmark_node *node)
+{
+    cmark_node *next = cmark_node_next(node);
+    const struct exhibit *exhibit = document_exhibit(node);
+    size_t first = composer->flow.count;
+    if (cmark_node_get_type(node) == CMARK_NODE_HEADING) {
+        composer->body = type_body;
+        composer->measure = composer->flow.page->measure;
+    }
+    if (exhibit)
+        compose_exhibit(composer, exhibit, &next);
+    else
+        compose_prose(composer, node);
+    keep_introduction(composer, node, first);
+    return next;
+}
+
 static void compose_document(struct composer *composer)
 {
-    cmark_node *node = cmark_node_first_child(composer->document->root);
-    while (node) {
-        cmark_node *next = cmark_node_next(node);
-        const struct exhibit *exhibit = document_exhibit(node);
-        size_t first = composer->flow.count;
-        if (cmark_node_get_type(node) == CMARK_NODE_HEADING) {
-            composer->body = type_body;
-            composer->measure = composer->flow.page->measure;
-        }
-        if (exhibit)
-            compose_exhibit(composer, exhibit, &next);
-        else
-            compose_prose(composer, node);
-        keep_introduction(composer, node, first);
-        node = next;
-    }
+    for (cmark_node *node = cmark_node_first_child(composer->document->root); node;)
+        node = compose_node(composer, node);
 }
 
 static int hex_digit(char digit)

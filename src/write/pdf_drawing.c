@@ -2,6 +2,8 @@
 
 #include <string.h>
 
+static const double halo_units = 3; /* half of it lies outside the letters */
+
 struct line_look {
     double units;
     enum ink ink;
@@ -81,6 +83,7 @@ static void draw_text(struct pdf_canvas *canvas, const struct shape *shape, stru
         at.x -= width / 2;
     else if (shape->anchor == ANCHOR_END)
         at.x -= width;
+    pdf_canvas_halo(canvas, at, &style, shape->text, halo_units * scale);
     pdf_canvas_text(canvas, at, &style, shape->text, length);
 }
 

@@ -331,70 +331,6 @@ static void compose_plate(struct composer *composer, const char *number, const s
 
 /* ---- bench sheet */
 
-/* Strips of a flow of its own, as one strip's items from `at` down; the answer is the height. */
-static double overlay_strips(struct composer *composer, struct strip *strip,
-                             const struct flow *column, size_t from, size_t to, double x)
-{
-    double y = 0;
-    for (size_t i = from; i < to; i++) {
-        y += i > from ? column->strips[i]->before : 0;
-        strip_overlay(&composer->flow, strip, column->strips[i], (struct point){x, y});
-        y += column->strips[i]->height;
-    }
-    return y;
-}
-
-static double strips_height(const struct flow *flow, size_t from, size_t to)
-{
-    double height = 0;
-    for (size_t i = from; i < to; i++)
-        height += flow->strips[i]->before + flow->strips[i]->height;
-    return height;
-}
-
-/* Before which strip, the first of an item, the second column begins so that both are short. */
-static size_t balanced_break(const struct flow *column)
-{
-    double all = strips_height(column, 0, column->count), above = 0, best = all;
-    size_t middle = column->count;
-    for (size_t i = 0; i < column->count; i++) {
-        double higher = above > all - above ? above : all - above;
-        if (column->strips[i]->before > 0 && higher < best) {
-            best = higher;
-            middle = i;
-        }
-        above += column->strips[i]->before + column->strips[i]->height;
-    }
-    return middle;
-}
-
-/* The list set twice as narrow, its items shared out between two columns. */
-static void compose_cautions(struct composer *composer, cmark_node *list)
-{
-    const double gap = 14;
-    struct composer narrow = *composer;
-    narrow.flow.strips = NULL;
-    narrow.flow.count = narrow.flow.capacity = 0;
-    narrow.flow.space = 0;
-    narrow.body = (struct type_size){7.75, 11};
-    narrow.measure = (block_width(composer) - gap) / 2;
-    compose_prose(&narrow, list);
-    struct flow *column = &narrow.flow;
-    double all = strips_height(column, 0, column->count);
-    const struct page_geometry *page = composer->flow.page;
-    if (all > page->bottom - page->top || column->count == 0) {
-        compose_prose(composer, list); /* no short list: set as any other */
-        return;
-    }
-    size_t middle = balanced_break(column);
-    struct strip *strip = flow_strip(&composer->flow, 0);
-    double left = overlay_strips(composer, strip, column, 0, middle, 0);
-    double right =
-        overlay_strips(composer, strip, column, middle, column->count, narrow.measure + gap);
-    strip->height = left > right ? left : right;
-    flow_space(&composer->flow, mm(2.2));
-}
-
 static const double write_on_gap_pt = 9;
 
 static double write_on_share(const struct write_on *item)
@@ -500,27 +436,30 @@ static void compose_working(struct composer *composer, const char *number,
     compose_table(composer, number, &table);
 }
 
-/* Groups set apart by more than a space; the spaces stay in the text for who copies it. */
+/* Groups of eight for the eye; who copies the line gets it without the spaces, as sha256sum prints
+   it. */
 static void compose_fingerprint(struct composer *composer, const struct fingerprint *fingerprint)
 {
-    struct text_style style = style_of(FACE_MONO, (struct type_size){7.5, 12}, INK_TEXT);
-    struct text_runs runs = runs_in(composer);
-    struct text_style space = style;
-    space.size_pt *= 1.5;
+    enum { GROUP = 8, GROUPS_MAX = 8 };
+    const struct type_size type = {7.5, 12};
+    struct flow *flow = &composer->flow;
     const char *text = fingerprint->text ? fingerprint->text : "";
     while (*text) {
-        size_t length = strcspn(text, " ");
-        text_runs_add_part(&runs, text, length, style, NULL);
+        size_t length = strnlen(text, GROUP * GROUPS_MAX), at = 0;
+        const char *shown = "";
+        for (; at < length; at += GROUP)
+            shown =
+                arena_print(flow->arena, "%s%s%.*s", shown, at > 0 ? " " : "", GROUP, text + at);
+        struct strip *strip = flow_strip(flow, type.leading);
+        struct item item = {.kind = ITEM_TEXT, .at = {0, line_baseline(type.leading, type.size)}};
+        item.text.text = shown;
+        item.text.length = strlen(shown);
+        item.text.copied = arena_text(flow->arena, text, length);
+        item.text.style = style_of(FACE_MONO, type, INK_TEXT);
+        strip_item(flow, strip, &item);
         text += length;
-        size_t spaces = strspn(text, " ");
-        if (spaces > 0)
-            text_runs_add_part(&runs, " ", 1, space, NULL);
-        text += spaces;
     }
-    struct text_lines lines = text_lines_break(&runs, composer->flow.resources, composer->measure);
-    struct text_setting setting = {0, 12, 7.5};
-    flow_lines(&composer->flow, &lines, &setting);
-    flow_space(&composer->flow, mm(2.2));
+    flow_space(flow, mm(2.2));
 }
 
 void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, cmark_node **next)
@@ -544,11 +483,11 @@ void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, c
     case EXHIBIT_PLATE:
         compose_plate(composer, exhibit->number, &exhibit->plate);
         break;
-    case EXHIBIT_CAUTIONS:
-        if (*next && cmark_node_get_type(*next) == CMARK_NODE_LIST) {
-            compose_cautions(composer, *next);
-            *next = cmark_node_next(*next);
-        }
+    case EXHIBIT_TWO_COLUMNS:
+        *next = compose_columns(composer, *next);
+        break;
+    case EXHIBIT_SIDE_BY_SIDE:
+        *next = compose_side_by_side(composer, *next);
         break;
     case EXHIBIT_WRITE_ON:
         compose_write_on(composer, &exhibit->write_on);
@@ -566,7 +505,7 @@ void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, c
         composer->flow.page_break = true;
         break;
     case EXHIBIT_SMALL:
-        composer->body = (struct type_size){7.5, 11.2};
+        composer->body = type_small;
         composer->measure = figure_text_pt;
         break;
     }

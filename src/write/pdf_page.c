@@ -24,8 +24,8 @@ struct page_geometry page_geometry_of(const struct document *document)
     } else {
         page.left = mm(25);
         page.text_width = mm(letter ? 174 : 168);
-        page.top = mm(22);
-        page.bottom = mm(letter ? 259 : 277);
+        page.top = mm(21);
+        page.bottom = mm(letter ? 262 : 280);
         page.head_baseline = mm(15);
     }
     return page;
@@ -80,13 +80,28 @@ static void add_link(struct page *page, const struct item *item, struct point at
     pdf_link_to_uri(page->writer->file, page->page, area, item->link.uri);
 }
 
+static void add_outline(struct page *page, const struct item *item, double y)
+{
+    struct page_writer *writer = page->writer;
+    struct pdf_target target = {page->page, (HPDF_REAL)(writer->geometry->height - y + 4)};
+    bool below = item->outline.level > 2 && writer->section;
+    HPDF_Outline entry =
+        pdf_outline(writer->file, below ? writer->section : NULL, item->outline.text, target);
+    if (!below)
+        writer->section = entry;
+}
+
 static void draw_item(struct page *page, const struct item *item, struct point origin)
 {
     struct point at = {origin.x + item->at.x, origin.y + item->at.y};
     struct pdf_canvas *canvas = &page->canvas;
     switch (item->kind) {
     case ITEM_TEXT:
+        if (item->text.copied)
+            pdf_canvas_actual_text(canvas, item->text.copied);
         pdf_canvas_text(canvas, at, &item->text.style, item->text.text, item->text.length);
+        if (item->text.copied)
+            pdf_canvas_actual_text_end(canvas);
         break;
     case ITEM_RULE:
         pdf_canvas_line(canvas, at,
@@ -103,18 +118,10 @@ static void draw_item(struct page *page, const struct item *item, struct point o
     case ITEM_LINK:
         add_link(page, item, at);
         break;
+    case ITEM_OUTLINE:
+        add_outline(page, item, at.y);
+        break;
     }
-}
-
-static void add_outline(struct page *page, const struct strip *strip, double y)
-{
-    struct page_writer *writer = page->writer;
-    struct pdf_target target = {page->page, (HPDF_REAL)(writer->geometry->height - y + 4)};
-    bool below = strip->outline_level > 2 && writer->section;
-    HPDF_Outline entry =
-        pdf_outline(writer->file, below ? writer->section : NULL, strip->outline, target);
-    if (!below)
-        writer->section = entry;
 }
 
 static void draw_hairline(struct page *page, double y)
@@ -130,8 +137,6 @@ static void draw_strip(struct page *page, const struct placed *placed)
     const struct page_geometry *geometry = page->writer->geometry;
     const struct strip *strip = placed->strip;
     struct point origin = {geometry->left, placed->y};
-    if (strip->outline)
-        add_outline(page, strip, placed->y);
     if (strip->top_rule && !placed->begins)
         draw_hairline(page, placed->y);
     if (placed->ends)

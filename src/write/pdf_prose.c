@@ -153,7 +153,7 @@ static void emit_heading(struct prose_walk *prose, unsigned level)
     struct text_lines lines =
         text_lines_break(&prose->runs, flow->resources, flow->page->text_width);
     size_t first = flow->count;
-    flow_space(flow, section && !sheet ? mm(9) : mm(5));
+    flow_space(flow, section && !sheet ? mm(6.8) : mm(4.2));
     struct text_setting setting = {0, type.leading, type.size};
     flow_lines(flow, &lines, &setting);
     for (size_t i = first; i < flow->count; i++)
@@ -161,12 +161,14 @@ static void emit_heading(struct prose_walk *prose, unsigned level)
     if (section)
         composer->section++;
     if (flow->count > first) {
-        flow->strips[first]->outline = plain_text(prose);
-        flow->strips[first]->outline_level = level < 2 ? 2 : level;
+        struct item outline = {.kind = ITEM_OUTLINE};
+        outline.outline.text = plain_text(prose);
+        outline.outline.level = level < 2 ? 2 : level;
+        strip_item(flow, flow->strips[first], &outline);
         if (section && composer->document->sections_numbered)
             hang_number(prose, flow->strips[first]);
     }
-    flow_space(flow, section ? mm(2) : mm(1.2));
+    flow_space(flow, section ? mm(1.8) : mm(1.2));
     prose->runs = runs_in(composer);
 }
 

@@ -3,8 +3,8 @@
 #include <math.h>
 #include <string.h>
 
-static const double row_pad_pt = 2.5, group_pad_pt = 4.6, after_group_pad_pt = 1.1,
-                    write_in_height_mm = 8.2;
+static const double row_pad_pt = 1.9, grouped_pad_pt = 1.2, group_pad_pt = 3.4,
+                    after_group_pad_pt = 0.6, write_in_height_mm = 8.2;
 enum { KEPT_ROWS = 12 };
 
 /* ---- rows of boxes */
@@ -380,9 +380,9 @@ static void compose_cells(struct table_layout *layout, const struct table_row *r
     struct row_box *boxes = arena_array(composer->flow.arena, table->column_count, sizeof *boxes);
     size_t lines = number_lines(layout, row);
     lines = lines > 0 ? lines : 1;
-    struct row_setting setting = {.type = type_table,
-                                  .pad_top = after_group ? after_group_pad_pt : row_pad_pt,
-                                  .pad_bottom = row_pad_pt};
+    double pad = table->lined ? row_pad_pt : grouped_pad_pt;
+    struct row_setting setting = {
+        .type = type_table, .pad_top = after_group ? after_group_pad_pt : pad, .pad_bottom = pad};
     if (table->write_in) {
         setting.pad_top = setting.pad_bottom = 0.5;
         setting.least_height = mm(write_in_height_mm);
@@ -468,9 +468,8 @@ static void compose_notes(struct table_layout *layout)
         text_runs_add(&runs, " ", style);
     }
     text_runs_add(&runs, table->remark, style);
-    double width = composer->flow.page->text_width;
-    width = width < 370 ? width : 370; /* 40 rem of 9.25 pt */
-    struct text_lines lines = text_lines_break(&runs, composer->flow.resources, width);
+    struct text_lines lines =
+        text_lines_break(&runs, composer->flow.resources, composer->flow.page->text_width);
     if (lines.count > 0)
         flow_space(&composer->flow, mm(1.5));
     struct text_setting setting = {0, type_note.leading, type_note.size};
@@ -515,7 +514,7 @@ void compose_table(struct composer *composer, const char *number, const struct t
     struct table_layout layout = {.composer = composer, .table = table};
     if (table->column_count == 0)
         return;
-    flow_space(flow, mm(composer->document->kind == DOCUMENT_SHEET ? 3 : 5));
+    flow_space(flow, mm(composer->document->kind == DOCUMENT_SHEET ? 3 : 3.6));
     size_t first = flow->count;
     compose_caption(composer, number, table->caption, flow->page->text_width);
     if (flow->count > first)
@@ -532,5 +531,5 @@ void compose_table(struct composer *composer, const char *number, const struct t
                (struct point){flow->page->text_width, strip->height}, rule_heavy_pt, INK_TEXT);
     compose_notes(&layout);
     keep_rows(flow, table, &(struct table_strips){first, head, last});
-    flow_space(flow, mm(5));
+    flow_space(flow, mm(3.6));
 }

@@ -180,7 +180,8 @@ static void write_exhibit(struct terminal *terminal, const struct exhibit *exhib
     case EXHIBIT_FINGERPRINT:
         terminal_wrapped(terminal, exhibit->fingerprint.text, (struct indent){0, 0});
         break;
-    case EXHIBIT_CAUTIONS:
+    case EXHIBIT_TWO_COLUMNS:
+    case EXHIBIT_SIDE_BY_SIDE:
     case EXHIBIT_CONTENTS:
     case EXHIBIT_PAGE_BREAK:
     case EXHIBIT_SMALL:

@@ -195,6 +195,27 @@ static struct document *pictures_document(struct arena *arena, struct picture *p
     return document;
 }
 
+/* Two short sections beside each other, two that are too unequal, and prose in columns over pages.
+ */
+static struct document *beside_document(struct arena *arena)
+{
+    struct document *document = empty_document(arena, DOCUMENT_RECORD);
+    document->sections_numbered = true;
+    sample_append(document, EXHIBIT_SIDE_BY_SIDE, "b1", NULL);
+    sample_prose(document, "## Leftmost\n\nAs it came.\n\nAs it was asked for.\n\n"
+                           "## Rightmost\n\n1. first\n2. second\n\n");
+    sample_append(document, EXHIBIT_SIDE_BY_SIDE, "b2", NULL);
+    sample_prose(document, "## Longer\n\n");
+    for (unsigned i = 0; i < 12; i++)
+        sample_prose(document, "A paragraph among many.\n");
+    sample_prose(document, "## Shorter\n\nOne line.\n\n## Columns\n");
+    sample_append(document, EXHIBIT_TWO_COLUMNS, "c", NULL);
+    for (unsigned i = 1; i <= 300; i++)
+        sample_prose(document, arena_print(arena, "Paragraph %u of all of them.\n", i));
+    sample_prose(document, "## Behind\n");
+    return document;
+}
+
 /* ---- checks */
 
 static void test_same_bytes_twice(void **state)
@@ -417,7 +438,9 @@ static void test_random_documents(void **state)
             empty_document(&arena, i % 2 ? DOCUMENT_RECORD : DOCUMENT_SHEET);
         document->page = i % 3 ? PAGE_A4 : PAGE_LETTER;
         if (i % 4 == 0)
-            sample_append(document, EXHIBIT_CAUTIONS, "c", NULL);
+            sample_append(document, EXHIBIT_TWO_COLUMNS, "c", NULL);
+        else if (i % 4 == 1)
+            sample_append(document, EXHIBIT_SIDE_BY_SIDE, "s", NULL);
         sample_prose(document, random_text(&arena, &seed));
         random_table(document, &seed);
         sample_append(document, EXHIBIT_FINGERPRINT, "f", NULL)->fingerprint.text =
@@ -471,6 +494,7 @@ static void save_all(const struct target *target)
     random_table(random, &seed);
     save(target, "random", random);
     save(target, "empty", empty_document(&arena, DOCUMENT_RECORD));
+    save(target, "beside", beside_document(&arena));
     save(target, "pictures", pictures_document(&arena, pictures));
     for (size_t i = 0; i < 8; i++)
         picture_release(&pictures[i]);

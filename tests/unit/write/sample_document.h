@@ -945,7 +945,7 @@ static void sample_bench(struct document *document)
                                             {"Done", NULL, NULL, COLUMN_BLANK, 11, 1}};
     static struct write_on lines[] = {
         {"Date", "", 6}, {"Bench", "°C", 4}, {"Humidity", "%", 4}, {"Meter", "", 6}, {"By", "", 6}};
-    sample_append(document, EXHIBIT_CAUTIONS, "before", NULL);
+    sample_append(document, EXHIBIT_TWO_COLUMNS, "before", NULL);
     sample_prose(
         document,
         "- Plug out, discharge through 10 kΩ 5 W, prove under 10 V with a meter, then lift.\n"
@@ -1055,7 +1055,7 @@ static inline struct document *sample_document(struct arena *arena, unsigned cop
                  "## Fingerprint\n\nSHA-256 of `findings.json` in the same folder. Any change to "
                  "it changes this number.\n");
     sample_append(document, EXHIBIT_FINGERPRINT, "hash", NULL)->fingerprint.text =
-        "5d41c7e2 90ab36f8 17d24e6b c3905fa1 882e6d07 4bf9a315 e06c2d98 71f3b54a";
+        "5d41c7e290ab36f817d24e6bc3905fa1882e6d074bf9a315e06c2d9871f3b54a";
     return document;
 }
 
