@@ -58,12 +58,14 @@ static bool together(const struct assessment *assessment, size_t a, size_t b)
 struct company {
     const size_t *parts;
     size_t count;
+    struct place_values **effects; /* of each capacitor of the job; see effects_alone */
 };
 
-static struct company company_of(const struct assessment *assessment, size_t index)
+static struct company company_of(const struct assessment *assessment, size_t index,
+                                 struct place_values **effects)
 {
     size_t *parts = arena_array(assessment->arena, assessment->job->capacitor_count, sizeof *parts);
-    struct company company = {parts, 0};
+    struct company company = {parts, 0, effects};
     for (size_t i = 0; i < assessment->job->capacitor_count; i++)
         if (i == index || (takes_part(assessment, i) && together(assessment, index, i)))
             parts[company.count++] = i;
@@ -206,6 +208,24 @@ static const struct criterion *single_of(const struct judgement *judgement, enum
     return NULL;
 }
 
+/* What a part does by itself. Asked for by each of its company, and worked out once: a stage is
+   solved for it. */
+static const struct place_values *effects_alone(const struct assessment *assessment, size_t index,
+                                                const struct company *company)
+{
+    if (company->effects[index])
+        return company->effects[index];
+    const struct part_work *work = &assessment->work[index];
+    struct place_values *alone = arena_get(assessment->arena, sizeof *alone), bare;
+    place_evaluate(&work->place, work->leak.conductance_s, alone);
+    place_evaluate(&work->place, 0, &bare);
+    if (bare.count < alone->count)
+        alone->count = bare.count;
+    for (size_t n = 0; n < alone->count; n++)
+        alone->items[n].value = fmax(alone->items[n].value - bare.items[n].value, 0);
+    return company->effects[index] = alone;
+}
+
 /* The share of a joint figure that one part brings, by what each does alone. */
 static double share_of(const struct assessment *assessment, size_t index,
                        const struct company *company, enum criterion_key key)
@@ -213,14 +233,11 @@ static double share_of(const struct assessment *assessment, size_t index,
     double own = 0, all = 0;
     for (size_t k = 0; k < company->count; k++) {
         size_t i = company->parts[k];
-        struct place_values alone, bare;
-        place_evaluate(&assessment->work[i].place, assessment->work[i].leak.conductance_s, &alone);
-        place_evaluate(&assessment->work[i].place, 0, &bare);
-        for (size_t n = 0; n < alone.count && n < bare.count; n++)
-            if (alone.items[n].key == key) {
-                double effect = fmax(alone.items[n].value - bare.items[n].value, 0);
-                all += effect;
-                own = i == index ? effect : own;
+        const struct place_values *alone = effects_alone(assessment, i, company);
+        for (size_t n = 0; n < alone->count; n++)
+            if (alone->items[n].key == key) {
+                all += alone->items[n].value;
+                own = i == index ? alone->items[n].value : own;
             }
     }
     return all > 0 ? own / all : 0;
@@ -300,12 +317,13 @@ static void assess_together(struct assessment *assessment)
 {
     size_t count = assessment->job->capacitor_count;
     struct judgement *results = arena_array(assessment->arena, count + 1, sizeof *results);
+    struct place_values **effects = arena_array(assessment->arena, count + 1, sizeof *effects);
     /* All are judged on the single outcomes before any of them is changed. */
     for (size_t i = 0; i < count; i++) {
         results[i] = assessment->work[i].final;
         if (kind_of(&assessment->work[i].place) == JOINT_NONE || !takes_part(assessment, i))
             continue;
-        struct company company = company_of(assessment, i);
+        struct company company = company_of(assessment, i, effects);
         if (company.count > 1)
             judge_jointly(assessment, i, &company, &results[i]);
     }
