@@ -20,11 +20,17 @@ static bool is_html(cmark_node *node)
     return type == CMARK_NODE_HTML_BLOCK || type == CMARK_NODE_HTML_INLINE;
 }
 
+/* A PDF says a link's address again on each of its lines: without a limit one text of 64 KiB made
+   a record of 100 MB. */
+enum { LINK_BYTES_MAX = 2048 };
+
 static bool is_allowed_link(cmark_node *node)
 {
     static const char *const schemes[] = {"http:", "https:", "mailto:", "tel:"};
     const char *url = cmark_node_get_url(node);
-    for (size_t i = 0; url && i < sizeof schemes / sizeof *schemes; i++)
+    if (!url || strlen(url) > LINK_BYTES_MAX)
+        return false;
+    for (size_t i = 0; i < sizeof schemes / sizeof *schemes; i++)
         if (strncasecmp(url, schemes[i], strlen(schemes[i])) == 0)
             return true;
     return false;
@@ -116,9 +122,10 @@ static void warn(struct composition *composition, const struct source *source, s
         diagnostic_add(list, source, at, code, "list it under photos",
                        "a picture in a text is left out of the record, its words are kept");
     else
-        diagnostic_add(list, source, at, code,
-                       "links may begin with http:, https:, mailto: or tel:",
-                       "a link is left out of the record, its words are kept");
+        diagnostic_add(
+            list, source, at, code,
+            "links begin with http:, https:, mailto: or tel:, and have 2048 bytes at most",
+            "a link is left out of the record, its words are kept");
 }
 
 void prose_clean(struct composition *composition, cmark_node *tree, const struct source *source,

@@ -212,6 +212,23 @@ static void test_definitions_stay_at_home(void **state)
     sample_end(sample, document);
 }
 
+/* Of 2048 bytes the longest, of one more none. */
+static void test_long_link(void **state)
+{
+    (void)state;
+    char text[2100];
+    for (int length = 2048; length <= 2049; length++) {
+        struct sample *sample = sample_begin();
+        snprintf(text, sizeof text, "[word](http://%0*d)", length - 7, 0);
+        sample->job.work = sample_prose(text, 70);
+        struct document *document = sample_compose(sample, DOCUMENT_RECORD);
+        assert_non_null(document);
+        assert_int_equal(count_type(document->root, CMARK_NODE_LINK), length == 2048);
+        assert_int_equal(count_code(sample, DIAGNOSTIC_LINK_DROPPED), length != 2048);
+        sample_end(sample, document);
+    }
+}
+
 static void test_positions_and_kept_words(void **state)
 {
     (void)state;
@@ -333,15 +350,11 @@ static void test_empty_job(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
-        cmocka_unit_test(test_record),
-        cmocka_unit_test(test_sheet_and_assessment),
-        cmocka_unit_test(test_forging),
-        cmocka_unit_test(test_definitions_stay_at_home),
-        cmocka_unit_test(test_positions_and_kept_words),
-        cmocka_unit_test(test_nesting),
-        cmocka_unit_test(test_too_long),
-        cmocka_unit_test(test_cautions_by_set),
-        cmocka_unit_test(test_in_progress),
+        cmocka_unit_test(test_record),          cmocka_unit_test(test_sheet_and_assessment),
+        cmocka_unit_test(test_forging),         cmocka_unit_test(test_definitions_stay_at_home),
+        cmocka_unit_test(test_long_link),       cmocka_unit_test(test_positions_and_kept_words),
+        cmocka_unit_test(test_nesting),         cmocka_unit_test(test_too_long),
+        cmocka_unit_test(test_cautions_by_set), cmocka_unit_test(test_in_progress),
         cmocka_unit_test(test_empty_job),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
