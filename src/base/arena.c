@@ -68,9 +68,13 @@ void *arena_grow(struct arena *arena, void *items, size_t count, size_t *capacit
     if (count < *capacity)
         return items;
     *capacity = *capacity ? *capacity * 2 : 8;
-    void *larger = arena_array(arena, *capacity, item_bytes);
+    if (item_bytes && *capacity > (size_t)-1 / item_bytes)
+        memory_exhausted();
+    size_t used_bytes = count * item_bytes;
+    char *larger = take(arena, *capacity * item_bytes);
     if (count)
-        memcpy(larger, items, count * item_bytes);
+        memcpy(larger, items, used_bytes);
+    memset(larger + used_bytes, 0, *capacity * item_bytes - used_bytes);
     return larger;
 }
 

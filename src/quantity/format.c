@@ -177,11 +177,14 @@ struct figures figures_scaled(struct arena *arena, double value, double scale,
                             .unit = unit_text};
 }
 
-/* The step by what will be printed: 7190 s to two figures are 2 h, not 120 min. */
+/* The step by what will be printed: 7190 s to two figures are 2 h, not 120 min. Every step begins
+   at one figure, 0.1 or 2, so rounding never leads below it, and to it from no less than half. */
 static const struct step *step_for(double size, enum unit unit, unsigned digits)
 {
     const struct step *step = steps_of[unit];
-    while (rounded_to(size / step->scale, digits) * step->scale < step->from * (1 - 1e-12))
+    while (size < step->from / 2 ||
+           (size < step->from &&
+            rounded_to(size / step->scale, digits) * step->scale < step->from * (1 - 1e-12)))
         step++;
     return step;
 }
@@ -219,14 +222,14 @@ const char *figures_text(struct arena *arena, const struct figures *figures)
     const char *parts[] = {
         figures->bound,    figures->bound[0] != '\0' ? THIN_SPACE : "",    figures->whole,
         figures->fraction, figures->unit[0] != '\0' ? NO_BREAK_SPACE : "", figures->unit};
-    size_t length = 1;
-    for (size_t i = 0; i < sizeof parts / sizeof parts[0]; i++)
-        length += strlen(parts[i]);
+    enum { PARTS = sizeof parts / sizeof parts[0] };
+    size_t lengths[PARTS], length = 1;
+    for (size_t i = 0; i < PARTS; i++)
+        length += lengths[i] = strlen(parts[i]);
     char *text = arena_get(arena, length), *at = text;
-    for (size_t i = 0; i < sizeof parts / sizeof parts[0]; i++) {
-        size_t part = strlen(parts[i]);
-        memcpy(at, parts[i], part);
-        at += part;
+    for (size_t i = 0; i < PARTS; i++) {
+        memcpy(at, parts[i], lengths[i]);
+        at += lengths[i];
     }
     return text;
 }

@@ -23,13 +23,20 @@ static const char *html_entity(unsigned char c)
     }
 }
 
+/* Nearly every byte of a page, told apart quickly. */
+static bool is_plain(unsigned char c)
+{
+    return (c > '>' && c != 0x7f) || (c > '&' && c < '<') || c == ' ';
+}
+
 void escape_html(struct buffer *out, const char *text)
 {
     if (!text)
         return;
     const char *run = text;
     for (; *text; text++) {
-        const char *entity = html_entity((unsigned char)*text);
+        unsigned char c = (unsigned char)*text;
+        const char *entity = is_plain(c) ? NULL : html_entity(c);
         if (!entity)
             continue;
         buffer_append(out, run, (size_t)(text - run));
@@ -81,6 +88,14 @@ static size_t line_markup(const char *text)
     return item ? digits + 1 : 0;
 }
 
+/* Letters, digits, spaces and most signs: nearly every byte, told apart quickly. */
+static bool is_harmless(unsigned char c)
+{
+    if (c >= 'a')
+        return c <= 'z' || c >= 0x80;
+    return c == ' ' || (c > '&' && c <= 'Z' && c != '*' && c != '<');
+}
+
 void escape_markdown(struct buffer *out, const char *text)
 {
     if (!text)
@@ -95,6 +110,8 @@ void escape_markdown(struct buffer *out, const char *text)
     const char *run = text;
     for (; *text; text++) {
         unsigned char c = (unsigned char)*text;
+        if (is_harmless(c))
+            continue;
         bool control = c < 0x20 || c == 0x7f;
         if (!control && !is_markup(text))
             continue;

@@ -39,8 +39,14 @@ struct font_charset *font_charset_create(const struct font_face *face)
 {
     struct font_charset *set = memory_get_cleared(1, sizeof *set);
     set->face = face;
+    set->pages[0] = memory_get_cleared(256, sizeof *set->pages[0]);
     append_character(set, 0, 0);
     return set;
+}
+
+const uint16_t *font_charset_latin(const struct font_charset *set)
+{
+    return set->pages[0];
 }
 
 static void release_streams(struct font_streams *streams)

@@ -45,6 +45,9 @@ const struct font_face *font_charset_face(const struct font_charset *set);
  */
 uint16_t font_charset_add(struct font_charset *set, uint32_t code_point);
 
+/* The numbers of U+0000 to U+00FF that the set has already, 0 for the others; for its lifetime. */
+const uint16_t *font_charset_latin(const struct font_charset *set);
+
 /*
  * Make the streams and seal the set.
  * On failure the set stays open and as it was. Sealing twice does nothing.

@@ -192,37 +192,48 @@ static void printed_digits(double value, struct digits *digits)
     digits->exponent10 = (int)strtol(c + 1, NULL, 10) - (digits->count - 1);
 }
 
-static void put_zeros(struct buffer *out, int count)
+static char *put_zeros(char *end, int count)
 {
-    for (int i = 0; i < count; i++)
-        buffer_byte(out, '0');
+    memset(end, '0', (size_t)count);
+    return end + count;
+}
+
+static char *put_text(char *end, const char *text, size_t length)
+{
+    memcpy(end, text, length);
+    return end + length;
 }
 
 /* As people write numbers between 0.0001 and 1e15, else with an exponent. */
 static void put_digits(struct buffer *out, const struct digits *digits)
 {
+    enum { ROOM = DIGITS_MAX + 20 }; /* the longest: 15 zeros, or point and exponent */
     int point = digits->count + digits->exponent10; /* digits before the decimal point */
     size_t count = (size_t)digits->count;
+    buffer_reserve(out, ROOM);
+    char *end = out->data + out->length;
     if (point > 15 || point < -3) {
-        buffer_byte(out, digits->text[0]);
+        *end++ = digits->text[0];
         if (count > 1) {
-            buffer_byte(out, '.');
-            buffer_append(out, digits->text + 1, count - 1);
+            *end++ = '.';
+            end = put_text(end, digits->text + 1, count - 1);
         }
-        buffer_byte(out, 'e');
+        *end++ = 'e';
+        out->length = (size_t)(end - out->data);
         buffer_decimal(out, point - 1);
-    } else if (point <= 0) {
-        buffer_text(out, "0.");
-        put_zeros(out, -point);
-        buffer_append(out, digits->text, count);
-    } else if ((size_t)point >= count) {
-        buffer_append(out, digits->text, count);
-        put_zeros(out, point - (int)count);
-    } else {
-        buffer_append(out, digits->text, (size_t)point);
-        buffer_byte(out, '.');
-        buffer_append(out, digits->text + point, count - (size_t)point);
+        return;
     }
+    if (point <= 0) {
+        end = put_zeros(put_text(end, "0.", 2), -point);
+        end = put_text(end, digits->text, count);
+    } else if ((size_t)point >= count) {
+        end = put_zeros(put_text(end, digits->text, count), point - (int)count);
+    } else {
+        end = put_text(end, digits->text, (size_t)point);
+        *end++ = '.';
+        end = put_text(end, digits->text + point, count - (size_t)point);
+    }
+    out->length = (size_t)(end - out->data);
 }
 
 void json_number(struct buffer *out, double value)

@@ -164,18 +164,15 @@ static void set_font(struct pdf_canvas *canvas, enum text_face face, double size
 /* A literal string: only parentheses, the backslash and a carriage return need care. */
 static void append_string(struct buffer *out, const struct buffer *codes)
 {
+    static const char escapes[256] = {['\r'] = 'r', ['('] = '(', [')'] = ')', ['\\'] = '\\'};
     buffer_reserve(out, 2 * codes->length + 5);
     char *at = out->data + out->length;
     *at++ = '(';
     for (size_t i = 0; i < codes->length; i++) {
-        char byte = codes->data[i];
-        if (byte == '\r') {
+        char byte = codes->data[i], escape = escapes[(unsigned char)byte];
+        if (escape)
             *at++ = '\\';
-            byte = 'r';
-        } else if (byte == '(' || byte == ')' || byte == '\\') {
-            *at++ = '\\';
-        }
-        *at++ = byte;
+        *at++ = escape ? escape : byte;
     }
     *at++ = ')';
     *at++ = 'T';

@@ -19,6 +19,8 @@ static bool is_clean(const char *text, size_t length)
 {
     for (size_t i = 0; i < length; i++) {
         unsigned char byte = (unsigned char)text[i];
+        if (byte >= 0x20 && byte < 0xC2)
+            continue;
         unsigned char next = i + 1 < length ? (unsigned char)text[i + 1] : 0;
         if (byte < 0x20 || (byte == 0xC2 && next == 0xAD) || byte == 0xEF ||
             (byte == 0xE2 && (next == 0x80 || next == 0x81)))
@@ -192,14 +194,14 @@ static struct spot skip_spaces(const struct breaker *breaker, struct spot place)
 /* One line from `from`; the answer is where the next begins. */
 static struct spot break_line(struct breaker *breaker, struct spot from)
 {
-    struct spot at = from, candidate = from, last;
+    struct spot at = from, candidate = from;
     bool has_candidate = false;
     uint32_t before = 0;
     while (at.run < breaker->runs->count) {
         const struct text_run *run = &breaker->runs->items[at.run];
         const char *end = run->text + run->length;
         while (at.at < end) {
-            last = at;
+            const char *character = at.at;
             uint32_t code_point = utf8_next(&at.at, end);
             if (code_point == ' ' && !is_before_unit(before, at.at, end)) {
                 candidate = at;
@@ -208,9 +210,11 @@ static struct spot break_line(struct breaker *breaker, struct spot from)
             at.width += pdf_character_width(breaker->resources, run->style.face, code_point) *
                         run->style.size_pt / 1000;
             if (code_point != ' ' && at.width > breaker->limit + 0.01) {
-                if (!has_candidate && last.run == from.run && last.at == from.at)
-                    last = at; /* not even one character fits: it stands alone */
-                struct spot end_of_line = has_candidate ? candidate : last;
+                struct spot end_of_line = candidate;
+                if (!has_candidate)
+                    end_of_line = at.run == from.run && character == from.at
+                                      ? at /* not even one character fits: it stands alone */
+                                      : (struct spot){at.run, character, 0};
                 add_line(breaker, from, end_of_line);
                 return skip_spaces(breaker, end_of_line);
             }
@@ -233,6 +237,20 @@ static struct spot break_line(struct breaker *breaker, struct spot from)
     return at;
 }
 
+/* Cells of tables mostly fit in one line: then there is nothing to look for in them. */
+static bool fits_in_one_line(const struct breaker *breaker)
+{
+    enum { SHORT_BYTES = 120 };
+    const struct text_runs *runs = breaker->runs;
+    size_t bytes = 0;
+    for (size_t i = 0; i < runs->count; i++) {
+        bytes += runs->items[i].length;
+        if (bytes > SHORT_BYTES || (runs->items[i].line_end && i + 1 < runs->count))
+            return false;
+    }
+    return text_runs_width(runs, breaker->resources) <= breaker->limit;
+}
+
 struct text_lines text_lines_break(const struct text_runs *runs,
                                    const struct pdf_resources *resources, double width)
 {
@@ -241,6 +259,11 @@ struct text_lines text_lines_break(const struct text_runs *runs,
     if (runs->count == 0)
         return breaker.lines;
     struct spot at = {0, runs->items[0].text, 0};
+    if (fits_in_one_line(&breaker)) {
+        add_line(&breaker, at,
+                 (struct spot){runs->count - 1, run_end(&breaker, runs->count - 1), 0});
+        return breaker.lines;
+    }
     while (at.run < runs->count) {
         if (at.run + 1 == runs->count && at.at == run_end(&breaker, at.run) &&
             breaker.lines.count > 0)

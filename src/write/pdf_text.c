@@ -93,31 +93,43 @@ static struct font_charset *set_of(struct pdf_fonts *fonts, enum text_face face)
     return fonts->sets[face];
 }
 
-enum text_face pdf_text_encode(struct pdf_fonts *fonts, enum text_face face, const char **text,
-                               const char *end, struct buffer *codes)
+/* Codes of Latin characters that the set has already: nearly all, once a page is drawn. Stops at
+   the first other one. */
+static void encode_known(struct pdf_fonts *fonts, enum text_face face, const char **text,
+                         const char *end, struct buffer *codes)
 {
-    const struct pdf_resources *resources = fonts->resources;
-    enum text_face shown = FACE_COUNT;
-    struct font_charset *set = NULL;
+    const uint16_t *known = font_charset_latin(set_of(fonts, face));
+    buffer_reserve(codes, 2 * (size_t)(end - *text));
+    char *code = codes->data + codes->length;
     while (*text < end) {
         const char *next = *text;
         uint32_t code_point = utf8_next(&next, end);
-        struct glyph_place rare;
-        const struct glyph_place *place = &rare;
-        if (code_point < LATIN_COUNT)
-            place = &resources->latin[face][code_point];
-        else
-            rare = pdf_find_glyph(resources, face, code_point);
-        if (shown != FACE_COUNT && place->face != shown)
+        if (code_point >= LATIN_COUNT || known[code_point] == 0)
             break;
-        if (shown == FACE_COUNT) {
-            shown = place->face;
-            set = set_of(fonts, shown);
-        }
-        if (place->missing)
-            note_missing(fonts, code_point);
-        buffer_be16(codes, font_charset_add(set, place->code_point));
+        *code++ = (char)(known[code_point] >> 8);
+        *code++ = (char)(known[code_point] & 255);
         *text = next;
+    }
+    codes->length = (size_t)(code - codes->data);
+}
+
+enum text_face pdf_text_encode(struct pdf_fonts *fonts, enum text_face face, const char **text,
+                               const char *end, struct buffer *codes)
+{
+    enum text_face shown = FACE_COUNT;
+    while (*text < end) {
+        const char *next = *text;
+        uint32_t code_point = utf8_next(&next, end);
+        struct glyph_place place = pdf_find_glyph(fonts->resources, face, code_point);
+        if (shown != FACE_COUNT && place.face != shown)
+            break;
+        shown = place.face;
+        if (place.missing)
+            note_missing(fonts, code_point);
+        buffer_be16(codes, font_charset_add(set_of(fonts, shown), place.code_point));
+        *text = next;
+        if (shown == face)
+            encode_known(fonts, face, text, end, codes);
     }
     return shown;
 }

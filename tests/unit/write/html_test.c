@@ -82,6 +82,29 @@ static size_t count_of(const char *text, const char *word)
     return count;
 }
 
+/* HTML Living Standard, 13.3 (escaping a string) and 13.2.3.5 (control characters are errors). */
+static void every_byte_is_escaped(void **state)
+{
+    (void)state;
+    for (int byte = 1; byte < 256; byte++) {
+        char text[] = {'a', (char)byte, 'b', '\0'}, expected[16];
+        const char *middle = byte == '&'    ? "&amp;"
+                             : byte == '<'  ? "&lt;"
+                             : byte == '>'  ? "&gt;"
+                             : byte == '"'  ? "&quot;"
+                             : byte == '\t' ? "\t"
+                             : byte == '\n' ? "\n"
+                             : byte < 0x20  ? "\xef\xbf\xbd"
+                             : byte == 0x7f ? "\xef\xbf\xbd"
+                                            : NULL;
+        snprintf(expected, sizeof expected, "a%sb", middle ? middle : (char[]){(char)byte, '\0'});
+        struct buffer out = {0};
+        escape_html(&out, text);
+        assert_string_equal(buffer_string(&out), expected);
+        buffer_release(&out);
+    }
+}
+
 static void nothing_becomes_markup(void **state)
 {
     (void)state;
@@ -237,9 +260,10 @@ int main(int count, char **arguments)
     if (count > 1)
         return write_pages(arguments[1]);
     const struct CMUnitTest tests[] = {
-        cmocka_unit_test(sample_as_before), cmocka_unit_test(nothing_becomes_markup),
-        cmocka_unit_test(ids_stand_once),   cmocka_unit_test(page_mistakes_are_said),
-        cmocka_unit_test(css_strings),      cmocka_unit_test(letter_paper),
+        cmocka_unit_test(sample_as_before),       cmocka_unit_test(every_byte_is_escaped),
+        cmocka_unit_test(nothing_becomes_markup), cmocka_unit_test(ids_stand_once),
+        cmocka_unit_test(page_mistakes_are_said), cmocka_unit_test(css_strings),
+        cmocka_unit_test(letter_paper),
     };
     return cmocka_run_group_tests_name("html", tests, NULL, NULL);
 }
