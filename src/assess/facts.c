@@ -1,5 +1,6 @@
 #include "assess/facts.h"
 
+#include "assess/accuracy.h"
 #include "assess/mains.h"
 #include "assess/reading.h"
 #include "assess/temperature.h"
@@ -21,7 +22,7 @@ bool facts_no_reading_passes(const struct job *job, const struct capacitor *part
 }
 
 static void add(struct judgement *judgement, const struct policy *policy,
-                struct criterion criterion)
+                struct criterion criterion, bool too_coarse)
 {
     struct verdict_case judged = {.value = criterion.value,
                                   .limit = criterion.limit,
@@ -33,6 +34,10 @@ static void add(struct judgement *judgement, const struct policy *policy,
     else if (criterion.outcome == OUTCOME_CONDITIONAL_PASS ||
              criterion.outcome == OUTCOME_CONDITIONAL_FAIL)
         criterion.why = WHY_WITHIN_UNCERTAINTY;
+    if (too_coarse && criterion.outcome != OUTCOME_FAIL) {
+        criterion.outcome = OUTCOME_NOT_JUDGED;
+        criterion.why = WHY_INSTRUMENT;
+    }
     judge_add(judgement, &criterion);
 }
 
@@ -46,21 +51,20 @@ static bool capacitance_matters(const struct facts_case *facts)
             (place_is_mains(part->place) && !facts_no_reading_passes(facts->job, part)));
 }
 
-/* Expanded, in per cent of the marked value. */
-static double capacitance_u(const struct facts_case *facts)
+/* Expanded, of a measurement of value_f, in per cent of the marked value. */
+static double capacitance_u(const struct facts_case *facts, double value_f)
 {
-    double share = facts->policy->default_accuracy;
-    double measured_f = facts->part->measured.value.value;
-    double absolute_f = reading_last_digit(&facts->part->measured.value);
-    for (size_t i = 0; i < facts->job->instrument_count; i++) {
-        const struct instrument *instrument = &facts->job->instruments[i];
-        if (instrument->accuracy_set && instrument->accuracy_unit == UNIT_CAPACITANCE) {
-            share = instrument->accuracy_percent / 100;
-            absolute_f = instrument->accuracy_absolute;
-        }
-    }
-    return 100 * 2 * uncertainty_of_accuracy(measured_f, share, absolute_f) /
+    struct accuracy accuracy = accuracy_in_job(facts->job, UNIT_CAPACITANCE, facts->policy,
+                                               reading_last_digit(&facts->part->measured.value));
+    return 100 * 2 * uncertainty_of_accuracy(value_f, accuracy.share, accuracy.absolute) /
            facts->part->marked.value.value;
+}
+
+/* As of leakage: an instrument that is uncertain by half the limit tells a fail, and no more. */
+static bool capacitance_too_coarse(const struct facts_case *facts, double limit_percent)
+{
+    double at_limit_f = facts->part->marked.value.value * (1 + limit_percent / 100);
+    return capacitance_u(facts, at_limit_f) > facts->policy->instrument_share * fabs(limit_percent);
 }
 
 static void judge_capacitance(const struct facts_case *facts, struct judgement *judgement)
@@ -76,15 +80,18 @@ static void judge_capacitance(const struct facts_case *facts, struct judgement *
         high = marked->tolerance_high_percent;
         source = SOURCE_MARKED_TOLERANCE;
     }
-    double deviation = 100 * (facts->part->measured.value.value / marked->value.value - 1);
+    double measured_f = facts->part->measured.value.value;
+    double deviation = 100 * (measured_f / marked->value.value - 1);
+    double limit = deviation >= 0 ? high : low;
     add(judgement, facts->policy,
         (struct criterion){.key = CRITERION_CAPACITANCE,
                            .value = deviation,
-                           .uncertainty = capacitance_u(facts),
-                           .limit = deviation >= 0 ? high : low,
+                           .uncertainty = capacitance_u(facts, measured_f),
+                           .limit = limit,
                            .unit = UNIT_PERCENT,
                            .upper = deviation >= 0,
-                           .source = source});
+                           .source = source},
+        capacitance_too_coarse(facts, limit));
 }
 
 /* ---- the mains */
@@ -111,7 +118,8 @@ static void judge_rating(const struct facts_case *facts, struct judgement *judge
                            .limit = facts->policy->mains_rise * facts->job->set.mains.value,
                            .unit = UNIT_VOLTAGE,
                            .upper = false,
-                           .source = SOURCE_POLICY});
+                           .source = SOURCE_POLICY},
+        false);
 }
 
 static void judge_touch(const struct facts_case *facts, struct judgement *judgement)
@@ -129,7 +137,8 @@ static void judge_touch(const struct facts_case *facts, struct judgement *judgem
             .upper = true,
             .joint = true,
             .source = facts->policy->touch_current_a == published_touch_a ? SOURCE_TOUCH_CURRENT
-                                                                          : SOURCE_POLICY});
+                                                                          : SOURCE_POLICY},
+        false);
 }
 
 static void judge_pulse(const struct facts_case *facts, struct judgement *judgement)

@@ -67,3 +67,10 @@ double held_uncertainty(const struct job *job, const struct policy *policy,
         accuracy_in_job(job, quantity->unit, policy, reading_last_digit(quantity));
     return 2 * uncertainty_of_accuracy(quantity->value, accuracy.share, accuracy.absolute);
 }
+
+double held_insulation_uncertainty(const struct job *job, const struct policy *policy,
+                                   const struct quantity *insulation)
+{
+    struct accuracy accuracy = accuracy_of_insulation(job, policy, reading_last_digit(insulation));
+    return 2 * uncertainty_of_accuracy(insulation->value, accuracy.share, accuracy.absolute);
+}

@@ -19,9 +19,11 @@ struct held held_recorded(double value, enum unit unit);
 void held_judge(struct held *held, const struct policy *policy, enum bound bound);
 
 /* Expanded uncertainty of a measured quantity: by the job's instrument of its unit, else the
-   policy's default accuracy and one digit as written. */
+   policy's default accuracy and one digit as written. Of insulation by the one with test volts. */
 double held_uncertainty(const struct job *job, const struct policy *policy,
                         const struct quantity *quantity);
+double held_insulation_uncertainty(const struct job *job, const struct policy *policy,
+                                   const struct quantity *insulation);
 
 /* The worst outcome of both; NOT_JUDGED of one does not hide the other's fail. */
 enum outcome held_worse(enum outcome a, enum outcome b);

@@ -11,17 +11,14 @@ static double or_nan(double value)
 static void take_instrument(const struct assessment *assessment,
                             const struct capacitor_findings *part, struct part_working *working)
 {
-    const struct reading *reading = part->readings[part->deciding].reading;
-    const struct instrument *instrument = instrument_of(assessment->job, reading->instrument);
-    bool stated = instrument && instrument->accuracy_set;
-    working->series_ohm = reading_series_ohm(instrument);
-    working->instrument_share =
-        stated ? instrument->accuracy_percent / 100 : assessment->policy->default_accuracy;
-    working->instrument_absolute_a =
-        stated && instrument->accuracy_unit == UNIT_CURRENT ? instrument->accuracy_absolute : NAN;
-    working->instrument_step_a = instrument && instrument->resolution.set
-                                     ? instrument->resolution.value
-                                     : reading_last_digit(&reading->value);
+    const struct reading_findings *found = &part->readings[part->deciding];
+    struct reading_bench bench = {instrument_of(assessment->job, found->reading->instrument),
+                                  assessment->policy, assessment->bench_c};
+    struct reading_accuracy accuracy = reading_accuracy(found->reading, &bench, found->current_a);
+    working->series_ohm = reading_series_ohm(bench.instrument);
+    working->instrument_share = accuracy.share;
+    working->instrument_absolute_a = accuracy.stated ? accuracy.absolute_a : NAN;
+    working->instrument_step_a = accuracy.step_a;
 }
 
 static void take_stage(const struct assessment *assessment, const struct place_case *place,

@@ -2,6 +2,7 @@
 
 #include "assess/absorption.h"
 #include "assess/uncertainty.h"
+#include "job/part.h"
 
 #include <ctype.h>
 #include <math.h>
@@ -51,38 +52,44 @@ double reading_last_digit(const struct quantity *value)
 }
 
 /* An instrument's figures in ampere for a reading of current_a at volts_v: an accuracy in ohm is
-   brought to ampere by dI = I^2/V dR. */
+   brought to ampere by dI = I^2/V dR. Of volts or farads nothing can be said in ampere. */
 static double to_ampere(double figure, enum unit unit, double current_a, double volts_v)
 {
     if (unit == UNIT_RESISTANCE)
         return volts_v > 0 ? figure * current_a * current_a / volts_v : 0;
-    return figure;
+    return unit == UNIT_CURRENT ? figure : 0;
 }
 
 static double resolution_a(const struct reading *reading, const struct instrument *instrument,
                            double current_a)
 {
+    const struct quantity *step = instrument ? &instrument->resolution : NULL;
     double volts_v = reading->set_volts.value;
-    if (instrument && instrument->resolution.set)
-        return to_ampere(instrument->resolution.value, instrument->resolution.unit, current_a,
-                         volts_v);
+    if (step && step->set && (step->unit == UNIT_CURRENT || step->unit == UNIT_RESISTANCE))
+        return to_ampere(step->value, step->unit, current_a, volts_v);
     return to_ampere(reading_last_digit(&reading->value), reading->value.unit, current_a, volts_v);
 }
 
-static double accuracy_a(const struct reading *reading, const struct reading_bench *bench,
-                         double current_a)
+struct reading_accuracy reading_accuracy(const struct reading *reading,
+                                         const struct reading_bench *bench, double current_a)
 {
     const struct instrument *instrument = bench->instrument;
-    if (!instrument || !instrument->accuracy_set)
-        return uncertainty_of_accuracy(current_a, bench->policy->default_accuracy,
-                                       resolution_a(reading, instrument, current_a));
     double volts_v = reading->set_volts.value;
-    double absolute =
+    struct reading_accuracy found = {.step_a = resolution_a(reading, instrument, current_a)};
+    found.stated = instrument && instrument->accuracy_set && instrument_reads_leakage(instrument);
+    if (!found.stated) {
+        found.share = bench->policy->default_accuracy;
+        found.absolute_a = found.step_a;
+        return found;
+    }
+    found.share = instrument->accuracy_percent / 100;
+    found.absolute_a =
         to_ampere(instrument->accuracy_absolute, instrument->accuracy_unit, current_a, volts_v);
     if (instrument->full_scale.set)
-        absolute += to_ampere(instrument->full_scale_percent / 100 * instrument->full_scale.value,
-                              instrument->full_scale.unit, current_a, volts_v);
-    return uncertainty_of_accuracy(current_a, instrument->accuracy_percent / 100, absolute);
+        found.absolute_a +=
+            to_ampere(instrument->full_scale_percent / 100 * instrument->full_scale.value,
+                      instrument->full_scale.unit, current_a, volts_v);
+    return found;
 }
 
 struct reading_uncertainty reading_uncertainty(const struct reading *reading,
@@ -92,9 +99,10 @@ struct reading_uncertainty reading_uncertainty(const struct reading *reading,
     double volts_share = instrument && instrument->volts_accuracy.set
                              ? instrument->volts_accuracy.value / 100
                              : bench->policy->volts_accuracy;
+    struct reading_accuracy accuracy = reading_accuracy(reading, bench, current_a);
     return (struct reading_uncertainty){
-        .accuracy_a = accuracy_a(reading, bench, current_a),
-        .resolution_a = uncertainty_of_resolution(resolution_a(reading, instrument, current_a)),
+        .accuracy_a = uncertainty_of_accuracy(current_a, accuracy.share, accuracy.absolute_a),
+        .resolution_a = uncertainty_of_resolution(accuracy.step_a),
         .set_v = uncertainty_of_accuracy(reading->set_volts.value, volts_share, 0),
         .series_ohm = uncertainty_of_accuracy(reading_series_ohm(instrument), volts_share, 0),
     };

@@ -22,6 +22,15 @@ struct reading_uncertainty {
     double series_ohm;               /* ohm */
 };
 
+/* What the reading's instrument states, in ampere for a reading of current_a; not `stated`: the
+   policy's default accuracy and one step. */
+struct reading_accuracy {
+    bool stated;
+    double share, absolute_a, step_a;
+};
+struct reading_accuracy reading_accuracy(const struct reading *reading,
+                                         const struct reading_bench *bench, double current_a);
+
 /* Resistance in series with the part, ohm: inside the tester and of the meter itself. */
 double reading_series_ohm(const struct instrument *instrument);
 

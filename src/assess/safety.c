@@ -8,8 +8,10 @@
 static struct held hold(const struct job *job, const struct policy *policy,
                         const struct safety_figure *figure, const struct quantity *value)
 {
+    bool insulation = isfinite(figure->test_v);
     struct held held = {.value = value->value,
-                        .uncertainty = held_uncertainty(job, policy, value),
+                        .uncertainty = insulation ? held_insulation_uncertainty(job, policy, value)
+                                                  : held_uncertainty(job, policy, value),
                         .low = figure->upper ? (double)NAN : figure->limit,
                         .high = figure->upper ? figure->limit : (double)NAN,
                         .unit = value->unit,

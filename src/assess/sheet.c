@@ -11,19 +11,6 @@
 static const double series_share = 0.05; /* of the service volts, may drop at the limit */
 static const double volts_step = 10;     /* what a supply that can be set to anything is set to */
 
-/* The instrument for leakage: the one so named, else the first that reads current or insulation. */
-static int leakage_instrument(const struct job *job)
-{
-    for (size_t i = 0; i < job->instrument_count; i++)
-        if (strcasecmp(job->instruments[i].name, "leakage") == 0)
-            return (int)i;
-    for (size_t i = 0; i < job->instrument_count; i++)
-        if (job->instruments[i].volt_count > 0 ||
-            (job->instruments[i].accuracy_set && job->instruments[i].accuracy_unit == UNIT_CURRENT))
-            return (int)i;
-    return NOT_LISTED;
-}
-
 /* An AVC line's allowance is for all its parts: each may use its share. */
 static size_t sharers(const struct job *job, const struct capacitor *part)
 {
@@ -172,12 +159,6 @@ static void say_what_would_do(const struct plan *plan, struct capacitor_findings
         plan->assessment->policy->instrument_share * part->sheet_limit_a;
 }
 
-/* An instrument that reads leakage or insulation, and not volts, ohms of resistors or farads. */
-static bool reads_leakage(const struct instrument *instrument)
-{
-    return instrument->volt_count > 0 && !instrument->input.set && !instrument->sensitivity.set;
-}
-
 /* Where the instrument for leakage cannot tell the limit at any volts, another of the job may. */
 static int better_instrument(struct plan plan, int number)
 {
@@ -186,7 +167,7 @@ static int better_instrument(struct plan plan, int number)
         return number;
     for (size_t i = 0; i < job->instrument_count; i++) {
         plan.instrument = &job->instruments[i];
-        double volts_v = reads_leakage(plan.instrument) ? test_volts(&plan) : NAN;
+        double volts_v = instrument_applies_volts(plan.instrument) ? test_volts(&plan) : NAN;
         if (volts_v >= wanted_volts(&plan) && suffices(&plan, volts_v))
             return (int)i;
     }

@@ -1,5 +1,6 @@
 #include "assess/sheet_voltage.h"
 
+#include "assess/accuracy.h"
 #include "assess/held.h"
 
 #include <math.h>
@@ -12,19 +13,6 @@ double meter_reading(double true_v, double source_ohm, double meter_ohm)
 double meter_true_volts(double reading_v, double source_ohm, double meter_ohm)
 {
     return isinf(meter_ohm) ? reading_v : reading_v * (meter_ohm + source_ohm) / meter_ohm;
-}
-
-/* ohm of today's meter; INFINITY: none is named that loads. */
-static double todays_ohm(const struct job *job, const struct voltage_point *point)
-{
-    for (size_t i = 0; i < job->instrument_count; i++) {
-        const struct instrument *instrument = &job->instruments[i];
-        if (instrument->input.set)
-            return instrument->input.value;
-        if (instrument->sensitivity.set && point->range.set)
-            return instrument->sensitivity.value * point->range.value;
-    }
-    return INFINITY;
 }
 
 static const char *missing_key(const struct voltages *voltages, const struct voltage_point *point)
@@ -57,7 +45,7 @@ static struct voltage_findings assess_point(const struct job *job, const struct 
     const struct voltages *voltages = &job->voltages;
     struct voltage_findings found = {.source_ohm = 0,
                                      .sheet_ohm = NAN,
-                                     .meter_ohm = todays_ohm(job, point),
+                                     .meter_ohm = voltmeter_ohm(job, &point->range),
                                      .true_v = NAN,
                                      .expected_v = {NAN, NAN}};
     double ohm;

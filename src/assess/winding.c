@@ -40,7 +40,7 @@ static struct held judge_insulation(const struct job *job, const struct policy *
     enum safety_kind kind = job->set.supply == SUPPLY_LIVE_CHASSIS ? SAFETY_INSULATION_DOUBLE
                                                                    : SAFETY_INSULATION_EARTHED;
     struct held held = {.value = part->insulation.value,
-                        .uncertainty = held_uncertainty(job, policy, &part->insulation),
+                        .uncertainty = held_insulation_uncertainty(job, policy, &part->insulation),
                         .low = safety_figure(kind)->limit,
                         .high = NAN,
                         .unit = UNIT_RESISTANCE,

@@ -133,6 +133,50 @@ const struct instrument *instrument_of(const struct job *job, int index)
     return index >= 0 && (size_t)index < job->instrument_count ? &job->instruments[index] : NULL;
 }
 
+static bool is_voltmeter(const struct instrument *instrument)
+{
+    return instrument->input.set || instrument->sensitivity.set;
+}
+
+enum unit instrument_unit(const struct instrument *instrument)
+{
+    if (instrument->accuracy_unit != UNIT_NONE)
+        return instrument->accuracy_unit;
+    if (instrument->full_scale.set)
+        return instrument->full_scale.unit;
+    return is_voltmeter(instrument) ? UNIT_VOLTAGE : UNIT_NONE;
+}
+
+static enum unit stated_or_step(const struct instrument *instrument)
+{
+    enum unit unit = instrument_unit(instrument);
+    return unit == UNIT_NONE && instrument->resolution.set ? instrument->resolution.unit : unit;
+}
+
+bool instrument_reads_leakage(const struct instrument *instrument)
+{
+    enum unit unit = stated_or_step(instrument);
+    return unit == UNIT_CURRENT || unit == UNIT_RESISTANCE || unit == UNIT_NONE;
+}
+
+bool instrument_applies_volts(const struct instrument *instrument)
+{
+    return instrument->volt_count > 0 && !is_voltmeter(instrument);
+}
+
+bool instrument_reads_insulation(const struct instrument *instrument)
+{
+    return instrument_applies_volts(instrument) && stated_or_step(instrument) == UNIT_RESISTANCE;
+}
+
+int leakage_instrument(const struct job *job)
+{
+    for (size_t i = 0; i < job->instrument_count; i++)
+        if (instrument_reads_leakage(&job->instruments[i]))
+            return (int)i;
+    return NOT_LISTED;
+}
+
 bool action_is_change(enum action done)
 {
     return done == DONE_RESTUFFED || done == DONE_REPLACED || done == DONE_DISCONNECTED;

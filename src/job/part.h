@@ -58,6 +58,20 @@ enum origin part_origin(const struct job *job, const struct capacitor *part);
 /* The instrument with this index, as readings name it; NULL: none named. */
 const struct instrument *instrument_of(const struct job *job, int index);
 
+/* What its accuracy is stated for: the unit of its fixed part or digits, of its full scale, or
+   volts because it loads like a voltmeter; UNIT_NONE: per cent of the reading, whatever that is. */
+enum unit instrument_unit(const struct instrument *instrument);
+
+/* Whether it reads leakage or insulation: amperes or ohms, or nothing else by what it says. */
+bool instrument_reads_leakage(const struct instrument *instrument);
+
+/* Whether it applies test volts. Its ohms are insulation then, and no resistor's. */
+bool instrument_applies_volts(const struct instrument *instrument);
+bool instrument_reads_insulation(const struct instrument *instrument);
+
+/* The first of the job's that reads leakage: of a reading that names none. NOT_LISTED: none. */
+int leakage_instrument(const struct job *job);
+
 /* What works in the set since then is another part, or another inside: restuffed, replaced,
    disconnected. */
 bool action_is_change(enum action done);

@@ -132,10 +132,17 @@ static const struct criterion *criterion_deciding(const struct capacitor_finding
     return NULL;
 }
 
+/* No reading of leakage is to blame, nor would other test volts help. */
+static bool is_by_capacitance(const struct capacitor_findings *part)
+{
+    const struct criterion *deciding = criterion_deciding(part);
+    return deciding && deciding->key == CRITERION_CAPACITANCE;
+}
+
 static const char *resolution_text(const struct phrasing *say, const struct job *job,
                                    const struct capacitor_findings *part)
 {
-    if (part->deciding < 0)
+    if (part->deciding < 0 || is_by_capacitance(part))
         return NULL;
     const struct instrument *instrument =
         instrument_of(job, part->readings[part->deciding].reading->instrument);
@@ -157,7 +164,8 @@ struct mustache_value *part_values(const struct phrasing *say, const struct job 
     mustache_set_text(arena, values, "tested", text_set(arena, part->test_v, UNIT_VOLTAGE, 3));
     mustache_set_text(arena, values, "service", text_set(arena, part->service_v, UNIT_VOLTAGE, 3));
     /* Volts at which the meter would do, where it did not. */
-    double enough_v = part->sheet_not_with_this_meter        ? part->sheet_volts_needed_v
+    double enough_v = is_by_capacitance(part)                ? NAN
+                      : part->sheet_not_with_this_meter      ? part->sheet_volts_needed_v
                       : part->sheet_voltage_v > part->test_v ? part->sheet_voltage_v
                                                              : NAN;
     mustache_set_text(arena, values, "enough", text_set(arena, enough_v, UNIT_VOLTAGE, 2));
