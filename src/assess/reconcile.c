@@ -1,5 +1,6 @@
 #include "assess/reconcile.h"
 
+#include "assess/accuracy.h"
 #include "assess/held.h"
 
 #include <math.h>
@@ -28,16 +29,9 @@ struct stage_case {
     const struct stage_model *model;
     const struct stage_findings *stage;
     enum phase phase;
+    const struct stage_reading *read;
+    const struct stage_solution *at; /* with the leaks that were there when it was read */
 };
-
-/* The meter's resistance for a reading to chassis; INFINITY: none named that loads. */
-static double meter_ohm(const struct job *job)
-{
-    for (size_t i = 0; i < job->instrument_count; i++)
-        if (job->instruments[i].input.set)
-            return job->instruments[i].input.value;
-    return INFINITY;
-}
 
 /* Expanded, V: what the readings of the coupling parts leave open of the volts they explain. */
 static double leak_uncertainty(const struct stage_case *given, double explained_v)
@@ -66,7 +60,8 @@ static struct reconciled_node compare(const struct stage_case *given,
                                       double bound_v)
 {
     struct reconciled_node node = unknown_node();
-    if (!measured->set || measured->bound != BOUND_NONE || !isfinite(low_v) || !isfinite(high_v))
+    if (!measured->set || measured->bound != BOUND_NONE || !isfinite(low_v) || !isfinite(high_v) ||
+        isnan(bound_v))
         return node;
     double u_v = held_uncertainty(given->assessment->job, given->assessment->policy, measured);
     node = (struct reconciled_node){.measured_v = measured->value,
@@ -79,21 +74,31 @@ static struct reconciled_node compare(const struct stage_case *given,
     return node;
 }
 
-static void reconcile_grid(const struct stage_case *given, const struct stage_reading *read,
-                           struct reconciled_phase *phase)
+/* Where the grid stands without a meter, parts cold and warm. */
+static void explained_grid(const struct stage_case *given, double *cold_v, double *warm_v)
 {
     const struct stage_phase *found = &given->stage->phases[given->phase];
+    *cold_v = given->read->parts_lifted ? given->at->grid_v : found->grid_cold_v;
+    *warm_v = given->read->parts_lifted ? given->at->grid_v : found->grid_warm_v;
+}
+
+/* The meter loads the grid: it sees R_g || R_m, and only volts above the explained range, read
+   through that, are called grid current. */
+static void reconcile_grid(const struct stage_case *given, struct reconciled_phase *phase)
+{
     double leak_ohm = given->model->ohms[given->phase][STAGE_GRID_LEAK];
     if (!(leak_ohm > 0))
         return;
-    double meter = meter_ohm(given->assessment->job);
+    double meter = voltmeter_ohm(given->assessment->job, NULL);
     double seen_ohm = 1 / (1 / leak_ohm + 1 / meter), loading = seen_ohm / leak_ohm;
-    double low_v = fmin(found->grid_cold_v, found->grid_warm_v) * loading;
-    double high_v = fmax(found->grid_cold_v, found->grid_warm_v) * loading;
-    double leak_u_v =
-        leak_uncertainty(given, (found->grid_warm_v - found->solution.return_v) * loading);
+    double cold_v, warm_v;
+    explained_grid(given, &cold_v, &warm_v);
+    double high_v = fmax(cold_v, warm_v) * loading;
+    double leak_u_v = given->read->parts_lifted
+                          ? 0
+                          : leak_uncertainty(given, (warm_v - given->at->return_v) * loading);
     struct reconciled_node *grid = &phase->nodes[NODE_GRID];
-    *grid = compare(given, &read->grid, low_v, high_v, leak_u_v);
+    *grid = compare(given, &given->read->grid, fmin(cold_v, warm_v) * loading, high_v, leak_u_v);
     if (!(grid->unexplained_v > 0))
         return;
     phase->grid_current_a = (grid->measured_v - high_v) / seen_ohm;
@@ -112,18 +117,29 @@ static bool shares_cathode(const struct stage_case *given)
     return false;
 }
 
-static void reconcile_phase(const struct stage_case *given, double share,
+/* The law's stated bound for what is leaking onto the grid. */
+static double law_bound_of(const struct stage_case *given)
+{
+    const struct stage_group *group = &given->assessment->stages.groups[given->model->group];
+    const struct stage_solution *bare = &group->bare[given->phase][given->model->slot];
+    enum bias_kind bias = given->stage->stage->bias;
+    double bias_v = fabs(bare->grid_v - bare->cathode_v);
+    double emf_v = fabs(given->at->grid_v - bare->grid_v);
+    return reconcile_law_bound(bias == BIAS_CATHODE || bias == BIAS_BACK,
+                               bias_v > 0 ? emf_v / bias_v : NAN, given->model->law.without_gm);
+}
+
+static void reconcile_phase(const struct stage_case *given, double valve_bound,
                             struct reconciled_phase *phase)
 {
     const struct stage *stage = given->stage->stage;
-    const struct stage_reading *read = given->phase == PHASE_LEFT ? &stage->left : &stage->found;
-    const struct stage_phase *found = &given->stage->phases[given->phase];
-    const double *ohms = given->model->ohms[given->phase];
-    if (!read->set || !found->judged)
-        return;
-    const struct stage_solution *at = &found->solution;
+    const struct stage_reading *read = given->read;
+    const struct stage_solution *at = given->at;
+    double cathode_ohm = given->model->ohms[given->phase][STAGE_CATHODE];
     phase->compared = true;
-    reconcile_grid(given, read, phase);
+    reconcile_grid(given, phase);
+    /* Beyond the stated bounds nothing but the grid is compared. */
+    double share = hypot(law_bound_of(given), valve_bound);
     double anode_drop = fabs(stage->supply.value - at->anode_v);
     double screen_drop = fabs(
         (stage->screen_volts.set ? stage->screen_volts.value : stage->supply.value) - at->screen_v);
@@ -133,8 +149,8 @@ static void reconcile_phase(const struct stage_case *given, double share,
         compare(given, &read->anode, at->anode_v, at->anode_v, share * anode_drop);
     phase->nodes[NODE_SCREEN] =
         compare(given, &read->screen, at->screen_v, at->screen_v, share * screen_drop);
-    if (read->cathode.set && ohms[STAGE_CATHODE] > 0 && !shares_cathode(given))
-        phase->measured_cathode_a = read->cathode.value / ohms[STAGE_CATHODE];
+    if (read->cathode.set && cathode_ohm > 0 && !shares_cathode(given))
+        phase->measured_cathode_a = read->cathode.value / cathode_ohm;
 }
 
 struct reconciled_findings reconcile_stage(const struct assessment *assessment,
@@ -158,16 +174,20 @@ struct reconciled_findings reconcile_stage(const struct assessment *assessment,
     found.anchored = fabs(found.anchor_scale - 1) > 1e-9;
     if (found.anchored)
         found.valve_bound = 0;
-    const struct stage_solution *bare = &group->bare[PHASE_FOUND][model->slot];
-    double bias_v = fabs(bare->grid_v - bare->cathode_v);
-    double emf_v = fabs(stage->phases[PHASE_FOUND].grid_warm_v - bare->grid_v);
-    bool cathode_bias = stage->stage->bias == BIAS_CATHODE || stage->stage->bias == BIAS_BACK;
-    found.law_bound =
-        bias_v > 0 ? reconcile_law_bound(cathode_bias, emf_v / bias_v, model->law.without_gm) : NAN;
-    double share = hypot(isnan(found.law_bound) ? 0 : found.law_bound, found.valve_bound);
     for (int phase = PHASE_FOUND; phase < PHASE_COUNT; phase++) {
-        struct stage_case given = {assessment, model, stage, (enum phase)phase};
-        reconcile_phase(&given, share, &found.phases[phase]);
+        const struct stage_reading *read =
+            phase == PHASE_LEFT ? &stage->stage->left : &stage->stage->found;
+        struct stage_case given = {
+            assessment,
+            model,
+            stage,
+            (enum phase)phase,
+            read,
+            read->parts_lifted ? &group->bare[phase][model->slot] : &stage->phases[phase].solution};
+        if (phase == PHASE_FOUND)
+            found.law_bound = law_bound_of(&given);
+        if (read->set && stage->phases[phase].judged)
+            reconcile_phase(&given, found.valve_bound, &found.phases[phase]);
     }
     return found;
 }

@@ -13,6 +13,8 @@ enum { NODE_NONE = -1, NODE_WINDINGS = 1 << 20, NODE_CAPACITORS = 1 << 21, NODE_
 static const double no_grid_leak_ohm = 1;
 /* Small-signal valves draw less at their row. */
 static const double output_from_a = 15e-3;
+static const double anchored_to = 1e-9;
+enum { ANCHOR_ROUNDS = 60 };
 
 /* The standard uncertainty of a measured resistance: by the job's instrument for ohms, else the
    policy's default accuracy. */
@@ -477,34 +479,77 @@ static void copy_circuits(const struct builder *builder, struct stage_group *gro
             group->circuits[phase][i] = builder->models[group->members[i]].circuits[phase];
 }
 
-/* Re-anchor on a cathode voltage taken with the leaking parts lifted: the valve's own current is
-   measured then, and the row's currents and slope are scaled alike. */
+/* The readings of the stage taken with the leaking parts lifted; NULL: none. */
+static const struct stage_reading *lifted_reading(const struct stage *stage, enum phase *phase)
+{
+    *phase = stage->left.parts_lifted ? PHASE_LEFT : PHASE_FOUND;
+    const struct stage_reading *read = *phase == PHASE_LEFT ? &stage->left : &stage->found;
+    return read->parts_lifted && read->cathode.set && read->cathode.value > 0 ? read : NULL;
+}
+
+/* Stages of a group whose cathodes hang together with one of them. */
+static bool on_cathode_of(const struct stage_group *group, size_t one, size_t other)
+{
+    return one == other || same_node(group->circuits[PHASE_FOUND][one].cathode_node,
+                                     group->circuits[PHASE_FOUND][other].cathode_node);
+}
+
+/* By how much the valves on a cathode resistor pass more than their rows say, with cathode_v read
+   across it; 1: nothing to tell it from. */
+static double anchor_scale(const struct stage_group *group, enum phase phase, size_t stage,
+                           double cathode_v, const struct stage_solution *now)
+{
+    double wanted_a = cathode_v / group->circuits[phase][stage].cathode_ohm, by_rows_a = 0;
+    for (size_t i = 0; i < group->count; i++) {
+        if (!on_cathode_of(group, stage, i))
+            continue;
+        wanted_a -= now[i].grid_a;
+        by_rows_a += valve_law_currents(&group->circuits[phase][i].law, now[i].grid_v - cathode_v,
+                                        now[i].screen_v - cathode_v, now[i].anode_v - cathode_v)
+                         .cathode_a;
+    }
+    double scale = wanted_a / by_rows_a;
+    return isfinite(scale) && scale > 0 ? scale : 1;
+}
+
+static bool is_anchored_before(const struct builder *builder, const struct stage_group *group,
+                               size_t stage)
+{
+    enum phase phase;
+    for (size_t i = 0; i < stage; i++)
+        if (on_cathode_of(group, stage, i) &&
+            lifted_reading(builder->models[group->members[i]].stage, &phase))
+            return true;
+    return false;
+}
+
+/*
+ * Re-anchor on cathode voltages taken with the leaking parts lifted: the valves' own currents are
+ * measured then, and the row's currents and slope are scaled alike, of all valves on the resistor.
+ * The stage as designed keeps the book's valve. Other nodes follow, so it takes a few rounds.
+ */
 static void anchor(const struct builder *builder, struct stage_group *group)
 {
-    for (size_t i = 0; i < group->count; i++) {
-        const struct stage *stage = builder->models[group->members[i]].stage;
-        const struct stage_reading *read = stage->left.parts_lifted ? &stage->left : &stage->found;
-        enum phase phase = stage->left.parts_lifted ? PHASE_LEFT : PHASE_FOUND;
-        double ohm = group->circuits[phase][i].cathode_ohm;
-        if (!read->parts_lifted || !read->cathode.set || read->cathode.value <= 0 || ohm <= 0)
-            continue;
-        for (int round = 0; round < 5; round++) {
-            struct stage_solution solutions[STAGE_GROUP_MAX];
-            struct stage_circuit *circuit = &group->circuits[phase][i];
-            if (stages_solve(group->circuits[phase], group->count, solutions) == SOLVE_IMPOSSIBLE ||
-                solutions[i].cathode_v <= 0)
-                break;
-            double share = solutions[i].cathode_a * ohm / solutions[i].cathode_v;
-            double cathode_v = read->cathode.value;
-            struct valve_currents law = valve_law_currents(
-                &circuit->law, solutions[i].return_v - cathode_v, solutions[i].screen_v - cathode_v,
-                solutions[i].anode_v - cathode_v);
-            if (law.cathode_a <= 0)
-                break;
-            double scale = share * cathode_v / ohm / law.cathode_a;
-            /* The stage as designed keeps the book's valve. */
-            group->circuits[PHASE_FOUND][i].law.ik0_a *= scale;
-            group->circuits[PHASE_LEFT][i].law.ik0_a *= scale;
+    double largest = INFINITY;
+    for (int round = 0; round < ANCHOR_ROUNDS && largest > anchored_to; round++) {
+        struct stage_solution now[PHASE_COUNT][STAGE_GROUP_MAX];
+        for (int phase = PHASE_FOUND; phase < PHASE_COUNT; phase++)
+            if (stages_solve(group->circuits[phase], group->count, now[phase]) == SOLVE_IMPOSSIBLE)
+                return;
+        largest = 0;
+        for (size_t i = 0; i < group->count; i++) {
+            enum phase phase;
+            const struct stage_reading *read =
+                lifted_reading(builder->models[group->members[i]].stage, &phase);
+            if (!read || is_anchored_before(builder, group, i))
+                continue;
+            double scale = anchor_scale(group, phase, i, read->cathode.value, now[phase]);
+            for (size_t k = 0; k < group->count; k++)
+                if (on_cathode_of(group, i, k)) {
+                    group->circuits[PHASE_FOUND][k].law.ik0_a *= scale;
+                    group->circuits[PHASE_LEFT][k].law.ik0_a *= scale;
+                }
+            largest = fmax(largest, fabs(scale - 1));
         }
     }
 }

@@ -4,8 +4,7 @@
  */
 #include "assess/assessment.h"
 
-#include "assess/accuracy.h"
-#include "assess/uncertainty.h"
+#include "assess/reconcile.h"
 
 #include <math.h>
 #include <string.h>
@@ -166,43 +165,15 @@ static void begin(const struct stage_model *model, struct stage_findings *findin
                                                        .grid_warm_v = NAN};
 }
 
-static const struct instrument *voltmeter_of(const struct job *job)
+/* What leakage does not explain, by what was read last. */
+static void take_grid_current(const struct reconciled_findings *reconciled,
+                              struct stage_findings *findings)
 {
-    for (size_t i = 0; i < job->instrument_count; i++)
-        if (job->instruments[i].input.set)
-            return &job->instruments[i];
-    return NULL;
-}
-
-/*
- * What leakage does not explain. The meter loads the grid: it sees R_g || R_m, and only volts above
- * the explained range, read through that, are called grid current. What was read last counts.
- */
-static void reconcile(const struct assessment *assessment, const struct stage_model *model,
-                      struct stage_findings *findings)
-{
-    const struct stage *stage = model->stage;
+    const struct stage *stage = findings->stage;
     enum phase phase = stage->left.set && stage->left.grid.set ? PHASE_LEFT : PHASE_FOUND;
-    const struct quantity *grid = phase == PHASE_LEFT ? &stage->left.grid : &stage->found.grid;
-    const struct stage_phase *explained = &findings->phases[phase];
-    double leak_ohm = model->ohms[phase][STAGE_GRID_LEAK];
-    if (!grid->set || !explained->judged || !(leak_ohm > 0))
-        return;
-    const struct instrument *meter = voltmeter_of(assessment->job);
-    struct accuracy accuracy =
-        accuracy_of(meter, UNIT_VOLTAGE, assessment->policy, reading_last_digit(grid));
-    double seen_ohm = meter ? 1 / (1 / leak_ohm + 1 / meter->input.value) : leak_ohm;
-    double loading = seen_ohm / leak_ohm;
-    double return_v = explained->solution.return_v;
-    double most_v = fmax(explained->grid_cold_v, explained->grid_warm_v);
-    double seen_most_v = return_v * loading + (most_v - return_v) * loading;
-    double excess_v = grid->value - seen_most_v;
-    double u_v = 2 * uncertainty_of_accuracy(grid->value, accuracy.share, accuracy.absolute);
-    if (excess_v <= u_v)
-        return;
-    findings->grid_current_a = excess_v / seen_ohm;
-    findings->grid_current_error_a = u_v / seen_ohm;
-    findings->grid_current_advice = true;
+    findings->grid_current_a = reconciled->phases[phase].grid_current_a;
+    findings->grid_current_error_a = reconciled->phases[phase].grid_current_error_a;
+    findings->grid_current_advice = !isnan(findings->grid_current_a);
 }
 
 static bool is_near(double watts, double rating_w)
@@ -228,7 +199,8 @@ const struct stage_findings *stage_phases(struct assessment *assessment)
         stages[i].near_rating =
             bare->status == SOLVE_OK && (is_near(bare->anode_w, stages[i].anode_max_w) ||
                                          is_near(bare->screen_w, stages[i].screen_max_w));
-        reconcile(assessment, model, &stages[i]);
+        struct reconciled_findings reconciled = reconcile_stage(assessment, &stages[i], i);
+        take_grid_current(&reconciled, &stages[i]);
     }
     return stages;
 }
