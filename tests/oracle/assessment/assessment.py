@@ -333,6 +333,8 @@ class Job:
             for ref in can["holds"].split():
                 self.cans[ref] = can
         self.moved = {}  # ref of a measured resistor -> ohm by which it is moved
+        self.scales = {}  # stage -> what its valve passes of the book's, by cathode volts read with the parts lifted
+        self.scales = self.find_scales()
 
     def ohms(self, text, phase):
         """Ohms of a value or a ref; None: not given."""
@@ -386,6 +388,7 @@ class Job:
             if not row or not s.get("supply"):
                 continue
             facts = dict(law=Law(row), vb=first(s["supply"], "V"))
+            facts["law"].ik0 *= self.scales.get(name, 1.0) if phase != "designed" else 1.0
             facts["ra"] = self.ohms(s.get("anode"), phase) or 0.0
             screen = s.get("screen")
             if screen:
@@ -416,6 +419,36 @@ class Job:
                     if getattr(result[n], attribute) is None:
                         setattr(result[n], attribute, "bypass " + ref)
         return result
+
+    def find_scales(self):
+        """{stage: scale}: the rows' currents are scaled, all valves of one cathode resistor alike, until the solved
+        cathode stands where it was read without the leaks. By bisection of each scale in turn."""
+        wanted = {}
+        for name, s in (self.y.get("stages") or {}).items():
+            said = s.get("measured") or {}
+            for phase in ("found", "left"):
+                pieces = (said.get(phase) or "").split(", ")
+                volts = [first(p, "V") for p in pieces if p.startswith("cathode ")]
+                if "lifted" in pieces and volts and s.get("cathode"):
+                    wanted[name] = (phase, volts[0])
+        scales = {}
+        for _ in range(4 if len(wanted) > 1 else 1):
+            done = set()
+            for name, (phase, volts) in wanted.items():
+                self.scales = {}
+                circuits = self.circuits(phase)
+                names = self.group(circuits, name)
+                mates = [n for n in names if n == name or (circuits[n].kn is not None and circuits[n].kn == circuits[name].kn)]
+                if done & set(mates):
+                    continue
+                done |= set(mates)
+
+                def above(log_scale):
+                    self.scales = {**scales, **{n: math.exp(log_scale) for n in mates}}
+                    now = self.circuits(phase)
+                    return volts - dict(zip(names, solve([now[n] for n in names])))[name]["vk"]
+                scales.update({n: math.exp(root(above, -4.0, 4.0, 1e-9)) for n in mates})
+        return scales
 
     def group(self, circuits, name):
         """Names of all stages that hang together with this one."""
@@ -841,6 +874,35 @@ def verdict(value, limit, u, bound):
     return outcome if passes == (bound == "under") else "not judged"
 
 
+def capacitance(part):
+    """(deviation, U, limit in per cent of the marked value, outcome) of a capacitance; None: not judged by it. By the first
+    instrument that reads farads."""
+    measured = first(part.p.get("measured"), "F")
+    if measured is None or not part.value or not (part.place == "tuning" or part.electrolytic or part.place in MAINS):
+        return None
+    low, high = (-20.0, 100.0) if part.electrolytic else (-20.0, 20.0)
+    tolerance = [v for k, v, _ in quantities(part.p["marked"]) if k == "%"]
+    if tolerance:
+        low, high = -tolerance[0], tolerance[0]
+    deviation = 100 * (measured / part.value - 1)
+    limit = high if deviation >= 0 else low
+    share, absolute = part.job.policy["accuracy"], None
+    for i in (part.job.y.get("instruments") or {}).values():
+        if absolute is None and first(i.get("accuracy"), "F") is not None:
+            share, absolute = first(i["accuracy"], "%") / 100, first(i["accuracy"], "F")
+    if absolute is None:
+        number, unit = [w for k, _, w in quantities(part.p["measured"]) if k == "F"][0].split(" ")
+        absolute = last_digit(number, UNITS[unit][1])
+
+    def u(farad):
+        return 200 / part.value * (share * farad + absolute) / math.sqrt(3)
+    sign = 1 if deviation >= 0 else -1
+    outcome = verdict(sign * deviation, sign * limit, u(measured), "")
+    if outcome != "fail" and u(part.value * (1 + limit / 100)) > part.job.policy["instrument"] * abs(limit):
+        outcome = "not judged"
+    return deviation, u(measured), limit, outcome
+
+
 def place_refs(part):
     """Measured resistors that the part's figures hang on."""
     job, place = part.job, part.place
@@ -1015,6 +1077,13 @@ def main():
                             hold(f"{name} {k} limit", after, theirs[k]["limit"], 5e-3)
                             if theirs[k]["uncertainty"] is not None:
                                 hold(f"{name} U of {k}", u, theirs[k]["uncertainty"], 5e-2)
+        # The stages without leaks, by what was read with the parts lifted where it was.
+        for s in its_job["stages"]:
+            circuits = job.circuits("found")
+            if s["name"] in circuits and s["found"]["no_leak_cathode_a"] is not None:
+                names = job.group(circuits, s["name"])
+                now = dict(zip(names, solve([circuits[n] for n in names])))[s["name"]]
+                hold(f"{job.y['job']} {s['name']} cathode current", now["i"], s["found"]["no_leak_cathode_a"], 1e-3)
         # Jointly: a line, or the stages that hang together. Parts that fail alone are taken out.
         same_reading = {}
         for key in ("outcome_found", "outcome"):
@@ -1074,9 +1143,17 @@ def main():
                             joint = "conditional fail" if effect_share(part, chosen, mates, i) >= 1 / (2 * (1 + len(mates))) else "conditional pass"
                         outcome = max(outcome, joint, key=OUTCOMES.index)
                 checks += 1
-                # An absorption that still runs, and a capacitance, are the program's own to say.
-                if its[ref]["why"] == "wait" or any(c["key"] == "capacitance" and c["outcome"] != "pass" for c in its[ref]["criteria"]):
+                # An absorption that still runs is the program's own to say.
+                if its[ref]["why"] == "wait":
                     continue
+                farads = capacitance(part)
+                if farads:
+                    outcome = max(outcome, farads[3], key=OUTCOMES.index)
+                    said = [c for c in its[ref]["criteria"] if c["key"] == "capacitance"]
+                    if key == "outcome" and said:
+                        hold(f"{job.y['job']} {ref} capacitance", farads[0], said[0]["value"], 5e-3)
+                        hold(f"{job.y['job']} {ref} U of capacitance", farads[1], said[0]["uncertainty"], 5e-3)
+                        hold(f"{job.y['job']} {ref} limit of capacitance", farads[2], said[0]["limit"], 1e-6)
                 same = judged.get((ref, "outcome")) and judged[ref, "outcome"][1][0] == chosen[0]
                 if key == "outcome_found" and mates and same:
                     same_reading[ref] = outcome  # held with the last outcome below
