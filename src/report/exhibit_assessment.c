@@ -42,6 +42,7 @@ void exhibit_assessed_capacitors(struct composition *composition, size_t index)
     const struct findings *findings = composition->findings;
     struct table_builder builder =
         table_begin(composition, "leakage", part_plan, sizeof part_plan / sizeof *part_plan);
+    builder.table->group_head = phrase(&composition->say, "head.place", NULL);
     const size_t *order = capacitors_by_place(composition);
     for (size_t i = 0; i < findings->capacitor_count; i++) {
         enum place place = findings->capacitors[order[i]].part->place;

@@ -112,8 +112,8 @@ void exhibit_reform_steps(struct composition *composition, size_t index)
         {"set", "V", NULL, COLUMN_NUMBER, 10, 1},
         {"volts_on_part", "V", NULL, COLUMN_NUMBER, 12, 1},
         {"last", "µA", NULL, COLUMN_NUMBER, 12, 1},
-        {"time", NULL, NULL, COLUMN_NUMBER, 14, 2},
-        {"heat", "W", NULL, COLUMN_NUMBER, 10, 2},
+        {"time", NULL, "time", COLUMN_NUMBER, 14, 2},
+        {"heat", "W", "heat", COLUMN_NUMBER, 10, 2},
         {"remarks", NULL, NULL, COLUMN_TEXT, 34, 3},
     };
     const struct reform_findings *reform = reform_of(composition, index);
@@ -177,9 +177,9 @@ void exhibit_hum(struct composition *composition, size_t index)
     static const struct column_plan plan[] = {
         {"ref", NULL, NULL, COLUMN_REF, 9, 1},
         {"fed_through", NULL, "fed_through", COLUMN_TEXT, 17, 2},
-        {"found", NULL, "calculated_found", COLUMN_NUMBER, 12, 1},
+        {"found", NULL, "calculated_found", COLUMN_NUMBER, 12, 2},
         {"found", NULL, "measured_found", COLUMN_NUMBER, 12, 1},
-        {"left", NULL, "calculated_left", COLUMN_NUMBER, 12, 1},
+        {"left", NULL, "calculated_left", COLUMN_NUMBER, 12, 2},
         {"left", NULL, "measured_left", COLUMN_NUMBER, 12, 1},
         {"change", NULL, "change", COLUMN_TEXT, 26, 2},
     };

@@ -162,6 +162,7 @@ void exhibit_leakage(struct composition *composition, size_t index)
     (void)index;
     const struct findings *findings = composition->findings;
     struct table_builder builder = table_begin(composition, "leakage", plan, LEAKAGE_COLUMNS);
+    builder.table->group_head = phrase(&composition->say, "head.place", NULL);
     const size_t *order = capacitors_by_place(composition);
     for (size_t i = 0; i < findings->capacitor_count; i++) {
         enum place place = findings->capacitors[order[i]].part->place;

@@ -283,6 +283,7 @@ void exhibit_stages(struct composition *composition, size_t index)
     (void)index;
     const struct findings *findings = composition->findings;
     struct table_builder builder = table_begin(composition, "stage-figures", plan, STAGE_COLUMNS);
+    builder.table->group_head = phrase(&composition->say, "head.in_stage", NULL);
     bool bold = false, any = false;
     for (size_t i = 0; i < findings->stage_count; i++) {
         any |= add_stage(&builder, &findings->stages[i]);

@@ -210,6 +210,18 @@ static void write_classes(const struct table_writing *writing, size_t column, bo
     html_raw(writing->html, "\"");
 }
 
+/* The unit that stands in the head, for a cell that is read without it. */
+static void write_folded_unit(struct html *html, const struct column *column,
+                              const struct cell *cell)
+{
+    if (column->kind != COLUMN_NUMBER || !cell->figures.whole || !column->unit ||
+        strchr(column->unit, ' '))
+        return;
+    html_raw(html, " data-u=\"");
+    html_text(html, column->unit);
+    html_raw(html, "\"");
+}
+
 static void write_cell(const struct table_writing *writing, const struct cell *cell, size_t column,
                        size_t span)
 {
@@ -228,6 +240,7 @@ static void write_cell(const struct table_writing *writing, const struct cell *c
         html_raw(html, " data-l=\"");
         html_text(html, here->label);
         html_raw(html, "\"");
+        write_folded_unit(html, here, cell);
     }
     html_raw(html, ">");
     if (here->kind == COLUMN_NUMBER)

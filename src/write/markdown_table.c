@@ -45,6 +45,11 @@ static size_t width_of(const struct table_writing *writing, size_t column)
     return width > 3 ? width : 3;
 }
 
+static const char *group_head(const struct table *table)
+{
+    return table->group_head ? table->group_head : "";
+}
+
 static void write_head(const struct table_writing *writing)
 {
     const struct table *table = writing->text.table;
@@ -52,7 +57,7 @@ static void write_head(const struct table_writing *writing)
         write_field(writing, writing->text.heads[i], width_of(writing, i),
                     writing->text.aligned_right[i]);
         if (i == 0 && writing->grouped)
-            write_field(writing, "", writing->group_width, false);
+            write_field(writing, group_head(table), writing->group_width, false);
     }
     buffer_text(writing->out, "|\n");
     for (size_t i = 0; i < table->column_count; i++) {
@@ -77,7 +82,8 @@ static void write_row(const struct table_writing *writing, size_t row, const cha
 static void measure_groups(struct table_writing *writing)
 {
     const struct table *table = writing->text.table;
-    writing->group_width = 3;
+    size_t head = text_columns(group_head(table), strlen(group_head(table)));
+    writing->group_width = head > 3 ? head : 3;
     for (size_t i = 0; i < table->row_count; i++) {
         if (!table->rows[i].group)
             continue;
