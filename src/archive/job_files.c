@@ -35,9 +35,13 @@ struct opened_job job_open(const struct archive *archive, const char *path, stru
     source->text = read_text(path, source, arena, diagnostics);
     struct opened_job opened = {0};
     /* An unreadable file is told once, not as an empty one besides. */
-    struct diagnostics silent = diagnostics_in(arena);
-    opened.job = job_read(source, arena, source->text ? diagnostics : &silent);
-    opened.findings = assess_job(opened.job, archive->shop, GRIDLEAK_VERSION, arena, diagnostics);
+    struct diagnostics *silent = arena_get(arena, sizeof *silent);
+    *silent = diagnostics_in(arena);
+    opened.job = job_read(source, arena, source->text ? diagnostics : silent);
+    /* What an assessment warns of hangs on what the file says: of a file with mistakes it would
+       tell each of them again by its consequences. */
+    struct diagnostics *of_findings = diagnostics->errors ? silent : diagnostics;
+    opened.findings = assess_job(opened.job, archive->shop, GRIDLEAK_VERSION, arena, of_findings);
     opened.findings->diagnostics = diagnostics;
     struct visits visits = visits_follow(archive->folder, opened.findings, arena, diagnostics);
     opened.visit_paths = visits.paths;

@@ -157,35 +157,81 @@ void diagnostics_format(const struct diagnostics *list, struct buffer *buffer)
     }
 }
 
+/*
+ * How far apart two words are, in quarters of a letter. A hand slips in its own ways: two letters
+ * change places, one is doubled or not, a 1 is typed as l, a 0 as O. These count less than a letter
+ * that is another one, missing or too many.
+ */
+enum { LETTER = 4, SLIP = 2, LOOK_ALIKE = 1, LONGEST_WORD = 40 };
+
+static char lower(char letter)
+{
+    return letter >= 'A' && letter <= 'Z' ? (char)(letter - 'A' + 'a') : letter;
+}
+
+static size_t exchange_cost(char a, char b)
+{
+    static const char *const alike[] = {"1li", "0o"};
+    a = lower(a);
+    b = lower(b);
+    if (a == b)
+        return 0;
+    for (size_t i = 0; i < sizeof alike / sizeof *alike; i++)
+        if (strchr(alike[i], a) && strchr(alike[i], b))
+            return LOOK_ALIKE;
+    return LETTER;
+}
+
+/* Of a letter that the other word has not: little when it only doubles the one before. */
+static size_t lone_cost(const char *word, size_t at)
+{
+    return at > 0 && lower(word[at]) == lower(word[at - 1]) ? SLIP : LETTER;
+}
+
+static size_t least(size_t a, size_t b)
+{
+    return a < b ? a : b;
+}
+
 static size_t edit_distance(const char *a, const char *b)
 {
-    enum { LONGEST = 40 };
     size_t length_a = strlen(a), length_b = strlen(b);
-    if (length_a > LONGEST || length_b > LONGEST)
-        return LONGEST;
-    size_t row[LONGEST + 1];
-    for (size_t j = 0; j <= length_b; j++)
-        row[j] = j;
+    if (length_a > LONGEST_WORD || length_b > LONGEST_WORD)
+        return LETTER * LONGEST_WORD;
+    size_t rows[3][LONGEST_WORD + 1] = {{0}}; /* of the letters of a: this one, and two before */
+    for (size_t j = 1; j <= length_b; j++)
+        rows[0][j] = rows[0][j - 1] + lone_cost(b, j - 1);
     for (size_t i = 1; i <= length_a; i++) {
-        size_t diagonal = row[0];
-        row[0] = i;
+        size_t *row = rows[i % 3], *above = rows[(i + 2) % 3], *second = rows[(i + 1) % 3];
+        row[0] = above[0] + lone_cost(a, i - 1);
         for (size_t j = 1; j <= length_b; j++) {
-            size_t replace = diagonal + (strncasecmp(&a[i - 1], &b[j - 1], 1) != 0);
-            diagonal = row[j];
-            size_t shorter = row[j] < row[j - 1] ? row[j] : row[j - 1];
-            row[j] = shorter + 1 < replace ? shorter + 1 : replace;
+            size_t lone = least(row[j - 1] + lone_cost(b, j - 1), above[j] + lone_cost(a, i - 1));
+            row[j] = least(lone, above[j - 1] + exchange_cost(a[i - 1], b[j - 1]));
+            if (i > 1 && j > 1 && lower(a[i - 1]) == lower(b[j - 2]) &&
+                lower(a[i - 2]) == lower(b[j - 1]))
+                row[j] = least(row[j], second[j - 2] + SLIP);
         }
     }
-    return row[length_b];
+    return rows[length_a % 3][length_b];
+}
+
+static size_t length_difference(const char *a, const char *b)
+{
+    size_t length_a = strlen(a), length_b = strlen(b);
+    return length_a > length_b ? length_a - length_b : length_b - length_a;
 }
 
 const char *nearest_word(const char *word, const char *const *candidates)
 {
     const char *best = NULL;
-    size_t best_distance = strlen(word) / 3 + 2; /* further away is another word */
+    size_t best_distance = LETTER * (strlen(word) / 3 + 2) - LETTER + 1; /* beyond: another word */
     for (; *candidates; candidates++) {
+        if (!**candidates)
+            continue;
         size_t distance = edit_distance(word, *candidates);
-        if (distance < best_distance) {
+        if (distance < best_distance ||
+            (best && distance == best_distance &&
+             length_difference(word, *candidates) < length_difference(word, best))) {
             best_distance = distance;
             best = *candidates;
         }

@@ -1,6 +1,7 @@
 /* Keys of the sections that hold one fact a line: voltages, performance, safety. */
 #include "job/reader.h"
 #include "job/tables.h"
+#include "reference/safety_figure.h"
 
 #include <string.h>
 #include <strings.h>
@@ -221,6 +222,30 @@ const struct record performance_record = {
 
 #define IN_SAFETY(member) offsetof(struct safety_row, member)
 
+static bool is_at(const struct quantity_token *token)
+{
+    return (token->length == 2 && strncasecmp(token->start, "at", 2) == 0) ||
+           (token->length == 1 && *token->start == '@');
+}
+
+/* What no figure is named for is printed, and held against nothing: a slip must not do that. */
+static void check_kind(struct reader *reader, const struct safety_row *row)
+{
+    enum safety_kind kind = safety_kind_named(row->name, false);
+    if (kind == SAFETY_KIND_COUNT) {
+        reader_tell(reader, row->at, DIAGNOSTIC_SAFETY_UNKNOWN,
+                    "figures are known for touch current, earth current, earth bond, insulation, "
+                    "residual",
+                    "'%s' is printed, and held against no figure", row->name);
+        return;
+    }
+    enum unit unit = safety_figure(kind)->unit;
+    if (row->value.set && unit != UNIT_NONE && row->value.unit != unit)
+        reader_tell(reader, row->value.at, DIAGNOSTIC_UNIT_WRONG,
+                    arena_print(reader->arena, "it is given as in %s", unit_example(unit)),
+                    "'%s' is no %s", row->value.written, row->name);
+}
+
 /* `180 M at 500 V 60 s`: the value, then what it was taken at. */
 static void safety_values(struct reader *reader, struct line *part, struct safety_row *row)
 {
@@ -231,8 +256,15 @@ static void safety_values(struct reader *reader, struct line *part, struct safet
         struct segment words = {token.start, (size_t)(end - token.start),
                                 (size_t)(token.start - part->text)};
         if (!token.is_number) {
-            if (token.length == 2 && strncasecmp(token.start, "at", 2) == 0)
+            if (is_at(&token))
                 continue;
+            if (token.length == 1 && *token.start == '/') {
+                reader_tell(reader, line_position(part, words.offset),
+                            DIAGNOSTIC_QUANTITY_UNREADABLE,
+                            "the other polarity stands behind a comma: 0.06 mA, second 0.05 mA",
+                            "'%.*s' has no place here", (int)words.length, words.text);
+                return;
+            }
             row->conditions = prose_of(part, &words);
             return;
         }
@@ -289,16 +321,17 @@ static void safety_read(struct reader *reader, const struct field *field, const 
     }
     quantity_check(reader, &row->value, node->key, LIMIT_NOT_NEGATIVE);
     quantity_check(reader, &row->second, node->key, LIMIT_NOT_NEGATIVE);
+    check_kind(reader, row);
     worse_first(row);
 }
 
 const struct record safety_record = {
     .name = "safety",
     .section = "safety",
-    .text =
-        "Keyed by what was measured: touch current, earth bond, insulation, residual, fuse, "
-        "polarity. The value, 'at' volts and time; 'second' for the other polarity of the plug; "
-        "then words.",
+    .text = "Keyed by what was measured: touch current, earth current, earth bond, insulation, "
+            "residual, fuse, polarity, and where. The value, 'at' volts and time; 'second' for the "
+            "other polarity of the plug; "
+            "then words.",
     .size = sizeof(struct safety_row),
     .read = safety_read,
     .example = "0.06 mA, second 0.05 mA",

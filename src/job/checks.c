@@ -113,7 +113,9 @@ static void check_within(struct reader *reader, const struct date *date, const c
         reader_tell(reader, date->at, DIAGNOSTIC_DATES_OUT_OF_ORDER, NULL,
                     "%s of %s is before the set was received, %s", name, date->written,
                     job->received.written);
-    if (job->returned.set && date_days(date) > date_days(&job->returned))
+    bool coming_and_going_agree =
+        !job->received.set || date_days(&job->received) <= date_days(&job->returned);
+    if (job->returned.set && coming_and_going_agree && date_days(date) > date_days(&job->returned))
         reader_tell(reader, date->at, DIAGNOSTIC_DATES_OUT_OF_ORDER, NULL,
                     "%s of %s is after the set was returned, %s", name, date->written,
                     job->returned.written);
@@ -159,7 +161,8 @@ static void check_place(struct reader *reader, const struct capacitor *capacitor
         return;
     const struct node *set = node_child(reader->root, "set");
     if (strcmp(key, "mains") == 0) {
-        if (set && !set->damaged && !node_child(set, "mains"))
+        const struct node *mains = node_child(set, "mains");
+        if (set && !set->damaged && (!mains || node_is_empty(mains)))
             reader_tell(reader, capacitor->place_at, DIAGNOSTIC_MISSING_KEY,
                         "write it so, under set: mains: 230 V",
                         "%s is judged by the mains, which 'set' does not give", capacitor->ref);

@@ -1,5 +1,6 @@
 #include "job/field.h"
 
+#include "job/meant_word.h"
 #include "job/reader.h"
 
 #include <stdarg.h>
@@ -42,12 +43,35 @@ static bool is_space(char byte)
     return byte == ' ' || byte == '\t' || byte == '\n' || byte == '\r';
 }
 
+/* A short list of words as one value: `C20, C21`. NULL: it is none. */
+static const char *list_as_value(struct arena *arena, const struct node *node)
+{
+    const char *value = "";
+    for (const struct node *item = node->first; item; item = item->next) {
+        if (item->kind != NODE_SCALAR || strlen(value) > HINT_BYTES_MAX ||
+            item->length > HINT_BYTES_MAX)
+            return NULL;
+        value = arena_print(arena, "%s%s%s", value, *value ? ", " : "", item->text);
+    }
+    return node->kind == NODE_SEQUENCE && *value ? value : NULL;
+}
+
+static const char *value_hint(struct arena *arena, const char *key, const struct node *node)
+{
+    const char *value = list_as_value(arena, node);
+    if (value)
+        return arena_print(arena, "write it so: %s: %s", key, value);
+    if (node->style == STYLE_FLOW)
+        return "a value that begins with [ or { stands in quotes";
+    if (!node->key && node->kind == NODE_MAPPING)
+        return "leave the colon out, or put the line in quotes";
+    return "write it behind the key, on the same line";
+}
+
 bool reader_line(struct reader *reader, const char *key, const struct node *node, struct line *line)
 {
     if (node->kind != NODE_SCALAR) {
-        reader_tell(reader, node->at, DIAGNOSTIC_WRONG_SHAPE,
-                    node->style == STYLE_FLOW ? "a value that begins with [ or { stands in quotes"
-                                              : "write it behind the key, on the same line",
+        reader_tell(reader, node->at, DIAGNOSTIC_WRONG_SHAPE, value_hint(reader->arena, key, node),
                     "'%s' takes one value, no %s", key,
                     node->kind == NODE_MAPPING ? "keys of its own" : "list");
         return false;
@@ -118,11 +142,10 @@ static int choice_read(struct reader *reader, const struct field *field, const s
     if (choice >= 0)
         return choice;
     const char *word = arena_text(reader->arena, line->text, line->length);
-    const char *near = nearest_word(word, choices);
+    const char *meant = meant_word_hint(reader->arena, word, choices, "nearest");
     const char *list = choice_list(reader->arena, choices);
     reader_tell(reader, line->at, DIAGNOSTIC_UNKNOWN_CHOICE,
-                near && *near ? arena_print(reader->arena, "nearest: %s", near)
-                              : arena_print(reader->arena, "one of: %s", list),
+                meant ? meant : arena_print(reader->arena, "one of: %s", list),
                 "'%s' is no choice for '%s'", word, field->key);
     return -1;
 }
@@ -172,8 +195,11 @@ static void text_read(struct reader *reader, const struct field *field, const st
                       void *record)
 {
     if (node->kind != NODE_SCALAR) {
-        struct line line;
-        reader_line(reader, field->key, node, &line); /* tells the shape */
+        reader_tell(reader, node->at, DIAGNOSTIC_WRONG_SHAPE,
+                    arena_print(reader->arena, "write %s: | and the text on the lines below it",
+                                field->key),
+                    "'%s' takes text, no %s", field->key,
+                    node->kind == NODE_MAPPING ? "keys of its own" : "list");
         return;
     }
     *(struct prose *)member(record, field->offset) = (struct prose){node->text, node->at};
@@ -414,12 +440,21 @@ static const char *keys_hint(struct reader *reader, const struct record *record,
     for (; count < record->field_count && count < KEYS_MAX; count++)
         keys[count] = record->fields[count].key;
     keys[count] = NULL;
-    const char *near = nearest_word(wrong, keys);
-    if (near)
-        return arena_print(reader->arena, "nearest key: %s", near);
+    const char *meant = meant_word_hint(reader->arena, wrong, keys, "nearest key");
+    if (meant)
+        return meant;
     const char *list = choice_list(reader->arena, keys);
     return strlen(list) < HINT_BYTES_MAX ? arena_print(reader->arena, "keys here: %s", list)
                                          : "'gridleak fields' lists the keys";
+}
+
+static void tell_unknown(struct reader *reader, const struct record *record,
+                         const struct node *node, const struct node *child)
+{
+    reader_tell(reader, child->key_at, DIAGNOSTIC_UNKNOWN_KEY,
+                keys_hint(reader, record, child->key), "unknown key '%s'", child->key);
+    /* It may be any key of the record: nothing is called missing there any more. */
+    ((struct node *)node)->damaged = true;
 }
 
 /* Rows are mostly written in the table's order: look from the last hit on. */
@@ -464,9 +499,8 @@ void record_read(struct reader *reader, const struct record *record, const struc
         const struct field *field = field_of(record, child->key, &hit);
         if (field)
             value_read(reader, field, child, out);
-        else if (!tell_flow_bite(reader, node, before, child))
-            reader_tell(reader, child->key_at, DIAGNOSTIC_UNKNOWN_KEY,
-                        keys_hint(reader, record, child->key), "unknown key '%s'", child->key);
+        else if (!child->damaged && !tell_flow_bite(reader, node, before, child))
+            tell_unknown(reader, record, node, child);
     }
     tell_missing(reader, record, node);
 }

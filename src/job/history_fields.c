@@ -1,7 +1,9 @@
 /* Keys of readings' lists, photographs and reforming. */
+#include "job/part.h"
 #include "job/reader.h"
 #include "job/tables.h"
 
+#include <math.h>
 #include <string.h>
 
 /* ---- readings ---- */
@@ -13,6 +15,8 @@ struct reading_list {
     size_t *count;
     size_t capacity;
     enum reading_state state;
+    bool in_brackets; /* a list in flow style */
+    bool of_part;     /* `readings`: a log is read on a supply of its own */
 };
 
 static void check_reading(struct reader *reader, const struct reading *reading)
@@ -27,38 +31,126 @@ static void check_reading(struct reader *reader, const struct reading *reading)
                     "%s is no temperature to read a part at", reading->hot.written);
 }
 
-static void one_line(struct reader *reader, struct reading_list *list, const struct node *node,
+/* The volts of a run are said once, and carried on. */
+static bool volts_are_new(const struct reading *reading, const struct reading *before)
+{
+    return !before || before->set_volts.at.line != reading->set_volts.at.line ||
+           before->set_volts.at.column != reading->set_volts.at.column;
+}
+
+static const char *settings_text(struct arena *arena, const struct instrument *instrument)
+{
+    const char *list = "";
+    for (size_t i = 0; i < instrument->volt_count; i++)
+        list = arena_print(arena, "%s%s%g V", list, i > 0 ? ", " : "", instrument->volts_v[i]);
+    return list;
+}
+
+/* Volts that the instrument cannot be set to: a slip, or another instrument's reading. */
+static void check_setting(struct reader *reader, const struct instrument *instrument,
+                          const struct reading *reading)
+{
+    enum { SHOWN_AT_TERMINALS_PERCENT = 5 }; /* volts may be written as a meter showed them */
+    double volts = reading->set_volts.value;
+    bool known = instrument->volt_count == 0;
+    for (size_t i = 0; i < instrument->volt_count && !known; i++)
+        known = !(instrument->volts_v[i] > 0) || /* told already */
+                fabs(volts - instrument->volts_v[i]) <=
+                    instrument->volts_v[i] * SHOWN_AT_TERMINALS_PERCENT / 100;
+    if (!known)
+        reader_tell(reader, reading->set_volts.at, DIAGNOSTIC_INSTRUMENT_VOLTS,
+                    arena_print(reader->arena, "it can be set to %s",
+                                settings_text(reader->arena, instrument)),
+                    "'%s' cannot be set to %s", instrument->name, reading->set_volts.written);
+}
+
+/* A little below nought is the meter's own error, more is a meter off its zero. */
+static void check_sign(struct reader *reader, const struct instrument *instrument,
+                       const struct reading *reading)
+{
+    double error = instrument->resolution.value;
+    if (instrument->accuracy_unit == UNIT_CURRENT)
+        error += instrument->accuracy_absolute;
+    if (reading->value.unit == UNIT_CURRENT && reading->value.value < -error)
+        reader_tell(reader, reading->value.at, DIAGNOSTIC_READING_BELOW_NOUGHT,
+                    "set the meter to zero and look at its leads, or leave the reading out",
+                    "a leakage below nought counts as 0: '%s'", reading->value.written);
+}
+
+static void check_instrument(struct reader *reader, const struct reading *reading,
+                             const struct reading *before)
+{
+    static const struct instrument unknown = {0};
+    const struct job *job = reader->job;
+    bool listed = reading->instrument >= 0 && (size_t)reading->instrument < job->instrument_count;
+    const struct instrument *instrument =
+        listed ? &job->instruments[reading->instrument] : &unknown;
+    if (volts_are_new(reading, before))
+        check_setting(reader, instrument, reading);
+    check_sign(reader, instrument, reading);
+}
+
+/* Between [ ] the commas of a line are YAML's, and cut it into pieces. */
+static void tell_line(struct reader *reader, const struct reading_list *list,
+                      const struct line *line)
+{
+    if (list->in_brackets)
+        reader_tell(reader, line->problem.at, DIAGNOSTIC_YAML_NOTATION,
+                    "write each line below the key, beginning with '- '",
+                    "%s; between [ ] a comma begins a new item of '%s'", line->problem.text,
+                    list->key);
+    else
+        reader_tell_line(reader, line);
+}
+
+/* false: the line cannot be read, and that is told. */
+static bool one_line(struct reader *reader, struct reading_list *list, const struct node *node,
                      unsigned number)
 {
     struct job *job = reader->job;
     struct reading_form form = {number, list->state, job->instruments, job->instrument_count,
-                                job->instrument_count ? 0 : NOT_LISTED};
+                                leakage_instrument(job)};
     const struct reading *found;
     size_t count;
     struct line line;
-    if (node_is_empty(node) || !reader_line(reader, list->key, node, &line))
-        return;
+    if (node_is_empty(node))
+        return true;
+    if (!reader_line(reader, list->key, node, &line))
+        return false;
+    if (node->style == STYLE_PLAIN && strstr(node->text, " - ")) {
+        /* YAML takes a deeper line for more of the one above it. */
+        reader_tell(reader, line.at, DIAGNOSTIC_YAML_NOTATION,
+                    "the items of a list begin with '- ' in the same column",
+                    "the '- ' below this line stands deeper, and goes on with it");
+        return false;
+    }
     if (!line_readings(&line, &form, &found, &count)) {
-        reader_tell_line(reader, &line);
-        return;
+        tell_line(reader, list, &line);
+        return false;
     }
     reader_note_units(reader, &line);
     struct reading *all = (struct reading *)*list->readings;
     for (size_t i = 0; i < count; i++) {
         check_reading(reader, &found[i]);
+        if (list->of_part)
+            check_instrument(reader, &found[i], i > 0 ? &found[i - 1] : NULL);
         all = arena_grow(reader->arena, all, *list->count, &list->capacity, sizeof *all);
         all[(*list->count)++] = found[i];
     }
     *list->readings = all;
+    return true;
 }
 
 static void readings_resolve(struct reader *reader, const struct node *node, void *target)
 {
     struct reading_list *list = target;
     unsigned number = 0;
+    list->in_brackets = node->kind == NODE_SEQUENCE && node->style == STYLE_FLOW;
     if (node->kind == NODE_SEQUENCE) {
-        for (const struct node *item = node->first; item; item = item->next)
-            one_line(reader, list, item, number++);
+        bool good = true;
+        for (const struct node *item = node->first; item && (good || !list->in_brackets);
+             item = item->next)
+            good = one_line(reader, list, item, number++);
     } else {
         one_line(reader, list, node, 0);
     }
@@ -71,7 +163,8 @@ void readings_read(struct reader *reader, const struct field *field, const struc
     list->key = field->key;
     list->readings = (const struct reading **)(void *)((char *)record + field->offset);
     list->count = (size_t *)(void *)((char *)record + field->count_offset);
-    list->state = strcmp(field->key, "readings") == 0 ? READING_FOUND : READING_REFORMED;
+    list->of_part = strcmp(field->key, "readings") == 0;
+    list->state = list->of_part ? READING_FOUND : READING_REFORMED;
     reader_later(reader, readings_resolve, node, list);
 }
 

@@ -25,6 +25,11 @@ static bool is_space(char c)
     return c == ' ' || c == '\t';
 }
 
+static bool is_letter_or_digit(char c)
+{
+    return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') || (c >= '0' && c <= '9');
+}
+
 struct span span_trim(struct span span)
 {
     while (span.length > 0 && is_space(span.start[0]))
@@ -143,11 +148,30 @@ static enum unit unit_read(struct line *line, struct span span)
     return quantity.unit;
 }
 
+/* `3,3 uA;`: a unit follows, and something hangs on it. NULL: none. */
+static const char *unit_behind_hint(struct line *line, struct span span)
+{
+    const char *cursor = span.start + span.length, *end = line->text + line->length;
+    struct quantity_token word;
+    struct quantity quantity = {0};
+    struct quantity_form any = {.unit = UNIT_COUNT};
+    if (!quantity_token_next(&cursor, end, &word) || word.is_number || word.after_comma)
+        return NULL;
+    size_t length = word.length;
+    while (length > 0 && !is_letter_or_digit(word.start[length - 1]))
+        length--;
+    const char *text =
+        arena_print(line->arena, "%s %.*s", line_written(line, span), (int)length, word.start);
+    if (length == 0 || quantity_read(line->arena, text, strlen(text), &any, &quantity, NULL))
+        return NULL;
+    return arena_print(line->arena, "write %s", text);
+}
+
 bool line_fail_quantity(struct line *line, struct span span, enum quantity_status status,
                         const struct quantity_form *form)
 {
     const char *shown = line_quote(line, span), *text = line_written(line, span);
-    const char *hint = quantity_hint(line->arena, status, text, form);
+    const char *hint = quantity_hint(line->arena, status, text, form), *written;
     switch (status) {
     case QUANTITY_OK:
         break;
@@ -160,6 +184,8 @@ bool line_fail_quantity(struct line *line, struct span span, enum quantity_statu
                          "cannot read '%s' as %s %s", shown, article(form->unit),
                          unit_name(form->unit));
     case QUANTITY_NO_UNIT:
+        written = unit_behind_hint(line, span);
+        hint = written != NULL ? written : hint;
         return line_fail(line, span, DIAGNOSTIC_UNIT_MISSING,
                          hint != NULL ? hint : "add the unit, as in 0.05 uF, 270 ohm, 400 V",
                          "'%s' has no unit", shown);
@@ -214,11 +240,6 @@ bool line_quantity(struct line *line, const struct quantity_form *form, struct q
 }
 
 /* ---- refs and resistances ---- */
-
-static bool is_letter_or_digit(char c)
-{
-    return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z') || (c >= '0' && c <= '9');
-}
 
 bool line_is_ref(const char *text, size_t length)
 {
@@ -284,7 +305,7 @@ bool line_date(struct line *line, struct date *date)
     struct span span = line_span(line);
     if (!date_read(line->arena, span.start, span.length, date))
         return line_fail(line, span, DIAGNOSTIC_DATE_UNREADABLE,
-                         "write year-month-day, as in 2031-02-10", "'%s' is no date",
+                         date_hint(line->arena, span.start, span.length), "'%s' is no date",
                          line_quote(line, span));
     date->at = line_position(line, (size_t)(span.start - line->text));
     return true;

@@ -1,5 +1,6 @@
 /* Lists: volts, refs, names; and named values. */
 #include "job/line_scan.h"
+#include "job/meant_word.h"
 
 #include <string.h>
 #include <strings.h>
@@ -52,6 +53,12 @@ static bool add_name(struct line *line, struct span span, struct name_list *list
 
 static bool add_ref(struct line *line, struct span span, struct name_list *list)
 {
+    static const char *const joins[] = {"and", "to", "-", "+", "&", NULL};
+    if (span_is_any(span, joins) || memchr(span.start, '+', span.length) != NULL ||
+        memchr(span.start, '&', span.length) != NULL)
+        return line_fail(line, span, DIAGNOSTIC_REF_INVALID,
+                         "refs stand side by side, as in C20 C21", "'%s' is no ref",
+                         line_quote(line, span));
     if (!line_is_ref(span.start, span.length))
         return line_fail(line, span, DIAGNOSTIC_REF_INVALID,
                          "a ref is letters, digits, space, '.', '-' and '/', at most 32",
@@ -152,11 +159,10 @@ static bool unknown_name(struct line *line, struct span segment, const struct na
         all = arena_print(line->arena, "%s%s%s", all, i > 0 ? ", " : "", names[i].name);
     }
     struct span words = leading_words(segment);
-    const char *nearest = nearest_word(line_written(line, words), candidates);
+    const char *meant =
+        meant_word_hint(line->arena, line_written(line, words), candidates, "nearest name");
     return line_fail(line, words, DIAGNOSTIC_UNKNOWN_KEY,
-                     arena_print(line->arena,
-                                 nearest != NULL ? "nearest name: %s" : "names here: %s",
-                                 nearest != NULL ? nearest : all),
+                     meant != NULL ? meant : arena_print(line->arena, "names here: %s", all),
                      "unknown name '%s'", line_quote(line, words));
 }
 

@@ -1,5 +1,6 @@
 /* Readings: `100 V 60 s 1.1 uA, 5 min 0.9 uA`. */
 #include "job/line_scan.h"
+#include "job/meant_word.h"
 
 #include <string.h>
 #include <strings.h>
@@ -37,11 +38,24 @@ static bool impossible(struct reading_reader *reader, struct span span, const ch
                      line_quote(reader->line, span), why);
 }
 
+/* A minus sign is `-` or U+2212. */
+static const char *without_minus(const char *written)
+{
+    return written + (*written == '-' ? 1 : strlen("\xE2\x88\x92"));
+}
+
 static bool set_volts(struct reading_reader *reader, struct span span,
                       const struct quantity *quantity)
 {
     if (twice(reader, span, &reader->volts_said, "voltage"))
         return false;
+    if (quantity->bound == BOUND_NONE && quantity->value < 0)
+        return line_fail(reader->line, span, DIAGNOSTIC_VALUE_IMPOSSIBLE,
+                         arena_print(reader->line->arena,
+                                     "write %s; a dash that begins an item has a space behind it",
+                                     without_minus(quantity->written)),
+                         "'%s': the volts set are a positive value",
+                         line_quote(reader->line, span));
     if (quantity->bound != BOUND_NONE || !(quantity->value > 0))
         return impossible(reader, span, "the volts set are a positive value");
     reader->reading.set_volts = *quantity;
@@ -82,7 +96,7 @@ static bool take_date(struct reading_reader *reader, struct span span)
         return false;
     if (!date_read(reader->line->arena, span.start, span.length, &date))
         return line_fail(reader->line, span, DIAGNOSTIC_DATE_UNREADABLE,
-                         "write year-month-day, as in 2031-02-10", "'%s' is no date",
+                         date_hint(reader->line->arena, span.start, span.length), "'%s' is no date",
                          line_quote(reader->line, span));
     date.at = line_position(reader->line, (size_t)(span.start - reader->line->text));
     reader->reading.date = date;
@@ -97,7 +111,9 @@ static bool take_number(struct reading_reader *reader, struct span span)
         return take_date(reader, span);
     if (!line_take_quantity(reader->line, span, &form, &quantity)) {
         if (reader->line->problem.code == DIAGNOSTIC_QUANTITY_UNREADABLE)
-            reader->line->problem.hint = reading_hint;
+            reader->line->problem.hint = memchr(span.start, ',', span.length) != NULL
+                                             ? "put a space behind the comma"
+                                             : reading_hint;
         return false;
     }
     if (quantity.unit == UNIT_VOLTAGE)
@@ -180,16 +196,34 @@ static bool take_circuit(struct reading_reader *reader, struct span span)
     return true;
 }
 
+/* What to write instead of a word that a notebook has, and a job file has no use for. */
+static const char *notebook_hint(struct span span)
+{
+    static const char *const endless[] = {"infinity",     "infinite",  "inf",      "open",
+                                          "\xE2\x88\x9E", "OL",        "O.L.",     "O/L",
+                                          "1---",         "overrange", "offscale", NULL};
+    static const char *const nearly[] = {"approx",        "approx.", "about", "roughly", "ca",
+                                         "ca.",           "c.",      "circa", "say",     "some",
+                                         "approximately", NULL};
+    static const char *const joins[] = {"at", "@", "after", "and", "=", "->", "-", "/", NULL};
+    if (span_is_any(span, endless))
+        return "write over and the end of the scale, as in over 2000 M";
+    if (span_is_any(span, nearly) || *span.start == '~' ||
+        strncmp(span.start, "\xE2\x89\x88", 3) == 0)
+        return "write the figure alone: how sure it is follows from the instrument";
+    if (span_is_any(span, joins))
+        return "leave it out: the units tell volts, time and current apart";
+    return NULL;
+}
+
 static bool unknown_word(struct reading_reader *reader, struct span span)
 {
-    static const char *const endless[] = {"infinity", "infinite",     "inf",
-                                          "open",     "\xE2\x88\x9E", NULL};
-    const char *nearest = nearest_word(line_written(reader->line, span), reading_words);
-    const char *hint =
-        span_is_any(span, endless) ? "write over and the end of the scale, as in over 2000 M"
-        : nearest != NULL
-            ? arena_print(reader->line->arena, "nearest word: %s", nearest)
-            : "words here: found, reformed, left, hot 45 C, in circuit, by INSTRUMENT";
+    const char *hint = notebook_hint(span);
+    if (hint == NULL)
+        hint = meant_word_hint(reader->line->arena, line_written(reader->line, span), reading_words,
+                               "nearest word");
+    if (hint == NULL)
+        hint = "words here: found, reformed, left, hot 45 C, in circuit, by INSTRUMENT";
     return line_fail(reader->line, span, DIAGNOSTIC_UNKNOWN_CHOICE, hint, "unknown word '%s'",
                      line_quote(reader->line, span));
 }

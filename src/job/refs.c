@@ -113,16 +113,34 @@ static const char *nearest_ref(struct reader *reader, const char *ref, bool (*fi
     return near ? arena_print(reader->arena, "nearest: %s", near) : NULL;
 }
 
+/* `stage: V4` where the stage of V4 is called output. */
+static const char *stage_of_valve(struct reader *reader, const char *ref)
+{
+    const struct node *section = node_child(reader->root, kinds[REF_STAGE].section);
+    size_t length = strlen(ref);
+    const char *stages = NULL;
+    for (const struct node *stage = section ? section->first : NULL; stage; stage = stage->next) {
+        const struct node *valve = node_child(stage, "valve");
+        if (!valve || valve->kind != NODE_SCALAR || strncasecmp(valve->text, ref, length) != 0 ||
+            (valve->text[length] && valve->text[length] != ' '))
+            continue;
+        stages = stages ? arena_print(reader->arena, "%s or %s", stages, stage->key) : stage->key;
+    }
+    return stages ? arena_print(reader->arena, "write the name of its stage: %s", stages) : NULL;
+}
+
 int ref_index(struct reader *reader, enum ref_kind kind, const char *ref, struct position at)
 {
     const struct ref_entry *entry = ref_find(reader, ref);
     if (entry && entry->kind == kind)
         return entry->index;
+    const char *stages = kind == REF_STAGE ? stage_of_valve(reader, ref) : NULL;
     if (entry)
-        reader_tell(reader, at, DIAGNOSTIC_REF_UNKNOWN, NULL, "'%s' is a %s, no %s", ref,
+        reader_tell(reader, at, DIAGNOSTIC_REF_UNKNOWN, stages, "'%s' is a %s, no %s", ref,
                     kinds[entry->kind].name, kinds[kind].name);
     else if (!reader->damaged[kind])
-        reader_tell(reader, at, DIAGNOSTIC_REF_UNKNOWN, nearest_ref(reader, ref, NULL, kind),
+        reader_tell(reader, at, DIAGNOSTIC_REF_UNKNOWN,
+                    stages ? stages : nearest_ref(reader, ref, NULL, kind),
                     "'%s' is not listed under '%s'", ref, kinds[kind].section);
     return NOT_LISTED;
 }
@@ -132,6 +150,20 @@ int ref_index(struct reader *reader, enum ref_kind kind, const char *ref, struct
 static bool has_resistance(enum ref_kind kind)
 {
     return kind == REF_RESISTOR || kind == REF_WINDING;
+}
+
+/* `R33` is 0.33 ohm by IEC 60062, and a slip for R3 or R13 more often. */
+static void tell_ref_or_value(struct reader *reader, const struct quantity *quantity)
+{
+    const char *written = quantity->written;
+    size_t digits = strspn(written + 1, "0123456789");
+    if ((*written != 'R' && *written != 'r') || digits == 0 || written[1 + digits] ||
+        reader->damaged[REF_RESISTOR])
+        return;
+    reader_tell(reader, quantity->at, DIAGNOSTIC_QUANTITY_AMBIGUOUS,
+                arena_print(reader->arena, "list %s under 'resistors', or write %g ohm", written,
+                            quantity->value),
+                "'%s' is no listed resistor, and %g ohm by its letters", written, quantity->value);
 }
 
 void resistance_resolve(struct reader *reader, const struct node *node, void *target)
@@ -151,8 +183,10 @@ void resistance_resolve(struct reader *reader, const struct node *node, void *ta
         resistance->quantity = only_written;
         return;
     }
-    if (resistance->quantity.set)
+    if (resistance->quantity.set) {
+        tell_ref_or_value(reader, &resistance->quantity);
         return;
+    }
     resistance->set = false;
     if (reader->damaged[REF_RESISTOR] || reader->damaged[REF_WINDING])
         return;

@@ -244,12 +244,22 @@ static bool bites_inside(struct arena *arena, const struct cut_line *line, struc
 
 static bool bites_in_indent(struct arena *arena, const struct cut_line *line, struct bite *bite)
 {
+    static const char no_break[] = "\xC2\xA0"; /* a space that a word processor leaves behind */
     const char *at = line->start;
-    while (at < line->end && (*at == ' ' || *at == '\t'))
-        at++;
-    if (at == line->end || *at == '#' || !memchr(line->start, '\t', (size_t)(at - line->start)))
+    bool tab = false, broken = false;
+    for (;; at++) {
+        if (line->end - at >= 2 && memcmp(at, no_break, 2) == 0) {
+            broken = true;
+            at++;
+        } else if (at < line->end && (*at == ' ' || *at == '\t')) {
+            tab |= *at == '\t';
+        } else {
+            break;
+        }
+    }
+    if (at == line->end || *at == '#' || !(tab || broken))
         return false;
-    bite->text = "a tab at the start of a line";
+    bite->text = tab ? "a tab at the start of a line" : "a no-break space at the start of a line";
     bite->hint = arena_print(arena, "write spaces: %.*s", (int)(line->end - at), at);
     return true;
 }

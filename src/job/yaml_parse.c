@@ -38,7 +38,7 @@ static struct position position_of(yaml_mark_t mark)
 static bool stop_for_good(struct parse *parse, enum diagnostic_code code, struct position at,
                           const char *text)
 {
-    parse->failure = (struct parse_failure){code, at, text, NULL, true, false};
+    parse->failure = (struct parse_failure){.code = code, .at = at, .text = text, .final = true};
     return false;
 }
 
@@ -124,12 +124,11 @@ static struct node *node_of_key(struct parse *parse, const yaml_event_t *event)
 {
     struct position at = position_of(event->start_mark);
     if (event->type != YAML_SCALAR_EVENT || event->data.scalar.length > KEY_BYTES_MAX) {
-        parse->failure = (struct parse_failure){DIAGNOSTIC_YAML_SYNTAX,
-                                                at,
-                                                "a key must be a word or two",
-                                                "values that hold { [ ? or : stand in quotes",
-                                                false,
-                                                false};
+        parse->failure =
+            (struct parse_failure){.code = DIAGNOSTIC_YAML_SYNTAX,
+                                   .at = at,
+                                   .text = "a key must be a word or two",
+                                   .hint = "values that hold { [ ? or : stand in quotes"};
         return NULL;
     }
     struct node *node = arena_get(parse->arena, sizeof *node);
@@ -140,8 +139,33 @@ static struct node *node_of_key(struct parse *parse, const yaml_event_t *event)
     return node;
 }
 
+/* A ref that stands among the keys of the record above it: `C15:` with nothing behind it, and then
+   keys that are there already. */
+static bool is_swallowed_ref(const struct node *node)
+{
+    size_t length = strlen(node->key);
+    return node_is_empty(node) && length > 1 && node->key[length - 1] >= '0' &&
+           node->key[length - 1] <= '9';
+}
+
+/* Of all the keys that follow such a ref one is told: the ref. */
+static bool tell_swallowed(struct parse *parse)
+{
+    struct node *mapping = parse->open[parse->depth - 1], *newest = parse->newest[parse->depth];
+    if (mapping->damaged)
+        return true;
+    if (!newest || !is_swallowed_ref(newest))
+        return false;
+    diagnostic_add(&parse->told, parse->source, newest->key_at, DIAGNOSTIC_YAML_SYNTAX,
+                   "begin it in the column of the ref above it",
+                   "'%s' stands among the keys of another record", newest->key);
+    return newest->damaged = mapping->damaged = true;
+}
+
 static void tell_duplicate(struct parse *parse, const struct node *node, const struct node *before)
 {
+    if (tell_swallowed(parse))
+        return;
     diagnostic_add(&parse->told, parse->source, node->key_at, DIAGNOSTIC_DUPLICATE_KEY,
                    arena_print(parse->arena, "it stands in line %u already", before->key_at.line),
                    "the key '%s' is here twice", node->key);
@@ -329,27 +353,28 @@ static const struct {
     const char *problem, *context; /* how libyaml's texts begin */
     bool at_context, at_bracket;
     const char *text, *hint;
+    bool indent_wrong;
 } explanations[] = {
     {"did not find expected ',' or '}'", "", true, true, "'{' is not closed",
-     "one record on one line: R12: {marked: 270 ohm 1 W 10 %, done: kept}"},
-    {"did not find expected ',' or ']'", "", true, true, "'[' is not closed", NULL},
+     "one record on one line: R12: {marked: 270 ohm 1 W 10 %, done: kept}", false},
+    {"did not find expected ',' or ']'", "", true, true, "'[' is not closed", NULL, false},
     {"found unexpected", "while scanning a quoted scalar", true, true, "the quote is not closed",
-     NULL},
+     NULL, false},
     {"did not find expected node content", "", false, false,
-     "a value is missing, or a bracket above is not closed", NULL},
+     "a value is missing, or a bracket above is not closed", NULL, false},
     {"did not find expected '-' indicator", "", false, false,
      "this line does not fit the list above it",
-     "the items of a list begin with '- ' in the same column"},
+     "the items of a list begin with '- ' in the same column", false},
     {"did not find expected key", "", false, false, "this line does not fit the lines above it",
-     "keys of one record begin in the same column"},
+     "keys of one record begin in the same column", true},
     {"could not find expected ':'", "", true, false, "no colon and space behind the key",
-     "a fact is written 'key: value'"},
+     "a fact is written 'key: value', a record begins with 'C14:'", false},
     {"mapping values are not allowed", "", false, false, "no key may stand here",
-     "begin it in the same column as the keys beside it"},
+     "begin it in the same column as the keys beside it", true},
     {"block sequence entries are not allowed", "", false, false, "no list item may stand here",
-     "a list stands on lines of its own below its key"},
+     "a list stands on lines of its own below its key", false},
     {"found character that cannot start any token", "", false, false,
-     "nothing begins with this character", "put the value in quotes"},
+     "nothing begins with this character", "put the value in quotes", false},
 };
 
 static void explain_failure(struct parse *parse)
@@ -371,6 +396,7 @@ static void explain_failure(struct parse *parse)
         parse->failure.text = explanations[i].text;
         parse->failure.hint = explanations[i].hint;
         parse->failure.from_here = explanations[i].at_bracket;
+        parse->failure.indent_wrong = explanations[i].indent_wrong;
         if (explanations[i].at_context)
             parse->failure.at = position_of(parser->context_mark);
         return;

@@ -14,6 +14,7 @@ struct parse_failure {
     const char *text, *hint; /* hint NULL: none */
     bool final;              /* parsing again without this line would not help */
     bool from_here;          /* the mistake begins at the column; else the line is to blame */
+    bool indent_wrong;       /* the line stands in a column that fits nothing above it */
 };
 
 struct parse_result {

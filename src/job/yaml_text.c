@@ -5,7 +5,7 @@
 
 #include <string.h>
 
-enum { SHOWN_MAX = 10 }; /* of one kind: more of the same helps nobody */
+enum { SHOWN_MAX = 10 }; /* invisible characters: more of the same helps nobody */
 
 struct check {
     const struct source *source;
@@ -13,6 +13,8 @@ struct check {
     struct buffer *mended;
     const char *copied; /* how far the text has gone to `mended` */
     struct position at;
+    struct position first_foreign;
+    unsigned char first_foreign_byte;
     unsigned foreign, control;
 };
 
@@ -24,17 +26,28 @@ static void mend(struct check *check, const char *cursor, size_t length, uint32_
     check->copied = cursor + length;
 }
 
-static void tell_foreign(struct check *check, unsigned char byte)
+static void note_foreign(struct check *check, unsigned char byte)
 {
-    if (++check->foreign > SHOWN_MAX)
+    if (check->foreign++ > 0)
         return;
+    check->first_foreign = check->at;
+    check->first_foreign_byte = byte;
+}
+
+/* One mistake, however many bytes show it: the file was saved in another coding. */
+static void tell_foreign(const struct check *check)
+{
+    unsigned char byte = check->first_foreign_byte;
     struct buffer shown = {0};
     if (byte >= 0xA0)
         utf8_append(&shown, byte);
-    diagnostic_add(check->diagnostics, check->source, check->at, DIAGNOSTIC_NOT_UTF8,
+    if (check->foreign > 1)
+        buffer_print(&shown, byte >= 0xA0 ? ", and %u more" : "%u more", check->foreign - 1);
+    diagnostic_add(check->diagnostics, check->source, check->first_foreign, DIAGNOSTIC_NOT_UTF8,
                    "save the file as UTF-8",
-                   byte >= 0xA0 ? "0x%02X: this file looks like Latin-1 (%s)"
-                                : "0x%02X: this byte is not UTF-8%s",
+                   byte >= 0xA0         ? "0x%02X: this file looks like Latin-1 (%s)"
+                   : check->foreign > 1 ? "0x%02X: this byte is not UTF-8, and %s"
+                                        : "0x%02X: this byte is not UTF-8%s",
                    byte, buffer_string(&shown));
     buffer_release(&shown);
 }
@@ -72,7 +85,7 @@ static const char *check_character(struct check *check, const char *cursor, cons
     const char *next = cursor;
     uint32_t code_point = utf8_next(&next, end);
     if (code_point == UTF8_ILL_FORMED) {
-        tell_foreign(check, byte);
+        note_foreign(check, byte);
         mend(check, cursor, 1, byte >= 0xA0 ? byte : '?');
     } else if (is_refused(code_point)) {
         tell_control(check, code_point);
@@ -83,9 +96,8 @@ static const char *check_character(struct check *check, const char *cursor, cons
 
 static void tell_the_rest(const struct check *check)
 {
-    if (check->foreign > SHOWN_MAX)
-        diagnostic_add(check->diagnostics, check->source, (struct position){0}, DIAGNOSTIC_NOT_UTF8,
-                       NULL, "and %u more bytes that are not UTF-8", check->foreign - SHOWN_MAX);
+    if (check->foreign)
+        tell_foreign(check);
     if (check->control > SHOWN_MAX)
         diagnostic_add(check->diagnostics, check->source, (struct position){0},
                        DIAGNOSTIC_CONTROL_CHARACTER, NULL, "and %u more invisible characters",
@@ -116,6 +128,12 @@ static bool is_text_at_all(const struct source *source, struct diagnostics *diag
                        "the file holds NUL bytes: UTF-16, or no text at all");
         return false;
     }
+    if (memchr(source->text, '\r', source->length) && !memchr(source->text, '\n', source->length)) {
+        diagnostic_add(diagnostics, source, whole, DIAGNOSTIC_CONTROL_CHARACTER,
+                       "save the file with the line ends of Unix or Windows",
+                       "its lines end in a carriage return alone");
+        return false;
+    }
     return true;
 }
 
@@ -124,7 +142,11 @@ bool yaml_text_check(const struct source *source, struct diagnostics *diagnostic
 {
     if (!is_text_at_all(source, diagnostics))
         return false;
-    struct check check = {source, diagnostics, mended, source->text, {1, 1}, 0, 0};
+    struct check check = {.source = source,
+                          .diagnostics = diagnostics,
+                          .mended = mended,
+                          .copied = source->text,
+                          .at = {1, 1}};
     const char *cursor = source->text, *end = source->text + source->length;
     if (source->length >= 3 && memcmp(cursor, "\xEF\xBB\xBF", 3) == 0)
         cursor += 3; /* the byte order mark that some editors write */

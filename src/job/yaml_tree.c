@@ -46,33 +46,151 @@ static bool is_blank(const char *start, const char *end)
     return start == end;
 }
 
-/* Blank the line of the failure, or the nearest above it that still holds something: an error is
-   often noticed only behind the line that made it. */
+/* ---- lines ---- */
+
+/* A line that holds something: neither blank nor a comment. */
+struct text_line {
+    const char *start, *end; /* without the line end */
+    unsigned number;         /* 0: there is none */
+    size_t indent;
+};
+
+static struct text_line line_from(const char *start, const char *end, unsigned number)
+{
+    const char *stop = memchr(start, '\n', (size_t)(end - start));
+    struct text_line line = {.start = start, .end = stop ? stop : end, .number = number};
+    while (line.start + line.indent < line.end && line.start[line.indent] == ' ')
+        line.indent++;
+    return line;
+}
+
+static bool holds_something(const struct text_line *line)
+{
+    return !is_blank(line->start, line->end) && line->start[line->indent] != '#';
+}
+
+/* The next line below or above that holds something. */
+static struct text_line line_below(const struct repair *repair, struct text_line line)
+{
+    const char *end = repair->text + repair->length;
+    while (line.end < end) {
+        line = line_from(line.end + 1, end, line.number + 1);
+        if (holds_something(&line))
+            return line;
+    }
+    return (struct text_line){0};
+}
+
+static struct text_line line_above(const struct repair *repair, struct text_line line)
+{
+    while (line.start > repair->text) {
+        const char *start = line.start - 1;
+        while (start > repair->text && start[-1] != '\n')
+            start--;
+        line = line_from(start, line.start - 1, line.number - 1);
+        if (holds_something(&line))
+            return line;
+    }
+    return (struct text_line){0};
+}
+
+static struct text_line line_of_number(const struct repair *repair, unsigned number)
+{
+    const char *end = repair->text + repair->length;
+    struct text_line line = line_from(repair->text, end, 1);
+    while (line.number < number && line.end < end)
+        line = line_from(line.end + 1, end, line.number + 1);
+    return line;
+}
+
+/* ---- repairs ---- */
+
+/* Whether keys in this column went on up to the line. */
+static bool column_was_open(const struct repair *repair, struct text_line line, size_t column)
+{
+    do
+        line = line_above(repair, line);
+    while (line.number && line.indent > column);
+    return line.number && line.indent == column;
+}
+
+/* Which line to blame where one fits nothing above it: that line, or an earlier one that stands too
+   far left, as a ref at the margin does, and so ended what the line would go on with. */
+static struct text_line misplaced_line(const struct repair *repair, struct text_line line)
+{
+    struct text_line parent = line;
+    do
+        parent = line_above(repair, parent);
+    while (parent.number && parent.indent >= line.indent);
+    return parent.number && column_was_open(repair, parent, line.indent) ? parent : line;
+}
+
+/* `C14:` or, mistyped, `C14`: what is written deeper below it is its own. */
+static bool is_key_alone(const struct text_line *line)
+{
+    const char *end = line->end;
+    while (end > line->start && (end[-1] == '\r' || end[-1] == ' '))
+        end--;
+    const char *colon = memchr(line->start, ':', (size_t)(end - line->start));
+    return line->start[line->indent] != '-' && (!colon || colon == end - 1);
+}
+
+static void blank_text(struct repair *repair, const struct text_line *line)
+{
+    blank(repair, (size_t)(line->start - repair->text), (size_t)(line->end - repair->text),
+          line->number);
+}
+
+/* The line, and what is its own: what stands deeper than the line, and than `indent`. */
+static void blank_record(struct repair *repair, unsigned number, size_t indent)
+{
+    struct text_line line = line_of_number(repair, number), below = line_below(repair, line);
+    unsigned last = number;
+    indent = indent > line.indent ? indent : line.indent;
+    while (is_key_alone(&line) && below.number && below.indent > indent) {
+        last = below.number;
+        below = line_below(repair, below);
+    }
+    for (; number <= last; number++) {
+        line = line_of_number(repair, number); /* anew: the text may have become a copy */
+        blank_text(repair, &line);
+    }
+}
+
+/* false: nothing stands in the line that libyaml complains of. */
+static bool mend_indent(struct repair *repair, const struct parse_failure *failure)
+{
+    struct text_line line = line_of_number(repair, failure->at.line);
+    if (line.number != failure->at.line || !holds_something(&line))
+        return false;
+    size_t indent = line.indent;
+    line = misplaced_line(repair, line);
+    diagnostic_add(repair->diagnostics, repair->source,
+                   (struct position){line.number, (unsigned)line.indent + 1}, failure->code,
+                   failure->hint, "%s", failure->text);
+    blank_record(repair, line.number, indent);
+    return true;
+}
+
+/* Blank the record of the failure, or the nearest line above that still holds something: an error
+   is often noticed only behind the line that made it. */
 static bool blank_failure(struct repair *repair, const struct parse_failure *failure)
 {
-    const char *start = repair->text, *end = repair->text + repair->length, *found = NULL;
-    unsigned found_line = 0;
-    for (unsigned line = 1; line <= failure->at.line && start < end; line++) {
-        const char *stop = memchr(start, '\n', (size_t)(end - start));
-        stop = stop ? stop : end;
-        if (!is_blank(start, stop)) {
-            found = start;
-            found_line = line;
-        }
-        start = stop < end ? stop + 1 : end;
-    }
-    if (!found)
+    struct text_line line = line_of_number(repair, failure->at.line);
+    if (!holds_something(&line))
+        line = line_above(repair, line);
+    if (!line.number)
         return false;
-    const char *stop = memchr(found, '\n', (size_t)(end - found));
-    stop = stop ? stop : end;
-    const char *from = found;
-    if (failure->from_here && found_line == failure->at.line) {
-        for (unsigned column = 1; column < failure->at.column && from < stop; column++)
-            utf8_next(&from, stop);
-        if (is_blank(from, stop))
-            from = found;
-    }
-    blank(repair, (size_t)(from - repair->text), (size_t)(stop - repair->text), found_line);
+    const char *from = line.start;
+    for (unsigned column = 1; failure->from_here && line.number == failure->at.line &&
+                              column < failure->at.column && from < line.end;
+         column++)
+        utf8_next(&from, line.end);
+    if (from == line.start || is_blank(from, line.end))
+        blank_record(repair, line.number, 0);
+    else
+        blank(repair, (size_t)(from - repair->text), (size_t)(line.end - repair->text),
+              line.number);
     return true;
 }
 
@@ -103,6 +221,8 @@ static bool blank_bites(struct repair *repair, unsigned last_line)
 static bool mend(struct repair *repair, const struct parse_failure *failure)
 {
     if (blank_bites(repair, failure->at.line))
+        return true;
+    if (failure->indent_wrong && mend_indent(repair, failure))
         return true;
     diagnostic_add(repair->diagnostics, repair->source, failure->at, failure->code, failure->hint,
                    "%s", failure->text);

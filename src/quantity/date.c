@@ -3,6 +3,7 @@
 #include "base/utf8.h"
 
 #include <string.h>
+#include <strings.h>
 
 static bool fixed_number(const char *text, size_t digit_count, int *value)
 {
@@ -40,6 +41,94 @@ bool date_read(struct arena *arena, const char *text, size_t length, struct date
     read.written = arena_text(arena, start, 10);
     *date = read;
     return true;
+}
+
+/* ---- what a date typed in another way may mean ---- */
+
+/* A piece of `14 Jan 2031`: a number, or a month by its name. */
+struct date_piece {
+    int number;
+    size_t digits; /* 0: a month's name */
+};
+
+static bool is_digit(char byte)
+{
+    return byte >= '0' && byte <= '9';
+}
+
+static bool is_letter(char byte)
+{
+    return (byte >= 'a' && byte <= 'z') || (byte >= 'A' && byte <= 'Z');
+}
+
+static int month_of(const char *word, size_t length)
+{
+    static const char *const months[12] = {"january",   "february", "march",    "april",
+                                           "may",       "june",     "july",     "august",
+                                           "september", "october",  "november", "december"};
+    for (int i = 0; i < 12; i++)
+        if (length >= 3 && length <= strlen(months[i]) && strncasecmp(word, months[i], length) == 0)
+            return i + 1;
+    return 0;
+}
+
+/* The next piece, with what parts it from the one before; false: none that a date may have. */
+static bool piece_read(const char **cursor, const char *end, struct date_piece *piece)
+{
+    while (*cursor < end && strchr("-/., ", **cursor))
+        ++*cursor;
+    const char *start = *cursor;
+    *piece = (struct date_piece){0};
+    while (*cursor < end && is_digit(**cursor) && *cursor - start < 4)
+        piece->number = piece->number * 10 + (*(*cursor)++ - '0');
+    piece->digits = (size_t)(*cursor - start);
+    if (piece->digits)
+        return *cursor == end || !is_digit(**cursor);
+    while (*cursor < end && is_letter(**cursor))
+        ++*cursor;
+    piece->number = month_of(start, (size_t)(*cursor - start));
+    return piece->number > 0;
+}
+
+static bool pieces_read(const char *text, size_t length, struct date_piece pieces[3])
+{
+    const char *end = scan_trim_end(text, text + length), *cursor = scan_spaces(text, end);
+    for (size_t i = 0; i < 3; i++)
+        if (!piece_read(&cursor, end, &pieces[i]))
+            return false;
+    return cursor == end;
+}
+
+/* "2031-02-03" from the pieces in this order; NULL: no day of the calendar. */
+static const char *date_from(struct arena *arena, const struct date_piece *year,
+                             const struct date_piece *month, const struct date_piece *day)
+{
+    if (day->digits == 0 || day->digits > 2 || month->digits > 2 || year->digits < 2)
+        return NULL;
+    int full_year = year->digits == 2 ? 2000 + year->number : year->number;
+    if (full_year < 1800 || month->number < 1 || month->number > 12 || day->number < 1 ||
+        day->number > days_in_month(full_year, month->number))
+        return NULL;
+    return arena_print(arena, "%04d-%02d-%02d", full_year, month->number, day->number);
+}
+
+const char *date_hint(struct arena *arena, const char *text, size_t length)
+{
+    struct date_piece pieces[3];
+    const char *first = NULL, *second = NULL;
+    if (pieces_read(text, length, pieces)) {
+        bool year_first = pieces[0].digits == 4;
+        first = year_first ? date_from(arena, &pieces[0], &pieces[1], &pieces[2])
+                           : date_from(arena, &pieces[2], &pieces[1], &pieces[0]);
+        second = year_first ? NULL : date_from(arena, &pieces[2], &pieces[0], &pieces[1]);
+        if (year_first && !first && pieces[1].digits == 2 && pieces[2].digits == 2)
+            return "the calendar has no such day";
+    }
+    if (first && second && strcmp(first, second) != 0)
+        return arena_print(arena, "write %s or %s", first, second);
+    if (first || second)
+        return arena_print(arena, "write %s", first ? first : second);
+    return "write year-month-day, as in 2031-02-10";
 }
 
 /* Days of the Gregorian calendar from 0000-03-01 to the first of March of a year, less a shift. */

@@ -122,6 +122,9 @@ struct date {
 };
 /* false when it is not a date of the calendar. `at` is left to the caller. */
 bool date_read(struct arena *arena, const char *text, size_t length, struct date *date);
+/* What to write instead of a text that is no date: `3/2/31` both ways, `14 Jan 2031` as it is
+   meant, else an example. */
+const char *date_hint(struct arena *arena, const char *text, size_t length);
 /* Days since 1970-01-01; for order and differences. */
 long date_days(const struct date *date);
 

@@ -79,6 +79,13 @@ static void nearest_words_are_near(void **state)
     assert_string_equal(nearest_word("readigns", keys), "readings");
     assert_string_equal(nearest_word("Reason", keys), "reason");
     assert_null(nearest_word("capacitor", keys));
+    /* What the hand does most counts least. */
+    static const char *const refs[] = {"L1", "C1", "C11", "C19", "R1", "R10", "R11", NULL};
+    assert_string_equal(nearest_word("C91", refs), "C19");
+    assert_string_equal(nearest_word("Rll", refs), "R11");
+    assert_string_equal(nearest_word("RlO", refs), "R10");
+    static const char *const meters[] = {"meter", "megger", NULL};
+    assert_string_equal(nearest_word("meger", meters), "megger");
     assert_null(nearest_word("0123456789012345678901234567890123456789012345", keys));
 }
 

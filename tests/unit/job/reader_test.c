@@ -17,7 +17,7 @@ static const char whole[] =
     "conditions: {bench: 66.2 F, humidity: 48 %, working_near_heat: 55 C}\n"
     "instruments:\n"
     "  bridge: {accuracy: 1 % + 2 digits, resolution: 0.01 uA, series: 10k}\n"
-    "  meter: {accuracy: 2 % + 0.02 uA, volts: '25 V, 50 V'}\n"
+    "  meter: {accuracy: 2 % + 0.02 uA, volts: '50 V, 100 V'}\n"
     "stages:\n"
     "  output:\n    valve: V4 6V6GT\n    anode: T2\n    cathode: R12\n    grid_leak: 470k\n"
     "    supply: 262.5 V\n    measured: {found: 'cathode 16.2 V, anode 238 V, lifted'}\n"
@@ -161,7 +161,7 @@ static void test_instruments(void **state)
     assert_int_equal(bridge->accuracy_unit, UNIT_CURRENT);
     assert_close(meter->accuracy_absolute, 0.02e-6, 1e-15);
     assert_int_equal(meter->volt_count, 2);
-    assert_close(meter->volts_v[1], 50, 0);
+    assert_close(meter->volts_v[1], 100, 0);
     reading_release(&reading);
 }
 
