@@ -1,92 +1,39 @@
 /* The GUM's examples, intervals of shares, decision rule. */
 #include "table.h"
 
-#include "assess/numeric.h"
 #include "assess/share.h"
-#include "assess/uncertainty.h"
 #include "assess/verdict.h"
+#include "published_rows.h"
 
 #include <stdio.h>
-
-static double end_gauge(const double *x, const void *context)
-{
-    (void)context;
-    return x[0] + x[1] - x[0] * (x[2] * x[3] + x[4] * x[5]);
-}
 
 static void rows_of_h1(void)
 {
     static const struct origin_of_rows gum = {"Uncertainty", "JCGM 100:2008, H.1, end gauge (nm)",
                                               TRUST_SEEN};
-    const struct uncertain inputs[] = {
-        {50000623, 25, 18},          {215, 9.7, 25.6}, {0, 0.58e-6, 50}, {-0.1, 0.41, 0},
-        {11.5e-6, 1.2e-6, INFINITY}, {0, 0.029, 2}};
-    const struct uncertainty_budget budget = {.inputs = inputs, .input_count = 6};
+    const struct uncertainty_budget budget = gum_h1_budget();
     struct uncertainty_result result = {.value = NAN};
-    uncertainty_propagate(end_gauge, NULL, &budget, &result);
-    row_close(&gum, "length", 50000838, result.value, 0.5);
-    row_close(&gum, "combined standard uncertainty", 32, result.standard, 0.5);
-    row_close(&gum, "effective degrees of freedom", 16.7, result.freedom, 0.05);
-}
-
-static double resistance(const double *x, const void *context)
-{
-    (void)context;
-    return x[0] / x[1] * cos(x[2]);
-}
-static double reactance(const double *x, const void *context)
-{
-    (void)context;
-    return x[0] / x[1] * sin(x[2]);
-}
-static double impedance(const double *x, const void *context)
-{
-    (void)context;
-    return x[0] / x[1];
+    uncertainty_propagate(gum_h1_length, NULL, &budget, &result);
+    row_close(&gum, "length", GUM_H1_LENGTH_NM, result.value, 0.5);
+    row_close(&gum, "combined standard uncertainty", GUM_H1_U_NM, result.standard, 0.5);
+    row_close(&gum, "effective degrees of freedom", GUM_H1_FREEDOM, result.freedom, 0.05);
 }
 
 static void rows_of_h2(void)
 {
     static const struct origin_of_rows gum = {
         "Uncertainty", "JCGM 100:2008, H.2, resistance and reactance", TRUST_SEEN};
-    static const double readings[5][3] = {{5.007, 19.663, 1.0456},
-                                          {4.994, 19.639, 1.0438},
-                                          {5.005, 19.640, 1.0468},
-                                          {4.990, 19.685, 1.0428},
-                                          {4.999, 19.678, 1.0433}};
-    struct uncertain inputs[3] = {{0}};
-    double products[3][3] = {{0}};
-    for (int q = 0; q < 3; q++)
-        for (int i = 0; i < 5; i++)
-            inputs[q].value += readings[i][q] / 5;
-    for (int p = 0; p < 3; p++)
-        for (int q = 0; q < 3; q++)
-            for (int i = 0; i < 5; i++)
-                products[p][q] +=
-                    (readings[i][p] - inputs[p].value) * (readings[i][q] - inputs[q].value) / 20;
-    struct correlation pairs[3] = {{0, 1, 0}, {0, 2, 0}, {1, 2, 0}};
-    for (int q = 0; q < 3; q++)
-        inputs[q].standard = sqrt(products[q][q]);
-    for (int i = 0; i < 3; i++)
-        pairs[i].coefficient = products[pairs[i].first][pairs[i].second] /
-                               (inputs[pairs[i].first].standard * inputs[pairs[i].second].standard);
-    inputs[1].value *= 1e-3;
-    inputs[1].standard *= 1e-3;
-    const struct uncertainty_budget budget = {inputs, 3, pairs, 3};
-    static const struct {
-        const char *name;
-        uncertainty_function function;
-        double value, u;
-    } rows[] = {{"R (ohm)", resistance, 127.732, 0.071},
-                {"X (ohm)", reactance, 219.847, 0.295},
-                {"Z (ohm)", impedance, 254.260, 0.236}};
-    for (size_t i = 0; i < 3; i++) {
+    struct gum_h2 h2;
+    gum_h2_means(&h2);
+    const struct uncertainty_budget budget = {h2.inputs, 3, h2.pairs, 3};
+    for (size_t i = 0; i < PUBLISHED_COUNT(gum_h2_results); i++) {
+        const struct gum_h2_result *row = &gum_h2_results[i];
         struct uncertainty_result result = {.value = NAN};
         char what[60];
-        uncertainty_propagate(rows[i].function, NULL, &budget, &result);
-        row_close(&gum, rows[i].name, rows[i].value, result.value, 0.0006);
-        snprintf(what, sizeof what, "%s, standard uncertainty", rows[i].name);
-        row_close(&gum, what, rows[i].u, result.standard, 0.001);
+        uncertainty_propagate(row->function, NULL, &budget, &result);
+        row_close(&gum, row->name, row->value, result.value, 0.0006);
+        snprintf(what, sizeof what, "%s, standard uncertainty", row->name);
+        row_close(&gum, what, row->u, result.standard, 0.001);
     }
 }
 
@@ -94,18 +41,15 @@ static void rows_of_wilson(void)
 {
     static const struct origin_of_rows newcombe = {
         "Shares", "Newcombe 1998, Statistics in Medicine 17, 857, table I", TRUST_SEEN};
-    static const struct {
-        double x, n, low, high;
-    } rows[] = {
-        {81, 263, .2553, .3662}, {15, 148, .0624, .1605}, {0, 20, 0, .1611}, {1, 29, .0061, .1718}};
-    for (size_t i = 0; i < sizeof rows / sizeof *rows; i++) {
+    for (size_t i = 0; i < PUBLISHED_COUNT(newcombe_rows); i++) {
+        const struct newcombe_row *row = &newcombe_rows[i];
         double low = NAN, high = NAN;
         char what[60];
-        share_wilson(rows[i].x / rows[i].n, rows[i].n, &low, &high);
-        snprintf(what, sizeof what, "%g of %g, lower", rows[i].x, rows[i].n);
-        row_close(&newcombe, what, rows[i].low, low, 0.00005);
-        snprintf(what, sizeof what, "%g of %g, upper", rows[i].x, rows[i].n);
-        row_close(&newcombe, what, rows[i].high, high, 0.00005);
+        share_wilson(row->x / row->n, row->n, &low, &high);
+        snprintf(what, sizeof what, "%g of %g, lower", row->x, row->n);
+        row_close(&newcombe, what, row->low, low, 0.00005);
+        snprintf(what, sizeof what, "%g of %g, upper", row->x, row->n);
+        row_close(&newcombe, what, row->high, high, 0.00005);
     }
 }
 

@@ -4,7 +4,7 @@
 #include "assess/numeric.h"
 
 #include "kit.h"
-#include "nist_data.h"
+#include "published_rows.h"
 
 /* ---- roots */
 
@@ -50,119 +50,16 @@ static void roots(void **state)
     assert_true(root == 42);
 }
 
-/* ---- NIST StRD */
-
-static double saturating(double x, const double *b, const void *context)
-{
-    (void)context;
-    return b[0] * (1 - exp(-b[1] * x));
-}
-static double rational(double x, const double *b, const void *context)
-{
-    (void)context;
-    return b[0] * (x * x + b[1] * x) / (x * x + b[2] * x + b[3]);
-}
-static double three_exponentials(double x, const double *b, const void *context)
-{
-    (void)context;
-    return b[0] * exp(-b[1] * x) + b[2] * exp(-b[3] * x) + b[4] * exp(-b[5] * x);
-}
-static double chwirut(double x, const double *b, const void *context)
-{
-    (void)context;
-    return exp(-b[0] * x) / (b[1] + b[2] * x);
-}
-static double bennett(double x, const double *b, const void *context)
-{
-    (void)context;
-    return b[0] * pow(b[1] + x, -1 / b[2]);
-}
-
-#define DATA(name) name, sizeof name / sizeof name[0]
-static const struct strd {
-    const char *name;
-    numeric_model model;
-    const double (*data)[2];
-    size_t count, parameter_count;
-    double starts[2][6];
-    double certified[6], errors[6];
-    double sum, sd;
-} strd_sets[] = {
-    {"Misra1a",
-     saturating,
-     DATA(misra1a),
-     2,
-     {{500, 1e-4}, {250, 5e-4}},
-     {2.3894212918E+02, 5.5015643181E-04},
-     {2.7070075241E+00, 7.2668688436E-06},
-     1.2455138894E-01,
-     1.0187876330E-01},
-    {"BoxBOD",
-     saturating,
-     DATA(box_bod),
-     2,
-     {{1, 1}, {100, 0.75}},
-     {2.1380940889E+02, 5.4723748542E-01},
-     {1.2354515176E+01, 1.0455993237E-01},
-     1.1680088766E+03,
-     1.7088072423E+01},
-    {"MGH09",
-     rational,
-     DATA(mgh09),
-     4,
-     {{25, 39, 41.5, 39}, {0.25, 0.39, 0.415, 0.39}},
-     {1.9280693458E-01, 1.9128232873E-01, 1.2305650693E-01, 1.3606233068E-01},
-     {1.1435312227E-02, 1.9633220911E-01, 8.0842031232E-02, 9.0025542308E-02},
-     3.0750560385E-04,
-     6.6279236551E-03},
-    {"Lanczos3",
-     three_exponentials,
-     DATA(lanczos3),
-     6,
-     {{1.2, 0.3, 5.6, 5.5, 6.5, 7.6}, {0.5, 0.7, 3.6, 4.2, 4, 6.3}},
-     {8.6816414977E-02, 9.5498101505E-01, 8.4400777463E-01, 2.9515951832E+00, 1.5825685901E+00,
-      4.9863565084E+00},
-     {1.7197908859E-02, 9.7041624475E-02, 4.1488663282E-02, 1.0766312506E-01, 5.8371576281E-02,
-      3.4436403035E-02},
-     1.6117193594E-08,
-     2.9923229172E-05},
-    {"Chwirut2",
-     chwirut,
-     DATA(chwirut2),
-     3,
-     {{0.1, 0.01, 0.02}, {0.15, 0.008, 0.010}},
-     {1.6657666537E-01, 5.1653291286E-03, 1.2150007096E-02},
-     {3.8303286810E-02, 6.6621605126E-04, 1.5304234767E-03},
-     5.1304802941E+02,
-     3.1717133040E+00},
-    {"Bennett5",
-     bennett,
-     DATA(bennett5),
-     3,
-     {{-2000, 50, 0.8}, {-1500, 45, 0.85}},
-     {-2.5235058043E+03, 4.6736564644E+01, 9.3218483193E-01},
-     {2.9715175411E+02, 1.2448871856E+00, 2.0272299378E-02},
-     5.2404744073E-04,
-     1.8629312528E-03},
-};
-
 /* Certified figures of the NIST data sets, from both published starts: six digits of parameters and
    of standard errors. */
 static void nist_nonlinear_regression(void **state)
 {
     (void)state;
-    for (size_t i = 0; i < sizeof strd_sets / sizeof strd_sets[0]; i++)
+    for (size_t i = 0; i < PUBLISHED_COUNT(published_fits); i++)
         for (int start = 0; start < 2; start++) {
-            const struct strd *set = &strd_sets[i];
-            double x[160], y[160];
-            for (size_t k = 0; k < set->count; k++) {
-                x[k] = set->data[k][0];
-                y[k] = set->data[k][1];
-            }
+            const struct published_fit *set = &published_fits[i];
             struct numeric_fit fit;
-            enum numeric_status status =
-                numeric_least_squares(set->model, NULL, x, y, NULL, set->count, set->starts[start],
-                                      set->parameter_count, &fit);
+            enum numeric_status status = published_fit_solve(set, start, &fit);
             if (status != NUMERIC_OK)
                 print_error("%s from start %d: status %d\n", set->name, start + 1, status);
             assert_int_equal(status, NUMERIC_OK);

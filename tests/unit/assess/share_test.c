@@ -2,24 +2,21 @@
 #include "assess/share.h"
 
 #include "kit.h"
+#include "published_rows.h"
 
-/* Newcombe, Statistics in Medicine 17 (1998) 857, table I, method 3 (score without correction). */
 static void wilson_as_published(void **state)
 {
     (void)state;
-    static const struct {
-        double x, n, low, high;
-    } rows[] = {
-        {81, 263, .2553, .3662}, {15, 148, .0624, .1605}, {0, 20, 0, .1611}, {1, 29, .0061, .1718}};
-    for (size_t i = 0; i < sizeof rows / sizeof *rows; i++) {
+    for (size_t i = 0; i < PUBLISHED_COUNT(newcombe_rows); i++) {
+        const struct newcombe_row *row = &newcombe_rows[i];
         double low, high;
-        share_wilson(rows[i].x / rows[i].n, rows[i].n, &low, &high);
-        assert_close(low, rows[i].low, 0.00005);
-        assert_close(high, rows[i].high, 0.00005);
+        share_wilson(row->x / row->n, row->n, &low, &high);
+        assert_close(low, row->low, 0.00005);
+        assert_close(high, row->high, 0.00005);
         /* Failures and passes are each other's mirror. */
-        share_wilson(1 - rows[i].x / rows[i].n, rows[i].n, &low, &high);
-        assert_close(low, 1 - rows[i].high, 0.00005);
-        assert_close(high, 1 - rows[i].low, 0.00005);
+        share_wilson(1 - row->x / row->n, row->n, &low, &high);
+        assert_close(low, 1 - row->high, 0.00005);
+        assert_close(high, 1 - row->low, 0.00005);
     }
 }
 
