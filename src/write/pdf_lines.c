@@ -191,6 +191,28 @@ static struct spot skip_spaces(const struct breaker *breaker, struct spot place)
     return place;
 }
 
+/* How many thousandths of the run's size still fit behind `width`; 0: none. */
+static unsigned long room_left(const struct breaker *breaker, const struct text_run *run,
+                               double width)
+{
+    double room = (breaker->limit + 0.01 - width) * 1000 / run->style.size_pt;
+    return room > 0 ? (unsigned long)(room < 1e9 ? room : 1e9) : 0;
+}
+
+/* Behind the letters and digits from `at` on that fit: nearly everything, and no line ends there.
+ */
+static const char *within_word(const struct glyph_place *places, const char *at, const char *end,
+                               unsigned long room, unsigned long *used)
+{
+    for (; at < end && *at >= '0' && *at < 0x7F; at++) {
+        unsigned long more = *used + places[(unsigned char)*at].advance;
+        if (more > room)
+            break;
+        *used = more;
+    }
+    return at;
+}
+
 /* One line from `from`; the answer is where the next begins. */
 static struct spot break_line(struct breaker *breaker, struct spot from)
 {
@@ -200,16 +222,23 @@ static struct spot break_line(struct breaker *breaker, struct spot from)
     while (at.run < breaker->runs->count) {
         const struct text_run *run = &breaker->runs->items[at.run];
         const char *end = run->text + run->length;
+        unsigned long room = room_left(breaker, run, at.width), used = 0;
+        const struct glyph_place *places = breaker->resources->latin[run->style.face];
         while (at.at < end) {
+            const char *word = at.at;
+            at.at = within_word(places, word, end, room, &used);
+            if (at.at > word)
+                before = (unsigned char)at.at[-1];
+            if (at.at == end)
+                break;
             const char *character = at.at;
             uint32_t code_point = utf8_next(&at.at, end);
             if (code_point == ' ' && !is_before_unit(before, at.at, end)) {
                 candidate = at;
                 has_candidate = true;
             }
-            at.width += pdf_character_width(breaker->resources, run->style.face, code_point) *
-                        run->style.size_pt / 1000;
-            if (code_point != ' ' && at.width > breaker->limit + 0.01) {
+            used += pdf_character_width(breaker->resources, run->style.face, code_point);
+            if (code_point != ' ' && used > room) {
                 struct spot end_of_line = candidate;
                 if (!has_candidate)
                     end_of_line = at.run == from.run && character == from.at
@@ -231,6 +260,7 @@ static struct spot break_line(struct breaker *breaker, struct spot from)
             at.width = 0;
             return at;
         }
+        at.width += (double)used * run->style.size_pt / 1000;
         at.run++;
         at.at = breaker->runs->items[at.run].text;
     }
