@@ -100,6 +100,37 @@ static void test_every_character_is_on_a_line(void **state)
     arena_release(&arena);
 }
 
+/* Greedy, by its definition: no line is wider than the limit, and none had room for the next word,
+   or for the next letter of a word that is broken. */
+static void test_lines_hold_what_fits(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    char text[600];
+    for (size_t i = 0; i < sizeof text - 1; i++)
+        text[i] = i % 5 == 4 || i % 23 == 22 ? ' ' : "aWm0Zi~9:w"[i * i % 10];
+    text[sizeof text - 1] = '\0';
+    for (double limit = 20; limit < 500; limit *= 1.13) {
+        struct text_runs runs = {.arena = &arena};
+        text_runs_add_part(&runs, text, 200, plain, NULL); /* within a word */
+        text_runs_add(&runs, text + 200, plain);
+        struct text_lines lines = text_lines_break(&runs, resources, limit);
+        for (size_t i = 0; i < lines.count; i++) {
+            const struct text_line *line = &lines.items[i];
+            const struct line_piece *last = &line->pieces[line->piece_count - 1];
+            assert_true(line->width <= limit + 0.01);
+            if (i + 1 == lines.count)
+                break;
+            const char *end = last->text + last->length;
+            const char *next = lines.items[i + 1].pieces[0].text;
+            size_t more = end == next ? 1 : (size_t)(next - end) + strcspn(next, " ");
+            double wider = (double)pdf_text_width(resources, FACE_REGULAR, end, more) / 100;
+            assert_true(line->width + wider > limit + 0.01 - 1e-9);
+        }
+    }
+    arena_release(&arena);
+}
+
 static void test_runs_follow_one_another(void **state)
 {
     (void)state;
@@ -374,6 +405,7 @@ int main(int argc, char **argv)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(test_lines_end_where_they_may),
         cmocka_unit_test(test_every_character_is_on_a_line),
+        cmocka_unit_test(test_lines_hold_what_fits),
         cmocka_unit_test(test_runs_follow_one_another),
         cmocka_unit_test(test_kept_strips_move_together),
         cmocka_unit_test(test_what_no_page_holds_is_broken),
