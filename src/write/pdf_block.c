@@ -199,8 +199,14 @@ struct paginator {
     struct flow *flow;
     struct page_plan plan;
     double y;
-    bool at_top; /* nothing stands on this page yet */
+    bool at_top;      /* nothing stands on this page yet */
+    double closeness; /* of the spaces between strips: 1 as wanted */
 };
+
+static double space_before(const struct paginator *paginator, const struct strip *strip)
+{
+    return strip->before * paginator->closeness;
+}
 
 static void put(struct paginator *paginator, const struct strip *strip, bool begins)
 {
@@ -227,7 +233,8 @@ static double repeated_height(const struct strip *strip)
 
 static double needed(const struct paginator *paginator, const struct strip *strip)
 {
-    return strip->height + (paginator->at_top ? repeated_height(strip) : strip->before);
+    return strip->height +
+           (paginator->at_top ? repeated_height(strip) : space_before(paginator, strip));
 }
 
 /* Both columns of one page; the answer is where those of the next begin. */
@@ -253,7 +260,7 @@ static size_t put_columns(struct paginator *paginator, const struct strip *strip
 static void place_columns(struct paginator *paginator, const struct strip *strip)
 {
     if (!paginator->at_top)
-        paginator->y += strip->before;
+        paginator->y += space_before(paginator, strip);
     for (size_t from = put_columns(paginator, strip, 0); from < strip->columns->count;
          from = put_columns(paginator, strip, from))
         next_page(paginator);
@@ -270,7 +277,7 @@ static void place(struct paginator *paginator, const struct strip *strip)
     if (begins && strip->head && plan->count > 0)
         plan->items[plan->count - 1].ends = plan->items[plan->count - 1].strip->head == strip->head;
     if (!begins)
-        paginator->y += strip->before;
+        paginator->y += space_before(paginator, strip);
     else if (strip->head)
         put(paginator, strip->head, false);
     if (begins && strip->head && strip->continued)
@@ -284,7 +291,8 @@ static double unit_height(const struct paginator *paginator, size_t from, size_t
 {
     double height = needed(paginator, paginator->flow->strips[from]);
     for (size_t i = from + 1; i < to; i++)
-        height += paginator->flow->strips[i]->before + paginator->flow->strips[i]->height;
+        height += space_before(paginator, paginator->flow->strips[i]) +
+                  paginator->flow->strips[i]->height;
     return height;
 }
 
@@ -302,8 +310,11 @@ static void place_long(struct paginator *paginator, size_t from, size_t to)
     }
 }
 
-static void shrink(struct strip *strip, double scale)
+/* Pictures and drawings to this part of the size they were composed in. */
+static void set_size(struct strip *strip, double size)
 {
+    double scale = size / (1 - strip->given_up);
+    strip->given_up = 1 - size;
     strip->height *= scale;
     for (size_t i = 0; i < strip->item_count; i++) {
         struct item *item = &strip->items[i];
@@ -322,9 +333,9 @@ static bool shrink_by(struct paginator *paginator, size_t from, size_t to, doubl
 {
     for (size_t i = from; i < to; i++) {
         struct strip *strip = paginator->flow->strips[i];
-        double scale = 1 - excess / strip->height;
-        if (strip->least_scale > 0 && scale >= strip->least_scale) {
-            shrink(strip, scale);
+        double size = (1 - strip->given_up) * (1 - excess / strip->height);
+        if (strip->least_scale > 0 && size >= strip->least_scale) {
+            set_size(strip, size);
             return true;
         }
     }
@@ -373,10 +384,16 @@ static void place_unit(struct paginator *paginator, size_t from, size_t to)
         place(paginator, paginator->flow->strips[i]);
 }
 
-struct page_plan flow_paginate(struct flow *flow)
+static struct page_plan paginate(struct flow *flow, double closeness)
 {
-    struct paginator paginator = {
-        .flow = flow, .plan = {.page_count = 1}, .y = flow->page->top, .at_top = true};
+    struct paginator paginator = {.flow = flow,
+                                  .plan = {.page_count = 1},
+                                  .y = flow->page->top,
+                                  .at_top = true,
+                                  .closeness = closeness};
+    for (size_t i = 0; i < flow->count; i++)
+        if (flow->strips[i]->given_up > 0)
+            set_size(flow->strips[i], 1);
     for (size_t from = 0; from < flow->count;) {
         size_t to = from + 1;
         while (to < flow->count && flow->strips[to - 1]->keep_next && !flow->strips[to]->page_break)
@@ -385,4 +402,27 @@ struct page_plan flow_paginate(struct flow *flow)
         from = to;
     }
     return paginator.plan;
+}
+
+static bool ends_early(const struct flow *flow, const struct page_plan *plan)
+{
+    if (plan->page_count < 2 || plan->count == 0)
+        return false;
+    const struct placed *last = &plan->items[plan->count - 1];
+    return last->y + last->strip->height < (flow->page->top + flow->page->bottom) / 2;
+}
+
+/* A last page with little on it is saved where somewhat closer spaces do. */
+struct page_plan flow_paginate(struct flow *flow)
+{
+    static const double closer[] = {0.85, 0.7};
+    struct page_plan plan = paginate(flow, 1);
+    if (!ends_early(flow, &plan))
+        return plan;
+    for (size_t i = 0; i < sizeof closer / sizeof *closer; i++) {
+        struct page_plan shorter = paginate(flow, closer[i]);
+        if (shorter.page_count < plan.page_count)
+            return shorter;
+    }
+    return paginate(flow, 1);
 }

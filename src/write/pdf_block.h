@@ -58,6 +58,7 @@ struct strip {
     bool page_break;    /* begins a page */
     bool top_rule;      /* hairline on top, unless it begins a page or follows a repeated head */
     double least_scale; /* pictures may be made this much smaller to stay on a page; 0: not */
+    double given_up;    /* how much smaller they are: a share of 1 */
     struct item *items;
     size_t item_count, item_capacity;
     const struct strip *head;      /* of its table, repeated when it begins a page; NULL: none */

@@ -262,6 +262,51 @@ static void test_a_drawing_shrinks_to_stay(void **state)
     arena_release(&arena);
 }
 
+static struct page_plan paginate_rows(struct flow *flow, size_t count, double height, double space)
+{
+    for (size_t i = 0; i < count; i++) {
+        flow_space(flow, space);
+        flow_strip(flow, height);
+    }
+    return flow_paginate(flow);
+}
+
+/* On pages of 160 pt. */
+static void test_closer_spaces_save_a_last_page(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    struct flow saved = flow_in(&arena), kept = flow_in(&arena);
+    /* 8 * 17.5 + 7 * 3 = 161; with 0.85 of the spaces 157.85 */
+    struct page_plan plan = paginate_rows(&saved, 8, 17.5, 3);
+    assert_int_equal(plan.page_count, 1);
+    assert_close(plan.items[1].y, small_page.top + 17.5 + 0.85 * 3, 1e-9);
+    /* 9 * 18 = 162 without any space */
+    plan = paginate_rows(&kept, 9, 18, 1);
+    assert_int_equal(plan.page_count, 2);
+    assert_close(plan.items[1].y, small_page.top + 18 + 1, 1e-9);
+    arena_release(&arena);
+}
+
+/* Where closer spaces save no page, what was made smaller in trying is as large as before: with 0.7
+   of the space 80 + 14 + 66 fill the page, but the last strip still needs another. */
+static void test_a_drawing_grows_back(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    struct flow flow = flow_in(&arena);
+    add_strips(&flow, 1, 80);
+    flow_space(&flow, 20);
+    struct strip *strip = flow_strip(&flow, 72);
+    strip->least_scale = 0.9;
+    add_strips(&flow, 1, 5);
+    struct page_plan plan = flow_paginate(&flow);
+    assert_int_equal(plan.page_count, 2);
+    assert_int_equal(plan.items[1].page, 1);
+    assert_close(strip->height, 72, 1e-9);
+    arena_release(&arena);
+}
+
 /* ---- tables */
 
 static struct composer composer_in(struct arena *arena, const struct document *document,
@@ -412,6 +457,8 @@ int main(int argc, char **argv)
         cmocka_unit_test(test_heads_and_groups_repeat),
         cmocka_unit_test(test_no_line_alone),
         cmocka_unit_test(test_a_drawing_shrinks_to_stay),
+        cmocka_unit_test(test_closer_spaces_save_a_last_page),
+        cmocka_unit_test(test_a_drawing_grows_back),
         cmocka_unit_test(test_decimal_points_in_one_line),
         cmocka_unit_test(test_a_short_table_stays_whole),
         cmocka_unit_test(test_a_row_higher_than_a_page_is_broken),
