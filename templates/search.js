@@ -14,25 +14,29 @@
 
   var digit = new Uint8Array(128);
   for (var d = 0; d < 91; d++) digit[d + 35 === 92 ? 33 : d + 35 === 60 ? 126 : d + 35] = d;
+  var encoder = new TextEncoder();
 
-  function Column(data) {
+  function Column(data, count) {
     this.texts = data.texts;
     this.letters = data.letters;
     this.packed = data.codes;
-    this.count = data.codes.length / data.letters;
+    this.count = count;
     this.unpacked = null;
     this.folded = null;
-    this.ranks = {};
   }
+  /* The code of each row. */
   Column.prototype.codes = function () {
     if (this.unpacked) return this.unpacked;
-    var packed = this.packed, letters = this.letters, count = this.count;
-    /* one kind of array wherever it can be: the loops below run on many columns */
-    var codes = this.texts.length <= 65536 ? new Uint16Array(count) : new Uint32Array(count);
-    for (var i = 0, at = 0; i < count; i++) {
-      var code = 0;
-      for (var n = 0; n < letters; n++) code = code * 91 + digit[packed.charCodeAt(at++)];
-      codes[i] = code;
+    var bytes = encoder.encode(this.packed), letters = this.letters, count = this.count, most = this.texts.length;
+    var codes = most <= 256 ? new Uint8Array(count) : most <= 65536 ? new Uint16Array(count) : new Uint32Array(count);
+    if (letters === 1) {
+      for (var row = 0; row < count; row++) codes[row] = digit[bytes[row]];
+    } else if (letters) {
+      for (var i = 0, at = 0; i < count; i++) {
+        var code = 0;
+        for (var n = 0; n < letters; n++) code = code * 91 + digit[bytes[at++]];
+        codes[i] = code;
+      }
     }
     this.packed = null;
     this.unpacked = codes;
@@ -49,24 +53,69 @@
     return plain.toLowerCase();
   }
 
-  function columnsOf(group) {
-    var columns = {};
-    for (var key in group) columns[key] = new Column(group[key]);
-    return columns;
-  }
-  var jobs = columnsOf(archive.jobs), parts = columnsOf(archive.parts);
-  var jobCount = jobs.job.count, partCount = parts.ref ? parts.ref.count : 0;
+  var jobCount = archive.partCounts.length;
   var firstPart = new Uint32Array(jobCount + 1);
   for (var j = 0; j < jobCount; j++) firstPart[j + 1] = firstPart[j] + archive.partCounts[j];
-  var partJob = new Uint32Array(partCount);
+  var partCount = firstPart[jobCount], partJob = new Uint32Array(partCount);
   for (j = 0; j < jobCount; j++) partJob.fill(j, firstPart[j], firstPart[j + 1]);
+  function columnsOf(group, count) {
+    var columns = {};
+    for (var key in group) columns[key] = new Column(group[key], count);
+    return columns;
+  }
+  var jobs = columnsOf(archive.jobs, jobCount), parts = columnsOf(archive.parts, partCount);
+  /* The columns hold the codes now, and let go of their letters one by one. */
+  archive.jobs = archive.parts = null;
+
+  /* ---- sets of rows: a bit a row */
+
+  function noRows(count) { return new Int32Array((count + 31) >>> 5); }
+  function has(bits, row) { return bits[row >>> 5] & (1 << (row & 31)); }
+  function fromBit(row) { return -1 << (row & 31); }
+  function toBit(row) { return -1 >>> (31 - (row & 31)); }
+  function fill(bits, from, end) {
+    if (from >= end) return;
+    var first = from >>> 5, last = (end - 1) >>> 5;
+    if (first === last) {
+      bits[first] |= fromBit(from) & toBit(end - 1);
+      return;
+    }
+    bits[first] |= fromBit(from);
+    bits.fill(-1, first + 1, last);
+    bits[last] |= toBit(end - 1);
+  }
+  function hasAny(bits, from, end) {
+    if (from >= end) return false;
+    var first = from >>> 5, last = (end - 1) >>> 5;
+    if (first === last) return (bits[first] & fromBit(from) & toBit(end - 1)) !== 0;
+    if (bits[first] & fromBit(from)) return true;
+    for (var word = first + 1; word < last; word++) if (bits[word]) return true;
+    return (bits[last] & toBit(end - 1)) !== 0;
+  }
+  function sizeOf(bits) {
+    for (var word = 0, size = 0; word < bits.length; word++) {
+      var pairs = bits[word] - ((bits[word] >>> 1) & 0x55555555);
+      var fours = (pairs & 0x33333333) + ((pairs >>> 2) & 0x33333333);
+      size += Math.imul((fours + (fours >>> 4)) & 0x0f0f0f0f, 0x01010101) >>> 24;
+    }
+    return size;
+  }
+  /* Take in the rows whose code is marked; where `within` is known to hold all of them, look only there. */
+  function addRows(bits, codes, marked, within) {
+    for (var word = 0, count = codes.length; word < bits.length; word++) {
+      if (within && !within[word]) continue;
+      var row = word << 5, end = Math.min(row + 32, count), found = 0;
+      for (var bit = 0; row < end; row++, bit++) found |= marked[codes[row]] << bit;
+      bits[word] |= found;
+    }
+  }
 
   /* ---- terms */
 
   function termsOf(query) {
-    var terms = [], pattern = /(?:([A-Za-z_]+)=)?(?:"([^"]*)"?|([^\s"]+))/g, found;
+    var terms = [], pattern = /([A-Za-z_]+)=(?:"([^"]*)"?|([^\s"]*))|"([^"]*)"?|([^\s"]+)/g, found;
     while ((found = pattern.exec(query))) {
-      var value = found[2] !== undefined ? found[2] : found[3];
+      var value = found.slice(2).find(function (text) { return text !== undefined; });
       if (!value.trim() && !found[1]) continue;
       terms.push({ key: found[1] ? fold(found[1]) : "", value: fold(value.trim()), raw: value.trim() });
     }
@@ -84,25 +133,12 @@
     return false;
   }
 
-  /* Which codes of a column meet a test; null: none. */
-  function maskOf(column, test) {
-    var folds = column.folds(), mask = new Uint8Array(folds.length), any = false;
+  /* Which codes of a column meet a test, of those that met a laxer one; null: none. */
+  function codesOf(column, test, lax) {
+    var folds = column.folds(), marked = new Uint8Array(folds.length), any = false;
     for (var code = 1; code < folds.length; code++)
-      if (test(folds[code])) any = mask[code] = 1;
-    return any ? mask : null;
-  }
-  /* Set the rows whose fact meets a test; whether any code does. */
-  function addRows(rows, column, test) {
-    var mask = maskOf(column, test);
-    if (!mask) return false;
-    var codes = column.codes();
-    for (var row = 0, count = rows.length; row < count; row++) rows[row] |= mask[codes[row]];
-    return true;
-  }
-  function addJobs(compiled, column, test) { addRows(compiled.jobs, column, test); }
-  function addParts(compiled, column, test) {
-    var rows = compiled.parts || new Uint8Array(partCount);
-    if (addRows(rows, column, test)) compiled.parts = rows;
+      if ((!lax || lax[code]) && test(folds[code])) any = marked[code] = 1;
+    return any ? marked : null;
   }
 
   var dateOf = function (job) { return jobs.returned.text(job) || jobs.received.text(job); };
@@ -127,87 +163,100 @@
     }
   };
 
-  /* Which jobs meet a term, and which parts (null: none). known false: there is no such fact. */
-  function compile(term) {
-    var compiled = { jobs: new Uint8Array(jobCount), parts: null, known: true }, value = term.value;
-    if (!term.key) {
-      var begins = function (text) { return beginsWord(text, value); };
-      archive.jobWords.forEach(function (key) { addJobs(compiled, jobs[key], begins); });
-      archive.partWords.forEach(function (key) { addParts(compiled, parts[key], begins); });
-      return compiled;
-    }
+  /* What a term asks of which columns. known false: there is no such fact. */
+  function questionOf(term) {
+    var value = term.value, begins = function (text) { return beginsWord(text, value); };
+    if (!term.key) return { known: true, test: begins, narrows: true, jobs: archive.jobWords, parts: archive.partWords };
+    var key = term.key === "valve" ? "valves" : term.key, exact = archive.exact.indexOf(key) >= 0;
+    var named = function (columns) { return columns[key] && key !== "page" ? [key] : []; };
+    return {
+      known: Boolean(special[term.key] || named(jobs).length || named(parts).length),
+      test: !value ? function () { return true; } : exact ? function (text) { return text === value; } : begins,
+      narrows: !exact, jobs: named(jobs), parts: named(parts)
+    };
+  }
+
+  /* The rows of some columns that meet a question; `lax` is the same of a shorter word. */
+  function rowsOf(columns, keys, count, question, lax) {
+    var found = { bits: noRows(count), codes: {} };
+    keys.forEach(function (key) {
+      if (lax && !lax.codes[key]) return;
+      var marked = codesOf(columns[key], question.test, lax && lax.codes[key]);
+      if (!marked) return;
+      found.codes[key] = marked;
+      addRows(found.bits, columns[key].codes(), marked, lax && lax.bits);
+    });
+    return found;
+  }
+
+  /*
+   * What meets a term: jobs by their own facts, parts by theirs, and `met`: those parts and all parts
+   * of those jobs. A word is met only where its beginning is: `shorter` is the answer to that.
+   */
+  function compile(term, shorter) {
+    var answer = { known: true, jobs: { bits: noRows(jobCount), codes: {} }, parts: { bits: noRows(partCount), codes: {} } };
     if (special[term.key]) {
-      var meets = special[term.key](value);
-      for (var job = 0; job < jobCount; job++) compiled.jobs[job] = meets(job) ? 1 : 0;
-      return compiled;
+      var meets = special[term.key](term.value);
+      for (var job = 0; job < jobCount; job++) if (meets(job)) fill(answer.jobs.bits, job, job + 1);
+    } else {
+      var question = questionOf(term), lax = question.narrows ? shorter : null;
+      answer.known = question.known;
+      answer.jobs = rowsOf(jobs, question.jobs, jobCount, question, lax && lax.jobs);
+      answer.parts = rowsOf(parts, question.parts, partCount, question, lax && lax.parts);
     }
-    var key = term.key === "valve" ? "valves" : term.key;
-    var test = archive.exact.indexOf(key) >= 0 ? function (text) { return text === value; }
-      : function (text) { return beginsWord(text, value); };
-    if (!value) test = function () { return true; };
-    compiled.known = Boolean(jobs[key] || parts[key]) && key !== "page";
-    if (!compiled.known) return compiled;
-    if (jobs[key]) addJobs(compiled, jobs[key], test);
-    if (parts[key]) addParts(compiled, parts[key], test);
-    return compiled;
+    answer.met = answer.parts.bits.slice();
+    for (job = 0; job < jobCount; job++)
+      if (has(answer.jobs.bits, job)) fill(answer.met, firstPart[job], firstPart[job + 1]);
+    return answer;
   }
 
-  /* While one types, all words but the last stay the same. */
-  var compiledBefore = [];
-  function compileOnce(term) {
-    for (var i = 0; i < compiledBefore.length; i++)
-      if (compiledBefore[i].key === term.key && compiledBefore[i].value === term.value) return compiledBefore[i].compiled;
-    if (compiledBefore.length >= 12) compiledBefore.shift();
-    compiledBefore.push({ key: term.key, value: term.value, compiled: compile(term) });
-    return compiledBefore[compiledBefore.length - 1].compiled;
+  /* While one types, all words but the last stay the same, and that one grows. First letters stay. */
+  var KEPT = 32, answers = new Map(), letterAnswers = new Map();
+  function kept(name) { return letterAnswers.get(name) || answers.get(name); }
+  function answerTo(term) {
+    var name = term.key + "=" + term.value, answer = kept(name), shorter = null;
+    if (answer) return answer;
+    for (var length = term.value.length - 1; length > 0 && !shorter; length--)
+      shorter = kept(term.key + "=" + term.value.slice(0, length));
+    answer = compile(term, shorter);
+    if (answers.size >= KEPT) answers.delete(answers.keys().next().value);
+    answers.set(name, answer);
+    return answer;
   }
 
-  /* The parts of one job that meet all of `needed`, or, when the job needs none, any of `others`. */
-  function collect(job, needed, others, found, at) {
-    var start = firstPart[job], end = firstPart[job + 1], part, i, good;
-    if (needed.length === 1) {
-      for (var only = needed[0], part1 = start; part1 < end; part1++) if (only[part1]) found[at++] = part1;
-      return at;
-    }
-    for (part = start; part < end; part++) {
-      if (needed.length) {
-        for (good = 1, i = 0; good && i < needed.length; i++) good = needed[i][part];
-      } else {
-        for (good = 0, i = 0; !good && i < others.length; i++) good = others[i][part];
-      }
-      if (good) found[at++] = part;
-    }
-    return at;
-  }
+  function counted(bits) { return { bits: bits, count: sizeOf(bits) }; }
 
-  /* Parts and jobs found, in order of jobs. */
-  var partsBuffer = new Uint32Array(partCount), jobsBuffer = new Uint32Array(jobCount);
+  /*
+   * Jobs and parts found. A part is found when it, or its job, meets every term, and it one of them
+   * by itself; a job when it meets all by itself or has such a part.
+   */
   function search(terms) {
-    var compiled = terms.map(compileOnce), parts = 0, jobs = 0;
-    var unknown = terms.filter(function (term, i) { return !compiled[i].known; });
-    var others = compiled.map(function (term) { return term.parts; }).filter(Boolean);
-    for (var job = 0; job < jobCount; job++) {
-      var needed = [], possible = true;
-      for (var i = 0; i < compiled.length && possible; i++)
-        if (!compiled[i].jobs[job]) {
-          if (compiled[i].parts) needed.push(compiled[i].parts);
-          else possible = false;
-        }
-      if (!possible) continue;
-      var before = parts;
-      if (others.length) parts = collect(job, needed, others, partsBuffer, parts);
-      if (!needed.length || parts > before) jobsBuffer[jobs++] = job;
+    var found = terms.map(answerTo), jobRows = noRows(jobCount), partRows = noRows(partCount);
+    var unknown = terms.filter(function (term, i) { return !found[i].known; });
+    if (!unknown.length) {
+      fill(jobRows, 0, jobCount);
+      found.forEach(function (answer) {
+        var bits = answer.parts.bits;
+        for (var word = 0; word < partRows.length; word++) partRows[word] |= bits[word];
+      });
+      found.forEach(function (answer) {
+        var met = answer.met, bits = answer.jobs.bits;
+        for (var word = 0; word < partRows.length; word++) partRows[word] &= met[word];
+        for (word = 0; word < jobRows.length; word++) jobRows[word] &= bits[word];
+      });
+      for (var job = 0; job < jobCount; job++)
+        if (hasAny(partRows, firstPart[job], firstPart[job + 1])) fill(jobRows, job, job + 1);
     }
-    if (unknown.length) jobs = parts = 0;
-    return { jobs: jobsBuffer.slice(0, jobs), parts: partsBuffer.slice(0, parts), unknown: unknown };
+    return { jobs: counted(jobRows), parts: counted(partRows), unknown: unknown };
   }
 
   /* ---- order */
 
   var outcomes = ["pass", "conditional pass", "not judged", "conditional fail", "fail"];
+  var compareTexts = new Intl.Collator("en", { numeric: true }).compare;
   function alphabetically(texts) {
     var order = texts.map(function (text, code) { return code; });
-    order.sort(function (a, b) { return texts[a].localeCompare(texts[b], "en", { numeric: true }); });
+    order.sort(function (a, b) { return compareTexts(texts[a], texts[b]); });
     var ranks = new Float64Array(texts.length);
     order.forEach(function (code, rank) { ranks[code] = texts[code] === "" ? Infinity : rank; });
     return ranks;
@@ -226,47 +275,35 @@
       return found ? parseFloat(found[1]) * (/meg/i.test(text) ? 1e6 : scale[found[2]] || 1) : Infinity;
     });
   }
-  function ranksOf(column, how) {
-    return column.ranks[how.name] || (column.ranks[how.name] = how(column.texts));
-  }
+  /* A rank for each of the codes that stand for the rows; Infinity: unknown. */
   function byColumn(column, how) {
-    return function () {
-      var codes = column.codes(), ranks = ranksOf(column, how);
-      return function (row) { return ranks[codes[row]]; };
-    };
+    return function () { return { codes: column.codes(), ranks: how(column.texts) }; };
   }
-  var setRanks = null;
+  var everyJob = Uint32Array.from({ length: jobCount }, function (ignored, job) { return job; });
   function bySet() {
-    if (!setRanks) {
-      var maker = ranksOf(jobs.maker, alphabetically), model = ranksOf(jobs.model, alphabetically);
-      var makers = jobs.maker.codes(), models = jobs.model.codes(), span = jobs.model.texts.length + 1;
-      setRanks = Float64Array.from({ length: jobCount }, function (ignored, job) {
-        var second = model[models[job]];
-        return maker[makers[job]] * span + (second === Infinity ? span - 1 : second);
-      });
-    }
-    return function (job) { return setRanks[job]; };
+    var maker = alphabetically(jobs.maker.texts), model = alphabetically(jobs.model.texts);
+    var makers = jobs.maker.codes(), models = jobs.model.codes(), span = jobs.model.texts.length + 1;
+    return { codes: everyJob, ranks: Float64Array.from(everyJob, function (job) {
+      var second = model[models[job]];
+      return maker[makers[job]] * span + (second === Infinity ? span - 1 : second);
+    }) };
   }
   function ratio(upper, lower) {
     return function () {
-      return function (job) {
+      return { codes: everyJob, ranks: Float64Array.from(everyJob, function (job) {
         var of = +lower.text(job);
         return of ? +upper.text(job) / of : Infinity;
-      };
+      }) };
     };
   }
-  function ofJob(order) {
-    return function () {
-      var rank = order();
-      return function (part) { return rank(partJob[part]); };
-    };
+  function ofJob(rank) {
+    return function () { return { codes: partJob, ranks: rank().ranks }; };
   }
-  var self = function () { return function (row) { return row; }; };
   /* Empty facts stay behind in both directions, but a set in progress counts as the latest. */
-  var returned = function () {
-    var ranks = ranksOf(jobs.returned, alphabetically), codes = jobs.returned.codes();
-    return function (job) { return ranks[codes[job]] === Infinity ? 1e9 : ranks[codes[job]]; };
-  };
+  function returned() {
+    var ranks = alphabetically(jobs.returned.texts);
+    return { codes: jobs.returned.codes(), ranks: ranks.map(function (rank) { return rank === Infinity ? 1e9 : rank; }) };
+  }
   var letters = ["A to Z", "Z to A"], sizes = ["least first", "most first"], dates = ["earliest first", "latest first"];
   var severity = function outcomeOrder(texts) {
     return Float64Array.from(texts, function (text) {
@@ -276,7 +313,7 @@
   };
   var orders = {
     sets: {
-      job: { rank: self, says: ["lowest first", "highest first"] },
+      job: { rank: null, says: ["lowest first", "highest first"] },
       set: { rank: bySet, says: letters },
       year: { rank: byColumn(jobs.year_first, numerically), says: ["oldest first", "newest first"] },
       supply: { rank: byColumn(jobs.supply, alphabetically), says: letters },
@@ -285,7 +322,7 @@
       failed: { rank: byColumn(jobs.failed, numerically), says: sizes }
     },
     parts: partCount ? {
-      job: { rank: self, says: ["lowest first", "highest first"] },
+      job: { rank: null, says: ["lowest first", "highest first"] },
       set: { rank: ofJob(bySet), says: letters },
       type: { rank: byColumn(parts.type, alphabetically), says: letters },
       marked: { rank: byColumn(parts.marked, bySize), says: sizes },
@@ -297,39 +334,59 @@
     } : {}
   };
 
-  /* The first rows of a list in an order, without sorting all of it. */
-  function first(rows, order, down, most) {
-    var rank = order.rank(), sign = down ? -1 : 1;
-    var key = function (row) {
-      var value = rank(row);
-      return value === Infinity ? Infinity : sign * value;
-    };
-    /* Infinity less itself is no number: equal keys first. */
-    function compare(a, b) { return a.key === b.key ? sign * (a.row - b.row) : a.key < b.key ? -1 : 1; }
-    var best = [], worst = Infinity, full = false;
-    /* Rows come in their own order: from the end that is likelier to be wanted. */
-    for (var i = 0; i < rows.length; i++) {
-      var row = rows[down ? rows.length - 1 - i : i], value = key(row);
-      /* Of equal ones those that came first are nearer to the wanted end. */
-      if (full && value >= worst) continue;
-      best.push({ key: value, row: row });
-      if (best.length >= 4 * most) {
-        best.sort(compare);
-        best.length = most;
-        worst = best[most - 1].key;
-        full = true;
+  /* All rows in an order, unknown ones behind; equal ones as they come. Worked out when first asked for. */
+  function ranked(order) {
+    if (order.rows) return order;
+    var rank = order.rank(), codes = rank.codes, ranks = rank.ranks, classes = new Uint32Array(ranks.length);
+    var byRank = Array.from(ranks, function (ignored, code) { return code; });
+    byRank.sort(function (a, b) { return ranks[a] === ranks[b] ? 0 : ranks[a] < ranks[b] ? -1 : 1; });
+    byRank.forEach(function (code, i) {
+      var before = byRank[i - 1];
+      classes[code] = i === 0 ? 0 : classes[before] + (ranks[code] === ranks[before] ? 0 : 1);
+    });
+    var next = new Uint32Array(ranks.length + 1), known = 0;
+    for (var row = 0; row < codes.length; row++) {
+      next[classes[codes[row]] + 1]++;
+      if (ranks[codes[row]] !== Infinity) known++;
+    }
+    for (var i = 1; i < next.length; i++) next[i] += next[i - 1];
+    order.rows = new Uint32Array(codes.length);
+    for (row = 0; row < codes.length; row++) order.rows[next[classes[codes[row]]]++] = row;
+    order.known = known;
+    return order;
+  }
+
+  /* The first of the rows found, in an order. */
+  function first(found, all, order, down, most) {
+    var rows = order.rank ? ranked(order).rows : null, known = rows ? order.known : all, taken = [];
+    most = Math.min(most, found.count);
+    function take(from, end) {
+      for (var i = from; i < end && taken.length < most; i++) {
+        var at = down ? from + end - 1 - i : i, row = rows ? rows[at] : at;
+        if (has(found.bits, row)) taken.push(row);
       }
     }
-    best.sort(compare);
-    return best.slice(0, most).map(function (item) { return item.row; });
+    take(0, known);
+    take(known, all);
+    return taken;
   }
 
   /* ---- the page */
 
   var field = document.getElementById("q"), status = document.getElementById("status");
   var clear = document.getElementById("clear"), partsFound = document.getElementById("parts-found");
-  var tables = { sets: document.getElementById("sets"), parts: document.getElementById("parts") };
+  var tables = { sets: tableOfPlain(), parts: document.getElementById("parts") };
   var sort = { sets: { key: "returned", down: true }, parts: { key: "job", down: true } };
+
+  /* The plain table of all sets gives its head, and goes. */
+  function tableOfPlain() {
+    var all = document.getElementById("plain");
+    all.insertAdjacentHTML("beforebegin", all.textContent.split("<tbody")[0] + "</table>");
+    var table = all.previousElementSibling;
+    all.remove();
+    table.id = "sets";
+    return table;
+  }
 
   function element(name, className, text) {
     var made = document.createElement(name);
@@ -337,85 +394,95 @@
     if (text) made.textContent = text;
     return made;
   }
-  function cell(row, className, text, label) {
-    var made = element("td", className, text);
-    if (label && text) made.dataset.l = label;
-    row.append(made);
-    return made;
+  function plain(text) {
+    return /[&<>"]/.test(text) ? text.replace(/[&<>"]/g, function (sign) { return "&#" + sign.charCodeAt(0) + ";"; }) : text;
   }
+  function cell(className, text, label) {
+    return "<td role=cell class=\"" + className + "\"" + (label && text ? " data-l=" + label : "") + ">" + plain(text) + "</td>";
+  }
+  function link(address, text) { return "<a href=\"" + plain(address) + "\">" + plain(text) + "</a>"; }
   function setName(job) {
     return (jobs.maker.text(job) + " " + jobs.model.text(job)).trim() || "without a name";
   }
-  function head(row, href, text) {
-    var made = element("th", "p1 k-job"), link = element("a", "", text);
-    made.scope = "row";
-    link.href = href;
-    made.append(link);
-    row.append(made);
+  function head(job, text) {
+    return "<tr role=row><th role=rowheader scope=row class=\"p1 k-job\">" + link("jobs/" + job + "/shop.html", text) + "</th>";
   }
   function number(text) { return text.replace(/^([<>])/, "$1\u2009").replace(/\B(?=(\d{3})+$)/, text.length > 4 ? "\u2009" : ""); }
 
   function setRow(job) {
-    var row = element("tr"), name = jobs.job.text(job);
-    head(row, "jobs/" + name + "/shop.html", name);
-    var set = cell(row, "p1 k-set"), link = element("a", "", setName(job));
-    link.href = "models/" + jobs.page.text(job) + ".html";
-    set.append(link);
-    cell(row, "p2", jobs.year.text(job));
-    cell(row, "p2", jobs.supply.text(job));
-    var back = cell(row, "p2", jobs.returned.text(job));
-    if (jobs.in_progress.text(job) === "true") back.append(element("em", "", "in progress"));
-    cell(row, "n p2", jobs.kept.text(job) + " of " + jobs.of.text(job), "kept");
-    cell(row, "n p2", jobs.failed.text(job) + " of " + jobs.capacitors.text(job), "failed");
-    return row;
+    var name = jobs.job.text(job), progress = jobs.in_progress.text(job) === "true" ? "<em>in progress</em>" : "";
+    return head(name, name) +
+      "<td role=cell class=\"p1 k-set\">" + link("models/" + jobs.page.text(job) + ".html", setName(job)) + "</td>" +
+      cell("p2", jobs.year.text(job)) +
+      cell("p2", jobs.supply.text(job)) +
+      "<td role=cell class=p2>" + plain(jobs.returned.text(job)) + progress + "</td>" +
+      cell("n p2", jobs.kept.text(job) + " of " + jobs.of.text(job), "kept") +
+      cell("n p2", jobs.failed.text(job) + " of " + jobs.capacitors.text(job), "failed") + "</tr>";
   }
 
-  function mark(outcome) {
-    var space = "http://www.w3.org/2000/svg", svg = document.createElementNS(space, "svg");
-    var use = document.createElementNS(space, "use");
-    svg.setAttribute("class", "m");
-    svg.setAttribute("aria-hidden", "true");
-    use.setAttribute("href", "#m-" + outcome.replace(/ /g, "-"));
-    svg.append(use);
-    return svg;
+  function judged(outcome) {
+    if (!outcome) return "";
+    return "<span class=\"o" + (outcome === "fail" ? " fail" : "") + "\"><svg class=m aria-hidden=true><use href=\"#m-" +
+      plain(outcome.replace(/ /g, "-")) + "\"/></svg>" + plain(outcome) + "</span>";
   }
-
   function partRow(part) {
-    var row = element("tr"), job = partJob[part], name = jobs.job.text(job), outcome = parts.outcome.text(part);
-    head(row, "jobs/" + name + "/shop.html", name + " " + parts.ref.text(part));
-    cell(row, "p2 k-set", setName(job));
-    cell(row, "p2", parts.type.text(part) || parts.kind.text(part));
-    /* a number stays with its unit */
-    cell(row, "p2", parts.marked.text(part).replace(/(\d) (?=\S)/g, "$1\u00a0"));
-    cell(row, "p2", parts.place.text(part));
-    cell(row, "n p1 k-leakage", number(parts.leakage.text(part)), "leakage");
-    cell(row, "n p1 k-limit", number(parts.limit.text(part)), "limit");
-    var judged = cell(row, "p1 k-outcome");
-    if (outcome) {
-      var says = element("span", outcome === "fail" ? "o fail" : "o");
-      says.append(mark(outcome), outcome);
-      judged.append(says);
-    }
-    cell(row, "p2 k-done", parts.done.text(part));
-    return row;
+    var job = partJob[part], name = jobs.job.text(job);
+    return head(name, name + " " + parts.ref.text(part)) +
+      cell("p2 k-set", setName(job)) +
+      cell("p2", parts.type.text(part) || parts.kind.text(part)) +
+      /* a number stays with its unit */
+      cell("p2", parts.marked.text(part).replace(/(\d) (?=\S)/g, "$1\u00a0")) +
+      cell("p2", parts.place.text(part)) +
+      cell("n p1 k-leakage", number(parts.leakage.text(part)), "leakage") +
+      cell("n p1 k-limit", number(parts.limit.text(part)), "limit") +
+      "<td role=cell class=\"p1 k-outcome\">" + judged(parts.outcome.text(part)) + "</td>" +
+      cell("p2 k-done", parts.done.text(part)) + "</tr>";
   }
 
-  /* The rows that fit a screen or two at once; the rest when the typing pauses. */
-  var AT_ONCE = 24, PAUSE_MS = 150, rest = { sets: 0, parts: 0 };
-  function draw(name, rows, rowOf) {
-    var order = orders[name][sort[name].key];
-    var shown = order ? first(rows, order, sort[name].down, SHOWN) : [];
-    var body = document.createElement("tbody");
-    shown.slice(0, AT_ONCE).forEach(function (row) { body.append(rowOf(row)); });
-    tables[name].tBodies[0].replaceWith(body);
-    clearTimeout(rest[name]);
-    if (shown.length > AT_ONCE)
-      rest[name] = setTimeout(function () {
-        shown.slice(AT_ONCE).forEach(function (row) { body.append(rowOf(row)); });
-      }, PAUSE_MS);
+  /*
+   * Rows stand in groups. The first fills the screen and is drawn at once; the others in the frame after
+   * it, or when the page is printed before that. What is off the screen is laid out when the typing
+   * pauses, a group a frame, so that no letter waits for it. A group that holds what it held is left alone.
+   */
+  var GROUP = 25, PAUSE_MS = 150, groups = { sets: [], parts: [] }, undrawn = [], turn = 0;
+  function fillGroup(body, rows, rowOf) {
+    body.drawn = rows.join();
+    body.innerHTML = rows.map(rowOf).join("");
+    body.style.setProperty("--rows", rows.length);
+  }
+  function drawOthers() {
+    undrawn.splice(0).forEach(function (draw) { draw(); });
+  }
+  function layOut(shown) {
+    var group = shown === turn && document.querySelector("tbody.later");
+    if (!group) return;
+    group.className = "";
+    requestAnimationFrame(function () { layOut(shown); });
+  }
+  function afterFrame(shown) {
+    if (shown !== turn) return;
+    drawOthers();
+    setTimeout(function () { layOut(shown); }, PAUSE_MS);
+  }
+  function draw(name, found, all, rowOf) {
+    var rows = first(found, all, orders[name][sort[name].key], sort[name].down, SHOWN);
+    groups[name].forEach(function (body, i) {
+      var own = rows.slice(i * GROUP, (i + 1) * GROUP);
+      if (body.drawn === own.join()) {
+        if (body.className === "stale") body.className = "later";
+      } else if (i === 0) {
+        fillGroup(body, own, rowOf);
+      } else {
+        body.className = "stale";
+        undrawn.push(function () {
+          fillGroup(body, own, rowOf);
+          body.className = "later";
+        });
+      }
+    });
     var note = document.getElementById(name + "-limited");
-    note.hidden = rows.length <= SHOWN;
-    note.textContent = "The first " + SHOWN + " of " + count(rows.length) + " are shown; a further word narrows them.";
+    note.hidden = found.count <= SHOWN;
+    note.textContent = "The first " + SHOWN + " of " + count(found.count) + " are shown; a further word narrows them.";
   }
 
   function count(n) { return n > 9999 ? String(n).replace(/\B(?=(\d{3})+$)/g, "\u2009") : String(n); }
@@ -425,32 +492,46 @@
     if (found.unknown.length)
       return "No fact is named " + found.unknown.map(function (term) { return term.key; }).join(", ") + ".";
     if (!query) return several(jobCount, "set", "sets") + ", " + several(partCount, "part", "parts") + ".";
-    var sets = several(found.jobs.length, "set", "sets");
-    if (!found.jobs.length) return "Nothing is found among " + several(jobCount, "set", "sets") + ".";
-    return (found.parts.length ? several(found.parts.length, "part", "parts") + " in " + sets : sets) +
+    var sets = several(found.jobs.count, "set", "sets");
+    if (!found.jobs.count) return "Nothing is found among " + several(jobCount, "set", "sets") + ".";
+    return (found.parts.count ? several(found.parts.count, "part", "parts") + " in " + sets : sets) +
       ", of " + count(jobCount) + ".";
   }
 
-  var last = null, everyJob = Uint32Array.from({ length: jobCount }, function (ignored, job) { return job; });
+  function everything() {
+    var rows = noRows(jobCount);
+    fill(rows, 0, jobCount);
+    return { jobs: counted(rows), parts: counted(noRows(partCount)), unknown: [] };
+  }
+  var last = null;
   function show() {
-    var query = field.value.trim();
+    var query = field.value.trim(), shown = ++turn;
     if (last === null || last.query !== query) {
-      last = query ? search(termsOf(query)) : { jobs: everyJob, parts: [], unknown: [] };
+      last = query ? search(termsOf(query)) : everything();
       last.query = query;
     }
-    partsFound.hidden = !last.parts.length;
-    draw("parts", last.parts, partRow);
-    draw("sets", last.jobs, setRow);
-    status.textContent = sentence(query, last);
+    undrawn = [];
+    partsFound.hidden = !last.parts.count;
+    draw("parts", last.parts, partCount, partRow);
+    draw("sets", last.jobs, jobCount, setRow);
+    var says = sentence(query, last);
+    if (status.textContent !== says) status.textContent = says;
     clear.hidden = !query;
     showFilters();
-    remember(query);
+    requestAnimationFrame(function () { setTimeout(afterFrame, 0, shown); });
   }
 
   /* ---- state in the address */
 
-  function remember(query) {
-    var state = [];
+  /* Browsers refuse an address that changes with every letter: while one types, at the next pause. */
+  var remembering = 0;
+  function rememberSoon() {
+    clearTimeout(remembering);
+    remembering = setTimeout(remember, PAUSE_MS);
+  }
+  function remember() {
+    var state = [], query = field.value.trim();
+    clearTimeout(remembering);
     if (query) state.push("q=" + encodeURIComponent(query));
     ["sets", "parts"].forEach(function (name) {
       var usual = name === "sets" ? "returned.down" : "job.down";
@@ -507,6 +588,7 @@
         sort[name] = { key: key, down: same ? !sort[name].down : ["returned", "kept", "failed", "leakage", "outcome"].indexOf(key) >= 0 };
         showHeads();
         show();
+        remember();
       });
     });
   }
@@ -528,7 +610,7 @@
     if (filter.list) texts = texts.join(", ").split(", ");
     texts = texts.filter(function (text) { return text && !seen["=" + text] && (seen["=" + text] = true); });
     if (filter.key === "outcome") return outcomes.filter(function (text) { return texts.indexOf(text) >= 0; }).reverse();
-    return texts.sort(function (a, b) { return a.localeCompare(b, "en", { numeric: true }); });
+    return texts.sort(compareTexts);
   }
   function makeFilter(filter) {
     var box = element("div"), label = element("label", "", filter.label || filter.key);
@@ -539,7 +621,11 @@
       control.type = "date";
     } else {
       control.append(new Option("any", ""));
-      optionsOf(filter).forEach(function (text) { control.append(new Option(text, text)); });
+      filter.places = new Map();
+      optionsOf(filter).forEach(function (text, i) {
+        control.append(new Option(text, text));
+        if (!filter.places.has(fold(text))) filter.places.set(fold(text), i + 1);
+      });
     }
     control.addEventListener("change", function () { put(filter.key, control.value); });
     filter.control = control;
@@ -547,11 +633,12 @@
     document.getElementById(filter.more ? "more-filters" : "filters").append(box);
   }
   function put(key, value) {
-    var pattern = new RegExp("(^|\\s)" + key + "=(\"[^\"]*\"?|[^\\s\"]+)", "gi");
+    var pattern = new RegExp("(^|\\s)" + key + "=(\"[^\"]*\"?|[^\\s\"]*)", "gi");
     var rest = field.value.replace(pattern, " ").replace(/\s+/g, " ").trim();
     var quoted = /\s/.test(value) ? "\"" + value.replace(/"/g, "") + "\"" : value;
     field.value = (rest + (value ? " " + key + "=" + quoted : "")).trim();
     show();
+    remember();
   }
   function showFilters() {
     var terms = termsOf(field.value);
@@ -563,47 +650,76 @@
         filter.control.value = /^\d{4}-\d\d-\d\d$/.test(value) ? value : "";
         return;
       }
-      var options = filter.control.options, at = 0;
-      if (value) for (var i = 1; i < options.length; i++)
-        if (fold(options[i].value) === value) { at = i; break; }
-      filter.control.selectedIndex = at;
+      var place = filter.places.get(value) || 0;
+      if (filter.control.selectedIndex !== place) filter.control.selectedIndex = place;
     });
   }
 
-  document.querySelectorAll("tbody.all").forEach(function (body) { body.replaceWith(document.createElement("tbody")); });
+  /* Shown in blocks for the sake of speed, tables stay tables to a screen reader. */
+  function makeGroups(name) {
+    var table = tables[name];
+    table.classList.add("drawn");
+    table.setAttribute("role", "table");
+    table.tHead.setAttribute("role", "rowgroup");
+    table.tHead.rows[0].setAttribute("role", "row");
+    table.querySelectorAll("thead th").forEach(function (th) { th.setAttribute("role", "columnheader"); });
+    for (var body of Array.from(table.tBodies)) body.remove();
+    for (var i = 0; i < SHOWN / GROUP; i++) {
+      var group = element("tbody");
+      group.setAttribute("role", "rowgroup");
+      groups[name].push(group);
+      table.append(group);
+    }
+  }
+
   filters = filters.filter(function (filter) { return filter.date || filter.column; });
   filters.forEach(makeFilter);
-  makeHeads("sets");
-  makeHeads("parts");
+  ["sets", "parts"].forEach(function (name) {
+    makeGroups(name);
+    makeHeads(name);
+  });
   var form = document.getElementById("find");
   form.hidden = false;
   form.addEventListener("submit", function (event) { event.preventDefault(); });
-  field.addEventListener("input", show);
+  field.addEventListener("input", function () {
+    show();
+    rememberSoon();
+  });
+  field.addEventListener("change", remember);
   clear.addEventListener("click", function () {
     field.value = "";
     show();
+    remember();
     field.focus();
   });
   window.addEventListener("hashchange", function () {
     recall();
     show();
+    remember();
   });
-  /* What the first letter typed will need is made ready column by column, while nothing is asked. */
+  window.addEventListener("beforeprint", drawOthers);
+
+  /* What the first letter typed will need is made ready bit by bit, while nothing is asked. */
   function prepare() {
-    var waiting = [];
-    archive.jobWords.forEach(function (key) { waiting.push(jobs[key]); });
-    archive.partWords.forEach(function (key) { waiting.push(parts[key]); });
+    var steps = [];
+    function unpack(column) { steps.push(function () { column.codes(); }); }
+    archive.jobWords.forEach(function (key) { unpack(jobs[key]); });
+    archive.partWords.forEach(function (key) { unpack(parts[key]); });
+    "abcdefghijklmnopqrstuvwxyz0123456789".split("").forEach(function (letter) {
+      steps.push(function () { letterAnswers.set("=" + letter, compile({ key: "", value: letter }, null)); });
+    });
+    for (var key in parts) unpack(parts[key]);
     (function next() {
-      var column = waiting.pop();
-      if (!column) return;
-      column.codes();
-      column.folds();
+      if (!steps.length) return;
+      steps.shift()();
       setTimeout(next, 0);
     })();
   }
   recall();
   if (/\b(maker|model|valve|kind|type|batch|from|to|due)=/.test(field.value)) document.getElementById("more").open = true;
   show();
+  drawOthers();
+  remember();
   setTimeout(prepare, 0);
   window.gridleakReady = true;
 })();

@@ -1,7 +1,7 @@
 /*
  * search.js, and search-data.js: the columns of jobs and parts as the search script reads them. A
  * page opened as a file may not fetch, but may load a script. Each column is its dictionary and one
- * string of codes, 1 to 3 letters each: a tenth of JSON's size, and parsed at the speed of copying.
+ * string of codes, 0 to 3 letters each: a tenth of JSON's size, and parsed at the speed of copying.
  */
 #include "archive/page_frame.h"
 #include "archive/query.h"
@@ -40,10 +40,11 @@ static void write_string(struct buffer *out, const char *text)
     buffer_byte(out, '"');
 }
 
+/* None for a column that says one thing everywhere: its codes take no room. */
 static unsigned letters_for(uint32_t count)
 {
-    unsigned letters = 1;
-    for (uint64_t reach = CODE_BASE; reach < count; reach *= CODE_BASE)
+    unsigned letters = 0;
+    for (uint64_t reach = 1; reach < count; reach *= CODE_BASE)
         letters++;
     return letters;
 }

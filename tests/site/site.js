@@ -39,22 +39,27 @@ async function open(browser, options, folder) {
 
 async function axeOn(page, name) {
   await page.addScriptTag({ path: axe });
+  await laidOut(page);
   const result = await page.evaluate((tags) => axe.run(document, { runOnly: tags, preload: false }), rules);
   for (const rule of result.violations)
     check(false, `${name}: ${rule.id}: ${rule.help}: ${rule.nodes[0].html.slice(0, 200)}`);
   check(result.passes.length > 10, `${name}: axe looked at nothing`);
 }
 
-// Rows beyond the first screens are drawn when the typing pauses.
-const PAUSE = 220;
+// Rows beyond the first screen are drawn in the frame after it.
+const drawn = (page) => page.evaluate(() => new Promise((done) => {
+  requestAnimationFrame(() => setTimeout(() => requestAnimationFrame(done), 0));
+}));
+// And laid out when the typing pauses.
+const laidOut = (page) => page.waitForFunction(() => !document.querySelector('.stale, .later'));
 const heads = async (page, table) => {
-  await page.waitForTimeout(PAUSE);
+  await drawn(page);
   return page.$$eval(`#${table} tbody th`, (all) => all.map((th) => th.textContent));
 };
 
 function find(folder, terms) {
   try {
-    const lines = execFileSync(gridleak, ['find', '--json', '-o', folder, ...terms], { encoding: 'utf8', stdio: ['ignore', 'pipe', 'ignore'] });
+    const lines = execFileSync(gridleak, ['find', '--json', '-o', folder, ...terms], { encoding: 'utf8', maxBuffer: 1 << 26, stdio: ['ignore', 'pipe', 'ignore'] });
     return lines.split('\n').filter(Boolean).map((line) => JSON.parse(line));
   } catch (error) {
     if (error.status === 1 || error.status === 2) return [];
@@ -96,6 +101,97 @@ async function searches(browser) {
   check(!(await page.evaluate('window.injected')), 'a job put script into the page');
   same(await page.$$eval('img, main b, main i', (all) => all.length), 0, 'markup out of a job');
   await page.context().close();
+}
+
+// Words grow and shrink a letter at a time: the answer to a longer one is looked for in the shorter one's.
+async function letterByLetter(browser) {
+  const page = await open(browser, { viewport: { width: 1280, height: 900 } }, many);
+  await page.goto(url(many, 'index.html'));
+  const sets = fs.readdirSync(path.join(many, 'jobs')).length;
+  let smaller = 0;
+  async function compare(text) {
+    await drawn(page);
+    const hits = find(many, text.trim().split(/\s+/).map((term) => term.replace(/"/g, '')));
+    const parts = hits.filter((hit) => hit.hit === 'part').map((hit) => `${hit.set.job} ${hit.ref}`);
+    const jobs = [...new Set(hits.map((hit) => (hit.hit === 'part' ? hit.set.job : hit.job)))];
+    const status = (await page.textContent('#status')).replace(/\u2009/g, '');
+    const says = !jobs.length ? `Nothing is found among ${sets} sets.`
+      : `${parts.length ? `${parts.length} part${parts.length === 1 ? '' : 's'} in ` : ''}${jobs.length} set${jobs.length === 1 ? '' : 's'}, of ${sets}.`;
+    same(status, says, `letter by letter, ${text}`);
+    same(await heads(page, 'parts'), parts.slice(-200).reverse(), `parts, latest job first, ${text}`);
+    same((await heads(page, 'sets')).sort(), jobs.sort(), `sets, ${text}`);
+    return parts.length;
+  }
+  for (const text of ['waxed coup fail', 'maker=lind c1', 'place=coupling', 'outcome=conditional', 'batch=20', '0.05 m', 'year=195']) {
+    await page.fill('#q', '');
+    await page.focus('#q');
+    let before = Infinity;
+    for (let length = 1; length <= text.length; length++) {
+      await page.keyboard.type(text[length - 1]);
+      if (text[length - 1] === ' ') continue;
+      const parts = await compare(text.slice(0, length));
+      if (parts < before) smaller++;
+      before = parts;
+    }
+    for (let length = text.length - 1; length > text.length - 4; length--) {
+      await page.keyboard.press('Backspace');
+      if (!/ $/.test(text.slice(0, length))) await compare(text.slice(0, length));
+    }
+    // A letter in front makes another word.
+    if (text.includes('=')) continue;
+    await page.keyboard.press('Home');
+    await page.keyboard.type('r');
+    await compare(`r${text.slice(0, -3)}`);
+  }
+  check(smaller > 15, `words grew ${smaller} times to fewer parts only`);
+  await page.context().close();
+}
+
+// The lists as they are heard and printed, however they are drawn.
+async function lists(browser) {
+  for (const width of [1280, 390]) {
+    const page = await open(browser, { viewport: { width, height: 900 } }, many);
+    await page.goto(`${url(many, 'index.html')}#q=coupling`);
+    await laidOut(page);
+    const session = await page.context().newCDPSession(page);
+    const { nodes } = await session.send('Accessibility.getFullAXTree');
+    const heard = {};
+    for (const node of nodes) if (!node.ignored) heard[node.role.value] = (heard[node.role.value] || 0) + 1;
+    const rows = await page.$$eval('#parts tr, #sets tr', (all) => all.length);
+    same([heard.table, heard.row, heard.rowheader, heard.columnheader], [2, rows, rows - 2, 16], `tables heard at ${width}`);
+    check(rows > 250, `only ${rows} rows to hear`);
+    // A link far down is reached by the keyboard, and comes into view.
+    await page.focus('#sets tbody:last-of-type tr:last-child a, #sets tbody:nth-of-type(3) tr:last-child a');
+    check(await page.evaluate(() => {
+      const box = document.activeElement.getBoundingClientRect();
+      return box.height > 10 && box.top >= 0 && box.bottom <= innerHeight;
+    }), `the last link at ${width} is not seen`);
+    await page.context().close();
+  }
+  const page = await open(browser, { viewport: { width: 1280, height: 900 } }, many);
+  await page.goto(url(many, 'index.html'));
+  same(await page.evaluate(() => {
+    const field = document.getElementById('q');
+    field.value = 'coupling';
+    field.dispatchEvent(new Event('input'));
+    window.dispatchEvent(new Event('beforeprint'));
+    return document.querySelectorAll('#parts tbody tr').length;
+  }), 200, 'printed right after a letter');
+  check(!page.url().includes('#'), 'the address changes with every letter');
+  await page.waitForTimeout(300);
+  check(page.url().endsWith('#q=coupling'), `the address after a pause: ${page.url()}`);
+  await page.context().close();
+}
+
+// Where the script or its data cannot be had, the plain table stands.
+async function withoutData(browser) {
+  const context = await browser.newContext(), page = await context.newPage();
+  await page.route(/search-data/, (route) => route.abort());
+  await page.goto(url(out, 'index.html'));
+  const rows = await page.locator('.jobs tbody tr:visible').count();
+  check(rows >= 7, `without its data ${rows} sets are seen`);
+  check(await page.isHidden('#find'), 'the field is hidden without data');
+  await context.close();
 }
 
 async function behaviour(browser) {
@@ -153,14 +249,14 @@ async function behaviour(browser) {
   const kept = page.url(), parts = await heads(page, 'parts');
   const again = await open(browser, { viewport: { width: 1280, height: 900 } }, out);
   await again.goto(kept);
-  await again.waitForTimeout(220);
+  await drawn(again);
   same(await again.inputValue('#q'), 'capacitor fail', 'words from the address');
   same(await heads(again, 'parts'), parts, 'hits and order from the address');
   await again.evaluate(() => { location.hash = '#q=curlew'; });
-  await again.waitForTimeout(220);
+  await drawn(again);
   same(await again.inputValue('#q'), 'curlew', 'a changed address is followed');
   await again.evaluate(() => { location.hash = '#q=%E0%A4%A&sets=nonsense.up&x'; });
-  await again.waitForTimeout(220);
+  await drawn(again);
   same(await heads(again, 'sets'), all, 'a broken address shows all');
   await again.context().close();
 
@@ -177,7 +273,7 @@ async function behaviour(browser) {
 async function withoutScript(browser) {
   const page = await open(browser, { viewport: { width: 1280, height: 900 }, javaScriptEnabled: false }, out);
   await page.goto(url(out, 'index.html'));
-  const rows = await page.locator('#sets tbody tr:visible').count();
+  const rows = await page.locator('.jobs tbody tr:visible').count();
   check(rows >= 7, `without JavaScript ${rows} sets are seen`);
   check(await page.isHidden('#find'), 'the field is hidden without JavaScript');
   check(await page.isHidden('#parts-found'), 'no empty table of parts');
@@ -195,7 +291,7 @@ async function views(browser) {
     for (const view of [{ width: 1280, colorScheme: 'light' }, { width: 390, colorScheme: 'dark' }, { width: 320, colorScheme: 'light' }]) {
       const page = await open(browser, { viewport: { width: view.width, height: 900 }, colorScheme: view.colorScheme }, folder);
       await page.goto(url(folder, name.split('#')[0]) + (name.includes('#') ? `#${name.split('#')[1]}` : ''));
-      await page.waitForTimeout(220);
+      await drawn(page);
       if (await page.$('#more')) await page.evaluate(() => { document.getElementById('more').open = true; });
       const wide = await page.evaluate(() => document.documentElement.scrollWidth);
       check(wide <= view.width, `${name} at ${view.width}: scrolls sideways, ${wide}`);
@@ -246,8 +342,11 @@ async function callBacks(browser) {
 (async () => {
   const browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: ['--no-sandbox', '--disable-gpu', '--disable-quic'] });
   await searches(browser);
+  await letterByLetter(browser);
   await behaviour(browser);
+  await lists(browser);
   await withoutScript(browser);
+  await withoutData(browser);
   await onPaper(browser);
   await callBacks(browser);
   await recall(browser);
