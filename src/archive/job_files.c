@@ -74,6 +74,22 @@ static void add_plots(const struct document *document, const char *accent,
     }
 }
 
+/* What writing a PDF tells, of the job's file; what another of its documents told is not said
+ * again. */
+static void tell_once(const struct copy_work *work, const struct diagnostics *told)
+{
+    for (size_t i = 0; i < told->count; i++) {
+        const struct diagnostic *item = &told->items[i];
+        bool known = false;
+        for (size_t k = 0; k < work->diagnostics->count && !known; k++)
+            known = work->diagnostics->items[k].code == item->code &&
+                    strcmp(work->diagnostics->items[k].text, item->text) == 0;
+        if (!known)
+            diagnostic_add(work->diagnostics, &work->opened->job->source, item->at, item->code,
+                           item->hint, "%s", item->text);
+    }
+}
+
 /* One document as files stem.html, stem.pdf and, for records, stem.md with its plots. */
 static bool add_document(const struct copy_work *work, const struct document *document,
                          const char *stem, struct folder_image *image)
@@ -81,9 +97,10 @@ static bool add_document(const struct copy_work *work, const struct document *do
     const struct archive *archive = work->archive;
     html_write(document, archive->style, archive->page_template,
                folder_image_add(image, arena_print(work->arena, "%s.html", stem)));
+    struct diagnostics told = diagnostics_in(work->arena);
     bool good = pdf_write(document, archive->pdf, JOB_DEFLATE_LEVEL,
-                          folder_image_add(image, arena_print(work->arena, "%s.pdf", stem)),
-                          work->diagnostics);
+                          folder_image_add(image, arena_print(work->arena, "%s.pdf", stem)), &told);
+    tell_once(work, &told);
     if (document->kind == DOCUMENT_RECORD) {
         markdown_write(document, folder_image_add(image, arena_print(work->arena, "%s.md", stem)));
         add_plots(document, archive->shop->accent, image);

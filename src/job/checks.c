@@ -178,7 +178,7 @@ static void check_place(struct reader *reader, const struct capacitor *capacitor
 static void check_section(struct reader *reader, const struct capacitor *capacitor,
                           const struct node *node)
 {
-    static const char *const keys[] = {"seen", "was", "done", "fitted", "case", "signed"};
+    static const char *const keys[] = {"seen", "was", "done", "case", "signed"};
     for (size_t i = 0; i < FIELD_COUNT_OF(keys); i++) {
         const struct node *child = node_child(node, keys[i]);
         if (child && !node_is_empty(child))

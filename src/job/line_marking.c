@@ -43,8 +43,11 @@ static const char *kind_hint(enum marking_kind kind)
 
 static bool second(struct marking_reader *reader, struct span span, const char *what)
 {
-    return line_fail(reader->line, span, DIAGNOSTIC_DUPLICATE_KEY, NULL, "a second %s: '%s'", what,
-                     line_quote(reader->line, span));
+    return line_fail(reader->line, span, DIAGNOSTIC_DUPLICATE_KEY,
+                     strcmp(what, unit_name(UNIT_CAPACITANCE)) == 0
+                         ? "each section of a can has a 'marked' and a 'fitted' of its own"
+                         : NULL,
+                     "a second %s: '%s'", what, line_quote(reader->line, span));
 }
 
 static void add_words(struct marking_reader *reader, struct span span)

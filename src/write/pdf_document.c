@@ -112,18 +112,16 @@ static struct rgb accent_of(const char *text)
 }
 
 /* One warning for each sign that no face has, one for all bytes that are no UTF-8. */
-static void report_missing(const struct document *document, const struct pdf_fonts *fonts,
-                           struct diagnostics *diagnostics)
+static void report_missing(const struct pdf_fonts *fonts, struct diagnostics *diagnostics)
 {
-    const char *title = document->running_head ? document->running_head : "this document";
     for (size_t i = 0; i < fonts->missing_count; i++)
         diagnostic_add(diagnostics, NULL, nowhere, DIAGNOSTIC_SIGN_MISSING,
                        "write it in other signs",
-                       "%s: no font has the sign U+%04X; the PDF shows U+FFFD in its place", title,
+                       "no font has the sign U+%04X; the PDF shows U+FFFD in its place",
                        (unsigned)fonts->missing[i]);
     if (fonts->ill_formed > 0)
         diagnostic_add(diagnostics, NULL, nowhere, DIAGNOSTIC_SIGN_MISSING, NULL,
-                       "%s: %zu bytes are not UTF-8; the PDF shows U+FFFD in their place", title,
+                       "%zu bytes are not UTF-8; the PDF shows U+FFFD in their place",
                        fonts->ill_formed);
 }
 
@@ -176,7 +174,7 @@ bool pdf_write(const struct document *document, const struct pdf_resources *reso
     draw(&making);
     HPDF_STATUS status = pdf_file_save(making.file, out);
     if (status == HPDF_OK)
-        report_missing(document, &making.fonts, diagnostics);
+        report_missing(&making.fonts, diagnostics);
     else
         diagnostic_add(diagnostics, NULL, nowhere, DIAGNOSTIC_PDF_FAILED, NULL,
                        "cannot make a PDF of '%s': libharu error 0x%04lX, detail %lu",
