@@ -213,6 +213,7 @@ struct part_working {
     double series_ohm;                                                 /* of tester and meter */
     double instrument_share, instrument_absolute_a, instrument_step_a; /* of the reading's U */
     double feed_ohm, circuit_ohm, source_v, source_ohm, current_a;
+    double volts_exponent;       /* (V_service/V_c)^this brings it to service volts */
     double conductance_s;        /* warm, of the deciding reading; NaN: none */
     double rule_limit_a, to_20c; /* leakage rule at rated volts, 20 C; the reading's share there */
     const char *rule;

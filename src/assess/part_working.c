@@ -1,5 +1,8 @@
 #include "assess/part_working.h"
 
+#include "assess/temperature.h"
+#include "assess/voltage.h"
+
 #include <math.h>
 
 static double or_nan(double value)
@@ -19,6 +22,9 @@ static void take_instrument(const struct assessment *assessment,
     working->instrument_share = accuracy.share;
     working->instrument_absolute_a = accuracy.stated ? accuracy.absolute_a : NAN;
     working->instrument_step_a = accuracy.step_a;
+    working->volts_exponent = voltage_scale(found->part_v, part->service_v, part->exponent,
+                                            dielectric_is_electrolytic(part->part->type))
+                                  .exponent;
 }
 
 static void take_stage(const struct assessment *assessment, const struct place_case *place,
@@ -56,6 +62,7 @@ struct part_working part_working_of(const struct assessment *assessment,
         .source_v = place->source_v,
         .source_ohm = place->source_ohm,
         .current_a = or_nan(place->current_a),
+        .volts_exponent = NAN,
         .conductance_s = work->leaks ? work->leak.conductance_s : NAN,
         .rule_limit_a = place->rule_limit_a,
         .to_20c = place->to_20c,

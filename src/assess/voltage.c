@@ -11,12 +11,12 @@ struct scaled_current voltage_scale(double part_v, double service_v, double expo
 {
     double x = service_v / part_v;
     double b = isnan(exponent) ? 1 : exponent;
-    if (x <= 1)
-        return (struct scaled_current){pow(x, fmin(b, 1)), false};
-    if (x <= 1 / VOLTAGE_SHARE_AT)
-        return (struct scaled_current){
-            pow(x, electrolytic ? allowance_electrolytic : allowance_exponent), false};
-    return (struct scaled_current){x, true};
+    bool lower_bound = x > 1 / VOLTAGE_SHARE_AT;
+    double by = x <= 1         ? fmin(b, 1)
+                : lower_bound  ? 1
+                : electrolytic ? allowance_electrolytic
+                               : allowance_exponent;
+    return (struct scaled_current){by == 1 ? x : pow(x, by), by, lower_bound};
 }
 
 double voltage_factor_near(double part_v, double service_v, double exponent, bool electrolytic,

@@ -14,6 +14,7 @@
 /* A current brought to service volts. */
 struct scaled_current {
     double factor;    /* service current = factor * current */
+    double exponent;  /* factor = (service/part volts)^exponent */
     bool lower_bound; /* scaled up beyond 1/0.95: the true current is this or more */
 };
 

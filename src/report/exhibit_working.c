@@ -111,8 +111,10 @@ static void add_scaling(struct sheet_of_working *sheet, const struct capacitor_f
                         const struct part_working *given)
 {
     const struct reading_findings *found = &part->readings[part->deciding];
+    bool scaled = isfinite(given->volts_exponent) && given->volts_exponent != 1;
     add(sheet, "at_service",
-        FORMULA(sheet, "I × (V_service/V_c)%s; %s / %s, I %s",
+        FORMULA(sheet, "I × (V_service/V_c)%s%s; %s / %s, I %s",
+                scaled ? FORMULA(sheet, "^%.2g", given->volts_exponent) : "",
                 found->service_lower_bound ? say(sheet, "lower_bound") : "",
                 figure(sheet, part->service_v, UNIT_VOLTAGE),
                 figure(sheet, found->part_v, UNIT_VOLTAGE), amps(sheet, found->current_a)),

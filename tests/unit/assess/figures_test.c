@@ -173,6 +173,8 @@ static void test_volts(void **state)
     assert_relative(voltage_scale(200, 100, 0.5, false).factor, sqrt(0.5), 1e-12);
     assert_relative(voltage_scale(97, 100, NAN, false).factor, pow(100.0 / 97, 2), 1e-12);
     assert_relative(voltage_scale(97, 100, NAN, true).factor, pow(100.0 / 97, 5), 1e-12);
+    assert_close(voltage_scale(97, 100, NAN, true).exponent, 5, 0);
+    assert_close(voltage_scale(200, 100, 0.5, false).exponent, 0.5, 0);
     scaled = voltage_scale(50, 100, NAN, false);
     assert_close(scaled.factor, 2, 1e-12);
     assert_true(scaled.lower_bound);
