@@ -20,12 +20,12 @@ enum {
 
 static const struct column_plan plan[LEAKAGE_COLUMNS] = {
     [COLUMN_OF_REF] = {"ref", NULL, NULL, COLUMN_REF, 6.2, 1},
-    [COLUMN_OF_MARKED] = {"marked", NULL, "marked", COLUMN_NUMBER, 15.8, 2},
+    [COLUMN_OF_MARKED] = {"marked", NULL, "marked", COLUMN_NUMBER, 15.5, 2},
     [COLUMN_OF_VOLTS] = {"tested_at", NULL, "tested_at", COLUMN_NUMBER, 8.4, 2},
     [COLUMN_OF_SOAK] = {"soak", NULL, "soak", COLUMN_NUMBER, 6.8, 2},
-    [COLUMN_OF_LEAKAGE] = {"leakage", "µA", NULL, COLUMN_NUMBER, 7.6, 1},
-    [COLUMN_OF_LIMIT] = {"limit", "µA", NULL, COLUMN_NUMBER, 7.6, 1},
-    [COLUMN_OF_EFFECT] = {"effect", NULL, NULL, COLUMN_TEXT, 22.1, 3},
+    [COLUMN_OF_LEAKAGE] = {"leakage", "µA", NULL, COLUMN_NUMBER, 7.4, 1},
+    [COLUMN_OF_LIMIT] = {"limit", "µA", NULL, COLUMN_NUMBER, 7.2, 1},
+    [COLUMN_OF_EFFECT] = {"effect", NULL, NULL, COLUMN_TEXT, 23.0, 3},
     [COLUMN_OF_OUTCOME] = {"outcome", NULL, NULL, COLUMN_OUTCOME, 14.9, 1},
     [COLUMN_OF_DONE] = {"done", NULL, NULL, COLUMN_TEXT, 10.6, 3},
 };

@@ -26,7 +26,7 @@ cmark_node *compose_columns(struct composer *composer, cmark_node *node)
     struct page_geometry *page = arena_get(composer->flow.arena, sizeof *page);
     struct composer narrow =
         narrow_composer(composer, page, (composer->flow.page->text_width - gap) / 2);
-    struct type_size type = composer->document->kind == DOCUMENT_SHEET ? type_table : type_columns;
+    struct type_size type = composer->document->kind == DOCUMENT_SHEET ? type_small : type_columns;
     narrow.body = composer->body.size < type.size ? composer->body : type;
     for (; node && !is_heading(node) && !document_exhibit(node); node = cmark_node_next(node))
         compose_prose(&narrow, node);

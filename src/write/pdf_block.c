@@ -415,7 +415,7 @@ static bool ends_early(const struct flow *flow, const struct page_plan *plan)
 /* A last page with little on it is saved where somewhat closer spaces do. */
 struct page_plan flow_paginate(struct flow *flow)
 {
-    static const double closer[] = {0.85, 0.7};
+    static const double closer[] = {0.85, 0.7, 0.6};
     struct page_plan plan = paginate(flow, 1);
     if (!ends_early(flow, &plan))
         return plan;

@@ -506,7 +506,8 @@ void compose_exhibit(struct composer *composer, const struct exhibit *exhibit, c
         break;
     case EXHIBIT_SMALL:
         composer->body = type_small;
-        composer->measure = figure_text_pt;
+        composer->measure =
+            composer->document->kind == DOCUMENT_SHEET ? block_width(composer) : figure_text_pt;
         break;
     }
 }

@@ -5,7 +5,7 @@
 
 static const double row_pad_pt = 1.9, grouped_pad_pt = 1.2, group_pad_pt = 3.4,
                     after_group_pad_pt = 0.6, write_in_height_mm = 8.2;
-enum { KEPT_ROWS = 12 };
+enum { KEPT_ROWS = 12, NEVER_PARTED_ROWS = 6 };
 
 /* ---- rows of boxes */
 
@@ -500,7 +500,8 @@ static void keep_rows(struct flow *flow, const struct table *table,
     size_t end = whole ? strips->last : strips->head + 2;
     for (size_t i = strips->first; i < strips->last && i <= end; i++) {
         flow->strips[i]->keep_next = true;
-        flow->strips[i]->may_part = whole && i > strips->head + 1 && i + 2 < strips->last;
+        flow->strips[i]->may_part = whole && plain_rows(table) > NEVER_PARTED_ROWS &&
+                                    i > strips->head + 1 && i + 2 < strips->last;
     }
     if (strips->last > strips->head + 1)
         flow->strips[strips->last - 1]->keep_next = true;
@@ -514,7 +515,8 @@ void compose_table(struct composer *composer, const char *number, const struct t
     struct table_layout layout = {.composer = composer, .table = table};
     if (table->column_count == 0)
         return;
-    flow_space(flow, mm(composer->document->kind == DOCUMENT_SHEET ? 3 : 3.6));
+    double around = mm(composer->document->kind == DOCUMENT_SHEET ? 2.4 : 3.6);
+    flow_space(flow, around);
     size_t first = flow->count;
     compose_caption(composer, number, table->caption, flow->page->text_width);
     if (flow->count > first)
@@ -531,5 +533,5 @@ void compose_table(struct composer *composer, const char *number, const struct t
                (struct point){flow->page->text_width, strip->height}, rule_heavy_pt, INK_TEXT);
     compose_notes(&layout);
     keep_rows(flow, table, &(struct table_strips){first, head, last});
-    flow_space(flow, mm(3.6));
+    flow_space(flow, around);
 }
