@@ -1,7 +1,5 @@
 #include "archive/archive.h"
 
-#include <dirent.h>
-#include <errno.h>
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
@@ -128,11 +126,6 @@ void archive_close(struct archive *archive)
     archive->pdf = NULL;
 }
 
-static int by_name(const void *a, const void *b)
-{
-    return strcmp(*(const char *const *)a, *(const char *const *)b);
-}
-
 /* The length of the job's name in a file name; 0: no job file. */
 static size_t job_name_length(const char *file_name)
 {
@@ -142,23 +135,22 @@ static size_t job_name_length(const char *file_name)
     return is_job ? length - 5 : 0;
 }
 
+static int by_name(const void *a, const void *b)
+{
+    return strcmp(*(const char *const *)a, *(const char *const *)b);
+}
+
 enum file_status archive_job_names(const char *folder, struct arena *arena, struct job_names *names)
 {
-    *names = (struct job_names){0};
-    DIR *entries = opendir(folder);
-    if (!entries)
-        return errno == EACCES ? FILE_FORBIDDEN : FILE_MISSING;
-    size_t capacity = 0;
-    for (struct dirent *entry; (entry = readdir(entries));) {
-        size_t length = job_name_length(entry->d_name);
-        if (length == 0)
-            continue;
-        names->names =
-            arena_grow(arena, names->names, names->count, &capacity, sizeof *names->names);
-        names->names[names->count++] = arena_text(arena, entry->d_name, length);
+    struct folder_names found;
+    enum file_status status = folder_list(folder, arena, &found);
+    *names = (struct job_names){arena_array(arena, found.count, sizeof *names->names), 0};
+    for (size_t i = 0; i < found.count; i++) {
+        size_t length = job_name_length(found.names[i]);
+        if (length)
+            names->names[names->count++] = arena_text(arena, found.names[i], length);
     }
-    closedir(entries);
-    if (names->count)
+    if (names->count) /* `a` before `a-1`, which their files do not stand in */
         qsort(names->names, names->count, sizeof *names->names, by_name);
-    return FILE_OK;
+    return status;
 }

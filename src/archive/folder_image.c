@@ -2,7 +2,6 @@
 
 #include "base/memory.h"
 
-#include <dirent.h>
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
@@ -88,22 +87,22 @@ static enum file_status remove_others(const struct folder_image *image, const ch
 {
     struct buffer path = {0};
     buffer_print(&path, "%s/%s", folder, below);
-    DIR *entries = opendir(buffer_string(&path));
-    enum file_status status = FILE_OK;
-    for (struct dirent *entry; entries && status == FILE_OK && (entry = readdir(entries));) {
-        if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0 ||
-            (!*below && is_kept(kept, entry->d_name)))
+    struct arena arena = {0};
+    struct folder_names found;
+    enum file_status status = folder_list(buffer_string(&path), &arena, &found);
+    status = status == FILE_MISSING ? FILE_OK : status; /* a copy without pictures/ */
+    for (size_t i = 0; i < found.count && status == FILE_OK; i++) {
+        if (!*below && is_kept(kept, found.names[i]))
             continue;
         struct buffer relative = {0}, whole = {0};
-        buffer_print(&relative, "%s%s", below, entry->d_name);
+        buffer_print(&relative, "%s%s", below, found.names[i]);
         buffer_print(&whole, "%s/%s", folder, buffer_string(&relative));
         if (!is_wanted(image, buffer_string(&relative)))
             status = remove_one(buffer_string(&whole));
         buffer_release(&relative);
         buffer_release(&whole);
     }
-    if (entries)
-        closedir(entries);
+    arena_release(&arena);
     buffer_release(&path);
     return status;
 }

@@ -4,7 +4,6 @@
 #include "archive/fold.h"
 #include "base/memory.h"
 
-#include <dirent.h>
 #include <stdlib.h>
 #include <string.h>
 #include <unistd.h>
@@ -216,19 +215,19 @@ static enum file_status remove_gone(const struct page_frame *frame)
         const char *name = arena_print(&arena, "%s.html", pages->entries[code].text);
         dictionary_code(&known, &arena, name, strlen(name));
     }
-    enum file_status status = FILE_OK;
     const char *folder = arena_print(&arena, "%s/models", frame->output);
-    DIR *entries = opendir(folder);
-    for (struct dirent *entry; entries && status == FILE_OK && (entry = readdir(entries));) {
+    struct folder_names found;
+    enum file_status status = folder_list(folder, &arena, &found);
+    status = status == FILE_MISSING ? FILE_OK : status; /* no job names a model */
+    for (size_t i = 0; i < found.count && status == FILE_OK; i++) {
+        const char *name = found.names[i];
         uint32_t before = known.count;
-        if (entry->d_name[0] == '.')
+        if (name[0] == '.')
             continue;
-        uint32_t code = dictionary_code(&known, &arena, entry->d_name, strlen(entry->d_name));
-        if (code >= before && unlink(arena_print(&arena, "%s/%s", folder, entry->d_name)) != 0)
+        uint32_t code = dictionary_code(&known, &arena, name, strlen(name));
+        if (code >= before && unlink(arena_print(&arena, "%s/%s", folder, name)) != 0)
             status = FILE_FAILED;
     }
-    if (entries)
-        closedir(entries);
     free(known.entries);
     free(known.slots);
     arena_release(&arena);

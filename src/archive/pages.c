@@ -3,7 +3,6 @@
 #include "archive/manual_page.h"
 #include "archive/page_frame.h"
 
-#include <dirent.h>
 #include <pthread.h>
 #include <stdlib.h>
 #include <string.h>
@@ -71,13 +70,12 @@ static bool is_listed(const struct job_names *names, const char *name)
 static enum file_status remove_gone(struct pages_work *work)
 {
     const char *jobs = arena_print(&work->arena, "%s/jobs", work->request->output);
-    DIR *folder = opendir(jobs);
-    enum file_status status = FILE_OK;
-    for (struct dirent *entry; folder && status == FILE_OK && (entry = readdir(folder));)
-        if (entry->d_name[0] != '.' && !is_listed(&work->names, entry->d_name))
-            status = folder_remove(arena_print(&work->arena, "%s/%s", jobs, entry->d_name));
-    if (folder)
-        closedir(folder);
+    struct folder_names found;
+    enum file_status status = folder_list(jobs, &work->arena, &found);
+    status = status == FILE_MISSING ? FILE_OK : status; /* of an archive without jobs */
+    for (size_t i = 0; i < found.count && status == FILE_OK; i++)
+        if (found.names[i][0] != '.' && !is_listed(&work->names, found.names[i]))
+            status = folder_remove(arena_print(&work->arena, "%s/%s", jobs, found.names[i]));
     if (status != FILE_OK)
         buffer_text(work->failed, jobs);
     return status;

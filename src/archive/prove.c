@@ -2,7 +2,6 @@
 #include "archive/seal.h"
 #include "archive/seal_chain.h"
 
-#include <dirent.h>
 #include <string.h>
 #include <sys/stat.h>
 
@@ -47,11 +46,11 @@ static bool is_expected(const struct manifest *manifest, const char *name)
 static void find_added(const char *folder, const char *below, const struct manifest *manifest,
                        struct proof *proof, struct arena *arena)
 {
-    DIR *entries = opendir(arena_print(arena, "%s/%s", folder, below));
-    for (struct dirent *entry; entries && (entry = readdir(entries));) {
-        if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0)
-            continue;
-        const char *name = arena_print(arena, "%s%s", below, entry->d_name);
+    struct folder_names found;
+    if (folder_list(arena_print(arena, "%s/%s", folder, below), arena, &found) != FILE_OK)
+        differ(proof, arena, PROOF_FILE_LOST, *below ? below : ".", 0);
+    for (size_t i = 0; i < found.count; i++) {
+        const char *name = arena_print(arena, "%s%s", below, found.names[i]);
         struct stat about;
         bool is_folder =
             lstat(arena_print(arena, "%s/%s", folder, name), &about) == 0 && S_ISDIR(about.st_mode);
@@ -60,8 +59,6 @@ static void find_added(const char *folder, const char *below, const struct manif
         else if (!is_expected(manifest, name))
             differ(proof, arena, PROOF_FILE_ADDED, name, 0);
     }
-    if (entries)
-        closedir(entries);
 }
 
 /* Every record prints the hash of findings.json, in groups of eight digits in Markdown. */
@@ -97,19 +94,17 @@ static void check_fingerprint(const char *folder, const struct manifest *manifes
     }
 }
 
+/* false: it is not sealed. A line that cannot be read is an empty one. */
 static bool read_seal_line(const char *folder, struct arena *arena, const char **line)
 {
     struct buffer contents = {0};
-    *line = NULL;
     enum file_status status =
         file_read(arena_print(arena, "%s/%s", folder, SEAL_NAME), 4096, &contents);
-    if (status == FILE_OK) {
-        char *text = arena_text(arena, contents.data, contents.length);
-        text[strcspn(text, "\n")] = '\0';
-        *line = text;
-    }
+    char *text = arena_text(arena, contents.data, contents.length);
+    text[strcspn(text, "\n")] = '\0';
+    *line = status == FILE_MISSING ? NULL : text;
     buffer_release(&contents);
-    return status == FILE_OK;
+    return status != FILE_MISSING;
 }
 
 static void check_chain(const char *folder, const struct seal_line *own, struct proof *proof,

@@ -189,10 +189,19 @@ static bool is_made_from(const struct state_job *state, const char *path)
     return state->input_count > 0 && strcmp(state->inputs[0].path, path) == 0;
 }
 
+static void fail(struct publish_work *work, enum file_status status, const char *path)
+{
+    if (status == FILE_OK || work->result->failure != FILE_OK)
+        return;
+    work->result->failure = status;
+    work->result->failed_path = arena_copy(work->arena, path);
+}
+
 static void list_archive(struct publish_work *work, struct state *old)
 {
     struct job_names names = {0};
-    archive_job_names(work->archive->folder, work->arena, &names);
+    fail(work, archive_job_names(work->archive->folder, work->arena, &names),
+         work->archive->folder);
     work->count = names.count;
     work->jobs = arena_array(work->arena, names.count, sizeof *work->jobs);
     for (size_t i = 0; i < names.count; i++) {
@@ -229,14 +238,6 @@ static void list_named(struct publish_work *work)
         work->jobs[i].path = work->request->job_paths[i];
         work->jobs[i].name = job_name_of(work->jobs[i].path, work->arena);
     }
-}
-
-static void fail(struct publish_work *work, enum file_status status, const char *path)
-{
-    if (status == FILE_OK || work->result->failure != FILE_OK)
-        return;
-    work->result->failure = status;
-    work->result->failed_path = arena_copy(work->arena, path);
 }
 
 /* The jobs made in this run. */

@@ -1,5 +1,6 @@
 #include "archive/seal.h"
 
+#include "archive/lock.h"
 #include "archive/manifest.h"
 #include "archive/seal_chain.h"
 #include "base/hash.h"
@@ -46,6 +47,8 @@ static enum file_status copy_files(const char *from, const char *to,
     return status;
 }
 
+/* With sealed/ held alone: what an earlier seal that was killed left aside goes, and no other
+   writes into the chain between its reading and its new line. */
 static struct seal_result seal_folder(const struct seal_request *request, const char *from,
                                       const struct manifest *manifest, struct arena *arena)
 {
@@ -59,9 +62,8 @@ static struct seal_result seal_folder(const struct seal_request *request, const 
     const char *name = folder + strlen(request->archive_folder) + 1;
     const char *line = seal_chain_next(&chain, request->date, name, manifest->hash, arena);
     const char *path = aside;
-    enum file_status status = folder_remove(aside);
-    if (status == FILE_OK)
-        status = copy_files(from, aside, manifest, arena, &path);
+    folder_clear_aside(arena_print(arena, "%s/sealed", request->archive_folder));
+    enum file_status status = copy_files(from, aside, manifest, arena, &path);
     /* A publish at the same time may have changed a file between the proof and the copy. */
     if (status == FILE_OK && prove(aside, arena).count) {
         folder_remove(aside);
@@ -98,5 +100,15 @@ struct seal_result seal(const struct seal_request *request, struct arena *arena)
         return (struct seal_result){.status = SEAL_NOT_PUBLISHED, .folder = from};
     if (proof.count)
         return (struct seal_result){.status = SEAL_DIFFERS, .folder = from};
-    return seal_folder(request, from, &manifest, arena);
+    const char *sealed = arena_print(arena, "%s/sealed", request->archive_folder);
+    struct lock lock;
+    long holder;
+    enum file_status status = folder_make(sealed);
+    if (status == FILE_OK)
+        lock_take(sealed, LOCK_ALONE, true, &lock, &holder, &status);
+    if (status != FILE_OK)
+        return failed(status, sealed);
+    struct seal_result result = seal_folder(request, from, &manifest, arena);
+    lock_release(&lock);
+    return result;
 }

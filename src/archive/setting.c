@@ -1,16 +1,10 @@
 #include "archive/setting.h"
 
-#include <dirent.h>
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
 
 enum { PIECE_BYTES_MAX = 64 << 20 };
-
-static int by_text(const void *a, const void *b)
-{
-    return strcmp(*(const char *const *)a, *(const char *const *)b);
-}
 
 /* Append the hash of a file's bytes, and its name; a missing file counts as such. */
 static void add_file(struct buffer *all, const char *name, const char *path)
@@ -38,21 +32,11 @@ typedef void (*add_one)(struct buffer *all, const char *name, const char *path);
 static void add_folder(struct buffer *all, const char *folder, add_one add)
 {
     struct arena arena = {0};
-    const char **names = NULL;
-    size_t count = 0, capacity = 0;
-    DIR *entries = opendir(folder);
-    for (struct dirent *entry; entries && (entry = readdir(entries));) {
-        if (entry->d_name[0] == '.')
-            continue;
-        names = arena_grow(&arena, names, count, &capacity, sizeof *names);
-        names[count++] = arena_copy(&arena, entry->d_name);
-    }
-    if (entries)
-        closedir(entries);
-    if (count)
-        qsort(names, count, sizeof *names, by_text);
-    for (size_t i = 0; i < count; i++)
-        add(all, names[i], arena_print(&arena, "%s/%s", folder, names[i]));
+    struct folder_names found;
+    folder_list(folder, &arena, &found);
+    for (size_t i = 0; i < found.count; i++)
+        if (found.names[i][0] != '.')
+            add(all, found.names[i], arena_print(&arena, "%s/%s", folder, found.names[i]));
     arena_release(&arena);
 }
 

@@ -213,6 +213,38 @@ enum file_status folder_make(const char *path)
     return mkdir(path, 0777) == 0 || errno == EEXIST ? FILE_OK : status_of(errno);
 }
 
+static int by_name(const void *a, const void *b)
+{
+    return strcmp(*(const char *const *)a, *(const char *const *)b);
+}
+
+enum file_status folder_list(const char *path, struct arena *arena, struct folder_names *names)
+{
+    *names = (struct folder_names){0};
+    struct folder_names found = {0};
+    size_t capacity = 0;
+    DIR *folder = opendir(path);
+    if (!folder && errno == ENOMEM)
+        memory_exhausted();
+    if (!folder)
+        return status_of(errno);
+    for (struct dirent *entry; errno = 0, (entry = readdir(folder));) {
+        if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0)
+            continue;
+        found.names = arena_grow(arena, found.names, found.count, &capacity, sizeof *found.names);
+        found.names[found.count++] = arena_copy(arena, entry->d_name);
+    }
+    int error = errno;
+    closedir(folder);
+    errno = error;
+    if (error)
+        return status_of(error);
+    if (found.count)
+        qsort(found.names, found.count, sizeof *found.names, by_name);
+    *names = found;
+    return FILE_OK;
+}
+
 static enum file_status remove_entry(const char *folder, const char *name)
 {
     struct buffer path = {0};
@@ -231,16 +263,17 @@ static enum file_status remove_entry(const char *folder, const char *name)
 
 enum file_status folder_remove(const char *path)
 {
-    DIR *folder = opendir(path);
-    if (!folder)
-        return errno == ENOENT ? FILE_OK : status_of(errno);
-    enum file_status status = FILE_OK;
-    for (struct dirent *entry; status == FILE_OK && (entry = readdir(folder));)
-        if (strcmp(entry->d_name, ".") != 0 && strcmp(entry->d_name, "..") != 0)
-            status = remove_entry(path, entry->d_name);
-    closedir(folder);
+    struct stat about;
+    if (stat(path, &about) != 0 && errno == ENOENT)
+        return FILE_OK;
+    struct arena arena = {0};
+    struct folder_names found;
+    enum file_status status = folder_list(path, &arena, &found);
+    for (size_t i = 0; i < found.count && status == FILE_OK; i++)
+        status = remove_entry(path, found.names[i]);
     if (status == FILE_OK && rmdir(path) != 0)
         status = status_of(errno);
+    arena_release(&arena);
     return status;
 }
 
@@ -253,11 +286,11 @@ static bool is_aside(const char *name)
 
 void folder_clear_aside(const char *path)
 {
-    DIR *folder = opendir(path);
-    if (!folder)
-        return;
-    for (struct dirent *entry; (entry = readdir(folder));)
-        if (is_aside(entry->d_name))
-            remove_entry(path, entry->d_name);
-    closedir(folder);
+    struct arena arena = {0};
+    struct folder_names found;
+    folder_list(path, &arena, &found);
+    for (size_t i = 0; i < found.count; i++)
+        if (is_aside(found.names[i]))
+            remove_entry(path, found.names[i]);
+    arena_release(&arena);
 }

@@ -5,6 +5,7 @@
 #ifndef BASE_FILE_H
 #define BASE_FILE_H
 
+#include "base/arena.h"
 #include "base/buffer.h"
 
 #include <stdbool.h>
@@ -35,6 +36,14 @@ enum file_status file_create(const char *path, const void *data, size_t length);
 
 /* Make a folder and those above it; an existing one is fine. */
 enum file_status folder_make(const char *path);
+
+/* What stands in a folder, but `.` and `..`, sorted. It belongs to the arena. FILE_MISSING: there
+   is no such folder; after any failure *names is empty. */
+struct folder_names {
+    const char **names;
+    size_t count;
+};
+enum file_status folder_list(const char *path, struct arena *arena, struct folder_names *names);
 
 /* Remove what programs killed while writing left aside in this folder (not below it). Only for who
  * writes there alone. */

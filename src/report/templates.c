@@ -3,7 +3,6 @@
 #include "base/file.h"
 #include "report/words_check.h"
 
-#include <dirent.h>
 #include <string.h>
 
 enum { TEMPLATE_BYTES_MAX = 4 << 20 };
@@ -64,12 +63,17 @@ static void take_file(struct templates *templates, const char *folder, const cha
 static void take_folder(struct templates *templates, const char *folder, struct arena *arena,
                         struct diagnostics *diagnostics)
 {
-    DIR *directory = folder ? opendir(arena_print(arena, "%s/templates", folder)) : NULL;
-    if (!directory)
+    if (!folder)
         return;
-    for (const struct dirent *entry; (entry = readdir(directory)) != NULL;)
-        take_file(templates, folder, entry->d_name, arena, diagnostics);
-    closedir(directory);
+    const char *path = arena_print(arena, "%s/templates", folder);
+    struct folder_names names;
+    enum file_status status = folder_list(path, arena, &names);
+    if (status != FILE_OK && status != FILE_MISSING)
+        diagnostic_add(diagnostics, &(struct source){.path = path}, (struct position){0, 0},
+                       DIAGNOSTIC_FILE_UNREADABLE, NULL, "cannot read the folder: %s",
+                       file_status_text(status));
+    for (size_t i = 0; i < names.count; i++)
+        take_file(templates, folder, names.names[i], arena, diagnostics);
 }
 
 static const struct words *open_words(const struct templates *templates, const struct shop *shop,

@@ -29,6 +29,28 @@ static const char *in_folder(const char *name)
     return path;
 }
 
+static void a_folder_is_listed_by_name(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    struct folder_names names;
+    assert_int_equal(folder_make(in_folder("listed/b")), FILE_OK);
+    assert_int_equal(file_write(in_folder("listed/c"), "", 0, NULL), FILE_OK);
+    assert_int_equal(file_write(in_folder("listed/a"), "", 0, NULL), FILE_OK);
+    assert_int_equal(file_write(in_folder("listed/.d"), "", 0, NULL), FILE_OK);
+    assert_int_equal(folder_list(in_folder("listed"), &arena, &names), FILE_OK);
+    assert_int_equal(names.count, 4);
+    assert_string_equal(names.names[0], ".d");
+    assert_string_equal(names.names[1], "a");
+    assert_string_equal(names.names[2], "b");
+    assert_string_equal(names.names[3], "c");
+    assert_int_equal(folder_list(in_folder("listed/b"), &arena, &names), FILE_OK);
+    assert_int_equal(names.count, 0);
+    assert_int_equal(folder_list(in_folder("listed/no"), &arena, &names), FILE_MISSING);
+    assert_int_equal(names.count, 0);
+    arena_release(&arena);
+}
+
 static void a_file_is_written_and_read(void **state)
 {
     (void)state;
@@ -138,8 +160,11 @@ static void help_names_every_option(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
-        cmocka_unit_test(a_file_is_written_and_read),   cmocka_unit_test(a_failure_is_told),
-        cmocka_unit_test(folders_are_made_and_removed), cmocka_unit_test(options_are_parsed),
+        cmocka_unit_test(a_folder_is_listed_by_name),
+        cmocka_unit_test(a_file_is_written_and_read),
+        cmocka_unit_test(a_failure_is_told),
+        cmocka_unit_test(folders_are_made_and_removed),
+        cmocka_unit_test(options_are_parsed),
         cmocka_unit_test(help_names_every_option),
     };
     return cmocka_run_group_tests_name("file", tests, make_folder, drop_folder);
