@@ -1,12 +1,13 @@
 /*
  * Preloaded into the program: lets the n-th call of one kind fail, counts the calls.
- *   FAULT_KIND   memory | write | open | rename | mkdir | unlink | close
+ *   FAULT_KIND   memory | read | write | open | opendir | rename | link | mkdir | unlink | close
  *   FAULT_AT     which call fails, from 1; 0 or none: only count
  *   FAULT_STAY   all later ones fail as well (a disk stays full)
  *   FAULT_COUNT  file that gets the number of calls when the program ends, however it ends
  * Only calls of the program and its libraries after main has begun count.
  */
 #define _GNU_SOURCE
+#include <dirent.h>
 #include <dlfcn.h>
 #include <errno.h>
 #include <fcntl.h>
@@ -24,12 +25,16 @@
 enum kind {
     KIND_NONE,
     KIND_MEMORY,
+    KIND_READ,
     KIND_WRITE,
-    KIND_OPEN,
+    KIND_OPEN, /* for writing */
+    KIND_OPENDIR,
     KIND_RENAME,
+    KIND_LINK,
     KIND_MKDIR,
     KIND_UNLINK,
-    KIND_CLOSE
+    KIND_CLOSE,
+    KIND_COUNT
 };
 
 static enum kind kind;
@@ -45,13 +50,13 @@ extern void *__libc_memalign(size_t, size_t);
 
 __attribute__((constructor)) static void begin(void)
 {
-    static const char *const names[] = {"",       "memory", "write",  "open",
-                                        "rename", "mkdir",  "unlink", "close"};
+    static const char *const names[] = {"",       "memory", "read",  "write",  "open", "opendir",
+                                        "rename", "link",   "mkdir", "unlink", "close"};
     const char *wanted = getenv("FAULT_KIND"), *at = getenv("FAULT_AT");
     const char *count = getenv("FAULT_COUNT");
     if (count)
         count_file = open(count, O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
-    for (int i = 1; wanted && i < 8; i++)
+    for (int i = 1; wanted && i < KIND_COUNT; i++)
         if (strcmp(wanted, names[i]) == 0)
             kind = (enum kind)i;
     fail_at = at ? strtoul(at, NULL, 10) : 0;
@@ -129,6 +134,36 @@ ssize_t write(int file, const void *data, size_t size)
         return stay && calls == fail_at && size > 1 ? real(file, data, size / 2) : -1;
     }
     return real(file, data, size);
+}
+
+ssize_t read(int file, void *data, size_t size)
+{
+    static ssize_t (*real)(int, void *, size_t);
+    if (!real)
+        real = REAL(read);
+    if (file > 2 && fails(KIND_READ, CALLER)) {
+        errno = EIO;
+        return -1;
+    }
+    return real(file, data, size);
+}
+
+DIR *opendir(const char *path)
+{
+    if (fails(KIND_OPENDIR, CALLER)) {
+        errno = EMFILE;
+        return NULL;
+    }
+    return REAL(opendir)(path);
+}
+
+int link(const char *from, const char *to)
+{
+    if (fails(KIND_LINK, CALLER)) {
+        errno = EPERM;
+        return -1;
+    }
+    return REAL(link)(from, to);
 }
 
 static int opened(int (*real)(const char *, int, ...), const char *path, int flags, mode_t mode)
