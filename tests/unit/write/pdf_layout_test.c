@@ -396,7 +396,7 @@ static void test_a_short_table_stays_whole(void **state)
     static const struct {
         size_t rows, above; /* strips of 40 points above the table */
         bool parted;
-    } cases[] = {{12, 8, false}, {12, 5, true}, {13, 5, true}, {4, 7, false}};
+    } cases[] = {{12, 8, false}, {12, 5, true}, {13, 5, true}, {6, 7, false}};
     for (size_t n = 0; n < sizeof cases / sizeof *cases; n++) {
         size_t rows = cases[n].rows, above = cases[n].above;
         struct table table = {.caption = "Caption.", .remark = "A remark."};
