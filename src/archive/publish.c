@@ -15,7 +15,7 @@
 /* One job under way or finished. */
 struct job_work {
     const char *path, *name;
-    const char *twin; /* another job of the same name but for case, NULL: none */
+    const char *twin; /* another job of the same name, but for case perhaps; NULL: none */
     bool finished;
     struct state_job *state; /* what its files were made from; in the publish's own arena */
     struct arena arena;      /* of the job, given back when it has been told */
@@ -113,9 +113,13 @@ static void publish_one(const struct publish_work *work, struct job_work *job)
     job->diagnostics = diagnostics_in(&job->arena);
     if (job->twin) {
         const struct source file = {job->path, NULL, 0};
-        diagnostic_add(&job->diagnostics, &file, (struct position){0}, DIAGNOSTIC_JOB_CASE_TWIN,
-                       "rename one of the two", "its number differs from '%s' in case only",
-                       job->twin);
+        if (strcmp(job->twin, job->name) == 0)
+            diagnostic_add(&job->diagnostics, &file, (struct position){0}, DIAGNOSTIC_JOB_CASE_TWIN,
+                           "name it once", "job '%s' is named twice", job->name);
+        else
+            diagnostic_add(&job->diagnostics, &file, (struct position){0}, DIAGNOSTIC_JOB_CASE_TWIN,
+                           "rename one of the two", "its number differs from '%s' in case only",
+                           job->twin);
         return;
     }
     struct job_files_request request = {work->archive, job->path, work->request->output,
@@ -238,6 +242,7 @@ static void list_named(struct publish_work *work)
         work->jobs[i].path = work->request->job_paths[i];
         work->jobs[i].name = job_name_of(work->jobs[i].path, work->arena);
     }
+    mark_case_twins(work);
 }
 
 /* The jobs made in this run. */

@@ -43,7 +43,8 @@ static void note_told(const struct publish_event *event, void *context)
         told->code[event->diagnostics->items[i].code] = true;
 }
 
-static struct told publish_folder(struct arena *arena)
+/* The whole folder, or these jobs of it. */
+static struct told publish_these(struct arena *arena, const char *const *paths, size_t count)
 {
     struct archive archive;
     struct told told = {0};
@@ -51,13 +52,20 @@ static struct told publish_folder(struct arena *arena)
     assert_true(archive_open(&archive, folder, share_folder, arena, &diagnostics));
     assert_true(archive_open_pdf(&archive, arena, &diagnostics));
     struct publish_request request = {.output = in_folder(arena, "out"),
-                                      .threads = 1,
+                                      .threads = 2,
+                                      .job_paths = paths,
+                                      .job_path_count = count,
                                       .listener = note_told,
                                       .listener_context = &told};
     struct publish_result result = publish(&archive, &request, arena);
     assert_int_equal(result.failure, FILE_OK);
     archive_close(&archive);
     return told;
+}
+
+static struct told publish_folder(struct arena *arena)
+{
+    return publish_these(arena, NULL, 0);
 }
 
 static bool is_there(struct arena *arena, const char *name)
@@ -117,6 +125,24 @@ static void numbers_that_differ_in_case_only(void **state)
     arena_release(&arena);
 }
 
+/* Two threads would write into one folder. */
+static void one_job_named_twice(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    put_text(&arena, "2032-001.yaml", "job: 2032-001\nset:\n  maker: M\nreceived: 2032-02-03\n");
+    const char *path = in_folder(&arena, "2032-001.yaml");
+    struct told told = publish_these(&arena, (const char *[]){path, path}, 2);
+    assert_int_equal(told.jobs, 2);
+    assert_true(told.code[DIAGNOSTIC_JOB_CASE_TWIN]);
+    assert_false(is_there(&arena, "out/jobs/2032-001"));
+    told = publish_these(&arena, &path, 1);
+    assert_false(told.code[DIAGNOSTIC_JOB_CASE_TWIN]);
+    assert_true(is_there(&arena, "out/jobs/2032-001/summary.json"));
+    unlink(path);
+    arena_release(&arena);
+}
+
 static int begin(void **state)
 {
     (void)state;
@@ -143,6 +169,7 @@ int main(int count, char **words)
     const struct CMUnitTest all[] = {
         cmocka_unit_test(photographs_that_cannot_be_used),
         cmocka_unit_test(numbers_that_differ_in_case_only),
+        cmocka_unit_test(one_job_named_twice),
     };
     return cmocka_run_group_tests(all, begin, end);
 }
