@@ -408,11 +408,13 @@ static bool ends_early(const struct flow *flow, const struct page_plan *plan)
 {
     if (plan->page_count < 2 || plan->count == 0)
         return false;
+    const double early = 0.7; /* of the page's text */
+    const struct page_geometry *page = flow->page;
     const struct placed *last = &plan->items[plan->count - 1];
-    return last->y + last->strip->height < (flow->page->top + flow->page->bottom) / 2;
+    return last->y + last->strip->height < page->top + early * (page->bottom - page->top);
 }
 
-/* A last page with little on it is saved where somewhat closer spaces do. */
+/* A last page that is not nearly full is saved where somewhat closer spaces do. */
 struct page_plan flow_paginate(struct flow *flow)
 {
     static const double closer[] = {0.85, 0.7, 0.6};
