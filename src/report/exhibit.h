@@ -65,7 +65,7 @@ struct table {
     struct table_row *rows;
     size_t row_count;
     const char *group_head; /* what groups are, where they get a column of their own; NULL: none */
-    const char **notes; /* numbered 1.. in order; run on in one paragraph */
+    const char **notes;     /* numbered 1.. in order; run on in one paragraph */
     size_t note_count;
     const char *remark; /* an unnumbered note; NULL */
     bool lined;         /* hairline between rows, for tables without groups */
