@@ -1,6 +1,7 @@
 /*
  * Preloaded into the program: lets the n-th call of one kind fail, counts the calls.
- *   FAULT_KIND   memory | read | write | open | opendir | rename | link | mkdir | unlink | close
+ *   FAULT_KIND   memory | read | write | open | opendir | rename | link | mkdir | unlink | close |
+ *                pdf (libharu saves)
  *   FAULT_AT     which call fails, from 1; 0 or none: only count
  *   FAULT_STAY   all later ones fail as well (a disk stays full)
  *   FAULT_COUNT  file that gets the number of calls when the program ends, however it ends
@@ -34,6 +35,7 @@ enum kind {
     KIND_MKDIR,
     KIND_UNLINK,
     KIND_CLOSE,
+    KIND_PDF,
     KIND_COUNT
 };
 
@@ -50,8 +52,8 @@ extern void *__libc_memalign(size_t, size_t);
 
 __attribute__((constructor)) static void begin(void)
 {
-    static const char *const names[] = {"",       "memory", "read",  "write",  "open", "opendir",
-                                        "rename", "link",   "mkdir", "unlink", "close"};
+    static const char *const names[] = {"",       "memory", "read",  "write",  "open",  "opendir",
+                                        "rename", "link",   "mkdir", "unlink", "close", "pdf"};
     const char *wanted = getenv("FAULT_KIND"), *at = getenv("FAULT_AT");
     const char *count = getenv("FAULT_COUNT");
     if (count)
@@ -155,6 +157,16 @@ DIR *opendir(const char *path)
         return NULL;
     }
     return REAL(opendir)(path);
+}
+
+unsigned long HPDF_SaveToStream(void *document)
+{
+    enum { HPDF_FILE_IO_ERROR = 0x1016 };
+    if (fails(KIND_PDF, CALLER))
+        return HPDF_FILE_IO_ERROR;
+    unsigned long (*real)(void *) =
+        (unsigned long (*)(void *))dlsym(RTLD_NEXT, "HPDF_SaveToStream");
+    return real(document);
 }
 
 int link(const char *from, const char *to)

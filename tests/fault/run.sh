@@ -78,7 +78,7 @@ prepare() {
 }
 inspect() {
     case $about in
-    publish) [ "$kind" = read ] || whole "$1"
+    publish) case $kind in read | pdf) ;; *) whole "$1" ;; esac
         [ $((made % 8)) != 0 ] || mended "$1" ;;
     archive) [ "$name" != seal ] || chained "$1"
         started "$1" ;;
@@ -121,6 +121,7 @@ turn() {
         if [ "$status" = 3 ] && [ -z "$right" ] && ! grep -q '^gridleak: ' stderr; then
             say_failed "$name, $kind $at of $calls: exit 3 without a sentence: $(tail -n 2 stderr)"
         fi
+        pdf_is_told "$name, $at of $calls"
         inspect "$name, $kind $at of $calls"
         made=$((made + 1))
         at=$((at + step))
@@ -128,9 +129,17 @@ turn() {
     echo "$name: $calls calls of $kind, $made made to fail"
 }
 
+# Only here does a PDF fail: no file can make it.
+pdf_is_told() {
+    [ "$kind" != pdf ] || grep -q 'error: cannot make a PDF of ' stderr ||
+        say_failed "$1: nothing said of the PDF: $(tail -n 2 stderr)"
+    [ "$kind" != pdf ] || [ ! -e sheet.pdf ] || say_failed "$1: there is a PDF"
+}
+
 about=
 turn assess memory '' '' "$program" assess --json -q "$root/jobs-example/2031-014.yaml"
 turn sheet memory '' '' "$program" sheet -q "$root/jobs-example/2031-014.yaml" -o sheet.pdf
+turn sheet pdf '' '' "$program" sheet -q "$root/jobs-example/2031-014.yaml" -o sheet.pdf
 
 # A job that is sealed once already, found, proved, and a new one.
 cp -r new arc.before
@@ -172,6 +181,7 @@ for part in whole pages job; do
     publish close '' '0'
     publish opendir '' '2'
     publish read '' '2'
+    [ $part = pages ] || publish pdf '' '2'
 done
 
 # Less and less memory for the whole: the program says so, wherever it ends.
