@@ -19,6 +19,7 @@
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
+#include <sys/stat.h>
 #include <time.h>
 #include <unistd.h>
 
@@ -43,7 +44,7 @@ static int complain(const struct buffer *message)
 static int system_failure(const char *path, enum file_status status)
 {
     fprintf(stderr, "gridleak: cannot write '%s': %s\n", path ? path : "",
-            file_status_text(status));
+            status == FILE_MISSING ? "no such folder" : file_status_text(status));
     return EXIT_SYSTEM;
 }
 
@@ -77,6 +78,12 @@ static int print(const struct buffer *text)
     return EXIT_SYSTEM;
 }
 
+static bool is_folder(const char *path)
+{
+    struct stat about;
+    return stat(path, &about) == 0 && S_ISDIR(about.st_mode);
+}
+
 static bool bold_allowed(void)
 {
     const char *no_colour = getenv("NO_COLOR");
@@ -89,7 +96,9 @@ static bool archive_option_is_good(const struct session *session)
     const char *folder = session->options.archive;
     bool good = !folder || archive_is_at(folder);
     if (!good)
-        fprintf(stderr, "gridleak: '%s' is no archive: it holds no shop.yaml\n", folder);
+        fprintf(stderr,
+                "gridleak: '%s' is no archive: it holds no shop.yaml (an empty one will do)\n",
+                folder);
     return good;
 }
 
@@ -156,6 +165,10 @@ static int command_assess(struct session *session)
 {
     struct archive archive;
     size_t errors = 0, warnings = 0;
+    if (session->options.json && session->options.working) {
+        fputs("gridleak: --json has all parts, --working shows one: give one of them\n", stderr);
+        return EXIT_INPUT;
+    }
     if (!open_archive(session, session->operands[0], &archive))
         return EXIT_INPUT;
     for (int i = 0; i < session->operand_count; i++) {
@@ -272,12 +285,35 @@ static bool publish_operands(const struct session *session, unsigned *threads)
     return true;
 }
 
+/* In jobs/ and models/ publish removes what it does not make any more: never in a folder where they
+   are somebody else's. */
+static bool output_is_good(struct session *session, const char *output)
+{
+    static const char *const swept[] = {"jobs", "models"};
+    bool published = is_folder(arena_print(&session->arena, "%s/.gridleak", output));
+    if (archive_is_at(output)) {
+        fprintf(stderr, "gridleak: '%s' is an archive: publish into a folder of its own\n", output);
+        return false;
+    }
+    for (size_t i = 0; i < sizeof swept / sizeof *swept && !published; i++) {
+        const char *folder = arena_print(&session->arena, "%s/%s", output, swept[i]);
+        if (is_folder(folder)) {
+            fprintf(stderr,
+                    "gridleak: '%s' was made by something else: publish into a folder of its own\n",
+                    folder);
+            return false;
+        }
+    }
+    return true;
+}
+
 static int command_publish(struct session *session)
 {
     const char *first = session->operands[0];
     bool whole = !ends_with(first, ".yaml");
     unsigned threads;
-    if (!publish_operands(session, &threads))
+    const char *output = session->options.output ? session->options.output : "output";
+    if (!publish_operands(session, &threads) || !output_is_good(session, output))
         return EXIT_INPUT;
     if (whole)
         session->options.archive = first;
@@ -289,7 +325,7 @@ static int command_publish(struct session *session)
         return EXIT_SYSTEM;
     }
     struct publish_request request = {
-        .output = session->options.output ? session->options.output : "output",
+        .output = output,
         .job_paths = whole ? NULL : (const char *const *)session->operands,
         .job_path_count = whole ? 0 : (size_t)session->operand_count,
         .pages_only = session->options.pages,
@@ -308,9 +344,9 @@ static int command_publish(struct session *session)
         return EXIT_SYSTEM;
     }
     if (!session->options.quiet && !request.pages_only)
-        fprintf(stderr, "%zu jobs: %zu made, %zu unchanged, %zu left out for mistakes\n",
-                result.jobs, result.jobs - result.broken - result.unchanged, result.unchanged,
-                result.broken);
+        fprintf(stderr, "%zu job%s: %zu made, %zu unchanged, %zu left out for mistakes\n",
+                result.jobs, result.jobs == 1 ? "" : "s",
+                result.jobs - result.broken - result.unchanged, result.unchanged, result.broken);
     return exit_of(session, result.broken + result.pages_wrong, result.warned);
 }
 
@@ -368,7 +404,10 @@ static int show_seal(const struct seal_result *result)
         printf("%s\n%s\n", result->folder, result->line);
         return EXIT_DONE;
     case SEAL_NOT_PUBLISHED:
-        fprintf(stderr, "gridleak: '%s' is not there: publish first\n", result->folder);
+        fprintf(stderr,
+                "gridleak: '%s' is not there: publish first; a job without 'returned' has the "
+                "shop's copy only\n",
+                result->folder);
         return EXIT_INPUT;
     case SEAL_DIFFERS:
         fprintf(stderr, "gridleak: '%s' is not as it was published: publish again\n",
@@ -426,7 +465,12 @@ static void show_difference(const struct proof_difference *difference)
 
 static int command_prove(struct session *session)
 {
-    struct proof proof = prove(session->operands[0], &session->arena);
+    const char *folder = session->operands[0];
+    if (!is_folder(folder)) {
+        fprintf(stderr, "gridleak: '%s' is no folder\n", folder);
+        return EXIT_INPUT;
+    }
+    struct proof proof = prove(folder, &session->arena);
     for (size_t i = 0; i < proof.count; i++)
         show_difference(&proof.differences[i]);
     printf("%zu files as in the manifest; ", proof.files);
@@ -468,12 +512,15 @@ static int show_new_job(const struct new_job *made)
 
 static int command_start(struct session *session)
 {
+    const char *number = session->operands[0];
     if (!archive_option_is_good(session))
         return EXIT_INPUT;
+    if (!strchr(number, '/')) /* `2031-014.yaml` is meant as `2031-014` */
+        number = job_name_of(number, &session->arena);
     struct new_job_request request = {
         .archive_folder = session->options.archive ? session->options.archive
                                                    : archive_folder_of("job.yaml", &session->arena),
-        .number = session->operands[0],
+        .number = number,
         .received = today(&session->arena),
         .like = session->options.like,
     };

@@ -301,7 +301,8 @@ static const struct field capacitor_fields[] = {
      .kind = FIELD_SIZE,
      .offset = AT(case_size),
      .chassis = true,
-     .text = "diameter x length, or three sides; an electrolytic without it is limited as a small one",
+     .text =
+         "diameter x length, or three sides; an electrolytic without it is limited as a small one",
      .example = "12 x 35 mm"},
     {.key = "done",
      .kind = FIELD_CHOICE,

@@ -68,6 +68,17 @@ tells 'one archive, or job files'
 expect 2 "$program" assess --archive "$work/nowhere" "$example/2031-014.yaml"
 tells 'is no archive'
 
+expect 2 "$program" assess --json --working C14 "$example/2031-014.yaml"
+tells 'give one of them'
+mkdir -p "$work/numbers"
+echo 'name: Oxlade & Finch' >"$work/numbers/shop.yaml"
+expect 0 "$program" start 2031-015.yaml --archive "$work/numbers"
+there "$work/numbers/2031-015.yaml"
+expect 2 "$program" start 2031/016 --archive "$work/numbers"
+tells 'cannot be a job number'
+expect 3 "$program" sheet "$example/2031-014.yaml" -o "$work/nowhere/sheet.pdf"
+tells 'no such folder'
+
 # ---- assess
 for job in "$example"/2*.yaml; do
     expect 0 "$program" assess "$job"

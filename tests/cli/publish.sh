@@ -131,7 +131,44 @@ sed -i '1s/^/# A heading of our own\n\n/' own/templates/record.md
 expect 0 "$program" publish own -o own-out
 grep -q 'heading of our own' own-out/jobs/2031-001/shop.md || say_failed "the archive's template is not used"
 
+# ---- an output folder where publish would remove what is not its own
+archive_of spaced\ shop 2031-001
+mkdir -p spaced\ shop/jobs/notes foreign/jobs/mine foreign-models/models
+echo 'kept by hand' >spaced\ shop/jobs/notes/1.txt
+expect 2 "$program" publish 'spaced shop' -o 'spaced shop'
+tells "'spaced shop' is an archive"
+there 'spaced shop/jobs/notes/1.txt'
+expect 2 "$program" publish 'spaced shop' -o foreign
+tells "'foreign/jobs' was made by something else"
+expect 2 "$program" publish 'spaced shop' -o foreign-models
+tells "'foreign-models/models' was made by something else"
+ln -s 'spaced shop' linked
+expect 0 "$program" publish linked -o 'spaced shop/out'
+tells '^1 job: 1 made'
+expect 0 "$program" publish linked -o 'spaced shop/out'
+tells '0 made, 1 unchanged'
+archive_of no-jobs
+expect 0 "$program" publish no-jobs -o no-jobs-out
+there no-jobs-out/index.html
+
+# ---- mistakes and findings: what follows from a mistake is not told beside it
+sed 's/ - 250 V 60 s 0.2 uA/ - 250 V 60 s ~0.2 uA/' mixed/2031-001.yaml >slip.yaml
+sed 's/2031-001/slip/' slip.yaml >mixed/slip.yaml
+expect 2 "$program" assess mixed/slip.yaml
+tells 'write the figure alone'
+tells_not 'without a reading'
+rm mixed/slip.yaml
+
+# ---- a sign that no font has: once a job, with its file
+archive_of signs 2031-001
+sed -i 's/Curlew 56/Curlew \xE3\x90\x80/' signs/2031-001.yaml
+expect 0 "$program" publish signs -o signs-out
+tells '^signs/2031-001.yaml: warning: no font has the sign U+3400'
+[ "$(grep -c 'no font has' "$work/stderr")" = 1 ] || say_failed "a missing sign is told more than once"
+
 # ---- seal and prove
+expect 2 "$program" prove "$work/nowhere"
+tells 'is no folder'
 expect 0 "$program" publish archive -o sealing
 expect 0 "$program" seal archive/2031-014.yaml client -o sealing
 says 'sealed/2031-014-client-1$'
@@ -146,7 +183,7 @@ echo >>handed-out/2031-014.md
 expect 1 "$program" prove handed-out
 says 'changed: 2031-014.md'
 expect 2 "$program" seal archive/2029-9.yaml client -o sealing
-tells 'publish first'
+tells "publish first; a job without 'returned' has the shop's copy only"
 echo >>sealing/jobs/2031-014/client/2031-014.md
 expect 2 "$program" seal archive/2031-014.yaml client -o sealing
 tells 'publish again'
