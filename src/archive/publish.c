@@ -10,6 +10,8 @@
 #include <stdlib.h>
 #include <string.h>
 #include <strings.h>
+#include <sys/stat.h>
+#include <time.h>
 #include <unistd.h>
 
 /* One job under way or finished. */
@@ -17,6 +19,7 @@ struct job_work {
     const char *path, *name;
     const char *twin; /* another job of the same name, but for case perhaps; NULL: none */
     bool finished;
+    struct timespec began;
     struct state_job *state; /* what its files were made from; in the publish's own arena */
     struct arena arena;      /* of the job, given back when it has been told */
     struct diagnostics diagnostics;
@@ -38,8 +41,18 @@ struct publish_work {
     size_t count, next, told;
 };
 
-/* Note what a job was made from, for the next run. Inputs are noted after they were read: one that
-   changed in between is noticed then by its time or, at the latest, by its next change. */
+/* Whether a file may have changed since: as files are stamped, by the coarse clock. */
+static bool changed_since(const char *path, const struct timespec *began)
+{
+    struct stat about;
+    if (stat(path, &about) != 0)
+        return false;
+    return about.st_ctim.tv_sec != began->tv_sec ? about.st_ctim.tv_sec > began->tv_sec
+                                                 : about.st_ctim.tv_nsec >= began->tv_nsec;
+}
+
+/* Note what a job was made from, for the next run. Inputs are noted after they were read: where one
+   may have changed in between nothing is noted, and the job is made again. */
 static void note_state(struct publish_work *work, struct job_work *job)
 {
     struct state_job *state = arena_get(work->arena, sizeof *state);
@@ -51,6 +64,9 @@ static void note_state(struct publish_work *work, struct job_work *job)
     for (size_t i = 0; i < job->files.input_count; i++)
         state->input_count +=
             state_note_input(job->files.inputs[i], work->arena, &state->inputs[state->input_count]);
+    for (size_t i = 0; i < job->files.input_count; i++)
+        if (changed_since(job->files.inputs[i], &job->began))
+            return;
     job->state = state;
 }
 
@@ -111,6 +127,7 @@ static enum file_status mark_named(const struct publish_work *work, struct job_w
 static void publish_one(const struct publish_work *work, struct job_work *job)
 {
     job->diagnostics = diagnostics_in(&job->arena);
+    clock_gettime(CLOCK_REALTIME_COARSE, &job->began);
     if (job->twin) {
         const struct source file = {job->path, NULL, 0};
         if (strcmp(job->twin, job->name) == 0)

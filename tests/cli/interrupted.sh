@@ -57,6 +57,19 @@ for turn in 1 2 3 4 5 6 7 8 9 10 11 12 13 14 15 16 17 18 19 20; do
 done
 [ $killed -ge 5 ] || say_failed "only $killed of 20 were killed before the end"
 
+# ---- job files that change while they are published: the next publish knows
+for turn in 1 2 3 4 5 6; do
+    rm -rf cut moving
+    cp -r old moving
+    "$program" publish moving -q -o cut 2>/dev/null &
+    sleep "$(awk -v turn=$turn -v took=$took 'BEGIN { printf "%.4f", turn * took / 7000 }')"
+    cp new/2*.yaml moving/
+    wait $!
+    expect 0 "$program" publish moving -q -o cut
+    diff -r --exclude=.gridleak new-out cut >difference ||
+        say_failed "changed while published, turn $turn: the old one stays: $(head -n 3 difference)"
+done
+
 # ---- a full disk: a small file system of its own where that is allowed, else a limit on file sizes
 mkdir disk
 if mount -t tmpfs -o size=20m tmpfs disk 2>/dev/null; then
