@@ -146,7 +146,7 @@ enum font_status pdf_fonts_finish(struct pdf_fonts *fonts, HPDF_Dict resources_d
             pdf_font_finish(fonts->document, fonts->fonts[face], fonts->sets[face], deflater);
         if (status != FONT_OK)
             return status;
-        char name[8];
+        char name[16];
         snprintf(name, sizeof name, "F%d", face);
         HPDF_Dict_Add(names, name, fonts->fonts[face]);
     }
