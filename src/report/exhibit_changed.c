@@ -147,17 +147,32 @@ static const char *can_reason(const struct composition *composition, const struc
     return reason;
 }
 
-static struct change can_change(const struct composition *composition, size_t index)
+/* "C14 8 uF 350 V; C18 25 uF 25 V": what `words` says of each section; NULL: of none. */
+static const char *of_sections(const struct composition *composition, const struct can *can,
+                               const char *(*words)(const struct composition *,
+                                                    const struct capacitor *))
 {
-    const struct can *can = &composition->job->cans[index];
     const char **sections = arena_array(composition->arena, can->hold_count, sizeof *sections);
     for (size_t i = 0; i < can->hold_count; i++) {
         const struct capacitor *section = &composition->job->capacitors[can->holds[i]];
-        sections[i] = arena_print(composition->arena, "%s %s", section->ref,
-                                  capacitor_words(composition, section));
+        const char *said = words(composition, section);
+        sections[i] = said ? arena_print(composition->arena, "%s %s", section->ref, said) : NULL;
     }
+    return text_join(composition->arena, "; ", sections, can->hold_count);
+}
+
+static const char *fitted_words(const struct composition *composition, const struct capacitor *part)
+{
+    return part->fitted.set ? text_marking(composition, &part->fitted) : NULL;
+}
+
+static struct change can_change(const struct composition *composition, size_t index)
+{
+    const struct can *can = &composition->job->cans[index];
     struct change change = part_change(composition, KIND_CAN, index);
-    change.original = text_join(composition->arena, "; ", sections, can->hold_count);
+    change.original = of_sections(composition, can, capacitor_words);
+    if (!can->fitted.set)
+        change.fitted = of_sections(composition, can, fitted_words);
     change.reason = can_reason(composition, can);
     return change;
 }

@@ -159,6 +159,26 @@ tells 'write the figure alone'
 tells_not 'without a reading'
 rm mixed/slip.yaml
 
+# ---- sections of a can that differ have each their own 'fitted'
+archive_of cans 2031-001
+cat >>cans/2031-001.yaml <<'JOB'
+  C2:
+    type: electrolytic
+    marked: 16 uF 450 V
+    fitted: electrolytic 22 uF 500 V
+  C3:
+    type: electrolytic
+    marked: 25 uF 25 V
+    fitted: electrolytic 33 uF 63 V
+cans:
+  CAN1:
+    holds: C2 C3
+    done: restuffed
+JOB
+expect 0 "$program" publish cans -o cans-out
+grep -q 'C2 electrolytic 22.*; C3 electrolytic 33' cans-out/jobs/2031-001/shop.md ||
+    say_failed "what was fitted in the sections of a can is not in the record"
+
 # ---- a sign that no font has: once a job, with its file
 archive_of signs 2031-001
 sed -i 's/Curlew 56/Curlew \xE3\x90\x80/' signs/2031-001.yaml
