@@ -117,15 +117,21 @@ static bool find_old_line(const struct buffer *old, const char **at, const char 
     return false;
 }
 
-static void read_summary(struct pages_work *work, const char *name)
+/* A job that nobody has published yet has none. */
+static enum file_status read_summary(struct pages_work *work, const char *name)
 {
     struct buffer path = {0};
     buffer_print(&path, "%s/jobs/%s/summary.json", work->request->output, name);
-    file_read(buffer_string(&path), SUMMARY_BYTES_MAX, &work->summaries);
+    enum file_status status = file_read(buffer_string(&path), SUMMARY_BYTES_MAX, &work->summaries);
+    if (status == FILE_MISSING)
+        status = FILE_OK;
+    if (status != FILE_OK)
+        buffer_append(work->failed, path.data, path.length);
     buffer_release(&path);
+    return status;
 }
 
-static void gather_summaries(struct pages_work *work)
+static enum file_status gather_summaries(struct pages_work *work)
 {
     const struct pages_request *request = work->request;
     const char *path = arena_print(&work->arena, "%s/summaries.jsonl", request->output);
@@ -136,7 +142,8 @@ static void gather_summaries(struct pages_work *work)
         file_read(path, SUMMARIES_BYTES_MAX, &work->old);
     buffer_reserve(&work->summaries, work->old.length + 4096);
     const char *at = work->old.data;
-    for (size_t i = 0; i < work->names.count; i++) {
+    enum file_status status = FILE_OK;
+    for (size_t i = 0; i < work->names.count && status == FILE_OK; i++) {
         const char *name = work->names.names[i];
         struct old_line line;
         if (changed && work->old.length && !is_listed(changed, name) &&
@@ -144,10 +151,11 @@ static void gather_summaries(struct pages_work *work)
             buffer_append(&work->summaries, line.text, line.length);
             buffer_byte(&work->summaries, '\n');
         } else {
-            read_summary(work, name);
+            status = read_summary(work, name);
         }
     }
     buffer_release(&work->old);
+    return status;
 }
 
 /* ---- writing */
@@ -204,11 +212,13 @@ static enum file_status publish_gathered(struct pages_work *work, struct diagnos
 {
     const char *note = note_path(work->request->output, &work->arena);
     const char *setting = work->request->setting;
-    gather_summaries(work);
+    enum file_status status = gather_summaries(work);
+    if (status != FILE_OK)
+        return status;
     columns_add_all(&work->columns, work->summaries.data, work->summaries.length);
     page_models_name(&work->columns);
     pages_forget(work->request->output);
-    enum file_status status = write_pages(work, diagnostics);
+    status = write_pages(work, diagnostics);
     if (status == FILE_OK) {
         status = folder_make(arena_print(&work->arena, "%s/.gridleak", work->request->output));
         if (status == FILE_OK)
