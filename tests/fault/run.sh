@@ -3,7 +3,7 @@
 # turn: while a small archive is published, whole, its pages and one job; a job assessed, its sheet
 # written, a job started, found, sealed and proved. The program ends with exit 3 and a sentence, or a
 # finding, never by a signal; no file stands half written under its final name, and the next publish
-# mends all. Where there are more calls than FAULT_RUNS (default 60; a sixth of it for the smaller
+# mends all. Where there are more calls than FAULT_RUNS (default 40; a sixth of it for the smaller
 # commands), as many of them, spread evenly; FAULT_SEED (default 0) moves them along.
 set -u
 build=$(cd "$1" && pwd)
@@ -11,7 +11,7 @@ here=$(cd "$(dirname "$0")" && pwd)
 root=$(cd "$here/../.." && pwd)
 program=$build/gridleak
 work=$build/tests/fault
-runs=${FAULT_RUNS:-60}
+runs=${FAULT_RUNS:-40}
 seed=${FAULT_SEED:-0}
 rm -rf "$work"
 mkdir -p "$work"
