@@ -134,7 +134,7 @@ static void evaluate_with(const struct assessment *assessment, size_t index,
         } else if (kind == JOINT_LINE) {
             place.line_others_s += leak_s;
         } else {
-            place.can_others_w += leak_s * other->place.service_v * other->place.service_v;
+            place.can_others_w += place_heat(&other->place, leak_s);
         }
     }
     place_evaluate(&place, shifted_leak(assessment, index, shift), values);

@@ -143,6 +143,8 @@ void judge_leak(const struct judge_case *given, struct judgement *judgement)
     for (size_t i = 0; i < spread.values.count; i++) {
         const struct place_value *value = &spread.values.items[i];
         double limit = i < given->limit->count ? given->limit->limits[i] : NAN;
+        if (value->key == CRITERION_HEAT && isnan(limit)) /* its ripple alone is too much for it */
+            limit = value->limit;
         double u = 2 * sqrt(spread.variance[i]);
         struct criterion criterion = printed(value, limit, u, given->bound);
         struct verdict_case judged = {.value = value->value,

@@ -32,11 +32,15 @@ static void add_policy(struct place_values *values, enum criterion_key key, doub
             .key = key, .value = value, .limit = limit, .unit = unit, .source = SOURCE_POLICY});
 }
 
+double place_heat(const struct place_case *place, double leak_s)
+{
+    return leak_s * place->service_v * place->service_v + place->ripple_w;
+}
+
 static void add_heat(const struct place_case *place, double leak_s, struct place_values *values)
 {
     add_value(values, (struct place_value){.key = CRITERION_HEAT,
-                                           .value = leak_s * place->service_v * place->service_v +
-                                                    place->can_others_w,
+                                           .value = place_heat(place, leak_s) + place->can_others_w,
                                            .limit = place->heat_limit_w,
                                            .unit = UNIT_POWER,
                                            .source = place->heat_source});

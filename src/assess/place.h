@@ -62,6 +62,7 @@ struct place_case {
     const struct stage_group *group;
     const struct stage_circuit *circuits;
     const struct stage_solution *bare;
+    double ripple_w;      /* heat in the series resistance of a reservoir; 0: not known */
     double line_others_s; /* of the same AVC line */
     double can_others_w;  /* of the same can */
 };
@@ -77,6 +78,9 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
 
 /* All figures at a leak in siemens (>= 0). Only for why == WHY_NONE. */
 void place_evaluate(const struct place_case *place, double leak_s, struct place_values *values);
+
+/* W in the part: of its leak, and of the ripple. */
+double place_heat(const struct place_case *place, double leak_s);
 
 /* The stages of the place's group with the leak in them; false: no stage, or no solution. */
 bool place_solve(const struct place_case *place, double leak_s, struct stage_solution *solutions);

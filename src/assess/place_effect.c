@@ -31,14 +31,9 @@ static void add(struct gathering *to, const char *key, double value, enum unit u
                                                    .subject = subject};
 }
 
-static double leak_w(const struct gathering *to)
-{
-    return to->leak_s * to->place->service_v * to->place->service_v;
-}
-
 static void add_part_watts(struct gathering *to)
 {
-    add(to, "part_watts", leak_w(to), UNIT_POWER, to->place->heat_limit_w);
+    add(to, "part_watts", place_heat(to->place, to->leak_s), UNIT_POWER, to->place->heat_limit_w);
 }
 
 static void coupling_effects(struct gathering *to)

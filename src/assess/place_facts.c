@@ -3,6 +3,7 @@
 #include "assess/place.h"
 
 #include "assess/heat.h"
+#include "assess/supply.h"
 #include "assess/temperature.h"
 #include "job/place_needs.h"
 
@@ -268,6 +269,9 @@ struct place_case place_prepare(const struct place_bench *bench, const struct ca
     place.heat_source = heat_is_derived(bench->job, part) ? SOURCE_SELF_HEATING : SOURCE_POLICY;
     place.electrolytic = place.heat_counts = dielectric_is_electrolytic(part->type);
     place.margin = ageing_margin(bench->policy, part->type);
+    if (part->place == PLACE_RESERVOIR && part->measured.esr.set && part->current.set)
+        place.ripple_w = supply_ripple_watts(part->current.value, supply_is_full_wave(bench->job),
+                                             part->measured.esr.value);
     find_rule(&place);
     find_stage(&place);
     if (feeds_itself(&place))

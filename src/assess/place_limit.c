@@ -152,8 +152,8 @@ bool place_same_limit(const struct place_case *a, const struct place_case *b)
            same(a->source_ohm, b->source_ohm) && same(a->feed_ohm, b->feed_ohm) &&
            same(a->circuit_ohm, b->circuit_ohm) && same(a->current_a, b->current_a) &&
            same(a->feed_rating_w, b->feed_rating_w) && same(a->bias_v, b->bias_v) &&
-           same(a->heat_limit_w, b->heat_limit_w) && same(a->margin, b->margin) &&
-           same(a->rule_limit_a, b->rule_limit_a) && same(a->to_20c, b->to_20c) &&
-           same(a->part->shift.value, b->part->shift.value) &&
+           same(a->heat_limit_w, b->heat_limit_w) && same(a->ripple_w, b->ripple_w) &&
+           same(a->margin, b->margin) && same(a->rule_limit_a, b->rule_limit_a) &&
+           same(a->to_20c, b->to_20c) && same(a->part->shift.value, b->part->shift.value) &&
            a->part->shift.unit == b->part->shift.unit;
 }

@@ -213,7 +213,7 @@ static void tell_unknown_valve(const struct telling *telling, const struct stage
         diagnostic_add(telling->diagnostics, &telling->job->source, at, code,
                        needed ? "give a row of its manual: `row: va 250 V, vg1 -12.5 V, ia 45 mA, "
                                 "gm ...`"
-                              : "no part that was read stays unjudged for want of one",
+                              : "every part that was read is judged without it",
                        "no row for '%s' in the valve book", model->valve_type);
 }
 

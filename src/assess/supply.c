@@ -6,6 +6,7 @@
 #include <math.h>
 
 static const double two_pi = 6.283185307179586;
+static const double ripple_full_wave = 1.7, ripple_half_wave = 2.7;
 
 double supply_ripple(double current_a, double frequency_hz, double capacitance_f, double esr_ohm)
 {
@@ -15,6 +16,17 @@ double supply_ripple(double current_a, double frequency_hz, double capacitance_f
 double supply_sawtooth(double current_a, double frequency_hz, double capacitance_f)
 {
     return current_a / (frequency_hz * capacitance_f);
+}
+
+double supply_ripple_watts(double load_a, bool full_wave, double esr_ohm)
+{
+    double ripple_a = (full_wave ? ripple_full_wave : ripple_half_wave) * load_a;
+    return ripple_a * ripple_a * esr_ohm;
+}
+
+bool supply_is_full_wave(const struct job *job)
+{
+    return job->set.full_wave_set ? job->set.full_wave : job->set.supply != SUPPLY_LIVE_CHASSIS;
 }
 
 double supply_section_share(const struct supply_section *section, double frequency_hz)
@@ -40,9 +52,7 @@ static double ripple_frequency(const struct job *job, const struct capacitor *pa
         return part->ripple.value;
     if (!job->set.frequency.set)
         return NAN;
-    bool full =
-        job->set.full_wave_set ? job->set.full_wave : job->set.supply != SUPPLY_LIVE_CHASSIS;
-    return (full ? 2 : 1) * job->set.frequency.value;
+    return (supply_is_full_wave(job) ? 2 : 1) * job->set.frequency.value;
 }
 
 static struct hum unknown_hum(const struct quantity *measured)

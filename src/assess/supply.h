@@ -17,6 +17,14 @@ double supply_ripple(double current_a, double frequency_hz, double capacitance_f
 /* Peak to peak of the textbook's sawtooth: I/(f C), f the ripple's (I/(2 f C) by the mains'). */
 double supply_sawtooth(double current_a, double frequency_hz, double capacitance_f);
 
+/* W that a reservoir's ripple turns into heat in its series resistance, (k*I)^2*ESR: its current is
+   pulses, rms k times the load's, 1.7 by full wave and 2.7 by half wave. ngspice gives 1.60 to 1.72
+   and 2.58 to 2.67 for the supplies of tests/oracle; a high source resistance brings it down. */
+double supply_ripple_watts(double load_a, bool full_wave, double esr_ohm);
+
+/* What the job says of its rectifier, else half wave on a live chassis. */
+bool supply_is_full_wave(const struct job *job);
+
 /* Of one section: what stands in series, what smooths, what loads the smoothed node. */
 struct supply_section {
     double series_ohm, series_h;

@@ -243,7 +243,19 @@ static const char *criterion_value(const struct sheet_of_working *sheet,
                                            : figure(sheet, value, criterion->unit);
 }
 
-static void add_criteria(struct sheet_of_working *sheet, const struct capacitor_findings *part)
+/* A reservoir's heat has a part that no leak makes. */
+static const char *whole_formula(const struct sheet_of_working *sheet,
+                                 const struct part_working *given, enum criterion_key key)
+{
+    const char *formula = formula_of(key);
+    if (key != CRITERION_HEAT || !(given->ripple_w > 0))
+        return formula;
+    return FORMULA(sheet, "%s + (k I_line)² ESR, %s", formula,
+                   figure(sheet, given->ripple_w, UNIT_POWER));
+}
+
+static void add_criteria(struct sheet_of_working *sheet, const struct capacitor_findings *part,
+                         const struct part_working *given)
 {
     struct composition *composition = sheet->composition;
     for (size_t i = 0; i < part->criterion_count; i++) {
@@ -257,7 +269,7 @@ static void add_criteria(struct sheet_of_working *sheet, const struct capacitor_
             name,
             criterion->joint ? say(sheet, "joint") : NULL,
             criterion->rule,
-            formula_of(criterion->key),
+            whole_formula(sheet, given, criterion->key),
             limit ? FORMULA(sheet, "%s %s", criterion->upper ? "≤" : "≥", limit) : NULL,
         };
         add(sheet, "criterion", text_join(composition->arena, ", ", parts, 5),
@@ -297,7 +309,7 @@ static void capacitor_lines(struct sheet_of_working *sheet, size_t index)
     }
     add_facts(sheet, given);
     add_stage(sheet, given);
-    add_criteria(sheet, part);
+    add_criteria(sheet, part, given);
     add_limit(sheet, part);
     add(sheet, "outcome", part->why_text,
         phrase_in(&sheet->composition->say, "outcome", outcome_text(part->outcome)),

@@ -634,6 +634,15 @@ class Part:
             return self.job.policy["paper_w"]
         return self.job.policy["can_w"] if self.ref in self.job.cans else self.job.policy["tube_w"]
 
+    def ripple_w(self):
+        """Heat of a reservoir's pulses in its series resistance; the others carry little of them."""
+        s = self.job.y["set"]
+        esr, load = first(self.p.get("measured"), "R"), first(self.p.get("current"), "A")
+        if self.place != "reservoir" or not esr or not load:
+            return 0.0
+        half = "half" in s["rectifier"] if s.get("rectifier") else s.get("supply") == "live chassis"
+        return ((2.7 if half else 1.7) * load) ** 2 * esr
+
     def rule_limit(self):
         c, v = self.value * 1e6, self.marked_v
         k = 0.01 if v <= 100 else 0.02 if v <= 250 else 0.025 if v <= 350 else 0.04
@@ -647,7 +656,7 @@ class Part:
         feed = job.ohms(p.get("feed"), "found")
         v = self.service
         out = []
-        heat = (g * v * v, self.heat_limit())
+        heat = (g * v * v + self.ripple_w(), self.heat_limit())
         if self.stages and self.stages[0] in found and self.place in ("coupling", "screen bypass", "cathode bypass", "bias bypass"):
             names = job.group(found, self.stages[0])
             if bare_cache is not None and "bare" in bare_cache:

@@ -48,17 +48,21 @@ case_of() {
         echo ".tran 20u 4 3.8 20u uic"
         echo ".four $ripple v(n1) v(n2)"
         echo ".meas tran mean avg v(n2) from=3.8 to=4"
+        echo ".meas tran pulses rms v(e1) from=3.8 to=4"
         echo ".end"
     } >"$work/$name.cir"
     ngspice -b "$work/$name.cir" >"$work/$name.out" 2>&1 || true
     set -- $(awk '/^mean/ {mean = $3} /Fourier analysis for/ {n++} $1 == "1" && n {amplitude[n] = $3}
         END {print mean, amplitude[1] / sqrt(2), amplitude[2] / sqrt(2)}' "$work/$name.out")
     current=$(awk "BEGIN {print $1 / $load}")
-    set -- "$2" "$3" $("$work/predict" "$ripple" "$current" "$c1" "$esr1" "$rs" "$ls" "$c2" "$esr2" "$load")
+    set -- "$2" "$3" $("$work/predict" "$ripple" "$waves" "$current" "$c1" "$esr1" "$rs" "$ls" "$c2" "$esr2" "$load")
     # A choke beside the reservoir tunes with it: 1/(1 - 1/(w^2 L C)) more.
     high=$(awk "BEGIN {w = 6.283185 * $ripple; printf \"%.4g\", 0.98 / ($ls > 0 ? 1 - 1 / (w * w * $ls * $c1) : 1)}")
     row "$name: reservoir, ngspice over calculated" 0.84 "$high" "$(awk "BEGIN {print $1 / $3}")"
     row "$name: share behind the section, ngspice over calculated" 0.98 1.02 "$(awk "BEGIN {print $2 / $1 / $4}")"
+    # What heats the reservoir: v(e1) stands across its series resistance.
+    row "$name: rms current of the reservoir, ngspice over calculated" 0.93 1.02 \
+        "$(awk -v esr="$esr1" -v watts="$6" '/^pulses/ {print $3 / esr / sqrt(watts / esr)}' "$work/$name.out")"
 }
 case_of half_wave_RC 1 325 50 60 50e-6 1 1000 0 50e-6 1 4500
 case_of full_wave_RC 2 390 50 150 16e-6 3 1500 0 16e-6 3 5000

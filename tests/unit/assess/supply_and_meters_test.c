@@ -141,6 +141,32 @@ static void a_job_with_a_supply(void **state)
     bench_release(&bench);
 }
 
+/* 100 mA by full wave is 170 mA rms in the reservoir: 28.9 mW in 1 ohm beside 0.1 mA * 300 V, and
+   0.289 W in 10 ohm, more than a tubular of 0.05 W may be heated by, whatever it leaks. */
+static void ripple_heats_the_reservoir(void **state)
+{
+    (void)state;
+    struct bench bench;
+#define RESERVOIR(ref, measured)                                                                   \
+    "  " ref ":\n    type: electrolytic\n    marked: 16 uF 450 V\n    place: reservoir\n"          \
+    "    current: 100 mA\n    service: 300 V\n    measured: " measured                             \
+    "\n    readings:\n      - 300 V 60 s 0.1000 mA, 5 min 0.1000 mA\n"
+    bench_assess(&bench, HEAD METERS "capacitors:\n" RESERVOIR("C1", "16 uF 1 ohm")
+                             RESERVOIR("C2", "16 uF 10 ohm") RESERVOIR("C3", "16 uF"));
+#undef RESERVOIR
+    const struct criterion *heat = bench_criterion(bench_part(&bench, "C1"), CRITERION_HEAT, false);
+    assert_close(heat->value, 0.0300 + 0.0289, 1e-6);
+    assert_int_equal(heat->outcome, OUTCOME_FAIL); /* 0.0589 W of 0.05 W */
+    heat = bench_criterion(bench_part(&bench, "C2"), CRITERION_HEAT, false);
+    assert_close(heat->value, 0.0300 + 0.289, 1e-6);
+    assert_int_equal(heat->outcome, OUTCOME_FAIL);
+    assert_close(heat->limit, 0.05, 0);
+    heat = bench_criterion(bench_part(&bench, "C3"), CRITERION_HEAT, false);
+    assert_close(heat->value, 0.0300, 1e-6);
+    assert_int_equal(heat->outcome, OUTCOME_PASS);
+    bench_release(&bench);
+}
+
 static void hum_without_frequency(void **state)
 {
     (void)state;
@@ -209,6 +235,7 @@ int main(void)
         cmocka_unit_test(copper),
         cmocka_unit_test(decibels),
         cmocka_unit_test(a_job_with_a_supply),
+        cmocka_unit_test(ripple_heats_the_reservoir),
         cmocka_unit_test(hum_without_frequency),
         cmocka_unit_test(sheet_volts),
         cmocka_unit_test(safety_figures),
