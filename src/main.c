@@ -116,8 +116,8 @@ static bool open_archive(struct session *session, const char *job_path, struct a
                              ? archive_folder_of(job_path, &session->arena)
                              : ".";
     bool good = archive_open(archive, folder, share, &session->arena, &session->diagnostics);
-    if (!good)
-        show_diagnostics(&session->diagnostics, session->options.quiet);
+    show_diagnostics(&session->diagnostics, session->options.quiet);
+    session->diagnostics = diagnostics_in(&session->arena); /* what is told of shop.yaml is told */
     return good;
 }
 

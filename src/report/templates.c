@@ -93,7 +93,8 @@ static const struct words *open_words(const struct templates *templates, const s
     if (overlay)
         return words_read(&overlay->source, words, arena, diagnostics);
     diagnostic_add(diagnostics, &shop->source, (struct position){0, 0}, DIAGNOSTIC_FILE_UNREADABLE,
-                   NULL, "there is no templates/%s for the wording '%s'", name, shop->wording);
+                   "write wording: us, or make that file in the archive's templates",
+                   "there is no templates/%s for the wording '%s'", name, shop->wording);
     return words;
 }
 

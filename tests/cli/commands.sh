@@ -79,6 +79,18 @@ tells 'cannot be a job number'
 expect 3 "$program" sheet "$example/2031-014.yaml" -o "$work/nowhere/sheet.pdf"
 tells 'no such folder'
 
+printf 'name: Oxlade & Finch\naccent: #1b4b6b\n' >"$work/numbers/shop.yaml"
+for command in assess sheet; do
+    expect 0 "$program" $command "$work/numbers/2031-015.yaml"
+    tells "'accent' is empty: a # begins a comment"
+    [ "$(grep -c 'is empty' "$work/stderr")" = 1 ] || say_failed "$command tells of shop.yaml more than once"
+done
+expect 0 "$program" publish "$work/numbers" -o "$work/numbers-out"
+tells "'accent' is empty: a # begins a comment"
+echo 'wording: US' >"$work/numbers/shop.yaml"
+expect 2 "$program" assess "$work/numbers/2031-015.yaml"
+tells 'write wording: us'
+
 # ---- assess
 for job in "$example"/2*.yaml; do
     expect 0 "$program" assess "$job"
