@@ -1,6 +1,8 @@
 /* Registers, measurements and soak curves of the record; what each says of the owner. */
 #include "sample.h"
 
+#include "report/composition.h"
+
 #include "kit.h"
 
 /* What the plain sample leaves out. */
@@ -167,6 +169,50 @@ static void test_registers(void **state)
     sample_end(sample, document);
 }
 
+/* 870 ohm, a wirewound of its day, is no value of IEC 60063; 270 ohm is one of E12. */
+static void test_a_value_of_no_series_is_noted(void **state)
+{
+    (void)state;
+    static const struct {
+        enum e_series series;
+        bool noted;
+    } rows[] = {{E_SERIES_12, false}, {E_SERIES_COUNT, true}};
+    for (size_t i = 0; i < sizeof rows / sizeof *rows; i++) {
+        struct sample *sample = sample_begin();
+        struct resistor_findings found = {
+            .series = rows[i].series, .effect_percent = NAN, .dissipation = {.value = NAN}};
+        sample->job.reform_count = 0;
+        sample->findings.bench.resistors = &found;
+        struct document *document = sample_compose(sample, DOCUMENT_RECORD);
+        const struct table *table = table_of(document, "resistors");
+        bool noted = false;
+        for (size_t k = 0; k < table->note_count; k++)
+            noted |= strstr(table->notes[k], "IEC 60063") != NULL;
+        assert_true(noted == rows[i].noted);
+        sample_end(sample, document);
+    }
+}
+
+static void test_refs_are_set_apart(void **state)
+{
+    (void)state;
+    static const char *const rows[][2] = {
+        {"C7 C14 CAN1", "C7, C14, CAN1"},
+        {"C19 R3, tied inside", "C19, R3, tied inside"},
+        {"V1 V2.", "V1, V2."},
+        {"the C14 C15 pair", "the C14, C15 pair"},
+        {"C14 seen from CAN1", "C14 seen from CAN1"},
+        {"EL84 6V6", "EL84 6V6"},
+        {"C1a C2", "C1a C2"},
+        {"", ""},
+    };
+    struct arena arena = {0};
+    for (size_t i = 0; i < sizeof rows / sizeof *rows; i++)
+        assert_string_equal(text_refs(&arena, rows[i][0]), rows[i][1]);
+    assert_null(text_refs(&arena, NULL));
+    arena_release(&arena);
+}
+
 static void test_measurements(void **state)
 {
     (void)state;
@@ -258,6 +304,8 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(test_registers),
+        cmocka_unit_test(test_a_value_of_no_series_is_noted),
+        cmocka_unit_test(test_refs_are_set_apart),
         cmocka_unit_test(test_measurements),
         cmocka_unit_test(test_soak_curve),
         cmocka_unit_test(test_owner_in_registers),
