@@ -13,6 +13,7 @@
 #include "base/options.h"
 #include "job/manual.h"
 #include "job/schema.h"
+#include "quantity/quantity.h"
 #include "write/json.h"
 
 #include <errno.h>
@@ -352,9 +353,33 @@ static int command_publish(struct session *session)
 
 /* ---- find */
 
+/* A date of a pair is compared as text: 2031, 2031-02 and 2031-02-10 are good, 3/2/31 is not. */
+static bool pair_is_good(struct session *session, const char *term)
+{
+    static const char *const dates[] = {"from=", "to=", "due="};
+    const char *equals = strchr(term, '=');
+    if (equals && !equals[1]) {
+        fprintf(stderr, "gridleak: nothing stands behind '%s'\n", term);
+        return false;
+    }
+    for (size_t i = 0; i < sizeof dates / sizeof *dates; i++) {
+        size_t length = strlen(dates[i]);
+        const char *value = term + length;
+        if (strncmp(term, dates[i], length) != 0 || strspn(value, "0123456789-") == strlen(value))
+            continue;
+        fprintf(stderr, "gridleak: '%s' is no date: %s\n", value,
+                date_hint(&session->arena, value, strlen(value)));
+        return false;
+    }
+    return true;
+}
+
 static int command_find(struct session *session)
 {
     const char *output = session->options.output ? session->options.output : "output";
+    for (int i = 0; i < session->operand_count; i++)
+        if (!pair_is_good(session, session->operands[i]))
+            return EXIT_INPUT;
     struct columns columns = {0};
     struct buffer lines = {0}, out = {0};
     size_t damaged;

@@ -186,6 +186,13 @@ expect 0 "$program" publish signs -o signs-out
 tells '^signs/2031-001.yaml: warning: no font has the sign U+3400'
 [ "$(grep -c 'no font has' "$work/stderr")" = 1 ] || say_failed "a missing sign is told more than once"
 
+# ---- find: a date in another form is no empty answer
+expect 2 "$program" find from=3/2/31 -o signs-out
+tells "'3/2/31' is no date: write 2031-02-03 or 2031-03-02"
+expect 0 "$program" find from=2031 -o signs-out
+expect 2 "$program" find place= -o signs-out
+tells "nothing stands behind 'place='"
+
 # ---- seal and prove
 expect 2 "$program" prove "$work/nowhere"
 tells 'is no folder'
