@@ -65,9 +65,17 @@ void pdf_text_prepare(struct pdf_resources *resources)
 unsigned long pdf_text_width(const struct pdf_resources *resources, enum text_face face,
                              const char *text, size_t length)
 {
+    const struct glyph_place *latin = resources->latin[face];
     unsigned long total = 0;
-    for (const char *end = text + length; text < end;)
-        total += pdf_character_width(resources, face, utf8_next(&text, end));
+    for (const char *end = text + length; text < end;) {
+        unsigned char byte = (unsigned char)*text;
+        if (byte < 0x80) {
+            total += latin[byte].advance;
+            text++;
+        } else {
+            total += pdf_character_width(resources, face, utf8_next_long(&text, end));
+        }
+    }
     return total;
 }
 

@@ -13,10 +13,23 @@ struct slots {
     size_t lead, tail, unit, second;
 };
 
+/* One text is made at a time, so that all share the memory that the longest needs. */
 struct composing {
     const struct table_text_style *style;
     struct arena *arena;
+    struct buffer *made, *figures;
 };
+
+static struct buffer *begin(const struct composing *composing)
+{
+    buffer_clear(composing->made);
+    return composing->made;
+}
+
+static const char *keep(const struct composing *composing)
+{
+    return arena_text(composing->arena, composing->made->data, composing->made->length);
+}
 
 static size_t columns_of(const char *text)
 {
@@ -28,13 +41,11 @@ static const char *escaped(const struct composing *composing, const char *open, 
 {
     if (!text || (!text[0] && !open[0] && !close[0]))
         return "";
-    struct buffer out = {0};
-    buffer_text(&out, open);
-    composing->style->escape(&out, text);
-    buffer_text(&out, close);
-    const char *copy = arena_text(composing->arena, out.data, out.length);
-    buffer_release(&out);
-    return copy;
+    struct buffer *out = begin(composing);
+    buffer_text(out, open);
+    composing->style->escape(out, text);
+    buffer_text(out, close);
+    return keep(composing);
 }
 
 static void append_figures(struct buffer *out, const struct figures *figures)
@@ -47,28 +58,28 @@ static void append_figures(struct buffer *out, const struct figures *figures)
 static struct parts parts_of(const struct composing *composing, const struct cell *cell)
 {
     struct parts parts = {"", "", "", ""};
-    struct buffer text = {0};
+    struct buffer *figures = composing->figures;
     const char *open = cell->strong ? composing->style->strong_open : "",
                *close = cell->strong ? composing->style->strong_close : "";
     if (cell->figures.whole) {
-        append_figures(&text, &cell->figures);
-        parts.lead = escaped(composing, open, buffer_string(&text), "");
+        buffer_clear(figures);
+        append_figures(figures, &cell->figures);
+        parts.lead = escaped(composing, open, buffer_string(figures), "");
         parts.tail = escaped(composing, "", cell->figures.fraction, close);
         parts.unit = escaped(composing, "", cell->figures.unit, "");
     } else if (cell->text) {
         parts.lead = escaped(composing, open, cell->text, close);
     }
     if (cell->second_figures.whole) {
-        buffer_clear(&text);
-        append_figures(&text, &cell->second_figures);
-        buffer_text(&text, cell->second_figures.fraction);
-        buffer_text(&text, cell->second_figures.unit[0] ? " " : "");
-        buffer_text(&text, cell->second_figures.unit);
-        parts.second = escaped(composing, "", buffer_string(&text), "");
+        buffer_clear(figures);
+        append_figures(figures, &cell->second_figures);
+        buffer_text(figures, cell->second_figures.fraction);
+        buffer_text(figures, cell->second_figures.unit[0] ? " " : "");
+        buffer_text(figures, cell->second_figures.unit);
+        parts.second = escaped(composing, "", buffer_string(figures), "");
     } else if (cell->second) {
         parts.second = escaped(composing, "", cell->second, "");
     }
-    buffer_release(&text);
     return parts;
 }
 
@@ -109,24 +120,22 @@ static const char *number_text(const struct composing *composing, const struct p
 {
     if (!parts->lead[0] && !parts->second[0])
         return "";
-    struct buffer out = {0};
+    struct buffer *out = begin(composing);
     if (number) {
-        append_slot(&out, parts->lead, slots->lead, true);
-        append_slot(&out, parts->tail, slots->tail, false);
+        append_slot(out, parts->lead, slots->lead, true);
+        append_slot(out, parts->tail, slots->tail, false);
         if (slots->unit) {
-            buffer_byte(&out, ' ');
-            append_slot(&out, parts->unit, slots->unit, false);
+            buffer_byte(out, ' ');
+            append_slot(out, parts->unit, slots->unit, false);
         }
     } else {
-        buffer_text(&out, parts->lead);
+        buffer_text(out, parts->lead);
     }
     if (slots->second) {
-        buffer_byte(&out, ' ');
-        append_slot(&out, parts->second, slots->second, true);
+        buffer_byte(out, ' ');
+        append_slot(out, parts->second, slots->second, true);
     }
-    const char *text = arena_text(composing->arena, out.data, out.length);
-    buffer_release(&out);
-    return text;
+    return keep(composing);
 }
 
 /* Raised figures, so that a ref stays a word for itself. */
@@ -145,34 +154,30 @@ static void append_notes(struct buffer *out, const char *notes)
 static const char *words_text(const struct composing *composing, const struct cell *cell,
                               enum column_kind kind)
 {
-    struct buffer out = {0};
+    struct buffer *out = begin(composing);
     bool strong = cell->strong && kind != COLUMN_REF && cell->text && cell->text[0];
-    buffer_text(&out, strong ? composing->style->strong_open : "");
-    composing->style->escape(&out, cell->text);
-    buffer_text(&out, strong ? composing->style->strong_close : "");
+    buffer_text(out, strong ? composing->style->strong_open : "");
+    composing->style->escape(out, cell->text);
+    buffer_text(out, strong ? composing->style->strong_close : "");
     if (cell->notes)
-        append_notes(&out, cell->notes);
+        append_notes(out, cell->notes);
     bool apart = kind == COLUMN_OUTCOME && composing->style->reasons_apart;
     if (cell->second && cell->second[0] && !apart) {
-        buffer_text(&out, out.length ? ", " : "");
-        composing->style->escape(&out, cell->second);
+        buffer_text(out, out->length ? ", " : "");
+        composing->style->escape(out, cell->second);
     }
-    const char *text = arena_text(composing->arena, out.data, out.length);
-    buffer_release(&out);
-    return text;
+    return keep(composing);
 }
 
 static const char *head_text(const struct composing *composing, const struct column *column)
 {
-    struct buffer out = {0};
-    composing->style->escape(&out, column->head);
+    struct buffer *out = begin(composing);
+    composing->style->escape(out, column->head);
     if (column->unit && column->unit[0]) {
-        buffer_text(&out, out.length ? " " : "");
-        composing->style->escape(&out, column->unit);
+        buffer_text(out, out->length ? " " : "");
+        composing->style->escape(out, column->unit);
     }
-    const char *text = arena_text(composing->arena, out.data, out.length);
-    buffer_release(&out);
-    return text;
+    return keep(composing);
 }
 
 static const char **cell_at(struct table_text *text, size_t row, size_t column)
@@ -236,7 +241,8 @@ static void compose_column(const struct composing *composing, struct table_text 
 struct table_text table_text_of(const struct table *table, const struct table_text_style *style,
                                 struct arena *arena)
 {
-    struct composing composing = {style, arena};
+    struct buffer made = {0}, figures = {0};
+    struct composing composing = {style, arena, &made, &figures};
     size_t columns = table->column_count;
     struct table_text text = {
         .table = table,
@@ -246,6 +252,8 @@ struct table_text table_text_of(const struct table *table, const struct table_te
         .aligned_right = arena_array(arena, columns, sizeof *text.aligned_right)};
     for (size_t column = 0; column < columns; column++)
         compose_column(&composing, &text, column);
+    buffer_release(&made);
+    buffer_release(&figures);
     return text;
 }
 
