@@ -8,8 +8,15 @@
 
 enum { INPUT_CURRENT, INPUT_STEP, INPUT_VOLTS, INPUT_SERIES, INPUT_TEMPERATURE, INPUT_COUNT };
 
-/* The bench's temperature is known to +-1 K, a rectangle. */
-static const double bench_half_width_k = 1;
+/* A temperature is known to +-1 K, a rectangle: the bench's, or that of a part read hot. */
+static const double temperature_half_width_k = 1;
+
+/* Read hot enough: no factor, and no temperature in the result. */
+static bool replaces_factor(const struct leak_case *given)
+{
+    return given->reading->reading->hot.set &&
+           given->reading->temperature_c >= given->working_c - TEMPERATURE_HOT_ENOUGH_K;
+}
 
 static double conductance(const double *inputs, const void *context)
 {
@@ -26,8 +33,9 @@ static double conductance(const double *inputs, const void *context)
             .lower_bound;
     double scale =
         voltage_factor_near(part_v, given->service_v, given->exponent, electrolytic, lower_bound);
+    /* Which side of "hot enough" the reading lies on is certain; its temperature is not. */
     double factor = temperature_factor(given->type, inputs[INPUT_TEMPERATURE], given->working_c,
-                                       reading->hot.set);
+                                       replaces_factor(given));
     return current_a * scale * factor / given->service_v;
 }
 
@@ -51,25 +59,27 @@ struct leak leak_of(const struct leak_case *given)
     const struct reading_findings *reading = given->reading;
     struct reading_uncertainty u =
         reading_uncertainty(reading->reading, &given->bench, reading->current_a);
-    double bench_u =
-        reading->reading->hot.set ? 0 : uncertainty_of_accuracy(1, 0, bench_half_width_k);
+    double temperature_u =
+        replaces_factor(given) ? 0 : uncertainty_of_accuracy(1, 0, temperature_half_width_k);
     struct uncertain inputs[INPUT_COUNT] = {
         [INPUT_CURRENT] = {reading->current_a, u.accuracy_a, 0},
         [INPUT_STEP] = {0, u.resolution_a, 0},
         [INPUT_VOLTS] = {reading->reading->set_volts.value, u.set_v, 0},
         [INPUT_SERIES] = {reading_series_ohm(given->bench.instrument), u.series_ohm, 0},
-        [INPUT_TEMPERATURE] = {reading->temperature_c, bench_u, 0},
+        [INPUT_TEMPERATURE] = {reading->temperature_c, temperature_u, 0},
     };
     struct uncertainty_budget budget = {.inputs = inputs, .input_count = INPUT_COUNT};
     struct uncertainty_result result;
     if (uncertainty_propagate(conductance, given, &budget, &result) != UNCERTAINTY_OK)
         return leak;
-    double own = result.contributions[INPUT_STEP];
-    leak.own_s = fabs(own);
+    double step = result.contributions[INPUT_STEP];
+    double temperature = result.contributions[INPUT_TEMPERATURE];
+    bool hot = reading->reading->hot.set;
+    leak.own_s = hot ? hypot(step, temperature) : fabs(step);
+    leak.bench_s = hot ? 0 : fabs(temperature);
     leak.standard_s = result.standard;
-    double bench = result.contributions[INPUT_TEMPERATURE];
-    leak.bench_s = fabs(bench);
-    leak.common_s = sqrt(fmax(result.standard * result.standard - own * own - bench * bench, 0));
+    leak.common_s =
+        sqrt(fmax(result.standard * result.standard - step * step - temperature * temperature, 0));
     return leak;
 }
 

@@ -28,7 +28,7 @@ struct leak {
     double common_s;   /* by what all readings of the instrument share: accuracy, volts, series
                           resistance */
     double bench_s;    /* by the bench's temperature, which all cold readings of the job share */
-    double own_s;      /* by the last step of the display */
+    double own_s;      /* by the last step of the display, and the temperature of a part read hot */
     double standard_s; /* all three */
 };
 

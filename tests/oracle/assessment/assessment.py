@@ -549,7 +549,8 @@ class Reading:
         third = math.sqrt(3)
         return [("accuracy", (self.p * self.current + self.abs_a) / third), ("step", self.step_a / math.sqrt(12)),
                 ("volts", self.pv * self.r["volts"] / third), ("series", self.pv * self.series / third),
-                ("bench", 0.0 if self.r["hot"] is not None else 1 / third)]
+                ("bench", 0.0 if self.r["hot"] is not None else 1 / third),
+                ("part", 1 / third if self.r["hot"] is not None and self.r["hot"] < self.working - 3 else 0.0)]
 
     def u_at(self, current):
         if self.r["kind"] == "R":  # ohms: what it cannot tell grows with the square of the current
@@ -808,8 +809,9 @@ class Part:
         _, was_bound = voltage_factor(reading.part_v, self.service, self.b, self.electrolytic)
         if bound != was_bound:
             factor = (self.service / part_v) ** (1 if was_bound else 5 if self.electrolytic else 2)
-        temp = reading.temp + moved.get("bench", 0)
-        return current * factor * temperature_factor(self.kind, temp, self.working, reading.r["hot"] is not None), bound, current * factor
+        temp = reading.temp + moved.get("bench", 0) + moved.get("part", 0)
+        hot = reading.r["hot"] is not None and reading.temp >= self.working - 3  # that is certain
+        return current * factor * temperature_factor(self.kind, temp, self.working, hot), bound, current * factor
 
     def limit_at(self, reading, limit_a):
         factor = temperature_factor(self.kind, reading.temp, self.working, reading.r["hot"] is not None)
@@ -831,9 +833,14 @@ class Part:
             t += c * volts / reading.supply
         return max(floor, t)
 
+    def reading(self, said):
+        found = Reading(self.job, said)
+        found.working = self.working
+        return found
+
     def choose(self, latest):
         order = ["found", "reformed", "left"]
-        usable = [(i, Reading(self.job, r)) for i, r in enumerate(self.readings)
+        usable = [(i, self.reading(r)) for i, r in enumerate(self.readings)
                   if not r["circuit"] and order.index(r["state"]) <= order.index(latest)]
         if not usable:
             return None
@@ -852,10 +859,10 @@ class Part:
 
     def rising(self, index):
         """"rising", "falling", "level" or None of the run that ends with a reading."""
-        end = Reading(self.job, self.readings[index])
+        end = self.reading(self.readings[index])
         run = []
         for i in range(index + 1):
-            r = Reading(self.job, self.readings[i])
+            r = self.reading(self.readings[i])
             if r.r["run"] == end.r["run"] and r.r["by"] == end.r["by"] and abs(r.part_v - end.part_v) <= 0.005 * end.part_v \
                     and abs(r.temp - end.temp) <= 1 and r.r["time"]:
                 run.append(r)
@@ -951,8 +958,9 @@ def spread(part, leaks, to20):
     step = {s: {id(r): {"bench": s * dict(r.inputs())["bench"]} for _, r in leaks} for s in (1, -1)}
     add(figures(step[1]), figures(step[-1]))
     for _, r in leaks:
-        u = dict(r.inputs())["step"]
-        add(figures({id(r): {"step": u}}), figures({id(r): {"step": -u}}))
+        for cause in ("step", "part"):
+            u = dict(r.inputs())[cause]
+            add(figures({id(r): {cause: u}}), figures({id(r): {cause: -u}}))
     for ref in place_refs(part):
         ohm = first(job.resistors[ref]["measured"], "R")
         u = job.policy["accuracy"] * ohm / math.sqrt(3)
@@ -1064,7 +1072,7 @@ def main():
                 outcome, criteria, soaked, proven = judge(part, chosen, limit_s, bare)
                 # An early reading that does not pass gives way to the one soaked longest.
                 if outcome == "not judged" and not soaked:
-                    soak = [(i, Reading(job, r)) for i, r in enumerate(part.readings) if not r["circuit"] and r["state"] == chosen[1].r["state"]]
+                    soak = [(i, part.reading(r)) for i, r in enumerate(part.readings) if not r["circuit"] and r["state"] == chosen[1].r["state"]]
                     soak = [(i, r) for i, r in soak if r.r["time"] and r.r["time"] >= part.t_min(r, limit_a)]
                     if soak:
                         chosen = max(soak, key=lambda x: (x[1].part_v >= 0.95 * part.service, x[1].r["time"]))
