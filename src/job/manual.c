@@ -12,6 +12,7 @@ struct wrap {
     struct buffer *out;
     unsigned indent;
     size_t column; /* where the next word would begin; 0: at the start of a line */
+    unsigned hang; /* further in from the second line on: a value goes on deeper than its key */
 };
 
 static void wrap_words(struct wrap *wrap, const char *text)
@@ -24,6 +25,8 @@ static void wrap_words(struct wrap *wrap, const char *text)
         if (wrap->column > wrap->indent && wrap->column + 1 + length > WIDTH) {
             buffer_byte(wrap->out, '\n');
             wrap->column = 0;
+            wrap->indent += wrap->hang;
+            wrap->hang = 0;
         }
         if (wrap->column == 0) {
             buffer_print(wrap->out, "%*s", (int)wrap->indent, "");
@@ -85,7 +88,7 @@ static void field_write(struct buffer *out, const struct field *field, unsigned 
     struct buffer text = {0};
     typed_text(&text, field);
     bool fits = indent + text.length <= MEANING_COLUMN - 2;
-    struct wrap typed = {out, indent, 0};
+    struct wrap typed = {out, indent, 0, 2};
     wrap_words(&typed, buffer_string(&text));
     if (fits)
         buffer_print(out, "%*s", (int)(MEANING_COLUMN - typed.column), "");
@@ -94,7 +97,7 @@ static void field_write(struct buffer *out, const struct field *field, unsigned 
     buffer_clear(&text);
     buffer_print(&text, "%s%s", field->text, field->required ? " (required)" : "");
     takes_text(&text, field);
-    struct wrap meaning = {out, MEANING_COLUMN, fits ? MEANING_COLUMN : 0};
+    struct wrap meaning = {out, MEANING_COLUMN, fits ? MEANING_COLUMN : 0, 0};
     wrap_words(&meaning, buffer_string(&text));
     wrap_end(&meaning);
     below_text(out, field, indent);
@@ -113,7 +116,7 @@ static void places_write(struct buffer *out)
 
 static void record_write(struct buffer *out, const struct record *record)
 {
-    struct wrap wrap = {out, 2, 0};
+    struct wrap wrap = {out, 2, 0, 0};
     buffer_print(out, "\n%s\n", record->section);
     wrap_words(&wrap, record->text);
     wrap_end(&wrap);
