@@ -120,8 +120,28 @@ static struct place_limit place_find_limit(const struct place_case *place)
     return limit;
 }
 
+/* Of several grids behind one capacitor the one that bears least is judged. */
+static void choose_grid(struct place_case *place)
+{
+    double least_leak_s = INFINITY;
+    struct place_case tried = *place;
+    for (size_t i = 0; i < place->part->stage_count; i++) {
+        tried.model = &place->stages->models[place->part->stages[i]];
+        if (tried.model->why != WHY_NONE || tried.model->group != place->model->group ||
+            !tried.model->grid_leak_known)
+            continue;
+        double leak_s = place_find_limit(&tried).leak_s;
+        if (leak_s < least_leak_s) {
+            least_leak_s = leak_s;
+            place->model = tried.model;
+        }
+    }
+}
+
 struct place_limit place_set_limit(struct place_case *place)
 {
+    if (place->part->place == PLACE_COUPLING && place->part->stage_count > 1)
+        choose_grid(place);
     struct place_limit limit = place_find_limit(place);
     double heat_w = limit.leak_s * place->margin * place->service_v * place->service_v;
     if (!place->heat_counts && heat_w > place->heat_limit_w) {

@@ -435,6 +435,27 @@ static bool same_node(int a, int b)
     return a != NODE_NONE && a == b;
 }
 
+static bool names_stage(const struct capacitor *part, int stage)
+{
+    for (size_t i = 0; i < part->stage_count; i++)
+        if (part->stages[i] == stage)
+            return true;
+    return false;
+}
+
+/* One capacitor leaks into both. */
+static bool share_capacitor(const struct job *job, int a, int b)
+{
+    for (size_t i = 0; i < job->capacitor_count; i++) {
+        const struct capacitor *part = &job->capacitors[i];
+        bool leaks_in = part->place == PLACE_COUPLING || part->place == PLACE_SCREEN_BYPASS ||
+                        part->place == PLACE_CATHODE_BYPASS || part->place == PLACE_BIAS_BYPASS;
+        if (part->stage_count > 1 && leaks_in && names_stage(part, a) && names_stage(part, b))
+            return true;
+    }
+    return false;
+}
+
 static bool hang_together(const struct job *job, const struct stage_model *a,
                           const struct stage_model *b)
 {
@@ -443,7 +464,7 @@ static bool hang_together(const struct job *job, const struct stage_model *a,
         same_node(one->screen_node, two->screen_node) || same_node(one->bias_node, two->bias_node))
         return true;
     int index_a = (int)(a->stage - job->stages), index_b = (int)(b->stage - job->stages);
-    return a->partner == index_b || b->partner == index_a;
+    return a->partner == index_b || b->partner == index_a || share_capacitor(job, index_a, index_b);
 }
 
 /* Add to the group all that hangs on its members, breadth first. */

@@ -2,8 +2,8 @@
  * The stages of a job as circuits: which valve row, which resistors as designed, found and left,
  * which stages hang together. Built once for a job; then const.
  *
- * Stages that name the same resistor (or stand in one push-pull pair, or are bypassed by one
- * capacitor) form a group that is solved together.
+ * Stages that name the same resistor (or stand in one push-pull pair, or have one capacitor leak
+ * into them) form a group that is solved together.
  */
 #ifndef ASSESS_STAGE_H
 #define ASSESS_STAGE_H

@@ -265,6 +265,31 @@ static void test_anchor_of_two_on_one_resistor(void **state)
     bench_release(&bench);
 }
 
+/* One capacitor on two grids, or one bypass on two fixed biases, is judged by the stage that bears
+   least, whichever is named first; alone on it the same leak is allowed. */
+static void test_the_stage_that_bears_least(void **state)
+{
+    (void)state;
+    struct bench bench;
+#define GRID(name, valve, leak)                                                                    \
+    "  " name ":\n    valve: " valve " 6V6GT\n" ROW_6V6                                            \
+    "    supply: 250 V\n    bias: -12.5 V\n    grid_leak: " leak "\n"
+#define COUPLED(ref, stages)                                                                       \
+    "  " ref                                                                                       \
+    ":\n    type: mica\n    marked: 0.02 uF 400 V\n    place: coupling\n    stage: " stages        \
+    "\n    source: 100 V\n"
+    bench_assess(&bench, HEAD METER "stages:\n" GRID("low", "V4", "100k") GRID("high", "V5", "470k")
+                             GRID("apart", "V6", "470k") "capacitors:\n" COUPLED("C1", "low, high")
+                                 COUPLED("C2", "high, low") COUPLED("C3", "apart"));
+#undef GRID
+#undef COUPLED
+    double alone_a = bench_part(&bench, "C3")->limit_a;
+    assert_true(alone_a > 0);
+    assert_relative(bench_part(&bench, "C1")->limit_a, alone_a, 1e-6);
+    assert_relative(bench_part(&bench, "C2")->limit_a, alone_a, 1e-6);
+    bench_release(&bench);
+}
+
 static void test_measured_resistors_and_joint_leaks(void **state)
 {
     (void)state;
@@ -431,6 +456,7 @@ int main(void)
         cmocka_unit_test(test_grid_current_is_what_leakage_leaves),
         cmocka_unit_test(test_anchor_on_a_lifted_cathode_voltage),
         cmocka_unit_test(test_anchor_of_two_on_one_resistor),
+        cmocka_unit_test(test_the_stage_that_bears_least),
         cmocka_unit_test(test_measured_resistors_and_joint_leaks),
         cmocka_unit_test(test_stages_that_one_capacitor_bypasses),
         cmocka_unit_test(test_rows_given_for_unknown_types),
