@@ -218,7 +218,7 @@ struct part_working {
     double rule_limit_a, to_20c; /* leakage rule at rated volts, 20 C; the reading's share there */
     const char *rule;
     double heat_limit_w, ripple_w; /* of a reservoir with its resistance measured; 0 */
-    bool staged; /* solved in a stage: what follows is set */
+    bool staged;                   /* solved in a stage: what follows is set */
     const struct stage_findings *stage;
     double d0_v, ik0_a, exponent; /* of the law */
     struct stage_solution bare, leaking;
