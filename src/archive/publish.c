@@ -336,6 +336,8 @@ struct publish_result publish(const struct archive *archive, const struct publis
     struct publish_work work = {
         .archive = archive, .request = request, .result = &result, .arena = arena};
     work.named = request->job_path_count > 0;
+    setting_hash(archive,
+                 work.setting); /* before any waiting: of what the archive was opened with */
     fail(&work, folder_make(request->output), request->output);
     if (result.failure != FILE_OK)
         return result;
@@ -349,7 +351,6 @@ struct publish_result publish(const struct archive *archive, const struct publis
         return result;
     if (!work.named)
         clear_left_over(request->output, arena);
-    setting_hash(archive, work.setting);
     if (work.named)
         publish_named(&work);
     else if (request->pages_only)

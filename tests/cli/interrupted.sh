@@ -70,6 +70,20 @@ for turn in 1 2 3 4 5 6; do
         say_failed "changed while published, turn $turn: the old one stays: $(head -n 3 difference)"
 done
 
+# ---- the shop's name changes while a publish waits for another
+rm -rf cut moving
+cp -r old moving
+expect 0 "$program" publish moving -q -o cut
+python3 "$here/hold_lock.py" cut/.gridleak/lock 2 >holder &
+while [ ! -s holder ]; do sleep 0.05; done
+"$program" publish moving -q --wait -o cut 2>/dev/null &
+waiting=$!
+sleep 1
+sed -i 's/^name: .*/name: Another Shop/' moving/shop.yaml
+wait $waiting
+expect 0 "$program" publish moving -q -o cut
+grep -q 'Another Shop' cut/jobs/2031-014/shop.md || say_failed "changed while it waited: the old name stays"
+
 # ---- a full disk: a small file system of its own where that is allowed, else a limit on file sizes
 mkdir disk
 if mount -t tmpfs -o size=20m tmpfs disk 2>/dev/null; then
