@@ -381,10 +381,10 @@ static int command_find(struct session *session)
         if (!pair_is_good(session, session->operands[i]))
             return EXIT_INPUT;
     struct columns columns = {0};
-    struct buffer lines = {0}, out = {0};
+    struct buffer out = {0};
     size_t damaged;
     int answer = EXIT_INPUT;
-    if (find_read(output, &columns, &lines, &damaged) != FILE_OK) {
+    if (find_read(output, &columns, &damaged) != FILE_OK) {
         fprintf(stderr, "gridleak: there is no '%s/summaries.jsonl': publish first\n", output);
     } else {
         struct query_hits hits = query_run(&columns, (const char *const *)session->operands,
@@ -405,7 +405,6 @@ static int command_find(struct session *session)
         }
     }
     buffer_release(&out);
-    buffer_release(&lines);
     columns_release(&columns);
     return answer;
 }

@@ -3,7 +3,6 @@
 #include "archive/summary_scan.h"
 #include "base/memory.h"
 
-#include <math.h>
 #include <stdlib.h>
 #include <string.h>
 
@@ -11,111 +10,6 @@
 const char *const job_column_keys[] = {JOB_COLUMNS(COLUMN_KEY) NULL};
 const char *const part_column_keys[] = {PART_COLUMNS(COLUMN_KEY) NULL};
 const char *const again_column_keys[] = {AGAIN_COLUMNS(COLUMN_KEY) NULL};
-
-/* ---- dictionaries */
-
-static uint32_t hash_text_of(const char *text, size_t length)
-{
-    uint64_t hash = 0x9E3779B97F4A7C15u ^ length;
-    for (; length >= 8; length -= 8, text += 8) {
-        uint64_t word;
-        memcpy(&word, text, 8);
-        hash = (hash ^ word) * 0xD6E8FEB86659FD93u;
-        hash ^= hash >> 32;
-    }
-    uint64_t rest = 0;
-    memcpy(&rest, text, length);
-    hash = (hash ^ rest) * 0xD6E8FEB86659FD93u;
-    return (uint32_t)(hash >> 32);
-}
-
-static void grow_slots(struct dictionary *dictionary)
-{
-    dictionary->slot_count = dictionary->slot_count ? dictionary->slot_count * 2 : 64;
-    free(dictionary->slots);
-    dictionary->slots = memory_get_cleared(dictionary->slot_count, sizeof *dictionary->slots);
-    for (uint32_t code = 0; code < dictionary->count; code++) {
-        uint32_t slot = dictionary->entries[code].hash & (dictionary->slot_count - 1);
-        while (dictionary->slots[slot])
-            slot = (slot + 1) & (dictionary->slot_count - 1);
-        dictionary->slots[slot] = code + 1;
-    }
-}
-
-static uint32_t add_entry(struct dictionary *dictionary, struct arena *arena,
-                          struct dictionary_entry entry)
-{
-    if (dictionary->count == dictionary->capacity) {
-        dictionary->capacity = dictionary->capacity ? dictionary->capacity * 2 : 16;
-        dictionary->entries =
-            memory_resize(dictionary->entries, dictionary->capacity * sizeof *dictionary->entries);
-    }
-    entry.text = arena_text(arena, entry.text, entry.length);
-    dictionary->entries[dictionary->count] = entry;
-    return dictionary->count++;
-}
-
-static uint32_t find_or_add(struct dictionary *dictionary, struct arena *arena, const char *text,
-                            size_t length)
-{
-    if ((dictionary->count + 1) * 2 > dictionary->slot_count)
-        grow_slots(dictionary);
-    struct dictionary_entry entry = {text, (uint32_t)length, hash_text_of(text, length)};
-    uint32_t slot = entry.hash & (dictionary->slot_count - 1);
-    for (uint32_t found; (found = dictionary->slots[slot]) != 0;
-         slot = (slot + 1) & (dictionary->slot_count - 1)) {
-        const struct dictionary_entry *here = &dictionary->entries[found - 1];
-        if (here->hash == entry.hash && here->length == length &&
-            memcmp(here->text, text, length) == 0)
-            return found - 1;
-    }
-    dictionary->slots[slot] = dictionary->count + 1;
-    return add_entry(dictionary, arena, entry);
-}
-
-uint32_t dictionary_code(struct dictionary *dictionary, struct arena *arena, const char *text,
-                         size_t length)
-{
-    if (dictionary->count == 0)
-        find_or_add(dictionary, arena, "", 0);
-    return length ? find_or_add(dictionary, arena, text, length) : 0;
-}
-
-/* ---- columns */
-
-static void push_code(struct column_data *column, uint32_t code)
-{
-    if (column->count == column->capacity) {
-        column->capacity = column->capacity ? column->capacity * 2 : 256;
-        column->codes = memory_resize(column->codes, column->capacity * sizeof *column->codes);
-    }
-    column->codes[column->count++] = code;
-}
-
-void column_push(struct column_data *column, struct arena *arena, const char *text, size_t length)
-{
-    push_code(column, dictionary_code(&column->dictionary, arena, text, length));
-}
-
-const char *column_text(const struct column_data *column, size_t index)
-{
-    return column->dictionary.entries[column->codes[index]].text;
-}
-
-double column_number(const struct column_data *column, size_t index)
-{
-    const char *text = column_text(column, index);
-    char *end;
-    double value = strtod(text, &end);
-    return end == text ? NAN : value;
-}
-
-static void column_release(struct column_data *column)
-{
-    free(column->codes);
-    free(column->dictionary.entries);
-    free(column->dictionary.slots);
-}
 
 /* ---- reading a line */
 
@@ -159,7 +53,7 @@ static size_t read_group(struct columns *columns, struct summary_scan *scan,
             /* Neighbours are often alike. */
             if (last.text && last.length == text.length &&
                 memcmp(last.text, text.text, text.length) == 0 && !text.copied)
-                push_code(column, column->codes[column->count - 1]);
+                column_push_code(column, column->codes[column->count - 1]);
             else
                 column_push(column, &columns->arena, text.text, text.length);
             last = text;
@@ -210,6 +104,21 @@ static bool read_line(struct columns *columns, struct summary_scan *scan, bool *
     return true;
 }
 
+/* The rows of a job are there: say whose they are, and where its line stands. */
+static void close_job(struct columns *columns, uint64_t line_length)
+{
+    while (columns->part_job.count < columns->part_count)
+        column_push_code(&columns->part_job, (uint32_t)columns->job_count);
+    while (columns->again_job.count < columns->again_count)
+        column_push_code(&columns->again_job, (uint32_t)columns->job_count);
+    if (columns->job_count == columns->line_capacity) {
+        columns->line_capacity = columns->line_capacity ? columns->line_capacity * 2 : 256;
+        columns->lines =
+            memory_resize(columns->lines, columns->line_capacity * sizeof *columns->lines);
+    }
+    columns->lines[columns->job_count++] = (struct job_line){columns->bytes, line_length};
+}
+
 /* false: the line is no summary of this version and nothing was added. */
 static bool add_line(struct columns *columns, const char *line, size_t length)
 {
@@ -220,14 +129,12 @@ static bool add_line(struct columns *columns, const char *line, size_t length)
     if (good && broken) {
         columns->broken = arena_grow(&columns->arena, columns->broken, columns->broken_count,
                                      &columns->broken_capacity, sizeof *columns->broken);
-        columns->broken[columns->broken_count++] = (struct broken_job){name.text, line, length};
+        columns->broken[columns->broken_count++] =
+            (struct broken_job){name.text, arena_text(&columns->arena, line, length), length};
     } else if (good) {
-        while (columns->part_job.count < columns->part_count)
-            push_code(&columns->part_job, (uint32_t)columns->job_count);
-        while (columns->again_job.count < columns->again_count)
-            push_code(&columns->again_job, (uint32_t)columns->job_count);
-        columns->job_count++;
+        close_job(columns, length + 1);
     }
+    columns->bytes += length + 1;
     level(columns, columns->jobs, JOB_COLUMN_COUNT, columns->job_count);
     level(columns, columns->parts, PART_COLUMN_COUNT, columns->part_count);
     level(columns, columns->again, AGAIN_COLUMN_COUNT, columns->again_count);
@@ -235,7 +142,7 @@ static bool add_line(struct columns *columns, const char *line, size_t length)
     return good;
 }
 
-size_t columns_add_all(struct columns *columns, const char *text, size_t length)
+size_t columns_add(struct columns *columns, const char *text, size_t length)
 {
     size_t bad = 0;
     for (const char *end = text + length; text < end;) {
@@ -245,6 +152,80 @@ size_t columns_add_all(struct columns *columns, const char *text, size_t length)
         text += line_length + 1;
     }
     return bad;
+}
+
+/* ---- taking jobs over */
+
+static uint32_t *unknown_codes(struct arena *arena, const struct column_data *column)
+{
+    uint32_t *codes = arena_array(arena, column->dictionary.count + 1, sizeof *codes);
+    memset(codes, 0xFF, (column->dictionary.count + 1) * sizeof *codes);
+    return codes;
+}
+
+void column_translation_begin(struct column_translation *translation, const struct columns *from)
+{
+    *translation = (struct column_translation){.from = from};
+    struct arena *arena = &translation->arena;
+    for (size_t i = 0; i < JOB_COLUMN_COUNT; i++)
+        translation->jobs[i] = unknown_codes(arena, &from->jobs[i]);
+    for (size_t i = 0; i < PART_COLUMN_COUNT; i++)
+        translation->parts[i] = unknown_codes(arena, &from->parts[i]);
+    for (size_t i = 0; i < AGAIN_COLUMN_COUNT; i++)
+        translation->again_codes[i] = unknown_codes(arena, &from->again[i]);
+}
+
+void column_translation_end(struct column_translation *translation)
+{
+    arena_release(&translation->arena);
+}
+
+/* Rows start to end of a column, behind another. */
+static void take_rows(struct column_data *to, const struct column_data *from, uint32_t *translated,
+                      size_t start, size_t end, struct arena *arena)
+{
+    column_reserve(to, end - start);
+    for (size_t row = start; row < end; row++) {
+        uint32_t code = from->codes[row];
+        if (translated[code] == UINT32_MAX) {
+            const struct dictionary_entry *entry = &from->dictionary.entries[code];
+            translated[code] = dictionary_code(&to->dictionary, arena, entry->text, entry->length);
+        }
+        to->codes[to->count++] = translated[code];
+    }
+}
+
+void columns_take(struct columns *columns, struct column_translation *translation, size_t job)
+{
+    const struct columns *from = translation->from;
+    struct arena *arena = &columns->arena;
+    size_t part = translation->part, again = translation->again;
+    while (part < from->part_count && from->part_job.codes[part] < job)
+        part++;
+    while (again < from->again_count && from->again_job.codes[again] < job)
+        again++;
+    size_t part_end = part, again_end = again;
+    while (part_end < from->part_count && from->part_job.codes[part_end] == job)
+        part_end++;
+    while (again_end < from->again_count && from->again_job.codes[again_end] == job)
+        again_end++;
+    for (size_t i = 0; i < JOB_COLUMN_COUNT; i++)
+        if (i == JOB_PAGE) /* named when all jobs are there */
+            column_push(&columns->jobs[i], arena, "", 0);
+        else
+            take_rows(&columns->jobs[i], &from->jobs[i], translation->jobs[i], job, job + 1, arena);
+    for (size_t i = 0; i < PART_COLUMN_COUNT; i++)
+        take_rows(&columns->parts[i], &from->parts[i], translation->parts[i], part, part_end,
+                  arena);
+    for (size_t i = 0; i < AGAIN_COLUMN_COUNT; i++)
+        take_rows(&columns->again[i], &from->again[i], translation->again_codes[i], again,
+                  again_end, arena);
+    translation->part = part_end;
+    translation->again = again_end;
+    columns->part_count += part_end - part;
+    columns->again_count += again_end - again;
+    close_job(columns, from->lines[job].length);
+    columns->bytes += from->lines[job].length;
 }
 
 void columns_release(struct columns *columns)
@@ -257,6 +238,8 @@ void columns_release(struct columns *columns)
         column_release(&columns->again[i]);
     column_release(&columns->part_job);
     column_release(&columns->again_job);
+    free(columns->lines);
+    buffer_release(&columns->file_text);
     arena_release(&columns->arena);
     *columns = (struct columns){0};
 }

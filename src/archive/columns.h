@@ -8,12 +8,8 @@
 #ifndef ARCHIVE_COLUMNS_H
 #define ARCHIVE_COLUMNS_H
 
-#include "base/arena.h"
+#include "archive/dictionary.h"
 #include "base/buffer.h"
-
-#include <stdbool.h>
-#include <stddef.h>
-#include <stdint.h>
 
 /* X(enum, key in the summary, and in find) */
 #define JOB_COLUMNS(X)                                                                             \
@@ -78,56 +74,54 @@ extern const char *const job_column_keys[];
 extern const char *const part_column_keys[];
 extern const char *const again_column_keys[];
 
-struct dictionary_entry {
-    const char *text;
-    uint32_t length, hash;
-};
-struct dictionary {
-    struct dictionary_entry *entries; /* by code; entries[0] is "" */
-    uint32_t count, capacity;
-    uint32_t *slots; /* code + 1, 0: free */
-    uint32_t slot_count;
-};
-struct column_data {
-    uint32_t *codes;
-    size_t count, capacity;
-    struct dictionary dictionary;
-};
-
 /* A job file with mistakes. */
 struct broken_job {
     const char *name, *line; /* of summaries.jsonl */
     size_t line_length;
 };
 
+/* Where the line of a job stands in summaries.jsonl, in bytes; its line end counts. */
+struct job_line {
+    uint64_t offset, length;
+};
+
 struct columns {
-    struct arena arena; /* texts */
+    struct arena arena;      /* texts */
+    struct buffer file_text; /* texts of columns that were read from a file of their own */
     struct column_data jobs[JOB_COLUMN_COUNT];
     struct column_data parts[PART_COLUMN_COUNT];
     struct column_data again[AGAIN_COLUMN_COUNT];
     struct column_data part_job, again_job; /* codes: index of the job; no dictionary */
     size_t job_count, part_count, again_count;
+    struct job_line *lines; /* one a job */
+    size_t line_capacity;
+    uint64_t bytes; /* of summaries.jsonl so far */
     struct broken_job *broken;
     size_t broken_count, broken_capacity;
 };
 
 /*
- * Add the jobs of all lines of summaries.jsonl. Returns how many lines were no summary of this
- * version and added nothing. {0} is empty and valid; columns_release. The lines of broken jobs are
- * kept as they are given: `text` must outlive the columns.
+ * Add the jobs of these lines of summaries.jsonl, which follow upon those added before. Returns how
+ * many lines were no summary of this version and added nothing. {0} is empty and valid;
+ * columns_release.
  */
-size_t columns_add_all(struct columns *columns, const char *text, size_t length);
+size_t columns_add(struct columns *columns, const char *text, size_t length);
 
-/* The text of row `index` of a column. */
-const char *column_text(const struct column_data *column, size_t index);
-/* Its number; NaN: unknown. */
-double column_number(const struct column_data *column, size_t index);
+/* What codes of one archive's columns are in those of another: for columns_take. */
+struct column_translation {
+    const struct columns *from;
+    struct arena arena;
+    size_t part, again; /* the first of the next job's */
+    uint32_t *jobs[JOB_COLUMN_COUNT], *parts[PART_COLUMN_COUNT], *again_codes[AGAIN_COLUMN_COUNT];
+};
 
-/* The code of a text, added when new. */
-uint32_t dictionary_code(struct dictionary *dictionary, struct arena *arena, const char *text,
-                         size_t length);
-/* Put one more row behind a column. */
-void column_push(struct column_data *column, struct arena *arena, const char *text, size_t length);
+/* *from must stay as it is until column_translation_end. */
+void column_translation_begin(struct column_translation *translation, const struct columns *from);
+void column_translation_end(struct column_translation *translation);
+
+/* Add job `job` of translation->from: every code comes out as if its line had been added. Jobs are
+   taken in rising order. */
+void columns_take(struct columns *columns, struct column_translation *translation, size_t job);
 
 void columns_release(struct columns *columns);
 

@@ -8,13 +8,13 @@
 
 enum { LINE_COLUMNS = 80, SET_COLUMNS_MIN = 8, SUMMARIES_BYTES_MAX = 2000 << 20 };
 
-enum file_status find_read(const char *output, struct columns *columns, struct buffer *lines,
-                           size_t *damaged)
+enum file_status find_read(const char *output, struct columns *columns, size_t *damaged)
 {
-    struct buffer path = {0};
+    struct buffer path = {0}, lines = {0};
     buffer_print(&path, "%s/summaries.jsonl", output);
-    enum file_status status = file_read(buffer_string(&path), SUMMARIES_BYTES_MAX, lines);
-    *damaged = status == FILE_OK ? columns_add_all(columns, lines->data, lines->length) : 0;
+    enum file_status status = file_read(buffer_string(&path), SUMMARIES_BYTES_MAX, &lines);
+    *damaged = status == FILE_OK ? columns_add(columns, lines.data, lines.length) : 0;
+    buffer_release(&lines);
     buffer_release(&path);
     return status;
 }

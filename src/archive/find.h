@@ -7,10 +7,9 @@
 #include "archive/query.h"
 #include "base/file.h"
 
-/* Read output/summaries.jsonl into *columns (columns_release, also after a failure). *lines holds
-   what the columns point into; *damaged counts lines that are no summaries. */
-enum file_status find_read(const char *output, struct columns *columns, struct buffer *lines,
-                           size_t *damaged);
+/* Read output/summaries.jsonl into *columns (columns_release, also after a failure). *damaged
+   counts lines that are no summaries. */
+enum file_status find_read(const char *output, struct columns *columns, size_t *damaged);
 
 /* One line a part found, then one a job found in which no part is. */
 void find_write(const struct columns *columns, const struct query_hits *hits, struct buffer *out);

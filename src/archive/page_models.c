@@ -81,10 +81,8 @@ void page_models_name(struct columns *columns)
         }
     }
     free(pages);
-    free(models.entries);
-    free(models.slots);
-    free(taken.entries);
-    free(taken.slots);
+    dictionary_release(&models);
+    dictionary_release(&taken);
     buffer_release(&key);
     buffer_release(&name);
 }
@@ -228,8 +226,7 @@ static enum file_status remove_gone(const struct page_frame *frame)
         if (code >= before && unlink(arena_print(&arena, "%s/%s", folder, name)) != 0)
             status = FILE_FAILED;
     }
-    free(known.entries);
-    free(known.slots);
+    dictionary_release(&known);
     arena_release(&arena);
     return status;
 }

@@ -1,20 +1,21 @@
 #include "archive/pages.h"
 
+#include "archive/columns_file.h"
 #include "archive/manual_page.h"
 #include "archive/page_frame.h"
 
 #include <pthread.h>
 #include <stdlib.h>
 #include <string.h>
+#include <sys/stat.h>
 #include <unistd.h>
 
-enum { SUMMARY_BYTES_MAX = 16 << 20, SUMMARIES_BYTES_MAX = 2000 << 20 };
+enum { SUMMARY_BYTES_MAX = 16 << 20, COLUMNS_BYTES_MAX = 2000 << 20 };
 
 struct pages_work {
     const struct pages_request *request;
     struct arena arena;
     struct job_names names;
-    struct buffer old, summaries; /* summaries.jsonl as it is, and as it will be */
     struct columns columns;
     struct buffer *failed;
 };
@@ -51,6 +52,16 @@ void pages_forget(const char *output)
 
 /* ---- gathering the summaries */
 
+static const char *summaries_path(struct pages_work *work)
+{
+    return arena_print(&work->arena, "%s/summaries.jsonl", work->request->output);
+}
+
+static const char *columns_path(struct pages_work *work)
+{
+    return arena_print(&work->arena, "%s/.gridleak/columns", work->request->output);
+}
+
 static bool is_listed(const struct job_names *names, const char *name)
 {
     for (size_t low = 0, high = names->count; low < high;) {
@@ -81,148 +92,190 @@ static enum file_status remove_gone(struct pages_work *work)
     return status;
 }
 
-/* A line of the old summaries.jsonl, which is sorted as the names are. */
-struct old_line {
-    const char *text;
-    size_t length;
+/* Lines of the summaries.jsonl that is there, one behind the other. */
+struct old_lines {
+    uint64_t offset, length;
 };
 
-/* Go on to the line of job `name`: false when there is none. *at stands before the first line that
-   was not passed over. */
-static bool find_old_line(const struct buffer *old, const char **at, const char *name,
-                          struct old_line *line)
+static void put_old_lines(struct file_writer *summaries, struct old_lines *lines)
 {
-    static const char begins[] = ",\"job\":\"";
-    const char *end = old->data + old->length;
-    while (*at && *at < end) {
-        const char *line_end = memchr(*at, '\n', (size_t)(end - *at));
-        size_t length = (size_t)((line_end ? line_end : end) - *at);
-        const char *key = memmem(*at, length < 64 ? length : 64, begins, sizeof begins - 1);
-        const char *found = key ? key + sizeof begins - 1 : NULL;
-        const char *quote = found ? memchr(found, '"', length - (size_t)(found - *at)) : NULL;
-        if (!quote)
-            return false; /* not as we write it: read the summaries one by one */
-        size_t found_length = (size_t)(quote - found), name_length = strlen(name);
-        size_t common = found_length < name_length ? found_length : name_length;
-        int order = memcmp(found, name, common);
-        if (order == 0)
-            order = (found_length > name_length) - (found_length < name_length);
-        if (order > 0)
-            return false;
-        *line = (struct old_line){*at, length};
-        *at += length + (line_end ? 1 : 0);
-        if (order == 0)
-            return true;
-    }
-    return false;
+    if (lines->length)
+        file_put_old(summaries, lines->offset, lines->length);
+    *lines = (struct old_lines){0};
 }
 
-/* A job that nobody has published yet has none. */
-static enum file_status read_summary(struct pages_work *work, const char *name)
+/* The job's line, as summary.json has it; a job that nobody has published yet has none. */
+static void add_summary(struct pages_work *work, const char *name, struct file_writer *summaries)
 {
-    struct buffer path = {0};
+    struct buffer path = {0}, line = {0};
     buffer_print(&path, "%s/jobs/%s/summary.json", work->request->output, name);
-    enum file_status status = file_read(buffer_string(&path), SUMMARY_BYTES_MAX, &work->summaries);
-    if (status == FILE_MISSING)
-        status = FILE_OK;
-    if (status != FILE_OK)
+    enum file_status status = file_read(buffer_string(&path), SUMMARY_BYTES_MAX, &line);
+    if (status != FILE_OK && status != FILE_MISSING && summaries->status == FILE_OK) {
         buffer_append(work->failed, path.data, path.length);
+        summaries->status = status;
+    }
+    if (line.length && line.data[line.length - 1] != '\n')
+        buffer_byte(&line, '\n');
+    columns_add(&work->columns, line.data, line.length);
+    file_put(summaries, line.data, line.length);
+    buffer_release(&line);
     buffer_release(&path);
-    return status;
 }
 
-static enum file_status gather_summaries(struct pages_work *work)
+/* The columns of the last time; they stay empty when no line may be taken over. */
+static void read_old_columns(struct pages_work *work, struct columns *old)
 {
     const struct pages_request *request = work->request;
-    const char *path = arena_print(&work->arena, "%s/summaries.jsonl", request->output);
-    /* NULL: no line of the old file may be taken over. */
-    const struct job_names *changed =
-        pages_are_whole(request->output, request->setting) ? request->changed : NULL;
-    if (changed)
-        file_read(path, SUMMARIES_BYTES_MAX, &work->old);
-    buffer_reserve(&work->summaries, work->old.length + 4096);
-    const char *at = work->old.data;
-    enum file_status status = FILE_OK;
-    for (size_t i = 0; i < work->names.count && status == FILE_OK; i++) {
+    struct buffer contents = {0};
+    struct stat about;
+    if (!request->changed || !pages_are_whole(request->output, request->setting) ||
+        stat(summaries_path(work), &about) != 0)
+        return;
+    if (file_read(columns_path(work), COLUMNS_BYTES_MAX, &contents) == FILE_OK &&
+        columns_file_read(&contents, old) && (uint64_t)about.st_size != old->bytes)
+        columns_release(old);
+    buffer_release(&contents);
+}
+
+/* Every job in the columns, and its line in summaries.jsonl: from the old ones, which are sorted as
+   the names are, when it is there and has not changed. */
+static enum file_status gather_summaries(struct pages_work *work, const struct columns *old)
+{
+    const char *path = summaries_path(work);
+    struct column_translation translation;
+    struct old_lines lines = {0};
+    struct file_writer summaries;
+    column_translation_begin(&translation, old);
+    file_begin(&summaries, path);
+    for (size_t i = 0, job = 0; i < work->names.count; i++) {
         const char *name = work->names.names[i];
-        struct old_line line;
-        if (changed && work->old.length && !is_listed(changed, name) &&
-            find_old_line(&work->old, &at, name, &line)) {
-            buffer_append(&work->summaries, line.text, line.length);
-            buffer_byte(&work->summaries, '\n');
-        } else {
-            status = read_summary(work, name);
+        while (job < old->job_count && strcmp(column_text(&old->jobs[JOB_NUMBER], job), name) < 0)
+            job++;
+        bool there = job < old->job_count &&
+                     strcmp(column_text(&old->jobs[JOB_NUMBER], job), name) == 0 &&
+                     !is_listed(work->request->changed, name);
+        if (!there || lines.offset + lines.length != old->lines[job].offset)
+            put_old_lines(&summaries, &lines);
+        if (!there) {
+            add_summary(work, name, &summaries);
+            continue;
         }
+        columns_take(&work->columns, &translation, job);
+        if (!lines.length)
+            lines.offset = old->lines[job].offset;
+        lines.length += old->lines[job].length;
     }
-    buffer_release(&work->old);
+    put_old_lines(&summaries, &lines);
+    column_translation_end(&translation);
+    enum file_status status = file_finish(&summaries);
+    if (status != FILE_OK && work->failed->length == 0)
+        buffer_text(work->failed, path);
     return status;
 }
 
 /* ---- writing */
 
-/* summaries.jsonl is by far the largest file and needs nothing of the others: written beside them,
-   by a thread of its own. */
-struct summaries_task {
-    const char *path;
-    const struct buffer *summaries;
+/* The pages are made by two threads, each with a frame of its own. */
+typedef enum file_status page_writer(struct page_frame *frame);
+static page_writer *const first_pages[] = {page_style_write, page_index_write, page_search_write,
+                                           NULL};
+static page_writer *const second_pages[] = {page_models_write, page_statistics_write,
+                                            manual_page_write, NULL};
+
+struct pages_task {
+    page_writer *const *writers;
+    struct page_frame frame;
+    struct arena arena;
+    struct diagnostics diagnostics;
+    struct buffer failed;
     enum file_status status;
 };
 
-static void *write_summaries(void *context)
+static struct pages_task *task_begin(struct pages_work *work, page_writer *const *writers)
 {
-    struct summaries_task *task = context;
-    task->status = file_write(task->path, task->summaries->data, task->summaries->length, NULL);
+    const struct archive *archive = work->request->archive;
+    struct pages_task *task = arena_get(&work->arena, sizeof *task);
+    task->writers = writers;
+    task->diagnostics = diagnostics_in(&task->arena);
+    task->frame = (struct page_frame){
+        .archive = archive,
+        .output = work->request->output,
+        .columns = &work->columns,
+        .arena = &task->arena,
+        .say = {templates_words(archive->templates), &task->arena, &task->diagnostics},
+        .diagnostics = &task->diagnostics,
+        .failed = &task->failed,
+    };
+    return task;
+}
+
+static void *task_run(void *context)
+{
+    struct pages_task *task = context;
+    for (size_t i = 0; task->writers[i] && task->status == FILE_OK; i++)
+        task->status = task->writers[i](&task->frame);
     return NULL;
+}
+
+static enum file_status task_end(struct pages_work *work, struct pages_task *task,
+                                 struct diagnostics *diagnostics)
+{
+    diagnostics_append(diagnostics, &task->diagnostics);
+    if (task->status != FILE_OK && work->failed->length == 0)
+        buffer_append(work->failed, task->failed.data, task->failed.length);
+    buffer_release(&task->failed);
+    arena_release(&task->arena);
+    return task->status;
 }
 
 static enum file_status write_pages(struct pages_work *work, struct diagnostics *diagnostics)
 {
-    struct page_frame frame = {
-        .archive = work->request->archive,
-        .output = work->request->output,
-        .columns = &work->columns,
-        .arena = &work->arena,
-        .say = {templates_words(work->request->archive->templates), &work->arena, diagnostics},
-        .diagnostics = diagnostics,
-        .failed = work->failed,
-    };
-    static enum file_status (*const writers[])(struct page_frame *) = {
-        page_style_write,  page_index_write,      page_search_write,
-        page_models_write, page_statistics_write, manual_page_write};
-    struct summaries_task task = {
-        arena_print(&work->arena, "%s/summaries.jsonl", work->request->output), &work->summaries,
-        FILE_OK};
+    struct pages_task *first = task_begin(work, first_pages),
+                      *second = task_begin(work, second_pages);
     pthread_t thread;
-    bool beside = pthread_create(&thread, NULL, write_summaries, &task) == 0;
-    if (!beside)
-        write_summaries(&task);
-    enum file_status status = FILE_OK;
-    for (size_t i = 0; i < sizeof writers / sizeof *writers && status == FILE_OK; i++)
-        status = writers[i](&frame);
+    bool beside = pthread_create(&thread, NULL, task_run, second) == 0;
+    task_run(first);
     if (beside)
         pthread_join(thread, NULL);
-    if (status == FILE_OK && task.status != FILE_OK) {
-        status = task.status;
-        buffer_text(work->failed, task.path);
-    }
+    else
+        task_run(second);
+    enum file_status first_status = task_end(work, first, diagnostics),
+                     second_status = task_end(work, second, diagnostics);
+    return first_status != FILE_OK ? first_status : second_status;
+}
+
+static enum file_status write_columns(struct pages_work *work)
+{
+    struct buffer contents = {0};
+    columns_file_write(&work->columns, &contents);
+    enum file_status status = file_write(columns_path(work), contents.data, contents.length, NULL);
+    buffer_release(&contents);
+    if (status != FILE_OK)
+        buffer_text(work->failed, columns_path(work));
     return status;
 }
 
-static enum file_status publish_gathered(struct pages_work *work, struct diagnostics *diagnostics)
+/* The note that the pages are whole goes before the first of them is touched, and comes back last.
+ */
+static enum file_status publish_all(struct pages_work *work, struct diagnostics *diagnostics)
 {
+    struct columns old = {0};
+    read_old_columns(work, &old);
+    pages_forget(work->request->output);
+    enum file_status status =
+        folder_make(arena_print(&work->arena, "%s/.gridleak", work->request->output));
+    if (status == FILE_OK)
+        status = gather_summaries(work, &old);
+    columns_release(&old);
+    if (status == FILE_OK)
+        status = write_columns(work);
+    page_models_name(&work->columns);
+    if (status == FILE_OK)
+        status = write_pages(work, diagnostics);
     const char *note = note_path(work->request->output, &work->arena);
     const char *setting = work->request->setting;
-    enum file_status status = gather_summaries(work);
-    if (status != FILE_OK)
-        return status;
-    columns_add_all(&work->columns, work->summaries.data, work->summaries.length);
-    page_models_name(&work->columns);
-    pages_forget(work->request->output);
-    status = write_pages(work, diagnostics);
     if (status == FILE_OK) {
-        status = folder_make(arena_print(&work->arena, "%s/.gridleak", work->request->output));
-        if (status == FILE_OK)
-            status = file_write(note, setting, strlen(setting), NULL);
+        status = file_write(note, setting, strlen(setting), NULL);
         if (status != FILE_OK)
             buffer_text(work->failed, note);
     }
@@ -241,8 +294,7 @@ enum file_status pages_publish(const struct pages_request *request, struct diagn
     if (status == FILE_OK)
         status = remove_gone(&work);
     if (status == FILE_OK)
-        status = publish_gathered(&work, diagnostics);
-    buffer_release(&work.summaries);
+        status = publish_all(&work, diagnostics);
     columns_release(&work.columns);
     arena_release(&work.arena);
     return status;

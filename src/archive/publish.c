@@ -20,6 +20,8 @@ struct job_work {
     const char *twin; /* another job of the same name, but for case perhaps; NULL: none */
     bool finished;
     struct timespec began;
+    bool was_unsettled;      /* before this run */
+    struct state_job *old;   /* what the pages show of it; NULL: nothing, or not known */
     struct state_job *state; /* what its files were made from; in the publish's own arena */
     struct arena arena;      /* of the job, given back when it has been told */
     struct diagnostics diagnostics;
@@ -60,6 +62,7 @@ static void note_state(struct publish_work *work, struct job_work *job)
     memcpy(state->setting, work->setting, HASH_TEXT_BYTES);
     state->broken = job->diagnostics.errors > 0;
     state->warned = job->diagnostics.warnings > 0;
+    state_note_summary(work->request->output, job->name, state->summary);
     state->inputs = arena_array(work->arena, job->files.input_count, sizeof *state->inputs);
     for (size_t i = 0; i < job->files.input_count; i++)
         state->input_count +=
@@ -109,21 +112,6 @@ static struct job_work *next_job(struct publish_work *work)
     return job;
 }
 
-/* The state knows nothing of jobs published by name since: such a job leaves its name here, and is
-   made again by the next whole publish. */
-static const char *named_mark(const struct publish_work *work, const char *job, struct arena *arena)
-{
-    return arena_print(arena, "%s/.gridleak/named/%s", work->request->output, job);
-}
-
-static enum file_status mark_named(const struct publish_work *work, struct job_work *job)
-{
-    enum file_status status =
-        folder_make(arena_print(&job->arena, "%s/.gridleak/named", work->request->output));
-    return status == FILE_OK ? file_write(named_mark(work, job->name, &job->arena), "", 0, NULL)
-                             : status;
-}
-
 static void publish_one(const struct publish_work *work, struct job_work *job)
 {
     job->diagnostics = diagnostics_in(&job->arena);
@@ -141,11 +129,10 @@ static void publish_one(const struct publish_work *work, struct job_work *job)
     }
     struct job_files_request request = {work->archive, job->path, work->request->output,
                                         &job->arena, &job->diagnostics};
-    if (work->named) {
+    if (work->named)
         lock_job(&work->lock, job->name);
-        job->files.failure = mark_named(work, job);
-        job->files.failed_path = named_mark(work, job->name, &job->arena);
-    }
+    job->files.failure = state_unsettle(work->request->output, job->name);
+    job->files.failed_path = arena_print(&job->arena, "%s/.gridleak", work->request->output);
     if (job->files.failure == FILE_OK)
         job->files = job_files_publish(&request);
     if (work->named)
@@ -235,14 +222,15 @@ static void list_archive(struct publish_work *work, struct state *old)
         struct job_work *job = &work->jobs[i];
         struct state_job *state = state_find(old, job->name);
         bool touched = false;
+        job->old = state;
+        job->was_unsettled = state_is_unsettled(work->request->output, job->name);
         /* A broken file is read again, so that its mistakes are told again. */
-        if (!state || state->broken || !is_made_from(state, job->path) ||
+        if (!state || job->was_unsettled || state->broken || !is_made_from(state, job->path) ||
             !state_is_current(state, work->setting, &touched))
             continue;
         const char *summary =
             arena_print(work->arena, "%s/jobs/%s/summary.json", work->request->output, job->name);
-        if (access(summary, F_OK) != 0 ||
-            access(named_mark(work, job->name, work->arena), F_OK) == 0)
+        if (access(summary, F_OK) != 0)
             continue;
         job->finished = true;
         job->state = state;
@@ -262,14 +250,22 @@ static void list_named(struct publish_work *work)
     mark_case_twins(work);
 }
 
-/* The jobs made in this run. */
-static struct job_names made_jobs(const struct publish_work *work)
+/* Whether the pages may show something else of the job than its summary says now. */
+static bool is_changed(const struct job_work *job)
 {
-    struct job_names made = {arena_array(work->arena, work->count + 1, sizeof *made.names), 0};
+    if (job->was_unsettled || !job->old || !job->state)
+        return true;
+    return strcmp(job->old->summary, job->state->summary) != 0;
+}
+
+static struct job_names changed_jobs(const struct publish_work *work)
+{
+    struct job_names changed = {arena_array(work->arena, work->count + 1, sizeof *changed.names),
+                                0};
     for (size_t i = 0; i < work->count; i++)
-        if (work->jobs[i].diagnostics.arena)
-            made.names[made.count++] = work->jobs[i].name;
-    return made;
+        if (is_changed(&work->jobs[i]))
+            changed.names[changed.count++] = work->jobs[i].name;
+    return changed;
 }
 
 /* changed NULL: nothing is known of any job. */
@@ -299,20 +295,18 @@ static void publish_all(struct publish_work *work)
     const struct state_job **jobs = arena_array(work->arena, work->count, sizeof *jobs);
     for (size_t i = 0; i < work->count; i++)
         jobs[i] = work->jobs[i].state;
-    struct job_names made = made_jobs(work);
-    bool same = made.count == 0 && old.count == work->count &&
+    struct job_names changed = changed_jobs(work);
+    bool same = changed.count == 0 && old.count == work->count &&
                 pages_are_whole(work->request->output, work->setting);
     if (work->result->failure == FILE_OK && !same)
-        publish_pages(work, &made);
+        publish_pages(work, &changed);
     if (work->result->failure != FILE_OK)
         pages_forget(work->request->output);
     /* Also after a failure: what was made need not be made again. */
     enum file_status status = state_write(work->request->output, jobs, work->count);
+    if (status == FILE_OK)
+        status = state_settle(work->request->output);
     fail(work, status, work->request->output);
-    if (work->result->failure == FILE_OK) {
-        const char *named = arena_print(work->arena, "%s/.gridleak/named", work->request->output);
-        fail(work, folder_remove(named), named);
-    }
     state_release(&old);
 }
 

@@ -7,7 +7,7 @@
 #include <sys/stat.h>
 #include <unistd.h>
 
-static const char heading[] = "gridleak state 1\n";
+static const char heading[] = "gridleak state 2\n";
 enum { STATE_BYTES_MAX = 1 << 30, INPUT_BYTES_MAX = 64 << 20 };
 
 /* Cut the next field off a line of tab-separated fields; NULL at the end of the line. */
@@ -47,7 +47,7 @@ static bool read_line(char *line, struct arena *arena, struct state_job *job)
     char *cursor = line;
     job->name = next_field(&cursor);
     const char *flags = next_field(&cursor);
-    if (!flags || !read_hash(&cursor, job->setting))
+    if (!flags || !read_hash(&cursor, job->setting) || !read_hash(&cursor, job->summary))
         return false;
     job->broken = strchr(flags, 'b') != NULL;
     job->warned = strchr(flags, 'w') != NULL;
@@ -161,6 +161,56 @@ bool state_is_current(struct state_job *job, const char *setting, bool *touched)
     return true;
 }
 
+void state_note_summary(const char *output, const char *name, char hash[HASH_TEXT_BYTES])
+{
+    struct buffer path = {0}, summary = {0};
+    buffer_print(&path, "%s/jobs/%s/summary.json", output, name);
+    memcpy(hash, no_hash, HASH_TEXT_BYTES);
+    if (file_read(buffer_string(&path), INPUT_BYTES_MAX, &summary) == FILE_OK) {
+        struct hash of_summary = hash_of(summary.data, summary.length);
+        hash_text(&of_summary, hash);
+    }
+    buffer_release(&summary);
+    buffer_release(&path);
+}
+
+/* The folder of the marks, or the mark of a job. */
+static void unsettled_path(struct buffer *path, const char *output, const char *name)
+{
+    buffer_print(path, "%s/.gridleak/unsettled%s%s", output, name ? "/" : "", name ? name : "");
+}
+
+enum file_status state_unsettle(const char *output, const char *name)
+{
+    struct buffer folder = {0}, mark = {0};
+    unsettled_path(&folder, output, NULL);
+    unsettled_path(&mark, output, name);
+    enum file_status status = folder_make(buffer_string(&folder));
+    if (status == FILE_OK)
+        status = file_write(buffer_string(&mark), "", 0, NULL);
+    buffer_release(&folder);
+    buffer_release(&mark);
+    return status;
+}
+
+bool state_is_unsettled(const char *output, const char *name)
+{
+    struct buffer mark = {0};
+    unsettled_path(&mark, output, name);
+    bool there = access(buffer_string(&mark), F_OK) == 0;
+    buffer_release(&mark);
+    return there;
+}
+
+enum file_status state_settle(const char *output)
+{
+    struct buffer folder = {0};
+    unsettled_path(&folder, output, NULL);
+    enum file_status status = folder_remove(buffer_string(&folder));
+    buffer_release(&folder);
+    return status;
+}
+
 enum file_status state_write(const char *output, const struct state_job *const *jobs, size_t count)
 {
     struct buffer text = {0}, path = {0};
@@ -169,8 +219,8 @@ enum file_status state_write(const char *output, const struct state_job *const *
         const struct state_job *job = jobs[i];
         if (!job)
             continue;
-        buffer_print(&text, "%s\t%s%s\t%s", job->name, job->broken ? "b" : "-",
-                     job->warned ? "w" : "", job->setting);
+        buffer_print(&text, "%s\t%s%s\t%s\t%s", job->name, job->broken ? "b" : "-",
+                     job->warned ? "w" : "", job->setting, job->summary);
         for (size_t j = 0; j < job->input_count; j++) {
             const struct state_input *input = &job->inputs[j];
             buffer_print(&text, "\t%llu\t%llu\t%s\t%s", (unsigned long long)input->size,

@@ -59,6 +59,12 @@ static const char *source_line(struct arena *arena, const struct source *source,
     return arena_text(arena, start, (size_t)(stop - start));
 }
 
+static void keep(struct diagnostics *list, const struct diagnostic *item)
+{
+    list->items = arena_grow(list->arena, list->items, list->count, &list->capacity, sizeof *item);
+    list->items[list->count++] = *item;
+}
+
 void diagnostic_add(struct diagnostics *list, const struct source *source, struct position at,
                     enum diagnostic_code code, const char *hint, const char *format, ...)
 {
@@ -79,8 +85,21 @@ void diagnostic_add(struct diagnostics *list, const struct source *source, struc
         .line = source_line(list->arena, source, at.line),
     };
     va_end(arguments);
-    list->items = arena_grow(list->arena, list->items, list->count, &list->capacity, sizeof item);
-    list->items[list->count++] = item;
+    keep(list, &item);
+}
+
+void diagnostics_append(struct diagnostics *list, const struct diagnostics *more)
+{
+    list->errors += more->errors;
+    list->warnings += more->warnings;
+    for (size_t i = 0; i < more->count && list->count < KEPT_MAX; i++) {
+        struct diagnostic item = more->items[i];
+        item.path = arena_copy(list->arena, item.path);
+        item.text = arena_copy(list->arena, item.text);
+        item.hint = arena_copy(list->arena, item.hint);
+        item.line = arena_copy(list->arena, item.line);
+        keep(list, &item);
+    }
 }
 
 static bool comes_before(const struct diagnostic *a, const struct diagnostic *b)

@@ -65,6 +65,9 @@ void diagnostic_add(struct diagnostics *list, const struct source *source, struc
                     enum diagnostic_code code, const char *hint, const char *format, ...)
     __attribute__((format(printf, 6, 7)));
 
+/* Append copies of all of `more`, whose texts need not stay. */
+void diagnostics_append(struct diagnostics *list, const struct diagnostics *more);
+
 /* "unknown-key": stable, for JSON and tests. */
 const char *diagnostic_code_text(enum diagnostic_code code);
 /* "error", "warning", "note". */

@@ -11,6 +11,8 @@
 #include <sys/stat.h>
 #include <unistd.h>
 
+enum { PIECE_BYTES = 1 << 18 };
+
 static enum file_status status_of(int error)
 {
     switch (error) {
@@ -126,27 +128,117 @@ static enum file_status write_all(int file, const char *data, size_t length)
 
 static const char aside_mark[] = ".part-";
 
-/* Write the bytes into a new file beside `path`, whose name is appended to *aside. */
-static enum file_status write_aside(const char *path, const void *data, size_t length,
-                                    struct buffer *aside)
+void file_begin(struct file_writer *writer, const char *path)
 {
-    buffer_print(aside, "%s%s%ld", path, aside_mark, (long)getpid());
-    int file = open(buffer_string(aside), O_WRONLY | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
-    if (file < 0)
-        return status_of(errno);
-    enum file_status status = write_all(file, data, length);
-    if (close(file) != 0 && status == FILE_OK)
-        status = status_of(errno);
-    return status;
+    *writer = (struct file_writer){0};
+    buffer_text(&writer->path, path);
+    buffer_print(&writer->aside, "%s%s%ld", path, aside_mark, (long)getpid());
+    writer->file =
+        open(buffer_string(&writer->aside), O_RDWR | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
+    writer->status = writer->file < 0 ? status_of(errno) : FILE_OK;
+}
+
+void file_put(struct file_writer *writer, const void *data, size_t length)
+{
+    if (writer->status == FILE_OK)
+        writer->status = write_all(writer->file, data, length);
+}
+
+void file_put_old(struct file_writer *writer, uint64_t offset, uint64_t length)
+{
+    int old = open(buffer_string(&writer->path), O_RDONLY | O_CLOEXEC);
+    if (old < 0 && writer->status == FILE_OK)
+        writer->status = status_of(errno);
+    char *piece = memory_get(PIECE_BYTES);
+    while (length > 0 && writer->status == FILE_OK) {
+        size_t wanted = length < PIECE_BYTES ? (size_t)length : PIECE_BYTES;
+        ssize_t got = pread(old, piece, wanted, (off_t)offset);
+        if (got < 0 && errno == EINTR)
+            continue;
+        if (got <= 0) {
+            writer->status = got < 0 ? status_of(errno) : FILE_FAILED;
+            break;
+        }
+        file_put(writer, piece, (size_t)got);
+        offset += (uint64_t)got;
+        length -= (uint64_t)got;
+    }
+    free(piece);
+    if (old >= 0)
+        close(old);
 }
 
 /* Remove what was written aside; errno keeps saying what went wrong before. */
-static void drop_aside(struct buffer *aside)
+static void drop_aside(const struct buffer *aside)
 {
     int error = errno;
-    unlink(buffer_string(aside));
-    buffer_release(aside);
+    unlink(aside->data);
     errno = error;
+}
+
+/* Close what was written aside; the name is not yet given. */
+static void close_aside(struct file_writer *writer)
+{
+    buffer_string(&writer->aside); /* ends with NUL */
+    if (writer->file >= 0 && close(writer->file) != 0 && writer->status == FILE_OK)
+        writer->status = status_of(errno);
+}
+
+static enum file_status release_writer(struct file_writer *writer)
+{
+    buffer_release(&writer->path);
+    buffer_release(&writer->aside);
+    return writer->status;
+}
+
+/* Give the file its name, over the one that has it. */
+static enum file_status rename_aside(struct file_writer *writer)
+{
+    if (writer->status == FILE_OK && rename(writer->aside.data, buffer_string(&writer->path)) != 0)
+        writer->status = status_of(errno);
+    if (writer->status != FILE_OK)
+        drop_aside(&writer->aside);
+    return release_writer(writer);
+}
+
+static bool are_alike(int one, int other)
+{
+    char *pieces = memory_get((size_t)2 * PIECE_BYTES);
+    ssize_t length, other_length;
+    off_t offset = 0;
+    do {
+        length = pread(one, pieces, PIECE_BYTES, offset);
+        other_length = pread(other, pieces + PIECE_BYTES, PIECE_BYTES, offset);
+        offset += length;
+    } while (length > 0 && length == other_length &&
+             memcmp(pieces, pieces + PIECE_BYTES, (size_t)length) == 0);
+    free(pieces);
+    return length == 0 && other_length == 0;
+}
+
+/* Whether the file holds already what was written aside. */
+static bool is_unchanged(struct file_writer *writer)
+{
+    struct stat about, old;
+    const char *path = buffer_string(&writer->path);
+    if (writer->status != FILE_OK || fstat(writer->file, &about) != 0 || lstat(path, &old) != 0 ||
+        !S_ISREG(old.st_mode) || about.st_size != old.st_size)
+        return false;
+    int file = open(path, O_RDONLY | O_CLOEXEC);
+    bool alike = file >= 0 && are_alike(writer->file, file);
+    if (file >= 0)
+        close(file);
+    return alike;
+}
+
+enum file_status file_finish(struct file_writer *writer)
+{
+    bool same = is_unchanged(writer);
+    close_aside(writer);
+    if (!same || writer->status != FILE_OK)
+        return rename_aside(writer);
+    drop_aside(&writer->aside);
+    return release_writer(writer);
 }
 
 enum file_status file_write(const char *path, const void *data, size_t length, bool *changed)
@@ -155,14 +247,11 @@ enum file_status file_write(const char *path, const void *data, size_t length, b
         *changed = false;
     if (holds_already(path, data, length))
         return FILE_OK;
-    struct buffer aside = {0};
-    enum file_status status = write_aside(path, data, length, &aside);
-    if (status == FILE_OK && rename(buffer_string(&aside), path) != 0)
-        status = status_of(errno);
-    if (status == FILE_OK)
-        buffer_release(&aside);
-    else
-        drop_aside(&aside);
+    struct file_writer writer;
+    file_begin(&writer, path);
+    file_put(&writer, data, length);
+    close_aside(&writer);
+    enum file_status status = rename_aside(&writer);
     if (changed)
         *changed = status == FILE_OK;
     return status;
@@ -184,12 +273,14 @@ static enum file_status name_if_free(const char *aside, const char *path)
 
 enum file_status file_create(const char *path, const void *data, size_t length)
 {
-    struct buffer aside = {0};
-    enum file_status status = write_aside(path, data, length, &aside);
-    if (status == FILE_OK)
-        status = name_if_free(buffer_string(&aside), path);
-    drop_aside(&aside);
-    return status;
+    struct file_writer writer;
+    file_begin(&writer, path);
+    file_put(&writer, data, length);
+    close_aside(&writer);
+    if (writer.status == FILE_OK)
+        writer.status = name_if_free(writer.aside.data, path);
+    drop_aside(&writer.aside);
+    return release_writer(&writer);
 }
 
 enum file_status folder_make(const char *path)

@@ -10,6 +10,7 @@
 
 #include <stdbool.h>
 #include <stddef.h>
+#include <stdint.h>
 
 enum file_status {
     FILE_OK,
@@ -33,6 +34,22 @@ enum file_status file_write(const char *path, const void *data, size_t length, b
 
 /* Make the file hold these bytes, whole or not at all; FILE_EXISTS when its name is taken. */
 enum file_status file_create(const char *path, const void *data, size_t length);
+
+/*
+ * A file written piece by piece: aside, until file_finish makes it the file `path` as file_write
+ * would, or removes it when something failed before. Every file_begin is followed by one
+ * file_finish. The pieces may come from another file.
+ */
+struct file_writer {
+    struct buffer path, aside;
+    int file;
+    enum file_status status; /* of what was done so far; nothing more is written after a failure */
+};
+void file_begin(struct file_writer *writer, const char *path);
+void file_put(struct file_writer *writer, const void *data, size_t length);
+/* `length` bytes from `offset` on of the file that `path` is now; fewer there: FILE_FAILED. */
+void file_put_old(struct file_writer *writer, uint64_t offset, uint64_t length);
+enum file_status file_finish(struct file_writer *writer);
 
 /* Make a folder and those above it; an existing one is fine. */
 enum file_status folder_make(const char *path);

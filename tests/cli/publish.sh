@@ -26,6 +26,13 @@ done
 grep -q '2031-004' mixed-out/index.html || say_failed "the broken job is not in the list"
 find mixed -type f -exec sha256sum {} + | sort >after
 cmp -s before after || say_failed "publish touched its input"
+# Its mistakes are told again, but the pages have nothing new to show.
+stamps mixed-out >stamps-before
+expect 2 "$program" publish mixed -o mixed-out
+tells 'unknown key .makker.'
+tells '4 jobs: 0 made, 3 unchanged, 1 left out for mistakes'
+stamps mixed-out >stamps-after
+cmp -s stamps-before stamps-after || say_failed "a broken job has the pages written again"
 # A job that breaks later keeps the record that was published before.
 expect 2 "$program" publish mixed -o mixed-out
 stamps mixed-out | grep 'jobs/2031-001/client' >client-before
@@ -92,6 +99,54 @@ diff -r --exclude=.gridleak one out >difference || say_failed "jobs one by one: 
 # Two threads and one, and a second place on the disk, are no difference either.
 expect 0 "$program" publish archive -o "$work/far/away/out" --threads 1
 diff -r --exclude=.gridleak one far/away/out >difference || say_failed "one thread: $(head -n 5 difference)"
+
+# ---- what the pages show is what the jobs' folders hold, whatever happened in between
+stays_whole() { # WHAT
+    "$program" publish -q archive -o fresh 2>>whole.log
+    "$program" publish -q archive -o out 2>>whole.log
+    diff -r --exclude=.gridleak fresh out >difference || say_failed "$1: $(head -n 5 difference)"
+    rm -rf fresh
+}
+summary=out/jobs/2031-014/summary.json
+cp archive/2031-014.yaml kept.yaml
+stays_whole "before"
+# Published by name with another maker, shown by the pages, and changed back.
+sed -i 's/^  maker: .*/  maker: Another/' archive/2031-014.yaml
+expect 0 "$program" publish archive/2031-014.yaml -o out
+expect 0 "$program" publish --pages archive -o out
+grep -q Another out/index.html || say_failed "--pages does not show a job published by name"
+cp kept.yaml archive/2031-014.yaml
+stays_whole "a job published by name and changed back"
+# A publish killed after it made the job, which was then changed back.
+sed -i 's/^  maker: .*/  maker: Another/' archive/2031-014.yaml
+cp out/.gridleak/state state-of-before
+"$program" publish -q archive/2031-014.yaml -o out 2>>whole.log
+cp kept.yaml archive/2031-014.yaml
+cp state-of-before out/.gridleak/state
+stays_whole "a killed publish"
+# Jobs that come, go and change at once, with the columns of the last time at hand.
+sed 's/^job: .*/job: 2030-500/' kept.yaml >archive/2030-500.yaml
+sed 's/^job: .*/job: 2039-500/; s/^  maker: .*/  maker: Third/' kept.yaml >archive/2039-500.yaml
+stays_whole "two jobs more"
+rm archive/2030-500.yaml
+sed -i 's/^  maker: .*/  maker: Fourth/' archive/2039-500.yaml
+stays_whole "one less, one changed"
+rm archive/2039-500.yaml
+stays_whole "as before"
+# Damaged columns, or summaries that somebody touched: not believed.
+for damage in 'truncate -s -1' 'truncate -s 100' 'truncate -s 0' rm; do
+    $damage out/.gridleak/columns
+    sed -i "s/^  model: .*/  model: Model $damage/" archive/2031-014.yaml
+    stays_whole "columns after '$damage'"
+done
+printf '\377\377\377\377' | dd of=out/.gridleak/columns bs=1 seek=2000 conv=notrunc status=none
+sed -i "s/^  model: .*/  model: Overwritten/" archive/2031-014.yaml
+stays_whole "columns overwritten"
+echo '{}' >>out/summaries.jsonl
+sed -i "s/^  model: .*/  model: Appended/" archive/2031-014.yaml
+stays_whole "summaries with a line too many"
+cp kept.yaml archive/2031-014.yaml
+grep -q 2031-014 $summary || say_failed "no summary"
 
 # ---- the output folder is held by one publish at a time
 python3 "$here/hold_lock.py" one/.gridleak/lock 3 >holder &

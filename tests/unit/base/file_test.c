@@ -73,6 +73,45 @@ static void a_file_is_written_and_read(void **state)
     buffer_release(&contents);
 }
 
+/* A file of pieces, some from what it was. */
+static enum file_status patch(const char *path, const char *begins, uint64_t offset,
+                              uint64_t length, const char *ends)
+{
+    struct file_writer writer;
+    file_begin(&writer, path);
+    file_put(&writer, begins, strlen(begins));
+    file_put_old(&writer, offset, length);
+    file_put(&writer, ends, strlen(ends));
+    return file_finish(&writer);
+}
+
+static void a_file_is_written_in_pieces(void **state)
+{
+    (void)state;
+    struct buffer large = {0}, contents = {0};
+    for (unsigned i = 0; i < 300000; i++)
+        buffer_decimal(&large, i);
+    assert_int_equal(file_write(in_folder("p"), large.data, large.length, NULL), FILE_OK);
+    assert_int_equal(patch(in_folder("p"), "<", 5, large.length - 10, ">"), FILE_OK);
+    assert_int_equal(file_read(in_folder("p"), large.length, &contents), FILE_OK);
+    assert_int_equal(contents.length, large.length - 8);
+    assert_int_equal(contents.data[0], '<');
+    assert_memory_equal(contents.data + 1, large.data + 5, large.length - 10);
+    assert_int_equal(contents.data[contents.length - 1], '>');
+    struct stat before, after;
+    assert_int_equal(stat(in_folder("p"), &before), 0);
+    /* The same again is not touched; more than there was is a failure that leaves it alone. */
+    assert_int_equal(patch(in_folder("p"), "<", 1, large.length - 10, ">"), FILE_OK);
+    assert_int_equal(patch(in_folder("p"), "", 1, large.length, ""), FILE_FAILED);
+    assert_int_equal(stat(in_folder("p"), &after), 0);
+    assert_int_equal(before.st_ino, after.st_ino);
+    assert_int_equal(patch(in_folder("p"), "a", 0, 0, "b"), FILE_OK);
+    assert_int_equal(patch(in_folder("none"), "a", 0, 1, "b"), FILE_MISSING);
+    assert_int_equal(access(in_folder("none"), F_OK), -1);
+    buffer_release(&large);
+    buffer_release(&contents);
+}
+
 static void a_failure_is_told(void **state)
 {
     (void)state;
@@ -162,6 +201,7 @@ int main(void)
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(a_folder_is_listed_by_name),
         cmocka_unit_test(a_file_is_written_and_read),
+        cmocka_unit_test(a_file_is_written_in_pieces),
         cmocka_unit_test(a_failure_is_told),
         cmocka_unit_test(folders_are_made_and_removed),
         cmocka_unit_test(options_are_parsed),
