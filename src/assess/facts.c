@@ -127,11 +127,16 @@ static void judge_touch(const struct facts_case *facts, struct judgement *judgem
     if (!facts->job->set.mains.set)
         return;
     double rise_v = facts->policy->mains_rise * facts->job->set.mains.value;
+    double hertz = mains_frequency(facts->job);
+    double total_f = mains_isolators(facts->job, facts->left);
+    double u_f = mains_isolators_uncertainty(facts->job, facts->policy, facts->left);
+    double touch_a = mains_touch_current(rise_v, hertz, total_f, facts->leak_s);
     add(judgement, facts->policy,
         (struct criterion){
             .key = CRITERION_TOUCH_CURRENT,
-            .value = mains_touch_current(rise_v, mains_frequency(facts->job),
-                                         mains_isolators(facts->job, facts->left), facts->leak_s),
+            .value = touch_a,
+            .uncertainty =
+                mains_touch_current(rise_v, hertz, total_f + u_f, facts->leak_s) - touch_a,
             .limit = facts->policy->touch_current_a,
             .unit = UNIT_CURRENT,
             .upper = true,

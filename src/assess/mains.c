@@ -1,6 +1,7 @@
 #include "assess/mains.h"
 
 #include "assess/assessment.h"
+#include "assess/held.h"
 
 #include <math.h>
 
@@ -57,13 +58,20 @@ static double original_f(const struct capacitor *part)
     return part->marked.value.set ? part->marked.value.value : 0;
 }
 
-static double left_f(const struct job *job, const struct capacitor *part)
+/* Whether the original is in circuit: as found, or left as it was. */
+static bool is_original(const struct job *job, const struct capacitor *part, bool left)
 {
     enum action done = part_action(job, part);
     const struct marking *fitted = part_fitted(job, part);
-    if (part_is_new(done, fitted))
-        return fitted->value.set ? fitted->value.value : original_f(part);
-    return done == DONE_DISCONNECTED ? 0 : original_f(part);
+    return !left || (part_is_new(done, fitted) ? !fitted->value.set : done != DONE_DISCONNECTED);
+}
+
+static double isolator_f(const struct job *job, const struct capacitor *part, bool left)
+{
+    if (is_original(job, part, left))
+        return original_f(part);
+    const struct marking *fitted = part_fitted(job, part);
+    return part_is_new(part_action(job, part), fitted) ? fitted->value.value : 0;
 }
 
 double mains_isolators(const struct job *job, bool left)
@@ -72,7 +80,19 @@ double mains_isolators(const struct job *job, bool left)
     for (size_t i = 0; i < job->capacitor_count; i++) {
         const struct capacitor *part = &job->capacitors[i];
         if (place_is_isolator(part->place))
-            total_f += left ? left_f(job, part) : original_f(part);
+            total_f += isolator_f(job, part, left);
+    }
+    return total_f;
+}
+
+double mains_isolators_uncertainty(const struct job *job, const struct policy *policy, bool left)
+{
+    double total_f = 0;
+    for (size_t i = 0; i < job->capacitor_count; i++) {
+        const struct capacitor *part = &job->capacitors[i];
+        if (place_is_isolator(part->place) && part->measured.value.set &&
+            is_original(job, part, left))
+            total_f += held_uncertainty(job, policy, &part->measured.value);
     }
     return total_f;
 }

@@ -29,6 +29,9 @@ double mains_frequency(const struct job *job);
 /* F: all isolators of the set together, as found or as left (what is fitted counts then). */
 double mains_isolators(const struct job *job, bool left);
 
+/* F: its expanded uncertainty, of those that were measured; one bridge read them all. */
+double mains_isolators_uncertainty(const struct job *job, const struct policy *policy, bool left);
+
 /* Above 0.1 uF on the plug's side of the switch a discharge resistor is needed besides. */
 bool mains_needs_discharge(const struct capacitor *part);
 

@@ -100,12 +100,38 @@ static void too_coarse_for_a_tolerance(void **state)
     bench_release(&bench);
 }
 
+/* The touch current of what was measured is as uncertain as the bridge: 253 V * 2 pi 50 Hz * 4.6 nF
+   is 365.6 uA, and 2*(1 % of 4.6 nF + 1 pF)/sqrt(3) of it 4.31 uA. What is only marked counts as it
+   is marked. */
+static void touch_current_of_a_measured_isolator(void **state)
+{
+    (void)state;
+    struct bench bench;
+#define ISOLATOR(measured)                                                                         \
+    HEAD CASE "capacitors:\n  C1:\n    type: ceramic\n    marked: 0.0047 uF 500 V a.c. Y1\n"       \
+              "    place: aerial isolator\n" measured "    readings:\n"                            \
+              "      - 500 V 60 s over 10000 M by megohms\n"
+    bench_assess(&bench, ISOLATOR("    measured: 4.6 nF\n"));
+    const struct criterion *touch =
+        bench_criterion(bench_part(&bench, "C1"), CRITERION_TOUCH_CURRENT, true);
+    assert_relative(touch->value, 365.6e-6, 1e-3);
+    assert_relative(touch->uncertainty, 4.31e-6, 1e-3);
+    bench_release(&bench);
+    bench_assess(&bench, ISOLATOR(""));
+    touch = bench_criterion(bench_part(&bench, "C1"), CRITERION_TOUCH_CURRENT, true);
+    assert_relative(touch->value, 373.6e-6, 1e-3);
+    assert_close(touch->uncertainty, 0, 0);
+    bench_release(&bench);
+#undef ISOLATOR
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(which_instrument),
         cmocka_unit_test(per_cent_of_full_scale),
         cmocka_unit_test(too_coarse_for_a_tolerance),
+        cmocka_unit_test(touch_current_of_a_measured_isolator),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
