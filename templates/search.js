@@ -376,6 +376,7 @@
   var field = document.getElementById("q"), status = document.getElementById("status");
   var clear = document.getElementById("clear"), partsFound = document.getElementById("parts-found");
   var tables = { sets: tableOfPlain(), parts: document.getElementById("parts") };
+  var setsFound = tables.sets.closest("section");
   var sort = { sets: { key: "returned", down: true }, parts: { key: "job", down: true } };
 
   /* The plain table of all sets gives its head, and goes. */
@@ -407,7 +408,8 @@
   function head(job, text) {
     return "<tr role=row><th role=rowheader scope=row class=\"p1 k-job\">" + link("jobs/" + job + "/shop.html", text) + "</th>";
   }
-  function number(text) { return text.replace(/^([<>])/, "$1\u2009").replace(/\B(?=(\d{3})+$)/, text.length > 4 ? "\u2009" : ""); }
+  function thousands(digits) { return digits.replace(/\B(?=(\d{3})+$)/g, "\u2009"); }
+  function number(text) { return text.replace(/^([<>])/, "$1\u2009").replace(/^\D?\u2009?\d{5,}/, thousands); }
 
   function setRow(job) {
     var name = jobs.job.text(job), progress = jobs.in_progress.text(job) === "true" ? "<em>in progress</em>" : "";
@@ -440,7 +442,7 @@
   }
 
   /*
-   * Rows stand in groups. The first fills the screen and is drawn at once; the others in the frame after
+   * Rows stand in groups. The one that fills the screen is drawn at once; the others in the frame after
    * it, or when the page is printed before that. What is off the screen is laid out when the typing
    * pauses, a group a frame, so that no letter waits for it. A group that holds what it held is left alone.
    */
@@ -464,28 +466,25 @@
     drawOthers();
     setTimeout(function () { layOut(shown); }, PAUSE_MS);
   }
-  function draw(name, found, all, rowOf) {
+  function draw(name, found, all, rowOf, onScreen) {
     var rows = first(found, all, orders[name][sort[name].key], sort[name].down, SHOWN);
     groups[name].forEach(function (body, i) {
-      var own = rows.slice(i * GROUP, (i + 1) * GROUP);
-      if (body.drawn === own.join()) {
-        if (body.className === "stale") body.className = "later";
-      } else if (i === 0) {
+      var own = rows.slice(i * GROUP, (i + 1) * GROUP), now = onScreen && i === 0, kept = body.drawn === own.join();
+      if (kept && !now && body.className !== "stale") return;
+      body.className = now ? "" : kept ? "later" : "stale";
+      if (kept) return;
+      if (now) fillGroup(body, own, rowOf);
+      else undrawn.push(function () {
         fillGroup(body, own, rowOf);
-      } else {
-        body.className = "stale";
-        undrawn.push(function () {
-          fillGroup(body, own, rowOf);
-          body.className = "later";
-        });
-      }
+        body.className = "later";
+      });
     });
     var note = document.getElementById(name + "-limited");
     note.hidden = found.count <= SHOWN;
     note.textContent = "The first " + SHOWN + " of " + count(found.count) + " are shown; a further word narrows them.";
   }
 
-  function count(n) { return n > 9999 ? String(n).replace(/\B(?=(\d{3})+$)/g, "\u2009") : String(n); }
+  function count(n) { return n > 9999 ? thousands(String(n)) : String(n); }
   function several(n, one, many) { return count(n) + " " + (n === 1 ? one : many); }
 
   function sentence(query, found) {
@@ -512,10 +511,13 @@
     }
     undrawn = [];
     partsFound.hidden = !last.parts.count;
-    draw("parts", last.parts, partCount, partRow);
-    draw("sets", last.jobs, jobCount, setRow);
+    setsFound.hidden = !last.jobs.count;
+    draw("parts", last.parts, partCount, partRow, true);
+    draw("sets", last.jobs, jobCount, setRow, last.parts.count < GROUP);
     var says = sentence(query, last);
     if (status.textContent !== says) status.textContent = says;
+    if (query) status.dataset.q = query; /* what was asked, on paper */
+    else delete status.dataset.q;
     clear.hidden = !query;
     showFilters();
     requestAnimationFrame(function () { setTimeout(afterFrame, 0, shown); });
@@ -678,7 +680,13 @@
     makeGroups(name);
     makeHeads(name);
   });
-  var form = document.getElementById("find");
+  /* On a phone the keyboard leaves room for the field and the answer: all filters fold away. */
+  var form = document.getElementById("find"), more = document.getElementById("more");
+  var narrow = window.matchMedia("(max-width: 42rem)").matches;
+  if (narrow) {
+    more.firstElementChild.textContent = "Filters";
+    more.firstElementChild.after(document.getElementById("filters"));
+  }
   form.hidden = false;
   form.addEventListener("submit", function (event) { event.preventDefault(); });
   field.addEventListener("input", function () {
@@ -716,7 +724,7 @@
     })();
   }
   recall();
-  if (/\b(maker|model|valve|kind|type|batch|from|to|due)=/.test(field.value)) document.getElementById("more").open = true;
+  more.open = !narrow && /\b(maker|model|valve|kind|type|batch|from|to|due)=/.test(field.value);
   show();
   drawOthers();
   remember();

@@ -128,14 +128,14 @@ async function letterByLetter(browser) {
     let before = Infinity;
     for (let length = 1; length <= text.length; length++) {
       await page.keyboard.type(text[length - 1]);
-      if (text[length - 1] === ' ') continue;
+      if (/[ =]/.test(text[length - 1])) continue;
       const parts = await compare(text.slice(0, length));
       if (parts < before) smaller++;
       before = parts;
     }
     for (let length = text.length - 1; length > text.length - 4; length--) {
       await page.keyboard.press('Backspace');
-      if (!/ $/.test(text.slice(0, length))) await compare(text.slice(0, length));
+      if (!/[ =]$/.test(text.slice(0, length))) await compare(text.slice(0, length));
     }
     // A letter in front makes another word.
     if (text.includes('=')) continue;
@@ -149,6 +149,17 @@ async function letterByLetter(browser) {
 
 // The lists as they are heard and printed, however they are drawn.
 async function lists(browser) {
+  const phone = await open(browser, { viewport: { width: 390, height: 844 } }, many);
+  await phone.goto(`${url(many, 'index.html')}#q=capacitor`);
+  const top = await phone.evaluate(() => document.getElementById('status').getBoundingClientRect().bottom);
+  check(top < 422, `the answer on a phone stands at ${top}, under the keyboard`);
+  check(await phone.isHidden('#filter-place'), 'filters fold away on a phone');
+  await phone.click('summary');
+  await phone.selectOption('#filter-place', 'coupling');
+  same(await phone.inputValue('#q'), 'capacitor place=coupling', 'a filter on a phone');
+  await phone.fill('#q', 'zzzz');
+  check((await phone.isHidden('#sets')) && (await phone.isHidden('#parts')), 'no empty tables');
+  await phone.context().close();
   for (const width of [1280, 390]) {
     const page = await open(browser, { viewport: { width, height: 900 } }, many);
     await page.goto(`${url(many, 'index.html')}#q=coupling`);
@@ -242,6 +253,9 @@ async function behaviour(browser) {
   const leakage = await page.$$eval('#parts tbody tr', (rows) => rows.map((row) => row.children[5].textContent.replace(/[\u2009<>]/g, '')));
   const known = leakage.filter(Boolean).map(Number);
   check(known.length > 5, 'leakages are listed');
+  const written = await page.$$eval('#parts tbody .n', (all) => all.map((cell) => cell.textContent).filter(Boolean));
+  for (const text of written)
+    check(/^([<>]\u2009)?(\d{1,4}(\.\d+)?|\d{1,3}(\u2009\d{3})+)$/.test(text), `a number is written ${text}`);
   same(known, [...known].sort((a, b) => b - a), 'most leakage first');
   check(leakage.slice(known.length).every((text) => !text), 'unknown leakage behind');
 
@@ -312,6 +326,20 @@ async function onPaper(browser) {
   const pdf = await page.pdf({ preferCSSPageSize: true });
   check(pdf.length > 5000, 'a PDF comes out');
   await page.context().close();
+
+  // Paper says what was asked and how much is left out; each page has its head; no word is torn.
+  const long = await open(browser, { viewport: { width: 1280, height: 900 } }, many);
+  await long.goto(`${url(many, 'index.html')}#q=coupling`);
+  const file = path.join(many, 'list.pdf');
+  await long.pdf({ path: file, preferCSSPageSize: true });
+  await long.context().close();
+  const text = execFileSync('pdftotext', ['-layout', file, '-'], { encoding: 'utf8' }), pages = text.split('\f').filter((one) => one.trim());
+  fs.unlinkSync(file);
+  check(/coupling: \d+ parts in/.test(text), 'paper says the words');
+  check(/The first 200 of \d+ are shown/.test(text), 'paper says that there are more');
+  check(pages.length > 4, `only ${pages.length} pages`);
+  for (const [i, one] of pages.slice(0, -1).entries()) check(/Leakage|Returned/.test(one), `page ${i + 1} has no head`);
+  check(/Leakage/.test(text) && !/\b(Leaka|conditiona)\b/.test(text), 'a word is torn on paper');
 }
 
 // Which call-backs are due hangs on the day only.
