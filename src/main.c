@@ -384,8 +384,13 @@ static int command_find(struct session *session)
     struct buffer out = {0};
     size_t damaged;
     int answer = EXIT_INPUT;
-    if (find_read(output, &columns, &damaged) != FILE_OK) {
+    enum file_status read = find_read(output, &columns, &damaged);
+    if (read == FILE_MISSING) {
         fprintf(stderr, "gridleak: there is no '%s/summaries.jsonl': publish first\n", output);
+    } else if (read != FILE_OK) {
+        fprintf(stderr, "gridleak: cannot read '%s/summaries.jsonl': %s\n", output,
+                file_status_text(read));
+        answer = EXIT_SYSTEM;
     } else {
         struct query_hits hits = query_run(&columns, (const char *const *)session->operands,
                                            (size_t)session->operand_count, &session->arena);
