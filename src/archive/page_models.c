@@ -150,6 +150,14 @@ static const char *entry_text(const struct column_data *column, uint32_t code)
     return *text ? text : NULL;
 }
 
+/* The shop's words for a place or a type of the summaries. */
+static const char *entry_phrase(const struct model_work *work, const char *group,
+                                const struct column_data *column, uint32_t code)
+{
+    const char *key = entry_text(column, code);
+    return key ? phrase_in(&work->frame->say, group, key) : NULL;
+}
+
 static struct mustache_value *part_rows(struct model_work *work)
 {
     struct arena *arena = work->frame->arena;
@@ -160,8 +168,10 @@ static struct mustache_value *part_rows(struct model_work *work)
         struct mustache_value *row = mustache_map(arena);
         mustache_set_text(arena, row, "ref", entry_text(&parts[PART_REF], line->ref));
         mustache_set_text(arena, row, "marked", entry_text(&parts[PART_MARKED], line->marked));
-        mustache_set_text(arena, row, "place", entry_text(&parts[PART_PLACE], line->place));
-        mustache_set_text(arena, row, "type", entry_text(&parts[PART_TYPE], line->type));
+        mustache_set_text(arena, row, "place",
+                          entry_phrase(work, "place", &parts[PART_PLACE], line->place));
+        mustache_set_text(arena, row, "type",
+                          entry_phrase(work, "type", &parts[PART_TYPE], line->type));
         mustache_set_text(arena, row, "sets", arena_print(arena, "%u", line->sets));
         mustache_set_text(arena, row, "read", arena_print(arena, "%u", line->read));
         mustache_set_text(arena, row, "failed", arena_print(arena, "%u", line->failed));
