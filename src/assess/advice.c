@@ -134,7 +134,9 @@ void advice_give(struct assessment *assessment, size_t index)
         tell_no_case(assessment, part);
     if (done == DONE_OPEN)
         tell_no_limit(assessment, part->part);
-    if (part->against_advice && !has_reason(assessment->job, part->part))
+    /* A new part without the class is told where it stands: what was fitted. */
+    bool of_class = part->advice == ADVICE_REPLACE_SAFETY_CLASS && action_is_change(done);
+    if (part->against_advice && !of_class && !has_reason(assessment->job, part->part))
         diagnostic_add(assessment->diagnostics, &assessment->job->source, at,
                        DIAGNOSTIC_AGAINST_ADVICE,
                        part->part->can == NOT_LISTED

@@ -145,14 +145,18 @@ static void warn_unfit(const struct findings *findings, const struct replacement
         {REPLACEMENT_PULSE, "%s: what was fitted is rated %g V, its place needs %.0f V for pulses"},
         {REPLACEMENT_WATTS, "%s: what was fitted is rated %g W, the original %g W"},
     };
-    if (found->checked[REPLACEMENT_CLASS] &&
-        found->checks[REPLACEMENT_CLASS].outcome == OUTCOME_FAIL)
-        diagnostic_add(diagnostics, &findings->job->source, at, DIAGNOSTIC_REPLACEMENT_UNFIT, NULL,
+    bool without_class = found->checked[REPLACEMENT_CLASS] &&
+                         found->checks[REPLACEMENT_CLASS].outcome == OUTCOME_FAIL;
+    if (without_class)
+        diagnostic_add(diagnostics, &findings->job->source, at, DIAGNOSTIC_REPLACEMENT_UNFIT,
+                       "if it has one, write class and volts: ceramic 2.2 nF Y1 300 V",
                        "%s: what was fitted does not bear the class that its place demands",
                        found->ref);
     for (size_t i = 0; i < sizeof told / sizeof *told; i++) {
         const struct held *held = &found->checks[told[i].check];
         if (!found->checked[told[i].check] || held->outcome != OUTCOME_FAIL)
+            continue;
+        if (told[i].check == REPLACEMENT_AC && without_class) /* which brings its a.c. volts */
             continue;
         diagnostic_add(diagnostics, &findings->job->source, at, DIAGNOSTIC_REPLACEMENT_UNFIT, NULL,
                        told[i].text, found->ref, held->value, held->low);

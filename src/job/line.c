@@ -164,7 +164,11 @@ static const char *unit_behind_hint(struct line *line, struct span span)
         arena_print(line->arena, "%s %.*s", line_written(line, span), (int)length, word.start);
     if (length == 0 || quantity_read(line->arena, text, strlen(text), &any, &quantity, NULL))
         return NULL;
-    return arena_print(line->arena, "write %s", text);
+    return arena_print(line->arena,
+                       length < word.length && word.start[length] == ';' && cursor < end
+                           ? "write %s, then a comma and a space"
+                           : "write %s",
+                       text);
 }
 
 bool line_fail_quantity(struct line *line, struct span span, enum quantity_status status,

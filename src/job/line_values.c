@@ -40,8 +40,8 @@ static bool number_into_slot(struct line *line, struct span span, const struct v
         return line_fail(line, span, DIAGNOSTIC_UNIT_WRONG, slot_words(line, slots, slot_count),
                          "'%s' has no place here", line_quote(line, span));
     if (slot_set(slot))
-        return line_fail(line, span, DIAGNOSTIC_DUPLICATE_KEY, NULL, "a second %s: '%s'",
-                         unit_name(quantity.unit), line_quote(line, span));
+        return line_fail(line, span, DIAGNOSTIC_DUPLICATE_KEY, slot_words(line, slots, slot_count),
+                         "a second %s: '%s'", unit_name(quantity.unit), line_quote(line, span));
     if (slot->quantity != NULL)
         *slot->quantity = quantity;
     else

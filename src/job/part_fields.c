@@ -7,6 +7,23 @@
 
 /* ---- markings ---- */
 
+/* `polyproplene`: a word that is no type is a maker's as a rule, unless it is long and all but one.
+ */
+static void tell_mistyped_type(struct reader *reader, const struct marking *marking)
+{
+    enum { LEAST_LETTERS = 6 };
+    const char *words = marking->other_words;
+    if (marking->type != DIELECTRIC_UNKNOWN || !words)
+        return;
+    const char *first = arena_text(reader->arena, words, strcspn(words, " "));
+    const char *near =
+        strlen(first) < LEAST_LETTERS ? NULL : nearest_word(first, dielectric_choices);
+    if (near)
+        reader_tell(reader, marking->at, DIAGNOSTIC_FITTED_TYPE,
+                    arena_print(reader->arena, "nearest: %s", near),
+                    "'%s' is no type of capacitor, and is printed as it stands", first);
+}
+
 static void marking_read(struct reader *reader, const struct field *field, const struct node *node,
                          void *record, enum marking_kind kind)
 {
@@ -20,6 +37,8 @@ static void marking_read(struct reader *reader, const struct field *field, const
         return;
     }
     reader_note_units(reader, &line);
+    if (kind == MARKING_CAPACITOR && fitted)
+        tell_mistyped_type(reader, marking);
     if (marking->colours_unknown)
         reader_tell(reader, marking->at, DIAGNOSTIC_COLOURS_UNKNOWN,
                     kind == MARKING_RESISTOR

@@ -140,7 +140,9 @@ int ref_index(struct reader *reader, enum ref_kind kind, const char *ref, struct
                     kinds[entry->kind].name, kinds[kind].name);
     else if (!reader->damaged[kind])
         reader_tell(reader, at, DIAGNOSTIC_REF_UNKNOWN,
-                    stages ? stages : nearest_ref(reader, ref, NULL, kind),
+                    stages                 ? stages
+                    : strstr(ref, " and ") ? "several stand with commas between"
+                                           : nearest_ref(reader, ref, NULL, kind),
                     "'%s' is not listed under '%s'", ref, kinds[kind].section);
     return NOT_LISTED;
 }
