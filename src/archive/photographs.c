@@ -1,7 +1,9 @@
 #include "archive/photographs.h"
 
+#include "base/memory.h"
 #include "write/picture_file.h"
 
+#include <errno.h>
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
@@ -14,10 +16,18 @@ enum {
 };
 static const uint64_t OPENED_PX_MAX = 60000000; /* a camera's 50 megapixels; above it is a bomb */
 
+static char *real_path(const char *path)
+{
+    char *real = realpath(path, NULL);
+    if (!real && errno == ENOMEM)
+        memory_exhausted();
+    return real;
+}
+
 /* Whether path, all links followed, lies inside the archive. */
 static bool is_inside(const char *archive_folder, const char *path)
 {
-    char *folder = realpath(archive_folder, NULL), *file = realpath(path, NULL);
+    char *folder = real_path(archive_folder), *file = real_path(path);
     size_t length = folder ? strlen(folder) : 0;
     bool inside = folder && file && strncmp(file, folder, length) == 0 &&
                   (file[length] == '/' || strcmp(folder, "/") == 0);

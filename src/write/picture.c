@@ -1,4 +1,5 @@
 #include "write/picture.h"
+#include "base/memory.h"
 
 #include "write/picture_pixels.h"
 
@@ -41,12 +42,21 @@ enum picture_status picture_decode(const unsigned char *file, size_t length,
     return PICTURE_UNKNOWN;
 }
 
+/* Why libpng failed; what it has no memory for is no fault of the file. */
+static enum picture_status failure_of(const png_image *image)
+{
+    if (strcasestr(image->message, "out of memory") ||
+        strcasestr(image->message, "insufficient memory"))
+        memory_exhausted();
+    return PICTURE_DAMAGED;
+}
+
 enum picture_status png_decode(const unsigned char *file, size_t length,
                                const struct picture_limits *limits, struct picture *picture)
 {
     png_image image = {.version = PNG_IMAGE_VERSION};
     if (!png_image_begin_read_from_memory(&image, file, length))
-        return PICTURE_DAMAGED;
+        return failure_of(&image);
     if ((uint64_t)image.width * image.height > limits->opened_px) {
         png_image_free(&image);
         return PICTURE_TOO_LARGE;
@@ -63,7 +73,7 @@ enum picture_status png_decode(const unsigned char *file, size_t length,
     const png_color white = {255, 255, 255};
     if (!png_image_finish_read(&image, &white, read.data.data, 0, NULL)) {
         picture_release(&read);
-        return PICTURE_DAMAGED;
+        return failure_of(&image);
     }
     unsigned width_px = read.width_px;
     unsigned height_px = read.height_px;

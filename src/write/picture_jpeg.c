@@ -1,3 +1,4 @@
+#include "base/memory.h"
 #include "write/picture_pixels.h"
 
 #include <stdbool.h>
@@ -75,6 +76,15 @@ struct jpeg {
     enum orientation orientation;
 };
 
+/* Why the handle's last call failed. What libjpeg-turbo has no memory for is no fault of the file:
+   "Memory allocation failure", "Insufficient memory (case 4)". */
+static enum picture_status failure_of(tjhandle handle)
+{
+    if (!handle || strstr(tjGetErrorStr2(handle), "emory"))
+        memory_exhausted();
+    return PICTURE_DAMAGED;
+}
+
 static enum picture_status read_header(struct jpeg *jpeg, const struct picture_limits *limits)
 {
     int colour_space;
@@ -82,9 +92,10 @@ static enum picture_status read_header(struct jpeg *jpeg, const struct picture_l
     int failed =
         tjDecompressHeader3(handle, jpeg->file, (unsigned long)jpeg->length, &jpeg->width_px,
                             &jpeg->height_px, &jpeg->subsampling, &colour_space);
+    enum picture_status status = failed ? failure_of(handle) : PICTURE_OK;
     tjDestroy(handle);
     if (failed)
-        return PICTURE_DAMAGED;
+        return status;
     if ((uint64_t)jpeg->width_px * (uint64_t)jpeg->height_px > limits->opened_px)
         return PICTURE_TOO_LARGE;
     if (colour_space == TJCS_CMYK || colour_space == TJCS_YCCK)
@@ -134,10 +145,11 @@ static enum picture_status transform(const struct jpeg *jpeg, struct picture *pi
     tjhandle handle = tjInitTransform();
     int failed = tjTransform(handle, jpeg->file, (unsigned long)jpeg->length, 1, &data, &length,
                              &operation, STRICT);
+    enum picture_status status = failed ? failure_of(handle) : PICTURE_OK;
     tjDestroy(handle);
     if (failed) {
         tjFree(data);
-        return PICTURE_DAMAGED;
+        return status;
     }
     return take_jpeg(data, length, jpeg, picture);
 }
@@ -175,10 +187,11 @@ static enum picture_status decode_pixels(const struct jpeg *jpeg, tjscalingfacto
     int failed = tjDecompress2(
         handle, jpeg->file, (unsigned long)jpeg->length, (unsigned char *)pixels->data.data, width,
         0, height, jpeg->components == 1 ? TJPF_GRAY : TJPF_RGB, STRICT | TJFLAG_ACCURATEDCT);
+    enum picture_status status = failed ? failure_of(handle) : PICTURE_OK;
     tjDestroy(handle);
     if (failed)
         picture_release(pixels);
-    return failed ? PICTURE_DAMAGED : PICTURE_OK;
+    return status;
 }
 
 static enum picture_status encode_pixels(const struct picture *pixels, int quality,
@@ -192,10 +205,11 @@ static enum picture_status encode_pixels(const struct picture *pixels, int quali
         tjCompress2(handle, (const unsigned char *)pixels->data.data, (int)pixels->width_px, 0,
                     (int)pixels->height_px, gray ? TJPF_GRAY : TJPF_RGB, &data, &length,
                     gray ? TJSAMP_GRAY : TJSAMP_420, quality, TJFLAG_ACCURATEDCT);
+    enum picture_status status = failed ? failure_of(handle) : PICTURE_OK;
     tjDestroy(handle);
     if (failed) {
         tjFree(data);
-        return PICTURE_DAMAGED;
+        return status;
     }
     return take_jpeg(data, length, jpeg, picture);
 }
