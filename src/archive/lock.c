@@ -5,20 +5,6 @@
 #include <stdint.h>
 #include <unistd.h>
 
-static enum file_status open_failure(void)
-{
-    switch (errno) {
-    case EACCES:
-    case EPERM:
-    case EROFS:
-        return FILE_FORBIDDEN;
-    case ENOSPC:
-        return FILE_DISK_FULL;
-    default:
-        return FILE_FAILED;
-    }
-}
-
 static int open_lock_file(const char *folder, enum file_status *failure)
 {
     struct buffer path = {0};
@@ -29,7 +15,7 @@ static int open_lock_file(const char *folder, enum file_status *failure)
         buffer_text(&path, "/lock");
         file = open(buffer_string(&path), O_RDWR | O_CREAT | O_CLOEXEC, 0666);
         if (file < 0)
-            *failure = open_failure();
+            *failure = file_status_of(errno);
     }
     buffer_release(&path);
     return file;
@@ -55,7 +41,7 @@ enum lock_status lock_take(const char *folder, enum lock_kind kind, bool wait, s
         return LOCK_HELD;
     }
     bool busy = errno == EACCES || errno == EAGAIN;
-    *failure = busy ? FILE_OK : FILE_FAILED;
+    *failure = busy ? FILE_OK : file_status_of(errno);
     if (busy && fcntl(file, F_GETLK, &wanted) == 0 && wanted.l_type != F_UNLCK)
         *holder = wanted.l_pid;
     close(file);

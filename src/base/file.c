@@ -13,7 +13,7 @@
 
 enum { PIECE_BYTES = 1 << 18 };
 
-static enum file_status status_of(int error)
+enum file_status file_status_of(int error)
 {
     switch (error) {
     case ENOENT:
@@ -60,7 +60,7 @@ static enum file_status read_all(int file, size_t limit_bytes, struct buffer *co
 {
     struct stat about;
     if (fstat(file, &about) != 0)
-        return status_of(errno);
+        return file_status_of(errno);
     if (S_ISDIR(about.st_mode))
         return FILE_NOT_REGULAR;
     size_t before = contents->length;
@@ -75,7 +75,7 @@ static enum file_status read_all(int file, size_t limit_bytes, struct buffer *co
             continue;
         if (got < 0) {
             contents->length = before;
-            return status_of(errno);
+            return file_status_of(errno);
         }
         if (got == 0)
             return FILE_OK;
@@ -93,7 +93,7 @@ enum file_status file_read(const char *path, size_t limit_bytes, struct buffer *
        through one that somebody writes to is waited for. */
     int file = open(path, O_RDONLY | O_CLOEXEC | O_NONBLOCK);
     if (file < 0)
-        return status_of(errno);
+        return file_status_of(errno);
     fcntl(file, F_SETFL, O_RDONLY);
     enum file_status status = read_all(file, limit_bytes, contents);
     close(file);
@@ -119,7 +119,7 @@ static enum file_status write_all(int file, const char *data, size_t length)
         if (written < 0 && errno == EINTR)
             continue;
         if (written < 0)
-            return status_of(errno);
+            return file_status_of(errno);
         data += written;
         length -= (size_t)written;
     }
@@ -135,7 +135,7 @@ void file_begin(struct file_writer *writer, const char *path)
     buffer_print(&writer->aside, "%s%s%ld", path, aside_mark, (long)getpid());
     writer->file =
         open(buffer_string(&writer->aside), O_RDWR | O_CREAT | O_TRUNC | O_CLOEXEC, 0666);
-    writer->status = writer->file < 0 ? status_of(errno) : FILE_OK;
+    writer->status = writer->file < 0 ? file_status_of(errno) : FILE_OK;
 }
 
 void file_put(struct file_writer *writer, const void *data, size_t length)
@@ -148,7 +148,7 @@ void file_put_old(struct file_writer *writer, uint64_t offset, uint64_t length)
 {
     int old = open(buffer_string(&writer->path), O_RDONLY | O_CLOEXEC);
     if (old < 0 && writer->status == FILE_OK)
-        writer->status = status_of(errno);
+        writer->status = file_status_of(errno);
     char *piece = memory_get(PIECE_BYTES);
     while (length > 0 && writer->status == FILE_OK) {
         size_t wanted = length < PIECE_BYTES ? (size_t)length : PIECE_BYTES;
@@ -156,7 +156,7 @@ void file_put_old(struct file_writer *writer, uint64_t offset, uint64_t length)
         if (got < 0 && errno == EINTR)
             continue;
         if (got <= 0) {
-            writer->status = got < 0 ? status_of(errno) : FILE_FAILED;
+            writer->status = got < 0 ? file_status_of(errno) : FILE_FAILED;
             break;
         }
         file_put(writer, piece, (size_t)got);
@@ -181,7 +181,7 @@ static void close_aside(struct file_writer *writer)
 {
     buffer_string(&writer->aside); /* ends with NUL */
     if (writer->file >= 0 && close(writer->file) != 0 && writer->status == FILE_OK)
-        writer->status = status_of(errno);
+        writer->status = file_status_of(errno);
 }
 
 static enum file_status release_writer(struct file_writer *writer)
@@ -195,7 +195,7 @@ static enum file_status release_writer(struct file_writer *writer)
 static enum file_status rename_aside(struct file_writer *writer)
 {
     if (writer->status == FILE_OK && rename(writer->aside.data, buffer_string(&writer->path)) != 0)
-        writer->status = status_of(errno);
+        writer->status = file_status_of(errno);
     if (writer->status != FILE_OK)
         drop_aside(&writer->aside);
     return release_writer(writer);
@@ -268,7 +268,7 @@ static enum file_status name_if_free(const char *aside, const char *path)
     struct stat about;
     if (lstat(path, &about) == 0)
         return FILE_EXISTS;
-    return rename(aside, path) == 0 ? FILE_OK : status_of(errno);
+    return rename(aside, path) == 0 ? FILE_OK : file_status_of(errno);
 }
 
 enum file_status file_create(const char *path, const void *data, size_t length)
@@ -293,7 +293,7 @@ enum file_status folder_make(const char *path)
     }
     const char *slash = strrchr(path, '/');
     if (errno != ENOENT || !slash || slash == path)
-        return status_of(errno);
+        return file_status_of(errno);
     char *above = memory_get((size_t)(slash - path) + 1);
     memcpy(above, path, (size_t)(slash - path));
     above[slash - path] = '\0';
@@ -301,7 +301,7 @@ enum file_status folder_make(const char *path)
     free(above);
     if (status != FILE_OK)
         return status;
-    return mkdir(path, 0777) == 0 || errno == EEXIST ? FILE_OK : status_of(errno);
+    return mkdir(path, 0777) == 0 || errno == EEXIST ? FILE_OK : file_status_of(errno);
 }
 
 static int by_name(const void *a, const void *b)
@@ -318,7 +318,7 @@ enum file_status folder_list(const char *path, struct arena *arena, struct folde
     if (!folder && errno == ENOMEM)
         memory_exhausted();
     if (!folder)
-        return status_of(errno);
+        return file_status_of(errno);
     for (struct dirent *entry; errno = 0, (entry = readdir(folder));) {
         if (strcmp(entry->d_name, ".") == 0 || strcmp(entry->d_name, "..") == 0)
             continue;
@@ -329,7 +329,7 @@ enum file_status folder_list(const char *path, struct arena *arena, struct folde
     closedir(folder);
     errno = error;
     if (error)
-        return status_of(error);
+        return file_status_of(error);
     if (found.count)
         qsort(found.names, found.count, sizeof *found.names, by_name);
     *names = found;
@@ -343,11 +343,11 @@ static enum file_status remove_entry(const char *folder, const char *name)
     struct stat about;
     enum file_status status = FILE_OK;
     if (lstat(buffer_string(&path), &about) != 0)
-        status = errno == ENOENT ? FILE_OK : status_of(errno);
+        status = errno == ENOENT ? FILE_OK : file_status_of(errno);
     else if (S_ISDIR(about.st_mode))
         status = folder_remove(buffer_string(&path));
     else if (unlink(buffer_string(&path)) != 0)
-        status = status_of(errno);
+        status = file_status_of(errno);
     buffer_release(&path);
     return status;
 }
@@ -363,7 +363,7 @@ enum file_status folder_remove(const char *path)
     for (size_t i = 0; i < found.count && status == FILE_OK; i++)
         status = remove_entry(path, found.names[i]);
     if (status == FILE_OK && rmdir(path) != 0)
-        status = status_of(errno);
+        status = file_status_of(errno);
     arena_release(&arena);
     return status;
 }

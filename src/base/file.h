@@ -23,6 +23,9 @@ enum file_status {
     FILE_FAILED  /* any other; errno says why */
 };
 
+/* What an errno of a system call on a file comes to. */
+enum file_status file_status_of(int error);
+
 /* English, lower case, no full stop: "cannot open 'x': " comes before it. */
 const char *file_status_text(enum file_status status);
 
