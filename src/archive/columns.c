@@ -172,7 +172,7 @@ void column_translation_begin(struct column_translation *translation, const stru
     for (size_t i = 0; i < PART_COLUMN_COUNT; i++)
         translation->parts[i] = unknown_codes(arena, &from->parts[i]);
     for (size_t i = 0; i < AGAIN_COLUMN_COUNT; i++)
-        translation->again_codes[i] = unknown_codes(arena, &from->again[i]);
+        translation->again[i] = unknown_codes(arena, &from->again[i]);
 }
 
 void column_translation_end(struct column_translation *translation)
@@ -180,12 +180,28 @@ void column_translation_end(struct column_translation *translation)
     arena_release(&translation->arena);
 }
 
-/* Rows start to end of a column, behind another. */
-static void take_rows(struct column_data *to, const struct column_data *from, uint32_t *translated,
-                      size_t start, size_t end, struct arena *arena)
+/* Rows of one job: start up to end. */
+struct row_span {
+    size_t start, end;
+};
+
+/* The rows of a job, at or behind `from`; job_of_row rises. */
+static struct row_span rows_of_job(const struct column_data *job_of_row, size_t from, size_t job)
 {
-    column_reserve(to, end - start);
-    for (size_t row = start; row < end; row++) {
+    struct row_span rows = {from, from};
+    while (rows.start < job_of_row->count && job_of_row->codes[rows.start] < job)
+        rows.start++;
+    rows.end = rows.start;
+    while (rows.end < job_of_row->count && job_of_row->codes[rows.end] == job)
+        rows.end++;
+    return rows;
+}
+
+static void take_rows(struct column_data *to, const struct column_data *from, uint32_t *translated,
+                      struct row_span rows, struct arena *arena)
+{
+    column_reserve(to, rows.end - rows.start);
+    for (size_t row = rows.start; row < rows.end; row++) {
         uint32_t code = from->codes[row];
         if (translated[code] == UINT32_MAX) {
             const struct dictionary_entry *entry = &from->dictionary.entries[code];
@@ -199,31 +215,22 @@ void columns_take(struct columns *columns, struct column_translation *translatio
 {
     const struct columns *from = translation->from;
     struct arena *arena = &columns->arena;
-    size_t part = translation->part, again = translation->again;
-    while (part < from->part_count && from->part_job.codes[part] < job)
-        part++;
-    while (again < from->again_count && from->again_job.codes[again] < job)
-        again++;
-    size_t part_end = part, again_end = again;
-    while (part_end < from->part_count && from->part_job.codes[part_end] == job)
-        part_end++;
-    while (again_end < from->again_count && from->again_job.codes[again_end] == job)
-        again_end++;
+    const struct row_span jobs = {job, job + 1},
+                          parts = rows_of_job(&from->part_job, translation->next_part, job),
+                          again = rows_of_job(&from->again_job, translation->next_again, job);
     for (size_t i = 0; i < JOB_COLUMN_COUNT; i++)
         if (i == JOB_PAGE) /* named when all jobs are there */
             column_push(&columns->jobs[i], arena, "", 0);
         else
-            take_rows(&columns->jobs[i], &from->jobs[i], translation->jobs[i], job, job + 1, arena);
+            take_rows(&columns->jobs[i], &from->jobs[i], translation->jobs[i], jobs, arena);
     for (size_t i = 0; i < PART_COLUMN_COUNT; i++)
-        take_rows(&columns->parts[i], &from->parts[i], translation->parts[i], part, part_end,
-                  arena);
+        take_rows(&columns->parts[i], &from->parts[i], translation->parts[i], parts, arena);
     for (size_t i = 0; i < AGAIN_COLUMN_COUNT; i++)
-        take_rows(&columns->again[i], &from->again[i], translation->again_codes[i], again,
-                  again_end, arena);
-    translation->part = part_end;
-    translation->again = again_end;
-    columns->part_count += part_end - part;
-    columns->again_count += again_end - again;
+        take_rows(&columns->again[i], &from->again[i], translation->again[i], again, arena);
+    translation->next_part = parts.end;
+    translation->next_again = again.end;
+    columns->part_count += parts.end - parts.start;
+    columns->again_count += again.end - again.start;
     close_job(columns, from->lines[job].length);
     columns->bytes += from->lines[job].length;
 }

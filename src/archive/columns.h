@@ -111,8 +111,8 @@ size_t columns_add(struct columns *columns, const char *text, size_t length);
 struct column_translation {
     const struct columns *from;
     struct arena arena;
-    size_t part, again; /* the first of the next job's */
-    uint32_t *jobs[JOB_COLUMN_COUNT], *parts[PART_COLUMN_COUNT], *again_codes[AGAIN_COLUMN_COUNT];
+    size_t next_part, next_again; /* rows of `from` behind those of the jobs taken */
+    uint32_t *jobs[JOB_COLUMN_COUNT], *parts[PART_COLUMN_COUNT], *again[AGAIN_COLUMN_COUNT];
 };
 
 /* *from must stay as it is until column_translation_end. */

@@ -73,6 +73,14 @@ uint32_t dictionary_code(struct dictionary *dictionary, struct arena *arena, con
     return length ? find_or_add(dictionary, arena, text, length) : 0;
 }
 
+uint32_t dictionary_find(const struct dictionary *dictionary, const char *text)
+{
+    for (uint32_t code = 0; code < dictionary->count; code++)
+        if (strcmp(dictionary->entries[code].text, text) == 0)
+            return code;
+    return UINT32_MAX;
+}
+
 void column_reserve(struct column_data *column, size_t more)
 {
     if (column->capacity - column->count >= more)

@@ -30,6 +30,9 @@ struct column_data {
 uint32_t dictionary_code(struct dictionary *dictionary, struct arena *arena, const char *text,
                          size_t length);
 
+/* The code of a text, letter by letter; UINT32_MAX: it has none. Looks through all of them. */
+uint32_t dictionary_find(const struct dictionary *dictionary, const char *text);
+
 /* Make room for `more` rows behind those of a column. */
 void column_reserve(struct column_data *column, size_t more);
 /* Put one more row behind a column: a code that its dictionary has, or a text. */

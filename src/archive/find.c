@@ -19,6 +19,16 @@ enum file_status find_read(const char *output, struct columns *columns, size_t *
     return status;
 }
 
+/* Whether parts of the job are among the hits, and so listed before it. *part: the first hit that
+   was not passed yet; jobs are asked for in rising order. */
+static bool has_part_hit(const struct columns *columns, const struct query_hits *hits, size_t job,
+                         size_t *part)
+{
+    while (*part < hits->part_count && columns->part_job.codes[hits->parts[*part]] < job)
+        ++*part;
+    return *part < hits->part_count && columns->part_job.codes[hits->parts[*part]] == job;
+}
+
 /* ---- lines for people */
 
 static size_t columns_of(const char *text)
@@ -41,7 +51,6 @@ static void put_padded(struct buffer *out, const char *text, size_t width, bool 
             used++;
             break;
         }
-        /* No byte of an archive may steer a terminal; the reader keeps such out already. */
         buffer_append(out, start, (size_t)(at - start));
         used += sign_width;
     }
@@ -122,10 +131,8 @@ static void write_job_lines(const struct columns *columns, const struct query_hi
     size_t part = 0;
     for (size_t i = 0; i < hits->job_count; i++) {
         size_t job = hits->jobs[i];
-        while (part < hits->part_count && columns->part_job.codes[hits->parts[part]] < job)
-            part++;
-        if (part < hits->part_count && columns->part_job.codes[hits->parts[part]] == job)
-            continue; /* its parts were listed */
+        if (has_part_hit(columns, hits, job, &part))
+            continue;
         const char *returned = column_text(&columns->jobs[JOB_RETURNED], job);
         put_padded(out, column_text(&columns->jobs[JOB_NUMBER], job), 10, false);
         buffer_text(out, "  ");
@@ -149,7 +156,7 @@ static void write_facts(const struct column_data *group, const char *const *keys
                         struct buffer *out)
 {
     for (size_t i = 0; keys[i]; i++) {
-        if (group == NULL || group[i].count <= row || strcmp(keys[i], "page") == 0)
+        if (strcmp(keys[i], job_column_keys[JOB_PAGE]) == 0) /* named by the pages alone */
             continue;
         json_choice_member(out, keys[i], column_text(&group[i], row));
     }
@@ -167,10 +174,7 @@ void find_write_json(const struct columns *columns, const struct query_hits *hit
         buffer_text(out, "}}\n");
     }
     for (size_t i = 0; i < hits->job_count; i++) {
-        while (part < hits->part_count &&
-               columns->part_job.codes[hits->parts[part]] < hits->jobs[i])
-            part++;
-        if (part < hits->part_count && columns->part_job.codes[hits->parts[part]] == hits->jobs[i])
+        if (has_part_hit(columns, hits, hits->jobs[i], &part))
             continue;
         buffer_text(out, "{\"hit\":\"job\"");
         write_facts(columns->jobs, job_column_keys, hits->jobs[i], out);

@@ -253,20 +253,12 @@ static size_t *first_parts(const struct page_frame *frame)
     return first;
 }
 
-static uint32_t code_of(const struct dictionary *dictionary, const char *text)
-{
-    for (uint32_t code = 1; code < dictionary->count; code++)
-        if (strcmp(dictionary->entries[code].text, text) == 0)
-            return code;
-    return UINT32_MAX;
-}
-
 enum file_status page_models_write(struct page_frame *frame)
 {
     const struct columns *columns = frame->columns;
     const struct column_data *pages = &columns->jobs[JOB_PAGE];
     struct model_work work = {.frame = frame, .first_part = first_parts(frame)};
-    work.capacitor = code_of(&columns->parts[PART_KIND].dictionary, "capacitor");
+    work.capacitor = dictionary_find(&columns->parts[PART_KIND].dictionary, "capacitor");
     work.line_of = arena_array(frame->arena, columns->parts[PART_REF].dictionary.count + 1,
                                sizeof *work.line_of);
     /* Jobs by page, in order: starts by counting, then filling. */

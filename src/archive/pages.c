@@ -255,8 +255,18 @@ static enum file_status write_columns(struct pages_work *work)
     return status;
 }
 
-/* The note that the pages are whole goes before the first of them is touched, and comes back last.
- */
+/* Say that the pages are whole. */
+static enum file_status write_note(struct pages_work *work)
+{
+    const char *note = note_path(work->request->output, &work->arena);
+    const char *setting = work->request->setting;
+    enum file_status status = file_write(note, setting, strlen(setting), NULL);
+    if (status != FILE_OK)
+        buffer_text(work->failed, note);
+    return status;
+}
+
+/* The note goes before the first page is touched, and comes back behind the last. */
 static enum file_status publish_all(struct pages_work *work, struct diagnostics *diagnostics)
 {
     struct columns old = {0};
@@ -272,13 +282,8 @@ static enum file_status publish_all(struct pages_work *work, struct diagnostics 
     page_models_name(&work->columns);
     if (status == FILE_OK)
         status = write_pages(work, diagnostics);
-    const char *note = note_path(work->request->output, &work->arena);
-    const char *setting = work->request->setting;
-    if (status == FILE_OK) {
-        status = file_write(note, setting, strlen(setting), NULL);
-        if (status != FILE_OK)
-            buffer_text(work->failed, note);
-    }
+    if (status == FILE_OK)
+        status = write_note(work);
     return status;
 }
 

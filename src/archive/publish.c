@@ -28,8 +28,7 @@ struct job_work {
     struct job_files_result files;
 };
 
-/* Shared by the threads; `mutex` guards all but archive, request,
-   setting and lock. */
+/* Shared by the threads; `mutex` guards all but archive, request, setting and lock. */
 struct publish_work {
     const struct archive *archive;
     const struct publish_request *request;
@@ -112,19 +111,25 @@ static struct job_work *next_job(struct publish_work *work)
     return job;
 }
 
+static void tell_twin(struct job_work *job)
+{
+    const struct source file = {job->path, NULL, 0};
+    const struct position whole_file = {0};
+    if (strcmp(job->twin, job->name) == 0)
+        diagnostic_add(&job->diagnostics, &file, whole_file, DIAGNOSTIC_JOB_CASE_TWIN,
+                       "name it once", "job '%s' is named twice", job->name);
+    else
+        diagnostic_add(&job->diagnostics, &file, whole_file, DIAGNOSTIC_JOB_CASE_TWIN,
+                       "rename one of the two", "its number differs from '%s' in case only",
+                       job->twin);
+}
+
 static void publish_one(const struct publish_work *work, struct job_work *job)
 {
     job->diagnostics = diagnostics_in(&job->arena);
     clock_gettime(CLOCK_REALTIME_COARSE, &job->began);
     if (job->twin) {
-        const struct source file = {job->path, NULL, 0};
-        if (strcmp(job->twin, job->name) == 0)
-            diagnostic_add(&job->diagnostics, &file, (struct position){0}, DIAGNOSTIC_JOB_CASE_TWIN,
-                           "name it once", "job '%s' is named twice", job->name);
-        else
-            diagnostic_add(&job->diagnostics, &file, (struct position){0}, DIAGNOSTIC_JOB_CASE_TWIN,
-                           "rename one of the two", "its number differs from '%s' in case only",
-                           job->twin);
+        tell_twin(job);
         return;
     }
     struct job_files_request request = {work->archive, job->path, work->request->output,
@@ -205,7 +210,19 @@ static void fail(struct publish_work *work, enum file_status status, const char 
     work->result->failed_path = arena_copy(work->arena, path);
 }
 
-static void list_archive(struct publish_work *work, struct state *old)
+/* Whether what an earlier publish made of the job can stay. A broken file is read again, so that
+   its mistakes are told again. */
+static bool can_stay(const struct publish_work *work, const struct job_work *job)
+{
+    if (!job->old || job->was_unsettled || job->old->broken || !is_made_from(job->old, job->path) ||
+        !state_is_current(job->old, work->setting))
+        return false;
+    const char *summary =
+        arena_print(work->arena, "%s/jobs/%s/summary.json", work->request->output, job->name);
+    return access(summary, F_OK) == 0;
+}
+
+static void list_archive(struct publish_work *work, const struct state *old)
 {
     struct job_names names = {0};
     fail(work, archive_job_names(work->archive->folder, work->arena, &names),
@@ -220,22 +237,14 @@ static void list_archive(struct publish_work *work, struct state *old)
     mark_case_twins(work);
     for (size_t i = 0; i < names.count; i++) {
         struct job_work *job = &work->jobs[i];
-        struct state_job *state = state_find(old, job->name);
-        bool touched = false;
-        job->old = state;
+        job->old = state_find(old, job->name);
         job->was_unsettled = state_is_unsettled(work->request->output, job->name);
-        /* A broken file is read again, so that its mistakes are told again. */
-        if (!state || job->was_unsettled || state->broken || !is_made_from(state, job->path) ||
-            !state_is_current(state, work->setting, &touched))
-            continue;
-        const char *summary =
-            arena_print(work->arena, "%s/jobs/%s/summary.json", work->request->output, job->name);
-        if (access(summary, F_OK) != 0)
+        if (!can_stay(work, job))
             continue;
         job->finished = true;
-        job->state = state;
+        job->state = job->old;
         work->result->unchanged++;
-        work->result->warned += state->warned;
+        work->result->warned += job->state->warned;
     }
 }
 
@@ -330,8 +339,8 @@ struct publish_result publish(const struct archive *archive, const struct publis
     struct publish_work work = {
         .archive = archive, .request = request, .result = &result, .arena = arena};
     work.named = request->job_path_count > 0;
-    setting_hash(archive,
-                 work.setting); /* before any waiting: of what the archive was opened with */
+    /* Before any waiting: of what the archive was opened with. */
+    setting_hash(archive, work.setting);
     fail(&work, folder_make(request->output), request->output);
     if (result.failure != FILE_OK)
         return result;

@@ -1,7 +1,5 @@
 #include "archive/state.h"
 
-#include "job/job.h"
-
 #include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
@@ -101,24 +99,24 @@ static uint64_t nanoseconds(const struct stat *about)
     return (uint64_t)about->st_mtim.tv_sec * 1000000000u + (uint64_t)about->st_mtim.tv_nsec;
 }
 
-/* An input that is not there: a size that no file has, so that its coming is noticed. */
 static const char no_hash[HASH_TEXT_BYTES] =
     "0000000000000000000000000000000000000000000000000000000000000000";
 
-static bool note_missing(const char *path, struct arena *arena, struct state_input *input)
+/* An input that is not there: a size that no file has, so that its coming is noticed. */
+static struct state_input missing_input(const char *path, struct arena *arena)
 {
-    input->path = arena_copy(arena, path);
-    input->size = UINT64_MAX;
-    input->changed_ns = 0;
-    memcpy(input->hash, no_hash, HASH_TEXT_BYTES);
-    return true;
+    struct state_input input = {.path = arena_copy(arena, path), .size = UINT64_MAX};
+    memcpy(input.hash, no_hash, HASH_TEXT_BYTES);
+    return input;
 }
 
 bool state_note_input(const char *path, struct arena *arena, struct state_input *input)
 {
     struct stat about;
-    if (access(path, F_OK) != 0)
-        return note_missing(path, arena, input);
+    if (access(path, F_OK) != 0) {
+        *input = missing_input(path, arena);
+        return true;
+    }
     struct buffer contents = {0};
     bool good = stat(path, &about) == 0 && file_read(path, INPUT_BYTES_MAX, &contents) == FILE_OK;
     if (good) {
@@ -132,7 +130,7 @@ bool state_note_input(const char *path, struct arena *arena, struct state_input 
     return good;
 }
 
-static bool input_is_current(struct state_input *input, bool *touched)
+static bool input_is_current(struct state_input *input)
 {
     struct stat about;
     if (stat(input->path, &about) != 0)
@@ -145,18 +143,17 @@ static bool input_is_current(struct state_input *input, bool *touched)
     if (same) {
         input->size = now.size;
         input->changed_ns = now.changed_ns;
-        *touched = true;
     }
     arena_release(&arena);
     return same;
 }
 
-bool state_is_current(struct state_job *job, const char *setting, bool *touched)
+bool state_is_current(struct state_job *job, const char *setting)
 {
     if (strcmp(job->setting, setting) != 0)
         return false;
     for (size_t i = 0; i < job->input_count; i++)
-        if (!input_is_current(&job->inputs[i], touched))
+        if (!input_is_current(&job->inputs[i]))
             return false;
     return true;
 }

@@ -45,9 +45,9 @@ void state_read(const char *output, struct state *state);
 /* The job's line, NULL: none. Jobs are sorted by name. */
 struct state_job *state_find(const struct state *state, const char *name);
 
-/* Whether nothing that the job was made from has changed. Times and sizes that moved while the
-   hash stayed are put right in *job, and *touched is set. */
-bool state_is_current(struct state_job *job, const char *setting, bool *touched);
+/* Whether nothing that the job was made from has changed. Times that moved while the hash stayed
+   are put right in *job. */
+bool state_is_current(struct state_job *job, const char *setting);
 
 /* Note an input file as it is now, also that it is not there. false when it cannot be read. */
 bool state_note_input(const char *path, struct arena *arena, struct state_input *input);

@@ -104,11 +104,7 @@ static void count_shares(const struct columns *columns, struct statistics *stati
     const struct column_data *outcome = &columns->parts[PART_OUTCOME];
     const enum outcome *outcomes = outcomes_by_code(&outcome->dictionary, arena);
     const uint32_t *kinds = columns->parts[PART_KIND].codes;
-    const struct dictionary *kind_words = &columns->parts[PART_KIND].dictionary;
-    uint32_t capacitor = 0;
-    for (uint32_t code = 1; code < kind_words->count; code++)
-        if (strcmp(kind_words->entries[code].text, "capacitor") == 0)
-            capacitor = code;
+    const uint32_t capacitor = dictionary_find(&columns->parts[PART_KIND].dictionary, "capacitor");
     for (size_t part = 0; part < columns->part_count; part++) {
         uint32_t job = columns->part_job.codes[part];
         if (kinds[part] != capacitor || columns->jobs[JOB_CONTINUES].codes[job] != 0)
