@@ -201,7 +201,7 @@ struct findings *assess_job(const struct job *job, const struct shop *shop, cons
         .policy = &shop->policy,
         .arena = arena,
         .diagnostics = diagnostics,
-        .bench_c = job->conditions.bench.set ? job->conditions.bench.value : default_bench_c,
+        .bench_c = quantity_or(&job->conditions.bench, default_bench_c),
         .stages = stages_prepare(job, &shop->policy, arena, diagnostics),
         .work = arena_array(arena, count + 1, sizeof *assessment.work),
         .capacitors = arena_array(arena, count + 1, sizeof *assessment.capacitors)};
@@ -220,8 +220,7 @@ struct findings *assess_job(const struct job *job, const struct shop *shop, cons
         .shop = shop,
         .in_progress = !job->returned.set,
         .bench_c = assessment.bench_c,
-        .working_c =
-            job->conditions.working.set ? job->conditions.working.value : shop->policy.working_c,
+        .working_c = quantity_or(&job->conditions.working, shop->policy.working_c),
         .capacitors = assessment.capacitors,
         .capacitor_count = count,
         .stages = stage_phases(&assessment),

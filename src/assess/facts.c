@@ -152,7 +152,7 @@ static void judge_pulse(const struct facts_case *facts, struct judgement *judgem
     judge_add(judgement,
               &(struct criterion){
                   .key = CRITERION_PULSE_RATING,
-                  .value = part->marked.rated.set ? part->marked.rated.value : NAN,
+                  .value = quantity_or(&part->marked.rated, NAN),
                   .uncertainty = NAN,
                   .limit = part->pulse_peak.set ? pulse_times_peak * part->pulse_peak.value : NAN,
                   .unit = UNIT_VOLTAGE,

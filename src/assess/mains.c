@@ -48,14 +48,14 @@ double mains_touch_capacitance(double rise_v, double frequency_hz, double touch_
 
 double mains_frequency(const struct job *job)
 {
-    return job->set.frequency.set ? job->set.frequency.value : cautious_hz;
+    return quantity_or(&job->set.frequency, cautious_hz);
 }
 
 static double original_f(const struct capacitor *part)
 {
     if (part->measured.value.set)
         return part->measured.value.value;
-    return part->marked.value.set ? part->marked.value.value : 0;
+    return quantity_or(&part->marked.value, 0);
 }
 
 /* Whether the original is in circuit: as found, or left as it was. */

@@ -40,9 +40,8 @@ static void set_soak(const struct assessment *assessment, size_t index,
     struct soak soak = {.capacitance_f = soak_capacitance(part),
                         .set_v = reading->reading->set_volts.value,
                         .series_ohm = reading_series_ohm(instrument),
-                        .supply_current_a = instrument && instrument->supply_current.set
-                                                ? instrument->supply_current.value
-                                                : NAN,
+                        .supply_current_a =
+                            instrument ? quantity_or(&instrument->supply_current, NAN) : NAN,
                         .limit_a = limit_at_reading(assessment, index, reading),
                         .electrolytic = dielectric_is_electrolytic(part->type)};
     reading->t_min_s = soak_least_s(&soak);
@@ -140,7 +139,7 @@ static bool is_hot_enough(const struct capacitor_findings *part,
 
 static double soak_time(const struct reading_findings *reading)
 {
-    return reading->reading->time.set ? reading->reading->time.value : 0;
+    return quantity_or(&reading->reading->time, 0);
 }
 
 /* Latest state, at voltage, hot before cold, longest soak, the later of two alike. */
@@ -307,55 +306,66 @@ static void judge_rise(const struct assessment *assessment, size_t index, const 
     judgement->why = WHY_RISING;
 }
 
-static void judge_reading(struct assessment *assessment, size_t index, size_t reading, bool left,
-                          struct leak *leak, struct judgement *judgement)
+/* The leak against what the place can bear. */
+static void judge_at_place(struct assessment *assessment, size_t index, size_t reading,
+                           struct leak *leak, struct judgement *judgement)
 {
     struct part_work *work = &assessment->work[index];
     struct capacitor_findings *part = &assessment->capacitors[index];
     const struct reading_findings *found = &work->readings[reading];
+    if (leak->warm_a > 0)
+        work->place.to_20c = leak->service_a *
+                             temperature_to_20c(part->part->type, found->temperature_c) /
+                             leak->warm_a;
+    struct judge_case given = {.place = &work->place,
+                               .limit = &work->limit,
+                               .leak = leak,
+                               .bound = found->bound,
+                               .may_fail = found->may_fail,
+                               .instrument = instrument_too_coarse(assessment, index, found),
+                               .waiting = part->absorption.status == ABSORPTION_RESOLVED &&
+                                          !isnan(part->absorption.wait_until_s),
+                               .falling = still_falling(assessment, index, reading)};
+    leak->proves_fail =
+        given.may_fail && !given.falling && !given.waiting && given.bound != BOUND_UNDER;
+    judge_leak(&given, judgement);
+    judge_rise(assessment, index, leak, found->may_fail, judgement);
+    double warmer = exp2(warmer_k / temperature_doubling(part->part->type).theta_k);
+    part->turns_on_temperature =
+        !is_hot_enough(part, found) && !judge_fails(&given, 1) && judge_fails(&given, warmer);
+}
+
+/* What is known of the part besides its leak. A leak that was not judged stays what is said of the
+   part, unless a fact says worse. */
+static void judge_facts(const struct facts_case *facts, struct judgement *judgement)
+{
+    bool leak_unjudged = judgement->count == 0 && judgement->why != WHY_NONE;
+    enum outcome outcome = judgement->outcome;
+    enum reason why = judgement->why;
+    facts_judge(facts, judgement);
+    if (leak_unjudged && (judgement->count == 0 || judgement->outcome < outcome)) {
+        judgement->outcome = outcome;
+        judgement->why = why;
+    }
+}
+
+static void judge_reading(struct assessment *assessment, size_t index, size_t reading, bool left,
+                          struct leak *leak, struct judgement *judgement)
+{
+    const struct place_case *place = &assessment->work[index].place;
     struct leak_case leak_case = part_leak_case(assessment, index, (int)reading);
     *leak = leak_of(&leak_case);
     *judgement = (struct judgement){0};
     fit_run(assessment, index, reading);
-    if (work->place.why != WHY_NONE) {
+    if (place->why != WHY_NONE) {
         judgement->outcome = OUTCOME_NOT_JUDGED;
-        judgement->why = work->place.why;
+        judgement->why = place->why;
     } else {
-        work->place.to_20c = leak->warm_a > 0
-                                 ? leak->service_a *
-                                       temperature_to_20c(part->part->type, found->temperature_c) /
-                                       leak->warm_a
-                                 : work->place.to_20c;
-        struct judge_case given = {.place = &work->place,
-                                   .limit = &work->limit,
-                                   .leak = leak,
-                                   .bound = found->bound,
-                                   .may_fail = found->may_fail,
-                                   .instrument = instrument_too_coarse(assessment, index, found),
-                                   .waiting = part->absorption.status == ABSORPTION_RESOLVED &&
-                                              !isnan(part->absorption.wait_until_s),
-                                   .falling = still_falling(assessment, index, reading)};
-        leak->proves_fail =
-            given.may_fail && !given.falling && !given.waiting && given.bound != BOUND_UNDER;
-        judge_leak(&given, judgement);
-        judge_rise(assessment, index, leak, found->may_fail, judgement);
-        double warmer = exp2(warmer_k / temperature_doubling(part->part->type).theta_k);
-        part->turns_on_temperature =
-            !is_hot_enough(part, found) && !judge_fails(&given, 1) && judge_fails(&given, warmer);
+        judge_at_place(assessment, index, reading, leak, judgement);
     }
-    struct facts_case facts = {assessment->job, assessment->policy, part->part, leak->conductance_s,
-                               left};
-    if (judgement->count == 0 && judgement->why != WHY_NONE) {
-        enum outcome outcome = judgement->outcome;
-        enum reason why = judgement->why;
-        facts_judge(&facts, judgement);
-        if (judgement->count == 0 || judgement->outcome < outcome) {
-            judgement->outcome = outcome;
-            judgement->why = why;
-        }
-        return;
-    }
-    facts_judge(&facts, judgement);
+    struct facts_case facts = {assessment->job, assessment->policy,
+                               assessment->capacitors[index].part, leak->conductance_s, left};
+    judge_facts(&facts, judgement);
 }
 
 /* No lifted reading: what needs none may still fail it. */
@@ -505,7 +515,7 @@ static void show_deciding(struct assessment *assessment, size_t index)
         return;
     const struct reading_findings *reading = &work->readings[part->deciding];
     part->test_v = reading->reading->set_volts.value;
-    part->test_s = reading->reading->time.set ? reading->reading->time.value : NAN;
+    part->test_s = quantity_or(&reading->reading->time, NAN);
     part->test_leakage_a = reading->current_a;
     part->test_uncertainty_a = reading->uncertainty_a;
     part->test_bound = reading->bound;

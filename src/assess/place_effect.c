@@ -96,7 +96,7 @@ static void add_short(struct gathering *to)
 {
     const struct stage_model *model = to->place->model;
     double ohm = model ? model->ohms[PHASE_FOUND][STAGE_ANODE] : NAN;
-    double supply_v = model && model->stage->supply.set ? model->stage->supply.value : NAN;
+    double supply_v = model ? quantity_or(&model->stage->supply, NAN) : NAN;
     add(to, "short_watts", ohm > 0 ? supply_v * supply_v / ohm : NAN, UNIT_POWER, NAN);
     to->effects[to->count - 1].at_most = false;
 }
@@ -172,9 +172,8 @@ static void mains_effects(struct gathering *to)
         add(to, "mains_fire", NAN, UNIT_NONE, NAN);
     else if (place->part->place == PLACE_MAINS_TO_CHASSIS)
         add(to, "earth_current",
-            mains_touch_current(
-                rise_v, mains_frequency(job),
-                place->part->marked.value.set ? place->part->marked.value.value : NAN, to->leak_s),
+            mains_touch_current(rise_v, mains_frequency(job),
+                                quantity_or(&place->part->marked.value, NAN), to->leak_s),
             UNIT_CURRENT, NAN);
     else
         add(to, "touch_current",
@@ -208,8 +207,7 @@ void place_effects(struct assessment *assessment, size_t index)
     if (part->part->place == PLACE_TUNING)
         add_capacitance(&to, &work->final);
     if (part->part->pulse)
-        add(&to, "pulse_peak", part->part->pulse_peak.set ? part->part->pulse_peak.value : NAN,
-            UNIT_VOLTAGE, NAN);
+        add(&to, "pulse_peak", quantity_or(&part->part->pulse_peak, NAN), UNIT_VOLTAGE, NAN);
     else if (place_is_mains(part->part->place))
         mains_effects(&to);
     else if (work->leaks && work->place.why == WHY_NONE)

@@ -10,18 +10,14 @@
 #include <math.h>
 #include <string.h>
 
-static double given_or_nan(const struct quantity *quantity)
-{
-    return quantity->set ? quantity->value : NAN;
-}
-
 static double rating_of(const struct job *job, const struct resistance *resistance)
 {
     if (!resistance->set || resistance->resistor == NOT_LISTED)
         return NAN;
     const struct resistor *part = &job->resistors[resistance->resistor];
     bool open = part->measured.set && part->measured.bound == BOUND_OVER;
-    return given_or_nan(open && part->fitted.rated.set ? &part->fitted.rated : &part->marked.rated);
+    return quantity_or(open && part->fitted.rated.set ? &part->fitted.rated : &part->marked.rated,
+                       NAN);
 }
 
 /* The key that is missing: not given, or a ref that gives no figure. */
@@ -161,13 +157,13 @@ static double stage_service(const struct stage_model *model, enum place place)
 {
     const struct stage *stage = model->stage;
     bool solved = model->why == WHY_NONE;
-    double supply_v = given_or_nan(&stage->supply);
+    double supply_v = quantity_or(&stage->supply, NAN);
     if (place == PLACE_SCREEN_BYPASS && !solved)
-        return stage->screen_volts.set ? stage->screen_volts.value : supply_v;
+        return quantity_or(&stage->screen_volts, supply_v);
     if (place == PLACE_TONE && !solved)
         return supply_v;
     if (place == PLACE_BIAS_BYPASS && stage->bias == BIAS_FIXED)
-        return fabs(given_or_nan(&stage->bias_volts));
+        return fabs(quantity_or(&stage->bias_volts, NAN));
     return NAN;
 }
 
@@ -214,7 +210,7 @@ static double service_volts(const struct place_case *place)
     if (part->service.set)
         return fabs(part->service.value);
     if (place_is_mains(part->place))
-        return given_or_nan(&place->job->set.mains);
+        return quantity_or(&place->job->set.mains, NAN);
     if (part->place == PLACE_COUPLING)
         return fabs(place->source_v - return_volts(place));
     if (part->place == PLACE_AVC_FEED)
@@ -245,55 +241,77 @@ static double ageing_margin(const struct policy *policy, enum dielectric type)
     return ages ? policy->ageing_margin_waxed : policy->ageing_margin_other;
 }
 
+/* Resistances, current and heat as the job gives them. */
+static void read_facts(struct place_case *place, const struct found_ohms *feed,
+                       const struct found_ohms *source)
+{
+    const struct job *job = place->job;
+    const struct capacitor *part = place->part;
+    place->source_v = quantity_or(&part->source_volts, NAN);
+    place->current_a = quantity_or(&part->current, NAN);
+    place->circuit_ohm = quantity_or(&part->circuit, NAN);
+    place->feed_ohm = feed->ohm;
+    place->feed_u_ohm = feed->u_ohm;
+    place->source_ohm = isnan(source->ohm) ? 0 : source->ohm; /* the cautious default */
+    place->source_u_ohm = source->u_ohm;
+    place->feed_rating_w = rating_of(job, &part->feed);
+    place->heat_limit_w = heat_limit(job, part, place->policy);
+    place->heat_source = heat_is_derived(job, part) ? SOURCE_SELF_HEATING : SOURCE_POLICY;
+    place->electrolytic = place->heat_counts = dielectric_is_electrolytic(part->type);
+    place->margin = ageing_margin(place->policy, part->type);
+    if (part->place == PLACE_RESERVOIR && part->measured.esr.set && part->current.set)
+        place->ripple_w = supply_ripple_watts(part->current.value, supply_is_full_wave(job),
+                                              part->measured.esr.value);
+}
+
+/* What the stage, once it is found, says of a place. */
+static void read_stage(struct place_case *place)
+{
+    const struct capacitor *part = place->part;
+    if (feeds_itself(place))
+        place->feed_ohm = place->feed_u_ohm = 0;
+    if (part->place == PLACE_AVC_FEED || part->place == PLACE_DETECTOR)
+        place->bias_v = least_bias(place);
+    if (part->place == PLACE_AVC_FEED && part->delay.set)
+        place->bias_v = fmin(place->bias_v, fabs(part->delay.value));
+    if (part->place == PLACE_SCREEN_BYPASS && place->model)
+        place->feed_rating_w = quantity_or(&place->model->stage->screen_rating,
+                                           rating_of(place->job, &place->model->stage->screen));
+    place->service_v = service_volts(place);
+    place->reversed = part->place == PLACE_COUPLING && place->source_v < return_volts(place);
+}
+
+/* Why nothing can be judged here, beyond what was found before. */
+static void find_obstacle(struct place_case *place, const struct found_ohms *feed)
+{
+    const char *missing = missing_fact(place);
+    if (missing || (place->why == WHY_NONE && !(place->service_v > 0))) {
+        place->why = WHY_MISSING_FACT;
+        place->missing = missing                              ? missing
+                         : place_is_mains(place->part->place) ? "mains"
+                                                              : "service";
+    }
+    if ((feed->open && isnan(feed->ohm)) || stage_is_open(place)) {
+        place->why = WHY_OPEN_RESISTOR;
+        place->missing = NULL;
+    }
+}
+
 struct place_case place_prepare(const struct place_bench *bench, const struct capacitor *part)
 {
     struct place_case place = {.job = bench->job,
                                .policy = bench->policy,
                                .stages = bench->stages,
                                .part = part,
-                               .source_v = given_or_nan(&part->source_volts),
-                               .current_a = given_or_nan(&part->current),
                                .bias_v = NAN,
                                .to_20c = 1};
-    struct found_ohms feed = ohms_as_found(bench->job, bench->policy, &part->feed);
-    struct found_ohms source = ohms_as_found(bench->job, bench->policy, &part->source_resistance);
-    place.feed_ohm = feed.ohm;
-    place.feed_u_ohm = feed.u_ohm;
-    place.circuit_ohm = given_or_nan(&part->circuit);
-    place.source_ohm = source.ohm;
-    place.source_u_ohm = source.u_ohm;
-    if (isnan(place.source_ohm))
-        place.source_ohm = 0; /* the cautious default */
-    place.feed_rating_w = rating_of(bench->job, &part->feed);
-    place.heat_limit_w = heat_limit(bench->job, part, bench->policy);
-    place.heat_source = heat_is_derived(bench->job, part) ? SOURCE_SELF_HEATING : SOURCE_POLICY;
-    place.electrolytic = place.heat_counts = dielectric_is_electrolytic(part->type);
-    place.margin = ageing_margin(bench->policy, part->type);
-    if (part->place == PLACE_RESERVOIR && part->measured.esr.set && part->current.set)
-        place.ripple_w = supply_ripple_watts(part->current.value, supply_is_full_wave(bench->job),
-                                             part->measured.esr.value);
+    const struct found_ohms feed = ohms_as_found(bench->job, bench->policy, &part->feed);
+    const struct found_ohms source =
+        ohms_as_found(bench->job, bench->policy, &part->source_resistance);
+    read_facts(&place, &feed, &source);
     find_rule(&place);
     find_stage(&place);
-    if (feeds_itself(&place))
-        place.feed_ohm = place.feed_u_ohm = 0;
-    if (part->place == PLACE_AVC_FEED || part->place == PLACE_DETECTOR)
-        place.bias_v = least_bias(&place);
-    if (part->place == PLACE_AVC_FEED && part->delay.set)
-        place.bias_v = fmin(place.bias_v, fabs(part->delay.value));
-    if (part->place == PLACE_SCREEN_BYPASS && place.model && place.model->stage->screen_rating.set)
-        place.feed_rating_w = place.model->stage->screen_rating.value;
-    else if (part->place == PLACE_SCREEN_BYPASS && place.model)
-        place.feed_rating_w = rating_of(bench->job, &place.model->stage->screen);
-    place.service_v = service_volts(&place);
-    place.reversed = part->place == PLACE_COUPLING && place.source_v < return_volts(&place);
-    const char *missing = missing_fact(&place);
-    if (missing || (place.why == WHY_NONE && !(place.service_v > 0))) {
-        place.why = WHY_MISSING_FACT;
-        place.missing = missing ? missing : place_is_mains(part->place) ? "mains" : "service";
-    }
-    if ((feed.open && isnan(feed.ohm)) || stage_is_open(&place)) {
-        place.why = WHY_OPEN_RESISTOR;
-        place.missing = NULL;
-    }
+    read_stage(&place);
+    find_obstacle(&place, &feed);
     return place;
 }

@@ -14,8 +14,7 @@ double reading_series_ohm(const struct instrument *instrument)
 {
     if (!instrument)
         return 0;
-    return (instrument->series.set ? instrument->series.value : 0) +
-           (instrument->burden.set ? instrument->burden.value : 0);
+    return quantity_or(&instrument->series, 0) + quantity_or(&instrument->burden, 0);
 }
 
 double reading_last_digit(const struct quantity *value)
@@ -138,8 +137,7 @@ bool reading_evaluate(const struct reading *reading, const struct reading_bench 
                                        .t_min_s = NAN,
                                        .service_a = NAN,
                                        .warm_a = NAN,
-                                       .temperature_c =
-                                           reading->hot.set ? reading->hot.value : bench->bench_c};
+                                       .temperature_c = quantity_or(&reading->hot, bench->bench_c)};
     bool possible = electrical(reading, reading_series_ohm(bench->instrument), found);
     struct reading_uncertainty u = reading_uncertainty(reading, bench, found->current_a);
     double by_volts =

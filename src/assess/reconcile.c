@@ -141,8 +141,8 @@ static void reconcile_phase(const struct stage_case *given, double valve_bound,
     /* Beyond the stated bounds nothing but the grid is compared. */
     double share = hypot(law_bound_of(given), valve_bound);
     double anode_drop = fabs(stage->supply.value - at->anode_v);
-    double screen_drop = fabs(
-        (stage->screen_volts.set ? stage->screen_volts.value : stage->supply.value) - at->screen_v);
+    double screen_drop =
+        fabs(quantity_or(&stage->screen_volts, stage->supply.value) - at->screen_v);
     phase->nodes[NODE_CATHODE] =
         compare(given, &read->cathode, at->cathode_v, at->cathode_v, share * fabs(at->cathode_v));
     phase->nodes[NODE_ANODE] =

@@ -151,7 +151,7 @@ static void assess_step(const struct log_case *log, struct reform_step *step)
     step->set_v = readings[step->first].set_volts.value;
     step->part_v = log->found->part_v[last];
     step->current_a = current_of(&readings[last]);
-    step->duration_s = readings[last].time.set ? readings[last].time.value : NAN;
+    step->duration_s = quantity_or(&readings[last].time, NAN);
     step->limit_a = limit_at(log->given->part, step->part_v);
     step->watts = NAN;
     for (size_t i = step->first; i <= last; i++)

@@ -71,9 +71,8 @@ bool reforming_plan(const struct reforming_case *given, struct reform_plan *plan
     double current_a = given->policy->reform_current_a, watts = ceiling_w(given);
     if (!(end_v > 0) || !(current_a > 0) || !(watts > 0))
         return false;
-    double farad = capacitor->measured.value.set ? capacitor->measured.value.value
-                   : capacitor->marked.value.set ? most_capacitance * capacitor->marked.value.value
-                                                 : NAN;
+    double farad = quantity_or(&capacitor->measured.value,
+                               most_capacitance * quantity_or(&capacitor->marked.value, NAN));
     *plan =
         (struct reform_plan){.end_v = end_v,
                              .ceiling_a = current_a,

@@ -30,9 +30,7 @@ static struct held judge_tolerance(const struct assessment *assessment, const st
 
 static struct held judge_watts(const struct assessment *assessment, const struct resistor *part)
 {
-    double ohm = part->measured.set       ? part->measured.value
-                 : part->marked.value.set ? part->marked.value.value
-                                          : NAN;
+    double ohm = quantity_or(&part->measured, quantity_or(&part->marked.value, NAN));
     if (!part->volts.set || !(ohm > 0) || part->measured.bound != BOUND_NONE)
         return held_unknown(UNIT_POWER, WHY_MISSING_FACT, part->volts.set ? "marked" : "volts");
     double u_v = held_uncertainty(assessment->job, assessment->policy, &part->volts);
@@ -40,7 +38,7 @@ static struct held judge_watts(const struct assessment *assessment, const struct
     struct held held = {.value = volts * volts / ohm,
                         .uncertainty = 2 * volts * u_v / ohm,
                         .low = NAN,
-                        .high = part->marked.rated.set ? part->marked.rated.value : NAN,
+                        .high = quantity_or(&part->marked.rated, NAN),
                         .unit = UNIT_POWER,
                         .source = SOURCE_MARKED_RATING};
     held_judge(&held, assessment->policy, BOUND_NONE);

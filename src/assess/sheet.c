@@ -29,9 +29,8 @@ static double soak_at(const struct instrument *instrument, const struct capacito
     struct soak soak = {.capacitance_f = soak_capacitance(part),
                         .set_v = volts_v,
                         .series_ohm = reading_series_ohm(instrument),
-                        .supply_current_a = instrument && instrument->supply_current.set
-                                                ? instrument->supply_current.value
-                                                : NAN,
+                        .supply_current_a =
+                            instrument ? quantity_or(&instrument->supply_current, NAN) : NAN,
                         .limit_a = limit_a,
                         .electrolytic = dielectric_is_electrolytic(part->type)};
     return soak_least_s(&soak);

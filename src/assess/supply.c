@@ -75,7 +75,7 @@ static void take_values(const struct job *job, const struct capacitor *part, boo
                                    : part->measured.value.set ? &part->measured.value
                                                               : &part->marked.value;
     hum->capacitance_f = value->set && value->value > 0 ? value->value : NAN;
-    hum->esr_ohm = !fresh && part->measured.esr.set ? part->measured.esr.value : 0;
+    hum->esr_ohm = fresh ? 0 : quantity_or(&part->measured.esr, 0);
 }
 
 static const struct winding *choke_of(const struct job *job, const struct capacitor *part)
@@ -130,7 +130,7 @@ static struct supply_node assess_node(const struct supply_case *given, size_t in
     const struct capacitor *part = &job->capacitors[index];
     struct supply_node node = {.capacitor = (int)index,
                                .frequency_hz = ripple_frequency(job, part),
-                               .current_a = part->current.set ? part->current.value : NAN,
+                               .current_a = quantity_or(&part->current, NAN),
                                .series_ohm = NAN,
                                .series_h = 0,
                                .found = unknown_hum(&part->hum_found),

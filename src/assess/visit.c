@@ -32,7 +32,7 @@ static double current_of(const struct reading *reading, enum bound *bound)
 
 static double seconds_of(const struct reading *reading)
 {
-    return reading->time.set ? reading->time.value : NAN;
+    return quantity_or(&reading->time, NAN);
 }
 
 /* How unlike two soaks are: |log of their ratio|, times that are not said count as far apart. */

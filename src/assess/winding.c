@@ -53,8 +53,7 @@ struct winding_findings winding_assess(const struct job *job, const struct polic
                                        double bench_c, size_t index)
 {
     const struct winding *part = &job->windings[index];
-    struct winding_findings found = {.temperature_c =
-                                         part->temperature.set ? part->temperature.value : bench_c,
+    struct winding_findings found = {.temperature_c = quantity_or(&part->temperature, bench_c),
                                      .expected_ohm = NAN};
     if (part->marked.value.set)
         found.expected_ohm = winding_at(part->marked.value.value, found.temperature_c);

@@ -51,6 +51,11 @@ struct quantity {
     struct position at;
 };
 
+static inline double quantity_or(const struct quantity *quantity, double otherwise)
+{
+    return quantity->set ? quantity->value : otherwise;
+}
+
 enum quantity_status {
     QUANTITY_OK,
     QUANTITY_UNREADABLE,  /* not a number with a unit */
