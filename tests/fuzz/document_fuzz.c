@@ -240,7 +240,7 @@ static void list_sections(cmark_node *root, struct buffer *list)
 static void check_markdown_tree(cmark_node *root)
 {
     cmark_iter *walk = cmark_iter_new(root);
-    for (cmark_event_type event; (event = cmark_iter_next(walk)) != CMARK_EVENT_DONE;) {
+    while (cmark_iter_next(walk) != CMARK_EVENT_DONE) {
         cmark_node_type type = cmark_node_get_type(cmark_iter_get_node(walk));
         if (type == CMARK_NODE_HTML_BLOCK || type == CMARK_NODE_HTML_INLINE)
             fail("Markdown has raw HTML", cmark_node_get_literal(cmark_iter_get_node(walk)));

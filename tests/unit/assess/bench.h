@@ -16,6 +16,13 @@
 /* Accurate enough that the guard band does not matter. */
 #define METER                                                                                      \
     "instruments:\n  leakage:\n    accuracy: 0.1 % + 0.0001 uA\n    resolution: 0.0001 uA\n"
+/* A bypass judged linearly: I*10 k <= 0.5 V at 100 V, limit 50 uA. */
+#define BYPASS(ref, type, marked)                                                                  \
+    "  " ref ":\n    type: " type "\n    marked: " marked                                          \
+    "\n    place: other\n    feed: 10k\n    shift: 0.5 V\n    service: 100 V\n"
+/* Of a stage with a 6V6GT. */
+#define ROW_6V6                                                                                    \
+    "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
 
 struct bench {
     struct arena arena;
@@ -58,6 +65,18 @@ static inline const struct capacitor_findings *bench_part(const struct bench *be
             return &bench->findings->capacitors[i];
     fail_msg("no part %s", ref);
     return NULL;
+}
+
+/* Assert what the part comes to; the part. */
+static inline const struct capacitor_findings *
+bench_expect(const struct bench *bench, const char *ref, enum outcome outcome, enum reason why)
+{
+    const struct capacitor_findings *part = bench_part(bench, ref);
+    if (part->outcome != outcome || part->why != why)
+        print_error("%s: %s, %s\n", ref, outcome_text(part->outcome), reason_text(part->why));
+    assert_int_equal(part->outcome, outcome);
+    assert_int_equal(part->why, why);
+    return part;
 }
 
 static inline const struct criterion *bench_criterion(const struct capacitor_findings *part,

@@ -4,21 +4,6 @@
 #include "assess/voltage.h"
 #include "bench.h"
 
-#define BYPASS(ref, type, marked)                                                                  \
-    "  " ref ":\n    type: " type "\n    marked: " marked                                          \
-    "\n    place: other\n    feed: 10k\n    shift: 0.5 V\n    service: 100 V\n"
-
-static const struct capacitor_findings *expect(const struct bench *bench, const char *ref,
-                                               enum outcome outcome, enum reason why)
-{
-    const struct capacitor_findings *part = bench_part(bench, ref);
-    if (part->outcome != outcome || part->why != why)
-        print_error("%s: %s, %s\n", ref, outcome_text(part->outcome), reason_text(part->why));
-    assert_int_equal(part->outcome, outcome);
-    assert_int_equal(part->why, why);
-    return part;
-}
-
 /* Methods 3: up to 1/0.95 the current is scaled by x^2. Where the volts set are near that edge,
    their uncertainty must not bring the step there (x^2 against x, 5 %) into U: dI/I = 2*dV/V =
    2*1 %/sqrt(3), bench +-1 K/sqrt(3) over 10 K per doubling 4.00 %, accuracy 0.1 %/sqrt(3). */
@@ -66,8 +51,8 @@ static void test_a_rise_read_too_early(void **state)
         "    readings:\n"
         "      - 100 V 15 s 6 uA, 30 s 9 uA\n");
     /* clang-format on */
-    expect(&bench, "C1", OUTCOME_CONDITIONAL_PASS, WHY_RISING);
-    expect(&bench, "C2", OUTCOME_FAIL, WHY_RISING); /* 9 uA is over a tenth of 50 uA */
+    bench_expect(&bench, "C1", OUTCOME_CONDITIONAL_PASS, WHY_RISING);
+    bench_expect(&bench, "C2", OUTCOME_FAIL, WHY_RISING); /* 9 uA is over a tenth of 50 uA */
     bench_release(&bench);
 }
 
@@ -118,8 +103,8 @@ static void test_insulation_in_coarse_steps(void **state)
         "    readings:\n"
         "      - 100 V 60 s 2.2 M by megohms\n");
     /* clang-format on */
-    expect(&bench, "C1", OUTCOME_PASS, WHY_NONE);
-    expect(&bench, "C2", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
+    bench_expect(&bench, "C1", OUTCOME_PASS, WHY_NONE);
+    bench_expect(&bench, "C2", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
     bench_release(&bench);
 }
 
@@ -229,16 +214,16 @@ static void test_open_resistors(void **state)
         "  R2: {marked: 56k 1 W, measured: open, done: replaced, fitted: 50k 1 W}\n");
     /* clang-format on */
     const struct capacitor_findings *part =
-        expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_OPEN_RESISTOR);
+        bench_expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_OPEN_RESISTOR);
     assert_true(isnan(part->limit_a));
     assert_close(part->sheet_voltage_v, fmin(part->service_v, 400),
                  1e-9); /* may be read all the same */
-    part = expect(&bench, "C3", OUTCOME_NOT_JUDGED, WHY_OPEN_RESISTOR);
+    part = bench_expect(&bench, "C3", OUTCOME_NOT_JUDGED, WHY_OPEN_RESISTOR);
     assert_null(part->missing);
     /* With the new one fitted its ohms count: 2 % of 250 V over 50 k is 100 uA; by heat 80 uA. */
-    part = expect(&bench, "C4", OUTCOME_PASS, WHY_NONE);
+    part = bench_expect(&bench, "C4", OUTCOME_PASS, WHY_NONE);
     assert_relative(part->limit_a, 0.02 / 250, 1e-3);
-    expect(&bench, "C2", OUTCOME_PASS, WHY_NONE);
+    bench_expect(&bench, "C2", OUTCOME_PASS, WHY_NONE);
     const struct stage_findings *stages = bench.findings->stages;
     assert_true(stages[0].phases[PHASE_DESIGNED].judged);
     assert_int_equal(stages[0].phases[PHASE_FOUND].why, WHY_OPEN_RESISTOR);
@@ -265,7 +250,7 @@ static void test_effects_that_say_what_goes_wrong(void **state)
         "    readings:\n      - 250 V 60 s 1 uA\n");
     /* clang-format on */
     /* -20 % of 100 pF with 5 % allowed: the capacitance fails, and is the effect shown */
-    const struct capacitor_findings *part = expect(&bench, "C1", OUTCOME_FAIL, WHY_NONE);
+    const struct capacitor_findings *part = bench_expect(&bench, "C1", OUTCOME_FAIL, WHY_NONE);
     assert_string_equal(part->effects[0].key, "capacitance");
     assert_close(part->effects[0].value, -20, 1e-9);
     assert_close(part->effects[0].of, -5, 1e-9);
@@ -298,7 +283,7 @@ static void test_heat_limits_sooner_than_the_place(void **state)
         "    service: 250 V\n"
         "    readings:\n      - 250 V 60 s 120 uA\n");
     /* clang-format on */
-    const struct capacitor_findings *part = expect(&bench, "C1", OUTCOME_FAIL, WHY_NONE);
+    const struct capacitor_findings *part = bench_expect(&bench, "C1", OUTCOME_FAIL, WHY_NONE);
     assert_relative(part->limit_a, 0.02 / 250, 1e-4);
     assert_true(part->limit_is_heat);
     assert_int_equal(bench_criterion(part, CRITERION_SCREEN_FALL, false)->outcome, OUTCOME_PASS);

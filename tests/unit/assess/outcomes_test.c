@@ -2,21 +2,6 @@
    judgement, advice, the bench sheet. The part is a coupling or a bypass with a limit by hand. */
 #include "bench.h"
 
-/* A bypass judged linearly: I*10 k <= 0.5 V at 100 V, limit 50 uA. */
-#define BYPASS(ref, type, marked)                                                                  \
-    "  " ref ":\n    type: " type "\n    marked: " marked                                          \
-    "\n    place: other\n    feed: 10k\n    shift: 0.5 V\n    service: 100 V\n"
-
-static void expect(const struct bench *bench, const char *ref, enum outcome outcome,
-                   enum reason why)
-{
-    const struct capacitor_findings *part = bench_part(bench, ref);
-    if (part->outcome != outcome || part->why != why)
-        print_error("%s: %s, %s\n", ref, outcome_text(part->outcome), reason_text(part->why));
-    assert_int_equal(part->outcome, outcome);
-    assert_int_equal(part->why, why);
-}
-
 static void test_time(void **state)
 {
     (void)state;
@@ -48,14 +33,15 @@ static void test_time(void **state)
         "      - 100 V 60 s 80 uA\n"
         "      - 100 V 5 s 70 uA hot 20 C\n");
     /* clang-format on */
-    expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_TOO_EARLY);
-    expect(&bench, "C2", OUTCOME_PASS, WHY_NONE); /* an early reading may pass */
-    expect(&bench, "C3", OUTCOME_FAIL, WHY_NONE);
-    expect(&bench, "C4", OUTCOME_NOT_JUDGED, WHY_TOO_EARLY); /* no time said */
-    expect(&bench, "C5", OUTCOME_FAIL, WHY_RISING);          /* 8 uA is over a tenth of 50 uA */
-    expect(&bench, "C6", OUTCOME_CONDITIONAL_PASS, WHY_RISING);
+    bench_expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_TOO_EARLY);
+    bench_expect(&bench, "C2", OUTCOME_PASS, WHY_NONE); /* an early reading may pass */
+    bench_expect(&bench, "C3", OUTCOME_FAIL, WHY_NONE);
+    bench_expect(&bench, "C4", OUTCOME_NOT_JUDGED, WHY_TOO_EARLY); /* no time said */
+    bench_expect(&bench, "C5", OUTCOME_FAIL, WHY_RISING); /* 8 uA is over a tenth of 50 uA */
+    bench_expect(&bench, "C6", OUTCOME_CONDITIONAL_PASS, WHY_RISING);
     assert_int_equal(bench_part(&bench, "C6")->trend, TREND_RISING);
-    expect(&bench, "C7", OUTCOME_FAIL, WHY_NONE); /* the hot one came too early: the soaked one */
+    bench_expect(&bench, "C7", OUTCOME_FAIL,
+                 WHY_NONE); /* the hot one came too early: the soaked one */
     assert_int_equal(bench_part(&bench, "C7")->deciding, 0);
     assert_close(bench_part(&bench, "C3")->readings[0].t_min_s, 15, 1e-9);
     bench_release(&bench);
@@ -79,7 +65,7 @@ static void test_waiting_for_absorption(void **state)
     const struct capacitor_findings *part = bench_part(&bench, "C1");
     assert_int_equal(part->absorption.status, ABSORPTION_RESOLVED);
     assert_relative(part->absorption.wait_until_s, 60 * pow(2, 1 / 0.8), 0.02);
-    expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_WAIT);
+    bench_expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_WAIT);
     assert_int_equal(part->advice, ADVICE_MEASURE_AGAIN);
     bench_release(&bench);
 }
@@ -112,10 +98,10 @@ static void test_volts(void **state)
         "      - 50 V 60 s 1 uA\n"
         "      - 100 V 60 s 4 uA\n");
     /* clang-format on */
-    expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_VOLTS_TOO_LOW);
+    bench_expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_VOLTS_TOO_LOW);
     assert_true(bench_part(&bench, "C1")->readings[0].service_lower_bound);
-    expect(&bench, "C2", OUTCOME_FAIL, WHY_NONE); /* 80 uA at least */
-    expect(&bench, "C3", OUTCOME_PASS, WHY_NONE); /* 40 uA at 100 V */
+    bench_expect(&bench, "C2", OUTCOME_FAIL, WHY_NONE); /* 80 uA at least */
+    bench_expect(&bench, "C3", OUTCOME_PASS, WHY_NONE); /* 40 uA at 100 V */
     assert_relative(bench_part(&bench, "C3")->test_limit_a, 100e-6, 1e-4);
     assert_true(bench_part(&bench, "C4")->tested_above_marked);
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_TESTED_ABOVE_MARKED), 1);
@@ -172,7 +158,7 @@ static void test_temperature_and_ageing(void **state)
     /* waxed paper keeps half */
     assert_relative(bench_part(&bench, "C3")->limit_a, 25e-6, 1e-4);
     /* 7.5*5.657 = 42.4 uA passes; with 5 K more, 60 uA, it does not */
-    expect(&bench, "C4", OUTCOME_PASS, WHY_NONE);
+    bench_expect(&bench, "C4", OUTCOME_PASS, WHY_NONE);
     assert_true(bench_part(&bench, "C4")->turns_on_temperature);
     assert_false(bench_part(&bench, "C1")->turns_on_temperature);
     /* 55 C near heat: 2^(35/15) */
@@ -218,18 +204,18 @@ static void test_instrument_and_bounds(void **state)
         "      - 100 V 60 s 1 uA by fine in circuit\n");
     /* clang-format on */
     /* 50 uA/sqrt(3)*2 is more than half of 50 uA */
-    expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
+    bench_expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_INSTRUMENT);
     /* At higher volts it can: 0.5*L = 2*sqrt(((2 %*L + 50 uA)/sqrt(3))^2 + (1 uA)^2/12) at 121 uA,
        that is 50 uA at 100 V brought to 242 V, set 250 V. */
     assert_false(bench_part(&bench, "C1")->sheet_not_with_this_meter);
     assert_close(bench_part(&bench, "C1")->sheet_voltage_v, 250, 1e-9);
-    expect(&bench, "C2", OUTCOME_PASS, WHY_NONE);
+    bench_expect(&bench, "C2", OUTCOME_PASS, WHY_NONE);
     assert_int_equal(bench_part(&bench, "C2")->test_bound, BOUND_UNDER);
-    expect(&bench, "C3", OUTCOME_NOT_JUDGED, WHY_BOUND);
-    expect(&bench, "C4", OUTCOME_FAIL, WHY_NONE);
-    expect(&bench, "C5", OUTCOME_CONDITIONAL_PASS, WHY_WITHIN_UNCERTAINTY);
-    expect(&bench, "C6", OUTCOME_CONDITIONAL_FAIL, WHY_WITHIN_UNCERTAINTY);
-    expect(&bench, "C7", OUTCOME_NOT_JUDGED, WHY_NOT_LIFTED);
+    bench_expect(&bench, "C3", OUTCOME_NOT_JUDGED, WHY_BOUND);
+    bench_expect(&bench, "C4", OUTCOME_FAIL, WHY_NONE);
+    bench_expect(&bench, "C5", OUTCOME_CONDITIONAL_PASS, WHY_WITHIN_UNCERTAINTY);
+    bench_expect(&bench, "C6", OUTCOME_CONDITIONAL_FAIL, WHY_WITHIN_UNCERTAINTY);
+    bench_expect(&bench, "C7", OUTCOME_NOT_JUDGED, WHY_NOT_LIFTED);
     bench_release(&bench);
 }
 
@@ -288,11 +274,12 @@ static void test_electrolytics(void **state)
     /* heat of a tubular: 0.05 W at 300 V is 167 uA, less than 2 % of 60 mA and than JAN-C-62 (1.1
      * mA) */
     assert_relative(bench_part(&bench, "C4")->limit_a, 0.05 / 300, 1e-4);
-    expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_STILL_FALLING);
+    bench_expect(&bench, "C1", OUTCOME_NOT_JUDGED, WHY_STILL_FALLING);
     assert_int_equal(bench_part(&bench, "C1")->advice, ADVICE_REFORM);
-    expect(&bench, "C2", OUTCOME_FAIL, WHY_NONE);
-    expect(&bench, "C3", OUTCOME_NOT_JUDGED, WHY_STILL_FALLING); /* one reading shows no level */
-    expect(&bench, "C4", OUTCOME_PASS, WHY_NONE);
+    bench_expect(&bench, "C2", OUTCOME_FAIL, WHY_NONE);
+    bench_expect(&bench, "C3", OUTCOME_NOT_JUDGED,
+                 WHY_STILL_FALLING); /* one reading shows no level */
+    bench_expect(&bench, "C4", OUTCOME_PASS, WHY_NONE);
     const struct criterion *rule =
         bench_criterion(bench_part(&bench, "C4"), CRITERION_LEAKAGE_RULE, false);
     assert_non_null(rule);
@@ -311,8 +298,8 @@ static void test_electrolytics(void **state)
     assert_relative(bench_criterion(part, CRITERION_HEAT, false)->value, 0.12, 1e-6);
     assert_relative(bench_criterion(part, CRITERION_HEAT, true)->value, 0.30, 1e-6);
     assert_int_equal(part->outcome_found, OUTCOME_NOT_JUDGED);
-    expect(&bench, "C7", OUTCOME_CONDITIONAL_FAIL, WHY_JOINT);
-    expect(&bench, "C8", OUTCOME_CONDITIONAL_FAIL, WHY_JOINT);
+    bench_expect(&bench, "C7", OUTCOME_CONDITIONAL_FAIL, WHY_JOINT);
+    bench_expect(&bench, "C8", OUTCOME_CONDITIONAL_FAIL, WHY_JOINT);
     /* one can, two sections, kept because reformed */
     assert_int_equal(bench.findings->originality.total.of, 7);
     assert_int_equal(bench.findings->originality.seen[SEEN_ABOVE].kept, 1);
@@ -391,10 +378,10 @@ static void test_what_was_done(void **state)
     assert_int_equal(bench_part(&bench, "C5")->state, STATE_KEPT_UNTESTED);
     assert_int_equal(bench_count(&bench, DIAGNOSTIC_KEPT_WITHOUT_READING), 1);
     /* what was read on the new part says nothing of the original */
-    expect(&bench, "C6", OUTCOME_FAIL, WHY_NONE);
+    bench_expect(&bench, "C6", OUTCOME_FAIL, WHY_NONE);
     assert_int_equal(bench_part(&bench, "C6")->deciding, 0);
     /* ... but on a part that stayed it decides */
-    expect(&bench, "C7", OUTCOME_PASS, WHY_NONE);
+    bench_expect(&bench, "C7", OUTCOME_PASS, WHY_NONE);
     assert_int_equal(bench_part(&bench, "C7")->outcome_found, OUTCOME_FAIL);
     assert_close(bench_part(&bench, "C7")->found_leakage_a, 80e-6, 1e-12);
     assert_relative(bench_part(&bench, "C7")->found_limit_a, 50e-6, 1e-4);

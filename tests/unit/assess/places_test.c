@@ -8,8 +8,7 @@
 #define STAGE_6V6                                                                                  \
     "stages:\n"                                                                                    \
     "  output:\n"                                                                                  \
-    "    valve: V4 6V6GT\n"                                                                        \
-    "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"       \
+    "    valve: V4 6V6GT\n" ROW_6V6                                                                \
     "    supply: 262.5 V\n"                                                                        \
     "    cathode: 252.5 ohm\n"                                                                     \
     "    grid_leak: 470k\n"
@@ -64,7 +63,7 @@ static void test_one_microampere_through_500k(void **state)
         "stages:\n"
         "  af:\n"
         "    valve: V2 6V6GT\n"
-        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        ROW_6V6
         "    supply: 250 V\n"
         "    bias: -12.5 V\n"
         "    grid_leak: 500k\n"
@@ -120,7 +119,7 @@ static void test_bias_bypass_of_a_fixed_bias(void **state)
         "stages:\n"
         "  output:\n"
         "    valve: V4 6V6GT\n"
-        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        ROW_6V6
         "    supply: 250 V\n"
         "    bias: -12.5 V\n"
         "    grid_leak: 470k\n"
@@ -152,7 +151,7 @@ static void test_back_bias_bypass(void **state)
         "stages:\n"
         "  output:\n"
         "    valve: V4 6V6GT\n"
-        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        ROW_6V6
         "    supply: 250 V\n"
         "    bias: R9\n"
         "    others: 33.8 mA\n"
@@ -571,14 +570,14 @@ static void test_pushpull_pair_on_one_cathode_resistor(void **state)
         "stages:\n"
         "  a:\n"
         "    valve: V4 6V6GT\n"
-        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        ROW_6V6
         "    supply: 262.5 V\n"
         "    cathode: R12\n"
         "    grid_leak: 470k\n"
         "    pushpull_with: b\n"
         "  b:\n"
         "    valve: V5 6V6GT\n"
-        "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
+        ROW_6V6
         "    supply: 262.5 V\n"
         "    cathode: R12\n"
         "    grid_leak: 470k\n"

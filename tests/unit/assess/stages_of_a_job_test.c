@@ -1,9 +1,6 @@
 /* Stages of a job: rows, circuits, phases, what the set itself showed. */
 #include "bench.h"
 
-#define ROW_6V6                                                                                    \
-    "    row: va 250 V, vg2 250 V, vg1 -12.5 V, ia 45 mA, ig2 4.5 mA, gm 4.1 mA/V, ra 50k\n"
-
 static const struct stage_findings *stage(const struct bench *bench, const char *name)
 {
     for (size_t i = 0; i < bench->findings->stage_count; i++)

@@ -51,17 +51,9 @@ static struct document *letter_document(struct arena *arena)
 
 static struct document *empty_document(struct arena *arena, enum document_kind kind)
 {
-    struct document *document = arena_get(arena, sizeof *document);
-    *document = (struct document){.kind = kind,
-                                  .root = cmark_node_new(CMARK_NODE_DOCUMENT),
-                                  .arena = arena,
-                                  .language = "en",
-                                  .title = "Title",
-                                  .running_head = "Bench sheet 2031-022",
-                                  .page_word = "page",
-                                  .page_word_of = "of",
-                                  .continued = "(continued)",
-                                  .accent = "#1b4b6b"};
+    struct document *document = sample_empty(arena, kind);
+    document->title = "Title";
+    document->running_head = "Bench sheet 2031-022";
     return document;
 }
 
@@ -513,21 +505,12 @@ int main(int argc, char **argv)
         cmocka_unit_test(test_awkward_text),
         cmocka_unit_test(test_random_documents),
     };
-    struct arena arena = {0};
-    struct diagnostics diagnostics = {.arena = &arena};
-    char *folder = pdf_fonts_folder(argv[0]);
-    resources = pdf_resources_open(folder, &diagnostics);
-    free(folder);
-    if (!resources) {
-        fprintf(stderr, "%s\n", diagnostics.items[0].text);
-        return 1;
-    }
+    resources = pdf_resources_of(argv[0]);
     int failed = 0;
     if (argc > 1)
         save_all(&(struct target){argv[1], argc > 2 ? argv[2] : NULL});
     else
         failed = cmocka_run_group_tests(tests, NULL, NULL);
     pdf_resources_close(resources);
-    arena_release(&arena);
     return failed;
 }

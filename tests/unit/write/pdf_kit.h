@@ -23,6 +23,23 @@ static inline char *pdf_fonts_folder(const char *program)
     return folder;
 }
 
+/* Faces and profile for a test program; says why there are none, and ends it. pdf_resources_close.
+ */
+static inline struct pdf_resources *pdf_resources_of(const char *program)
+{
+    struct arena arena = {0};
+    struct diagnostics diagnostics = diagnostics_in(&arena);
+    char *folder = pdf_fonts_folder(program);
+    struct pdf_resources *resources = pdf_resources_open(folder, &diagnostics);
+    free(folder);
+    if (!resources) {
+        fprintf(stderr, "%s\n", diagnostics.items[0].text);
+        exit(1);
+    }
+    arena_release(&arena);
+    return resources;
+}
+
 static inline struct picture pdf_picture(const char *path)
 {
     const struct picture_limits limits = {1600, 40000000, 85};

@@ -463,17 +463,8 @@ int main(int argc, char **argv)
         cmocka_unit_test(test_a_short_table_stays_whole),
         cmocka_unit_test(test_a_row_higher_than_a_page_is_broken),
     };
-    struct arena arena = {0};
-    struct diagnostics diagnostics = {.arena = &arena};
-    char *folder = pdf_fonts_folder(argv[0]);
-    resources = pdf_resources_open(folder, &diagnostics);
-    free(folder);
-    if (!resources) {
-        fprintf(stderr, "%s\n", diagnostics.items[0].text);
-        return 1;
-    }
+    resources = pdf_resources_of(argv[0]);
     int failed = cmocka_run_group_tests(tests, NULL, NULL);
     pdf_resources_close(resources);
-    arena_release(&arena);
     return failed;
 }
