@@ -85,10 +85,11 @@ UNIT_SOURCES = $(wildcard tests/unit/*/*_test.c)
 UNIT_TESTS = $(patsubst %.c,$(BUILD)/%,$(UNIT_SOURCES))
 
 define unit_rule
-$(BUILD)/tests/unit/$(1)/%_test: tests/unit/$(1)/%_test.c $(call libraries_from,$(1))
+$(BUILD)/tests/unit/$(1)/%_test: tests/unit/$(1)/%_test.c $(wildcard tests/*.h tests/unit/$(1)/*.h) \
+    $(call libraries_from,$(1))
 	@mkdir -p $$(@D)
 	@echo "  link    $$@"
-	@$(CC) $(CFLAGS) -Itests $$^ $(LDLIBS) -lcmocka -o $$@
+	@$(CC) $(CFLAGS) -Itests $$(filter-out %.h,$$^) $(LDLIBS) -lcmocka -o $$@
 endef
 $(foreach module,$(MODULES),$(eval $(call unit_rule,$(module))))
 
@@ -170,7 +171,7 @@ uninstall:
 	rm -rf $(DESTDIR)$(PREFIX)/share/gridleak
 
 clean:
-	rm -rf $(BUILD) asan
+	rm -rf $(BUILD)
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
 .PHONY: fuzzers oracle blind all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
