@@ -14,7 +14,7 @@ static bool is_invisible(uint32_t code_point)
            (code_point >= 0x2060 && code_point <= 0x2069) || code_point == 0xFEFF;
 }
 
-/* Bytes that need a look: controls, and the first bytes of all invisible characters. */
+/* Whether no byte needs a look: controls do, and the first bytes of all invisible characters. */
 static bool is_clean(const char *text, size_t length)
 {
     for (size_t i = 0; i < length; i++) {
@@ -199,8 +199,7 @@ static unsigned long room_left(const struct breaker *breaker, const struct text_
     return room > 0 ? (unsigned long)(room < 1e9 ? room : 1e9) : 0;
 }
 
-/* Behind the letters and digits from `at` on that fit: nearly everything, and no line ends there.
- */
+/* Behind the letters and digits from `at` on that fit: most of a text, and no line ends there. */
 static const char *within_word(const struct glyph_place *places, const char *at, const char *end,
                                unsigned long room, unsigned long *used)
 {
@@ -213,58 +212,80 @@ static const char *within_word(const struct glyph_place *places, const char *at,
     return at;
 }
 
+/* A line while its end is looked for. */
+struct line_search {
+    struct spot from, at;
+    struct spot candidate; /* where it may end, the last such place */
+    bool has_candidate;
+    uint32_t before; /* the character before `at` */
+};
+
+static void may_end_here(struct line_search *line)
+{
+    line->candidate = line->at;
+    line->has_candidate = true;
+}
+
+/* Where a line ends that has no room for this character, the one before `at`. */
+static struct spot end_of_full(const struct line_search *line, const char *character)
+{
+    if (line->has_candidate)
+        return line->candidate;
+    if (line->at.run == line->from.run && character == line->from.at)
+        return line->at; /* not even one character fits: it stands alone */
+    return (struct spot){line->at.run, character, 0};
+}
+
+/* Go to the end of the run; false: the line is full before it, and ends at *end. */
+static bool pass_run(const struct breaker *breaker, struct line_search *line, struct spot *end)
+{
+    const struct text_run *run = &breaker->runs->items[line->at.run];
+    const char *behind = run->text + run->length;
+    const struct glyph_place *places = breaker->resources->latin[run->style.face];
+    unsigned long room = room_left(breaker, run, line->at.width), used = 0;
+    while (line->at.at < behind) {
+        const char *word = line->at.at;
+        line->at.at = within_word(places, word, behind, room, &used);
+        if (line->at.at > word)
+            line->before = (unsigned char)line->at.at[-1];
+        if (line->at.at == behind)
+            break;
+        const char *character = line->at.at;
+        uint32_t code_point = utf8_next(&line->at.at, behind);
+        if (code_point == ' ' && !is_before_unit(line->before, line->at.at, behind))
+            may_end_here(line);
+        used += pdf_character_width(breaker->resources, run->style.face, code_point);
+        if (code_point != ' ' && used > room) {
+            *end = end_of_full(line, character);
+            return false;
+        }
+        if (breaks_behind(line->before, code_point, line->at.at, behind))
+            may_end_here(line);
+        line->before = code_point;
+    }
+    line->at.width += (double)used * run->style.size_pt / 1000;
+    return true;
+}
+
 /* One line from `from`; the answer is where the next begins. */
 static struct spot break_line(struct breaker *breaker, struct spot from)
 {
-    struct spot at = from, candidate = from;
-    bool has_candidate = false;
-    uint32_t before = 0;
-    while (at.run < breaker->runs->count) {
-        const struct text_run *run = &breaker->runs->items[at.run];
-        const char *end = run->text + run->length;
-        unsigned long room = room_left(breaker, run, at.width), used = 0;
-        const struct glyph_place *places = breaker->resources->latin[run->style.face];
-        while (at.at < end) {
-            const char *word = at.at;
-            at.at = within_word(places, word, end, room, &used);
-            if (at.at > word)
-                before = (unsigned char)at.at[-1];
-            if (at.at == end)
-                break;
-            const char *character = at.at;
-            uint32_t code_point = utf8_next(&at.at, end);
-            if (code_point == ' ' && !is_before_unit(before, at.at, end)) {
-                candidate = at;
-                has_candidate = true;
-            }
-            used += pdf_character_width(breaker->resources, run->style.face, code_point);
-            if (code_point != ' ' && used > room) {
-                struct spot end_of_line = candidate;
-                if (!has_candidate)
-                    end_of_line = at.run == from.run && character == from.at
-                                      ? at /* not even one character fits: it stands alone */
-                                      : (struct spot){at.run, character, 0};
-                add_line(breaker, from, end_of_line);
-                return skip_spaces(breaker, end_of_line);
-            }
-            if (breaks_behind(before, code_point, at.at, end)) {
-                candidate = at;
-                has_candidate = true;
-            }
-            before = code_point;
+    const struct text_runs *runs = breaker->runs;
+    struct line_search line = {.from = from, .at = from};
+    for (;;) {
+        struct spot end;
+        if (!pass_run(breaker, &line, &end)) {
+            add_line(breaker, from, end);
+            return skip_spaces(breaker, end);
         }
-        if (run->line_end || at.run + 1 == breaker->runs->count) {
-            add_line(breaker, from, at);
-            at.run++;
-            at.at = at.run < breaker->runs->count ? breaker->runs->items[at.run].text : NULL;
-            at.width = 0;
-            return at;
-        }
-        at.width += (double)used * run->style.size_pt / 1000;
-        at.run++;
-        at.at = breaker->runs->items[at.run].text;
+        if (runs->items[line.at.run].line_end || line.at.run + 1 == runs->count)
+            break;
+        line.at.run++;
+        line.at.at = runs->items[line.at.run].text;
     }
-    return at;
+    add_line(breaker, from, line.at);
+    size_t next = line.at.run + 1;
+    return (struct spot){next, next < runs->count ? runs->items[next].text : NULL, 0};
 }
 
 /* Cells of tables mostly fit in one line: then there is nothing to look for in them. */
