@@ -129,6 +129,12 @@ enum mark mark_of(enum outcome outcome);
 const char *date_text(const struct date *date);
 /* Indices of the capacitors in the order of places, those without a place last. */
 const size_t *capacitors_by_place(const struct composition *composition);
+/* Add rows of all capacitors in that order, each place below a line with its name. */
+void table_by_place(struct table_builder *builder,
+                    void (*add_part)(struct table_builder *builder, size_t index));
+/* The marked value, or the marking as typed when it has none. */
+void set_marked_value(const struct composition *composition, struct cell *cell,
+                      const struct marking *marked);
 /* part_action and part_origin of the index-th capacitor. */
 enum action capacitor_done(const struct composition *composition, size_t index);
 enum origin capacitor_was(const struct composition *composition, size_t index);

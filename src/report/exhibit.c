@@ -444,6 +444,30 @@ const size_t *capacitors_by_place(const struct composition *composition)
     return order;
 }
 
+void table_by_place(struct table_builder *builder,
+                    void (*add_part)(struct table_builder *builder, size_t index))
+{
+    const struct composition *composition = builder->composition;
+    const struct findings *findings = composition->findings;
+    const size_t *order = capacitors_by_place(composition);
+    builder->table->group_head = phrase(&composition->say, "head.place", NULL);
+    for (size_t i = 0; i < findings->capacitor_count; i++) {
+        enum place place = findings->capacitors[order[i]].part->place;
+        if (i == 0 || findings->capacitors[order[i - 1]].part->place != place)
+            table_group(builder, phrase_in(&composition->say, "place", place_text(place)));
+        add_part(builder, order[i]);
+    }
+}
+
+void set_marked_value(const struct composition *composition, struct cell *cell,
+                      const struct marking *marked)
+{
+    if (marked->value.set)
+        cell->figures = figures_quantity(composition, &marked->value);
+    else
+        cell->text = marked->written;
+}
+
 enum action capacitor_done(const struct composition *composition, size_t index)
 {
     return part_action(composition->job, composition->findings->capacitors[index].part);

@@ -237,7 +237,7 @@ struct working {
     bool screen_only; /* left out on paper, where it cannot be folded away */
 };
 
-/* The fingerprint: a hash in groups of eight. */
+/* The fingerprint: a hash as sha256sum prints it, which writers may set in groups. */
 struct fingerprint {
     const char *text;
 };

@@ -39,17 +39,9 @@ static void add_part(struct table_builder *builder, size_t index)
 void exhibit_assessed_capacitors(struct composition *composition, size_t index)
 {
     (void)index;
-    const struct findings *findings = composition->findings;
     struct table_builder builder =
         table_begin(composition, "leakage", part_plan, sizeof part_plan / sizeof *part_plan);
-    builder.table->group_head = phrase(&composition->say, "head.place", NULL);
-    const size_t *order = capacitors_by_place(composition);
-    for (size_t i = 0; i < findings->capacitor_count; i++) {
-        enum place place = findings->capacitors[order[i]].part->place;
-        if (i == 0 || findings->capacitors[order[i - 1]].part->place != place)
-            table_group(&builder, phrase_in(&composition->say, "place", place_text(place)));
-        add_part(&builder, order[i]);
-    }
+    table_by_place(&builder, add_part);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.assessed", NULL));
 }
 

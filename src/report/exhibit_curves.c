@@ -198,7 +198,7 @@ static struct curve_panel panel_of(const struct composition *composition,
             fresh->points = arena_array(composition->arena, count - i, sizeof *fresh->points);
             fresh->label = arena_print(composition->arena, "%zu", panel.curve_count);
         }
-        double at_s = begun_s + (reading->time.set ? reading->time.value : 0);
+        double at_s = begun_s + quantity_or(&reading->time, 0);
         ended_s = fmax(ended_s, at_s);
         struct curve *curve = &panel.curves[panel.curve_count - 1];
         if (isfinite(current) && current > 0)
@@ -231,13 +231,13 @@ static void add_numbers(struct table_builder *numbers, const struct reform *refo
             step++;
         add_number(numbers, arena_print(composition->arena, "%zu", step),
                    volts_on_part(reading, limiter, reform->across_part),
-                   reading->time.set ? reading->time.value : NAN, reading_current(reading));
+                   quantity_or(&reading->time, NAN), reading_current(reading));
     }
     for (size_t i = 0; i < reform->after_rest_count; i++) {
         const struct reading *reading = &reform->after_rest[i];
         add_number(numbers, phrase(&composition->say, "reform.after_rest_short", NULL),
                    volts_on_part(reading, limiter, reform->across_part),
-                   reading->time.set ? reading->time.value : NAN, reading_current(reading));
+                   quantity_or(&reading->time, NAN), reading_current(reading));
     }
 }
 

@@ -30,17 +30,6 @@ static const struct column_plan plan[LEAKAGE_COLUMNS] = {
     [COLUMN_OF_DONE] = {"done", NULL, NULL, COLUMN_TEXT, 10.6, 3},
 };
 
-static void set_marked(const struct composition *composition, struct cell *cell,
-                       const struct marking *marked)
-{
-    if (marked->value.set)
-        cell->figures = figures_quantity(composition, &marked->value);
-    else
-        cell->text = marked->written;
-    if (marked->rated.set)
-        cell->second_figures = figures_quantity(composition, &marked->rated);
-}
-
 /* A bound is what the instrument's range ends at: as few figures as it takes, rounded up. */
 static struct figures bound_figures(const struct composition *composition,
                                     const struct capacitor_findings *part)
@@ -129,7 +118,9 @@ static void add_part(struct table_builder *builder, size_t index)
     enum action done = capacitor_done(composition, index);
     struct cell *cells = table_row(builder);
     cells[COLUMN_OF_REF].text = part->part->ref;
-    set_marked(composition, &cells[COLUMN_OF_MARKED], &part->part->marked);
+    set_marked_value(composition, &cells[COLUMN_OF_MARKED], &part->part->marked);
+    cells[COLUMN_OF_MARKED].second_figures =
+        figures_quantity(composition, &part->part->marked.rated);
     set_reading(composition, cells, part);
     cells[COLUMN_OF_EFFECT].text = effects_text(composition, part);
     cells[COLUMN_OF_OUTCOME] = (struct cell){
@@ -160,15 +151,7 @@ static const char *caption(const struct composition *composition)
 void exhibit_leakage(struct composition *composition, size_t index)
 {
     (void)index;
-    const struct findings *findings = composition->findings;
     struct table_builder builder = table_begin(composition, "leakage", plan, LEAKAGE_COLUMNS);
-    builder.table->group_head = phrase(&composition->say, "head.place", NULL);
-    const size_t *order = capacitors_by_place(composition);
-    for (size_t i = 0; i < findings->capacitor_count; i++) {
-        enum place place = findings->capacitors[order[i]].part->place;
-        if (i == 0 || findings->capacitors[order[i - 1]].part->place != place)
-            table_group(&builder, phrase_in(&composition->say, "place", place_text(place)));
-        add_part(&builder, order[i]);
-    }
+    table_by_place(&builder, add_part);
     table_place(&builder, NUMBERED_TABLE, caption(composition));
 }

@@ -72,6 +72,40 @@ static void resistor_notes(struct table_builder *builder, const struct resistor_
                 "rating", text_unit(composition, found->dissipation.high, UNIT_POWER, 2), NULL));
 }
 
+static void add_resistor(struct table_builder *builder, size_t index)
+{
+    const struct composition *composition = builder->composition;
+    const struct phrasing *say = &composition->say;
+    const struct resistor *part = &composition->job->resistors[index];
+    const struct resistor_findings *found = composition->findings->bench.resistors;
+    bool outside = out_of_tolerance(&part->measured, &part->marked);
+    struct cell *cells = table_row(builder);
+    cells[0].text = part->ref;
+    cells[1].figures = figures_quantity(composition, &part->marked.value);
+    cells[2].figures = figures_quantity(composition, &part->marked.rated);
+    cells[3].text = tolerance_text(composition, &part->marked);
+    cells[4].figures = figures_quantity(composition, &part->measured);
+    cells[5].figures = change_figures(composition, &part->measured, &part->marked.value);
+    cells[5].strong = cells[4].strong = outside;
+    cells[6].text = done_text_of(composition, part->done, part->was);
+    if (outside && (part->done == DONE_KEPT || part->done == DONE_OPEN))
+        table_note(builder, &cells[0],
+                   phrase(say, "note.resistor_outside", "reason",
+                          text_stopped(composition->arena, part->reason.text), NULL));
+    if (part->marked.colours)
+        table_note(builder, &cells[0],
+                   phrase(say,
+                          part->marked.colours_unknown ? "note.colours_unknown" : "note.colours",
+                          "colours", part->marked.colours, NULL));
+    if (found && part->marked.value.set && found[index].series == E_SERIES_COUNT)
+        table_note(builder, &cells[0], phrase(say, "note.no_preferred_value", NULL));
+    if (found)
+        resistor_notes(builder, &found[index], &cells[0]);
+    table_note(
+        builder, &cells[0],
+        text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
+}
+
 void exhibit_resistors(struct composition *composition, size_t index)
 {
     (void)index;
@@ -87,40 +121,8 @@ void exhibit_resistors(struct composition *composition, size_t index)
     struct table_builder builder =
         table_begin(composition, "resistors", plan, sizeof plan / sizeof *plan);
     builder.table->lined = true;
-    for (size_t i = 0; i < composition->job->resistor_count; i++) {
-        const struct resistor *part = &composition->job->resistors[i];
-        bool outside = out_of_tolerance(&part->measured, &part->marked);
-        struct cell *cells = table_row(&builder);
-        cells[0].text = part->ref;
-        cells[1].figures = figures_quantity(composition, &part->marked.value);
-        cells[2].figures = figures_quantity(composition, &part->marked.rated);
-        cells[3].text = tolerance_text(composition, &part->marked);
-        cells[4].figures = figures_quantity(composition, &part->measured);
-        cells[5].figures = change_figures(composition, &part->measured, &part->marked.value);
-        cells[5].strong = cells[4].strong = outside;
-        cells[6].text = done_text_of(composition, part->done, part->was);
-        if (outside && (part->done == DONE_KEPT || part->done == DONE_OPEN))
-            table_note(&builder, &cells[0],
-                       phrase(&composition->say, "note.resistor_outside", "reason",
-                              text_stopped(composition->arena, part->reason.text), NULL));
-        if (part->marked.colours_unknown)
-            table_note(&builder, &cells[0],
-                       phrase(&composition->say, "note.colours_unknown", "colours",
-                              part->marked.colours, NULL));
-        else if (part->marked.colours)
-            table_note(
-                &builder, &cells[0],
-                phrase(&composition->say, "note.colours", "colours", part->marked.colours, NULL));
-        const struct resistor_findings *found = composition->findings->bench.resistors;
-        if (found && part->marked.value.set && found[i].series == E_SERIES_COUNT)
-            table_note(&builder, &cells[0],
-                       phrase(&composition->say, "note.no_preferred_value", NULL));
-        if (found)
-            resistor_notes(&builder, &found[i], &cells[0]);
-        table_note(
-            &builder, &cells[0],
-            text_stopped(composition->arena, text_sentence(composition->arena, part->note.text)));
-    }
+    for (size_t i = 0; i < composition->job->resistor_count; i++)
+        add_resistor(&builder, i);
     table_drop_empty(&builder);
     table_place(&builder, NUMBERED_TABLE, phrase(&composition->say, "caption.resistors", NULL));
 }

@@ -1,7 +1,6 @@
 /* The bench sheet's leakage table: what to lift, volts, soak, limit, and blanks. */
-#include "report/phrases.h"
-
 #include "report/composition.h"
+#include "report/phrases.h"
 
 #include <string.h>
 
@@ -33,16 +32,6 @@ static const struct column_plan plan[SHEET_COLUMNS] = {
     [SHEET_MEASURED] = {"measured", NULL, NULL, COLUMN_BLANK, 8.5, 1},
     [SHEET_DONE] = {"done", NULL, NULL, COLUMN_BLANK, 9, 1},
 };
-
-static void set_marked(const struct composition *composition, struct cell *cell,
-                       const struct marking *marked)
-{
-    if (marked->value.set)
-        cell->figures = figures_quantity(composition, &marked->value);
-    else
-        cell->text = marked->written;
-    cell->second = text_quantity(composition, &marked->rated);
-}
 
 /* What to write down is set out for a part that a reading can decide. */
 static void set_test(const struct composition *composition, struct cell *cells,
@@ -120,7 +109,8 @@ static void add_part(struct table_builder *builder, size_t index)
     cells[SHEET_PLACE].second = part.no_reading_passes
                                     ? phrase(&composition->say, "sheet.not_tested", NULL)
                                     : phrase_in(&composition->say, "lift", place);
-    set_marked(composition, &cells[SHEET_MARKED], &part.part->marked);
+    set_marked_value(composition, &cells[SHEET_MARKED], &part.part->marked);
+    cells[SHEET_MARKED].second = text_quantity(composition, &part.part->marked.rated);
     if (part.no_reading_passes)
         cells[SHEET_SET].text = phrase_of(&composition->say, "sheet.no_reading_passes",
                                           part_values(&composition->say, composition->job, &part));
