@@ -74,6 +74,8 @@ static struct seal_result seal_folder(const struct seal_request *request, const 
         const char *text = arena_print(arena, "%s\n", line);
         status = file_write(path, text, strlen(text), NULL);
     }
+    if (status == FILE_OK)
+        status = folder_flush(aside);
     if (status == FILE_OK && rename(aside, folder) != 0)
         status = FILE_FAILED;
     if (status == FILE_OK) {
@@ -87,6 +89,9 @@ static struct seal_result seal_folder(const struct seal_request *request, const 
         folder_remove(aside);
         return failed(status, path);
     }
+    /* The seal stands; a disk that cannot say that it has the new names undoes nothing. */
+    folder_flush_names(arena_print(arena, "%s/sealed", request->archive_folder));
+    folder_flush_names(request->archive_folder);
     return (struct seal_result){.status = SEAL_DONE, .folder = folder, .line = line};
 }
 

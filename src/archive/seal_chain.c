@@ -90,7 +90,10 @@ enum file_status seal_chain_append(const char *path, const struct seal_chain *ch
     for (size_t i = 0; i < chain->count; i++)
         buffer_print(&text, "%s\n", chain->lines[i]);
     buffer_print(&text, "%s\n", line);
-    enum file_status status = file_write(path, text.data, text.length, NULL);
+    struct file_writer chain_file;
+    file_begin(&chain_file, path);
+    file_put(&chain_file, text.data, text.length);
+    file_flush(&chain_file);
     buffer_release(&text);
-    return status;
+    return file_finish(&chain_file);
 }

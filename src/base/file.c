@@ -368,6 +368,48 @@ enum file_status folder_remove(const char *path)
     return status;
 }
 
+/* Some file systems cannot flush a folder, and need not. */
+static enum file_status flush(int file)
+{
+    return fsync(file) == 0 || errno == EINVAL ? FILE_OK : file_status_of(errno);
+}
+
+static enum file_status flush_one(const char *path)
+{
+    int file = open(path, O_RDONLY | O_CLOEXEC);
+    if (file < 0)
+        return file_status_of(errno);
+    enum file_status status = flush(file);
+    close(file);
+    return status;
+}
+
+enum file_status folder_flush_names(const char *path)
+{
+    return flush_one(path);
+}
+
+void file_flush(struct file_writer *writer)
+{
+    if (writer->status == FILE_OK)
+        writer->status = flush(writer->file);
+}
+
+enum file_status folder_flush(const char *path)
+{
+    struct arena arena = {0};
+    struct folder_names found;
+    enum file_status status = folder_list(path, &arena, &found);
+    for (size_t i = 0; i < found.count && status == FILE_OK; i++) {
+        const char *below = arena_print(&arena, "%s/%s", path, found.names[i]);
+        struct stat about;
+        bool is_folder = lstat(below, &about) == 0 && S_ISDIR(about.st_mode);
+        status = is_folder ? folder_flush(below) : flush_one(below);
+    }
+    arena_release(&arena);
+    return status == FILE_OK ? folder_flush_names(path) : status;
+}
+
 static bool is_aside(const char *name)
 {
     const char *mark = strstr(name, aside_mark);

@@ -1,6 +1,7 @@
 /*
  * Files read whole and written whole. Every file that the program makes appears complete or not at
- * all: written aside, flushed, renamed; one that would not change is not touched.
+ * all: written aside, then renamed; one that would not change is not touched. What must outlive a
+ * power cut is flushed besides.
  */
 #ifndef BASE_FILE_H
 #define BASE_FILE_H
@@ -52,7 +53,14 @@ void file_begin(struct file_writer *writer, const char *path);
 void file_put(struct file_writer *writer, const void *data, size_t length);
 /* `length` bytes from `offset` on of the file that `path` is now; fewer there: FILE_FAILED. */
 void file_put_old(struct file_writer *writer, uint64_t offset, uint64_t length);
+/* Come back when what was put so far is on the disk. */
+void file_flush(struct file_writer *writer);
 enum file_status file_finish(struct file_writer *writer);
+
+/* Come back when a folder with all it holds, or the list of its names alone, is on the disk, as far
+ * as the disk says so. */
+enum file_status folder_flush(const char *path);
+enum file_status folder_flush_names(const char *path);
 
 /* Make a folder and those above it; an existing one is fine. */
 enum file_status folder_make(const char *path);

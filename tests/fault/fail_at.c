@@ -35,6 +35,7 @@ enum kind {
     KIND_MKDIR,
     KIND_UNLINK,
     KIND_CLOSE,
+    KIND_FSYNC,
     KIND_PDF,
     KIND_COUNT
 };
@@ -52,8 +53,9 @@ extern void *__libc_memalign(size_t, size_t);
 
 __attribute__((constructor)) static void begin(void)
 {
-    static const char *const names[] = {"",       "memory", "read",  "write",  "open",  "opendir",
-                                        "rename", "link",   "mkdir", "unlink", "close", "pdf"};
+    static const char *const names[] = {"",        "memory", "read", "write", "open",
+                                        "opendir", "rename", "link", "mkdir", "unlink",
+                                        "close",   "fsync",  "pdf"};
     const char *wanted = getenv("FAULT_KIND"), *at = getenv("FAULT_AT");
     const char *count = getenv("FAULT_COUNT");
     if (count)
@@ -197,6 +199,15 @@ int open(const char *path, int flags, ...)
     if (!real)
         real = REAL(open);
     return opened(real, path, flags, mode);
+}
+
+int fsync(int file)
+{
+    if (fails(KIND_FSYNC, CALLER)) {
+        errno = EIO;
+        return -1;
+    }
+    return REAL(fsync)(file);
 }
 
 int rename(const char *from, const char *to)

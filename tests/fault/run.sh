@@ -158,6 +158,7 @@ for kind in memory write open rename mkdir unlink close opendir read; do
     turn find $kind '' '' "$program" find -o new-out C1
     turn start $kind '' "$refused" "$program" start 2040-001 --like 2031-001 -a arc
 done
+turn seal fsync '' 0 "$program" seal arc/2031-001.yaml client -o new-out
 turn start link '' '' "$program" start 2040-001 --like 2031-001 -a arc
 
 about=publish

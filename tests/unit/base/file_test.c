@@ -70,6 +70,8 @@ static void a_file_is_written_and_read(void **state)
     assert_memory_equal(contents.data, "abc", 3);
     assert_int_equal(file_read(in_folder("none"), 10, &contents), FILE_MISSING);
     assert_int_equal(file_read(folder, 10, &contents), FILE_NOT_REGULAR);
+    assert_int_equal(folder_flush_names(folder), FILE_OK);
+    assert_int_equal(folder_flush(folder), FILE_OK);
     buffer_release(&contents);
 }
 
@@ -82,6 +84,7 @@ static enum file_status patch(const char *path, const char *begins, uint64_t off
     file_put(&writer, begins, strlen(begins));
     file_put_old(&writer, offset, length);
     file_put(&writer, ends, strlen(ends));
+    file_flush(&writer);
     return file_finish(&writer);
 }
 
@@ -115,6 +118,8 @@ static void a_file_is_written_in_pieces(void **state)
 static void a_failure_is_told(void **state)
 {
     (void)state;
+    assert_int_equal(folder_flush_names("/proc/none/x"), FILE_MISSING);
+    assert_int_equal(folder_flush(in_folder("none")), FILE_MISSING);
     assert_int_equal(file_write("/proc/none/x", "x", 1, NULL), FILE_MISSING);
     for (enum file_status status = FILE_OK; status <= FILE_FAILED; status++)
         assert_true(strlen(file_status_text(status)) > 0);
