@@ -13,14 +13,12 @@
 #include "base/options.h"
 #include "job/manual.h"
 #include "job/schema.h"
-#include "quantity/quantity.h"
 #include "write/json.h"
 
 #include <errno.h>
 #include <stdio.h>
 #include <stdlib.h>
 #include <string.h>
-#include <sys/stat.h>
 #include <time.h>
 #include <unistd.h>
 
@@ -77,12 +75,6 @@ static int print(const struct buffer *text)
         return EXIT_DONE;
     fprintf(stderr, "gridleak: cannot write to standard output: %s\n", strerror(errno));
     return EXIT_SYSTEM;
-}
-
-static bool is_folder(const char *path)
-{
-    struct stat about;
-    return stat(path, &about) == 0 && S_ISDIR(about.st_mode);
 }
 
 static bool bold_allowed(void)
@@ -262,13 +254,12 @@ static void tell_job(const struct publish_event *event, void *context)
 /* Whether the operands are one archive, or job files; false after a mistake, told. */
 static bool publish_operands(const struct session *session, unsigned *threads)
 {
-    enum { THREADS_MAX = 64 };
     const char *word = session->options.threads;
     char *end = NULL;
     unsigned long wanted = word ? strtoul(word, &end, 10) : 2;
-    if (wanted < 1 || wanted > THREADS_MAX || (end && *end)) {
-        fprintf(stderr, "gridleak: --threads is a number from 1 to %d, not '%s'\n", THREADS_MAX,
-                word);
+    if (wanted < 1 || wanted > PUBLISH_THREADS_MAX || (end && *end)) {
+        fprintf(stderr, "gridleak: --threads is a number from 1 to %d, not '%s'\n",
+                PUBLISH_THREADS_MAX, word);
         return false;
     }
     *threads = (unsigned)wanted;
@@ -286,26 +277,22 @@ static bool publish_operands(const struct session *session, unsigned *threads)
     return true;
 }
 
-/* In jobs/ and models/ publish removes what it does not make any more: never in a folder where they
-   are somebody else's. */
 static bool output_is_good(struct session *session, const char *output)
 {
-    static const char *const swept[] = {"jobs", "models"};
-    bool published = is_folder(arena_print(&session->arena, "%s/.gridleak", output));
-    if (archive_is_at(output)) {
-        fprintf(stderr, "gridleak: '%s' is an archive: publish into a folder of its own\n", output);
+    const char *folder;
+    switch (publish_output_kind(output, &session->arena, &folder)) {
+    case OUTPUT_GOOD:
+        return true;
+    case OUTPUT_IS_ARCHIVE:
+        fprintf(stderr, "gridleak: '%s' is an archive: publish into a folder of its own\n", folder);
+        return false;
+    case OUTPUT_IS_FOREIGN:
+        fprintf(stderr,
+                "gridleak: '%s' was made by something else: publish into a folder of its own\n",
+                folder);
         return false;
     }
-    for (size_t i = 0; i < sizeof swept / sizeof *swept && !published; i++) {
-        const char *folder = arena_print(&session->arena, "%s/%s", output, swept[i]);
-        if (is_folder(folder)) {
-            fprintf(stderr,
-                    "gridleak: '%s' was made by something else: publish into a folder of its own\n",
-                    folder);
-            return false;
-        }
-    }
-    return true;
+    return false;
 }
 
 static int command_publish(struct session *session)
@@ -353,63 +340,57 @@ static int command_publish(struct session *session)
 
 /* ---- find */
 
-/* A date of a pair is compared as text: 2031, 2031-02 and 2031-02-10 are good, 3/2/31 is not. */
-static bool pair_is_good(struct session *session, const char *term)
+static bool terms_are_good(struct session *session)
 {
-    static const char *const dates[] = {"from=", "to=", "due="};
-    const char *equals = strchr(term, '=');
-    if (equals && !equals[1]) {
-        fprintf(stderr, "gridleak: nothing stands behind '%s'\n", term);
-        return false;
-    }
-    for (size_t i = 0; i < sizeof dates / sizeof *dates; i++) {
-        size_t length = strlen(dates[i]);
-        const char *value = term + length;
-        if (strncmp(term, dates[i], length) != 0 || strspn(value, "0123456789-") == strlen(value))
-            continue;
-        fprintf(stderr, "gridleak: '%s' is no date: %s\n", value,
-                date_hint(&session->arena, value, strlen(value)));
-        return false;
+    for (int i = 0; i < session->operand_count; i++) {
+        const char *mistake = query_mistake(session->operands[i], &session->arena);
+        if (mistake) {
+            fprintf(stderr, "gridleak: %s\n", mistake);
+            return false;
+        }
     }
     return true;
+}
+
+static int show_hits(struct session *session, const struct columns *columns)
+{
+    struct buffer out = {0};
+    struct query_hits hits = query_run(columns, (const char *const *)session->operands,
+                                       (size_t)session->operand_count, &session->arena);
+    (session->options.json ? find_write_json : find_write)(columns, &hits, &out);
+    int answer = print(&out);
+    buffer_release(&out);
+    if (hits.unknown_key) {
+        fprintf(stderr, "gridleak: no fact is named '%s'; see gridleak find --help\n",
+                hits.unknown_key);
+        return EXIT_INPUT;
+    }
+    return answer == EXIT_DONE && hits.part_count + hits.job_count == 0 ? EXIT_NO : answer;
 }
 
 static int command_find(struct session *session)
 {
     const char *output = session->options.output ? session->options.output : "output";
-    for (int i = 0; i < session->operand_count; i++)
-        if (!pair_is_good(session, session->operands[i]))
-            return EXIT_INPUT;
+    if (!terms_are_good(session))
+        return EXIT_INPUT;
     struct columns columns = {0};
-    struct buffer out = {0};
     size_t damaged;
     int answer = EXIT_INPUT;
     enum file_status read = find_read(output, &columns, &damaged);
-    if (read == FILE_MISSING) {
+    if (read == FILE_OK) {
+        answer = show_hits(session, &columns);
+    } else if (read == FILE_MISSING) {
         fprintf(stderr, "gridleak: there is no '%s/summaries.jsonl': publish first\n", output);
-    } else if (read != FILE_OK) {
+    } else {
         fprintf(stderr, "gridleak: cannot read '%s/summaries.jsonl': %s\n", output,
                 file_status_text(read));
         answer = EXIT_SYSTEM;
-    } else {
-        struct query_hits hits = query_run(&columns, (const char *const *)session->operands,
-                                           (size_t)session->operand_count, &session->arena);
-        (session->options.json ? find_write_json : find_write)(&columns, &hits, &out);
-        answer = print(&out);
-        if (damaged)
-            fprintf(stderr,
-                    "gridleak: %zu lines of '%s/summaries.jsonl' are of another version or "
-                    "damaged: publish again\n",
-                    damaged, output);
-        if (hits.unknown_key) {
-            fprintf(stderr, "gridleak: no fact is named '%s'; see gridleak find --help\n",
-                    hits.unknown_key);
-            answer = EXIT_INPUT;
-        } else if (answer == EXIT_DONE && hits.part_count + hits.job_count == 0) {
-            answer = EXIT_NO;
-        }
     }
-    buffer_release(&out);
+    if (damaged)
+        fprintf(stderr,
+                "gridleak: %zu lines of '%s/summaries.jsonl' are of another version or damaged: "
+                "publish again\n",
+                damaged, output);
     columns_release(&columns);
     return answer;
 }
@@ -495,7 +476,7 @@ static void show_difference(const struct proof_difference *difference)
 static int command_prove(struct session *session)
 {
     const char *folder = session->operands[0];
-    if (!is_folder(folder)) {
+    if (!folder_exists(folder)) {
         fprintf(stderr, "gridleak: '%s' is no folder\n", folder);
         return EXIT_INPUT;
     }

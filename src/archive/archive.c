@@ -2,18 +2,9 @@
 
 #include <stdlib.h>
 #include <string.h>
-#include <sys/stat.h>
 #include <unistd.h>
 
-#ifndef GRIDLEAK_SHARE
-#define GRIDLEAK_SHARE "/usr/local/share/gridleak"
-#endif
-
-static bool is_folder(const char *path)
-{
-    struct stat about;
-    return stat(path, &about) == 0 && S_ISDIR(about.st_mode);
-}
+static const char usual_share[] = "/usr/local/share/gridleak";
 
 const char *archive_share_folder(struct arena *arena)
 {
@@ -27,11 +18,11 @@ const char *archive_share_folder(struct arena *arena)
         static const char *const beside[] = {"share/gridleak", "../share/gridleak"};
         for (size_t i = 0; i < sizeof beside / sizeof *beside; i++) {
             const char *folder = arena_print(arena, "%s/%s", program, beside[i]);
-            if (is_folder(folder))
+            if (folder_exists(folder))
                 return folder;
         }
     }
-    return is_folder(GRIDLEAK_SHARE) ? GRIDLEAK_SHARE : NULL;
+    return folder_exists(usual_share) ? usual_share : NULL;
 }
 
 const char *archive_folder_of(const char *job_path, struct arena *arena)

@@ -6,6 +6,7 @@
 #include "archive/setting.h"
 #include "archive/state.h"
 
+#include <assert.h>
 #include <pthread.h>
 #include <stdlib.h>
 #include <string.h>
@@ -160,10 +161,9 @@ static void *publish_jobs(void *context)
 
 static void run_threads(struct publish_work *work)
 {
-    enum { THREADS_MAX = 64 };
-    pthread_t threads[THREADS_MAX];
+    pthread_t threads[PUBLISH_THREADS_MAX];
     unsigned wanted = work->request->threads ? work->request->threads : 2;
-    wanted = wanted > THREADS_MAX ? THREADS_MAX : wanted;
+    assert(wanted <= PUBLISH_THREADS_MAX);
     unsigned started = 0;
     pthread_mutex_init(&work->mutex, NULL);
     while (started + 1 < wanted && started + 1 < work->count &&
@@ -330,6 +330,22 @@ static void clear_left_over(const char *output, struct arena *arena)
 {
     folder_clear_aside(output);
     folder_clear_aside(arena_print(arena, "%s/.gridleak", output));
+}
+
+enum output_kind publish_output_kind(const char *output, struct arena *arena, const char **folder)
+{
+    static const char *const swept[] = {"jobs", "models"};
+    *folder = output;
+    if (archive_is_at(output))
+        return OUTPUT_IS_ARCHIVE;
+    if (folder_exists(arena_print(arena, "%s/.gridleak", output)))
+        return OUTPUT_GOOD;
+    for (size_t i = 0; i < sizeof swept / sizeof *swept; i++) {
+        *folder = arena_print(arena, "%s/%s", output, swept[i]);
+        if (folder_exists(*folder))
+            return OUTPUT_IS_FOREIGN;
+    }
+    return OUTPUT_GOOD;
 }
 
 struct publish_result publish(const struct archive *archive, const struct publish_request *request,

@@ -1,10 +1,12 @@
 #include "archive/query.h"
 
 #include "archive/fold.h"
+#include "quantity/quantity.h"
 
 #include <math.h>
 #include <stdlib.h>
 #include <string.h>
+#include <strings.h>
 
 const enum job_column query_job_words[] = {
     JOB_NUMBER, JOB_MAKER,    JOB_MODEL,    JOB_CHASSIS,    JOB_SERIAL, JOB_DESCRIPTION, JOB_YEAR,
@@ -163,6 +165,29 @@ static size_t key_length(const char *term)
 {
     size_t length = strspn(term, "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ_");
     return term[length] == '=' ? length : 0;
+}
+
+/* Dates are compared as texts: 2031, 2031-02 and 2031-02-10 are good, 3/2/31 is not. */
+static bool takes_date(const char *key, size_t length)
+{
+    static const char *const keys[] = {"from", "to", "due"};
+    for (size_t i = 0; i < sizeof keys / sizeof *keys; i++)
+        if (strlen(keys[i]) == length && strncasecmp(key, keys[i], length) == 0)
+            return true;
+    return false;
+}
+
+const char *query_mistake(const char *term, struct arena *arena)
+{
+    size_t length = key_length(term);
+    if (!length)
+        return NULL;
+    const char *value = term + length + 1;
+    if (!*value)
+        return arena_print(arena, "nothing stands behind '%s'", term);
+    if (!takes_date(term, length) || strspn(value, "0123456789-") == strlen(value))
+        return NULL;
+    return arena_print(arena, "'%s' is no date: %s", value, date_hint(arena, value, strlen(value)));
 }
 
 static const char *folded_trimmed(const struct query_work *work, const char *text, size_t length)

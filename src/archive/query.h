@@ -23,6 +23,10 @@ struct query_hits {
     const char *unknown_key; /* a pair of no known name; nothing is found then. NULL: none */
 };
 
+/* What is wrong with a term, whatever the archive holds: a pair without a value, a date in another
+   form than year-month-day, which may be cut short. NULL: nothing. */
+const char *query_mistake(const char *term, struct arena *arena);
+
 /* terms: each a word, several words to be met together, or key=value. Result in the arena. */
 struct query_hits query_run(const struct columns *columns, const char *const *terms, size_t count,
                             struct arena *arena);

@@ -283,14 +283,18 @@ enum file_status file_create(const char *path, const void *data, size_t length)
     return release_writer(&writer);
 }
 
+bool folder_exists(const char *path)
+{
+    struct stat about;
+    return stat(path, &about) == 0 && S_ISDIR(about.st_mode);
+}
+
 enum file_status folder_make(const char *path)
 {
     if (mkdir(path, 0777) == 0)
         return FILE_OK;
-    if (errno == EEXIST) {
-        struct stat about;
-        return stat(path, &about) == 0 && S_ISDIR(about.st_mode) ? FILE_OK : FILE_NOT_REGULAR;
-    }
+    if (errno == EEXIST)
+        return folder_exists(path) ? FILE_OK : FILE_NOT_REGULAR;
     const char *slash = strrchr(path, '/');
     if (errno != ENOENT || !slash || slash == path)
         return file_status_of(errno);

@@ -62,6 +62,8 @@ enum file_status file_finish(struct file_writer *writer);
 enum file_status folder_flush(const char *path);
 enum file_status folder_flush_names(const char *path);
 
+bool folder_exists(const char *path);
+
 /* Make a folder and those above it; an existing one is fine. */
 enum file_status folder_make(const char *path);
 
