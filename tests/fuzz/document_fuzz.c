@@ -18,7 +18,7 @@
 #include "write/picture.h"
 #include "write/writer.h"
 
-#include <cJSON.h>
+#include <cjson/cJSON.h>
 
 enum { JOB_MAX = 1 << 20, COLUMNS = 80 };
 
