@@ -243,7 +243,8 @@ static size_t length_difference(const char *a, const char *b)
 const char *nearest_word(const char *word, const char *const *candidates)
 {
     const char *best = NULL;
-    size_t best_distance = LETTER * (strlen(word) / 3 + 2) - LETTER + 1; /* beyond: another word */
+    size_t most = LETTER * (strlen(word) / 3 + 1); /* beyond it is another word */
+    size_t best_distance = most + 1;
     for (; *candidates; candidates++) {
         if (!**candidates)
             continue;

@@ -330,8 +330,7 @@ const struct record safety_record = {
     .section = "safety",
     .text = "Keyed by what was measured: touch current, earth current, earth bond, insulation, "
             "residual, fuse, polarity, and where. The value, 'at' volts and time; 'second' for the "
-            "other polarity of the plug; "
-            "then words.",
+            "other polarity of the plug; then words.",
     .size = sizeof(struct safety_row),
     .read = safety_read,
     .example = "0.06 mA, second 0.05 mA",

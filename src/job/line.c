@@ -175,7 +175,7 @@ bool line_fail_quantity(struct line *line, struct span span, enum quantity_statu
                         const struct quantity_form *form)
 {
     const char *shown = line_quote(line, span), *text = line_written(line, span);
-    const char *hint = quantity_hint(line->arena, status, text, form), *written;
+    const char *hint = quantity_hint(line->arena, status, text, form);
     switch (status) {
     case QUANTITY_OK:
         break;
@@ -187,12 +187,14 @@ bool line_fail_quantity(struct line *line, struct span span, enum quantity_statu
         return line_fail(line, span, DIAGNOSTIC_QUANTITY_UNREADABLE, hint,
                          "cannot read '%s' as %s %s", shown, article(form->unit),
                          unit_name(form->unit));
-    case QUANTITY_NO_UNIT:
-        written = unit_behind_hint(line, span);
-        hint = written != NULL ? written : hint;
+    case QUANTITY_NO_UNIT: {
+        const char *with_unit = unit_behind_hint(line, span);
         return line_fail(line, span, DIAGNOSTIC_UNIT_MISSING,
-                         hint != NULL ? hint : "add the unit, as in 0.05 uF, 270 ohm, 400 V",
+                         with_unit != NULL ? with_unit
+                         : hint != NULL    ? hint
+                                           : "add the unit, as in 0.05 uF, 270 ohm, 400 V",
                          "'%s' has no unit", shown);
+    }
     case QUANTITY_WRONG_UNIT: {
         enum unit unit = unit_read(line, span);
         return line_fail(line, span, DIAGNOSTIC_UNIT_WRONG, hint, "'%s' is %s %s", shown,

@@ -159,6 +159,14 @@ static const char *after_spaces(const char *at, const char *end)
     return at;
 }
 
+/* As `quoted`, where a # is no comment: it stands inside the quotes meant. */
+static const char *quoted_whole(struct arena *arena, const struct cut_line *line)
+{
+    struct cut_line whole = *line;
+    whole.value_end = trimmed_end(line->value, line->end);
+    return quoted(arena, &whole);
+}
+
 /* A value whose first character means something to YAML. */
 static bool bites_at_start(struct arena *arena, const struct cut_line *line, struct bite *bite)
 {
@@ -170,11 +178,7 @@ static bool bites_at_start(struct arena *arena, const struct cut_line *line, str
         if (!quote_is_broken(line))
             return false;
         bite->text = arena_print(arena, "a value that begins with %c must end with it", first);
-        {
-            struct cut_line whole = *line; /* a # inside the quotes is no comment */
-            whole.value_end = trimmed_end(line->value, line->end);
-            bite->hint = quoted(arena, &whole);
-        }
+        bite->hint = quoted_whole(arena, line);
         return true;
     case '>':
         bite->text = "a value cannot begin with '>'";

@@ -46,12 +46,10 @@ static const char *close_gaps(char *text, bool keep_lines)
 /* A copy in small letters, NULL when not all is ASCII. */
 static char *fold_ascii(struct arena *arena, const char *text)
 {
-    size_t length = 0;
-    while (text[length] > 0)
-        length++;
-    if (text[length] != '\0')
-        return NULL;
-    char *copy = arena_text(arena, text, length);
+    for (const char *at = text; *at; at++)
+        if ((unsigned char)*at >= 0x80)
+            return NULL;
+    char *copy = arena_copy(arena, text);
     for (char *at = copy; *at; at++)
         if (*at >= 'A' && *at <= 'Z')
             *at = (char)(*at - 'A' + 'a');

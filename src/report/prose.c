@@ -124,7 +124,10 @@ static void warn(struct composition *composition, const struct source *source, s
     else
         diagnostic_add(
             list, source, at, code,
-            "links begin with http:, https:, mailto: or tel:, and have 2048 bytes at most",
+            arena_print(
+                composition->arena,
+                "links begin with http:, https:, mailto: or tel:, and have %d bytes at most",
+                LINK_BYTES_MAX),
             "a link is left out of the record, its words are kept");
 }
 
