@@ -1,8 +1,9 @@
 #include "write/picture.h"
-#include "base/memory.h"
 
+#include "base/memory.h"
 #include "write/picture_pixels.h"
 
+#include <assert.h>
 #include <png.h>
 #include <stdbool.h>
 #include <string.h>
@@ -68,6 +69,7 @@ enum picture_status png_decode(const unsigned char *file, size_t length,
                            .height_px = image.height,
                            .components = colour ? 3 : 1};
     size_t size = (size_t)image.width * image.height * read.components;
+    assert(size > 0); /* libpng refuses a picture without pixels */
     buffer_reserve(&read.data, size);
     read.data.length = size;
     const png_color white = {255, 255, 255};
@@ -156,6 +158,7 @@ void pixels_turn(struct picture *pixels, enum orientation orientation)
     size_t turned_width = swapped ? height : width;
     size_t turned_height = swapped ? width : height;
     struct buffer turned = {0};
+    assert(pixels->data.length > 0);
     buffer_reserve(&turned, pixels->data.length);
     for (size_t y = 0; y < turned_height; y++) {
         for (size_t x = 0; x < turned_width; x++) {
