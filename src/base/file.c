@@ -21,8 +21,9 @@ enum file_status file_status_of(int error)
         return FILE_MISSING;
     case EACCES:
     case EPERM:
-    case EROFS:
         return FILE_FORBIDDEN;
+    case EROFS:
+        return FILE_DISK_READ_ONLY;
     case ENOSPC:
     case EDQUOT:
         return FILE_DISK_FULL;
@@ -48,6 +49,8 @@ const char *file_status_text(enum file_status status)
         return "too large";
     case FILE_DISK_FULL:
         return "the disk is full";
+    case FILE_DISK_READ_ONLY:
+        return "the disk is read-only";
     case FILE_EXISTS:
         return "it is there already";
     case FILE_FAILED:

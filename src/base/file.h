@@ -20,6 +20,7 @@ enum file_status {
     FILE_NOT_REGULAR, /* a folder, a device */
     FILE_LARGE,       /* more than the limit */
     FILE_DISK_FULL,
+    FILE_DISK_READ_ONLY,
     FILE_EXISTS, /* and must not be written over */
     FILE_FAILED  /* any other; errno says why */
 };

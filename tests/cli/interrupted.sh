@@ -97,7 +97,7 @@ if mount -t tmpfs -o size=20m tmpfs disk 2>/dev/null; then
     expect 0 "$program" publish old -q -o disk/out
     mount -o remount,ro disk
     expect 3 "$program" publish new -o disk/out
-    tells "cannot write 'disk/out/*.*': not permitted"
+    tells "cannot write 'disk/out/*.*': the disk is read-only"
     whole disk/out "read-only"
     umount disk
     echo "full disk and read-only: on a tmpfs"
