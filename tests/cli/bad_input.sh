@@ -179,5 +179,10 @@ jq -r '.job as $j | .capacitors[] | select(.rated_v != null and .sheet_voltage_v
 [ "$(jq '[.capacitors[] | select(.sheet_voltage_v != null)] | length' plan.json | awk '{ n += $1 } END { print n }')" -gt 300 ] ||
     say_failed "too few planned voltages to say anything"
 [ ! -s above ] || say_failed "the sheet plans above the marked volts: $(head -n 3 above)"
+jq -r '(.capacitors | map({(.ref): .rated_v}) | add) as $rated | .bench.reform_plans[] |
+    "\(.ref) \($rated[.ref]) \(.step_v | max)"' plan.json >steps
+awk '$3 > $2 * 1.0000001' steps >above
+[ "$(wc -l <steps)" -gt 100 ] || say_failed "too few reforms are planned to say anything: $(wc -l <steps)"
+[ ! -s above ] || say_failed "a reform is planned above the marked volts: $(head -n 3 above)"
 
 finish
