@@ -82,7 +82,7 @@ async function lookAtPages(browser) {
   page.on('pageerror', (error) => say(file, null, `script: ${error.message}`));
   let turn = 0;
   for (file of pages.filter((name) => path.basename(name) !== 'hostile.html')) {
-    const all = file.startsWith(work) || pages.length <= MANY;
+    const all = file.startsWith(work + path.sep) || pages.length <= MANY;
     for (const view of all ? views : [views[turn++ % views.length]]) await lookAt(page, file, view);
     await page.setViewportSize({ width: REFLOW, height: 900 });
     for (const fault of await page.evaluate(faults)) say(file, { width: REFLOW }, fault);

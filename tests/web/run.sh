@@ -1,6 +1,7 @@
 #!/bin/sh
 # run.sh BUILD [FOLDER...]: pages looked at by programs that share no code with ours. The sample
-# pages of the writers' tests, and every .html below the folders given:
+# pages of the writers' tests, every page of the example archive as published, and every .html below
+# the folders given:
 # the Nu checker (HTML, CSS, SVG), then Chromium with axe-core, at phone and desk width, light and
 # dark, and on paper (look.js).
 set -eu
@@ -9,7 +10,8 @@ shift
 here=$(cd "$(dirname "$0")" && pwd)
 root=$(cd "$here/../.." && pwd)
 work=$build/tests/web
-rm -rf "$work"
+published=$build/tests/web-published
+rm -rf "$work" "$published"
 mkdir -p "$work/pictures"
 
 # Installed once for each state of the lock file.
@@ -24,8 +26,13 @@ for number in 01 02 03; do
     cp "$here/grey.png" "$work/pictures/$number.jpg"
 done
 
+make -s -C "$root" BUILD="$build" all >&2
+"$build/gridleak" publish -q "$root/jobs-example" -o "$published" 2>"$work/publish.log" || {
+    cat "$work/publish.log"
+    exit 1
+}
 pages=$work/pages.list
-find "$work" "$@" -name '*.html' -type f | LC_ALL=C sort >"$pages"
+find "$work" "$published" "$@" -name '*.html' -type f | LC_ALL=C sort >"$pages"
 tr '\n' '\0' <"$pages" | xargs -0 java -jar "$here/node_modules/vnu-jar/build/dist/vnu.jar" --errors-only
 echo "$(wc -l <"$pages") pages are valid HTML"
 find "$work" -maxdepth 1 -name '*.svg' -type f | LC_ALL=C sort | tr '\n' '\0' |
