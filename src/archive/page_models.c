@@ -3,6 +3,7 @@
 
 #include "archive/fold.h"
 #include "base/memory.h"
+#include "report/typography.h"
 
 #include <stdlib.h>
 #include <string.h>
@@ -167,7 +168,8 @@ static struct mustache_value *part_rows(struct model_work *work)
         const struct part_line *line = &work->lines[i];
         struct mustache_value *row = mustache_map(arena);
         mustache_set_text(arena, row, "ref", entry_text(&parts[PART_REF], line->ref));
-        mustache_set_text(arena, row, "marked", entry_text(&parts[PART_MARKED], line->marked));
+        mustache_set_text(arena, row, "marked",
+                          text_typeset(arena, entry_text(&parts[PART_MARKED], line->marked)));
         mustache_set_text(arena, row, "place",
                           entry_phrase(work, "place", &parts[PART_PLACE], line->place));
         mustache_set_text(arena, row, "type",

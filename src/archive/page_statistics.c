@@ -1,6 +1,7 @@
 /* statistics.html, and the same numbers as CSV beside it. */
 #include "archive/page_frame.h"
 #include "archive/statistics.h"
+#include "report/typography.h"
 
 #include <math.h>
 #include <string.h>
@@ -352,8 +353,9 @@ static struct mustache_value *batch_row(const struct statistics_work *work,
     }
     mustache_set_text(arena, row, "batch", batch->batch);
     mustache_set_text(arena, row, "query", batch_query(work, batch->batch));
-    mustache_set_text(arena, row, "fitted",
-                      column_text(&columns->parts[PART_FITTED], batch->parts[0]));
+    mustache_set_text(
+        arena, row, "fitted",
+        text_typeset(arena, column_text(&columns->parts[PART_FITTED], batch->parts[0])));
     mustache_set_text(arena, row, "parts", number_text(work, (double)batch->count));
     mustache_set_text(arena, row, "sets", number_text(work, (double)batch->sets));
     mustache_set(arena, row, "jobs", jobs);

@@ -198,6 +198,11 @@ static const struct step *step_for_zero(enum unit unit)
     return step;
 }
 
+static const struct step *step_of(double value, enum unit unit, unsigned digits)
+{
+    return value == 0 ? step_for_zero(unit) : step_for(fmin(fabs(value), 1e18), unit, digits);
+}
+
 struct figures figures_of(struct arena *arena, double value, enum unit unit, unsigned digits)
 {
     assert(!isnan(value) && unit < UNIT_COUNT);
@@ -205,7 +210,7 @@ struct figures figures_of(struct arena *arena, double value, enum unit unit, uns
     if (unit == UNIT_TIME && digits < 2)
         digits = 2; /* one figure would make 2 min of 90 s */
     double size = fmin(fabs(value), 1e18);
-    const struct step *step = size == 0 ? step_for_zero(unit) : step_for(size, unit, digits);
+    const struct step *step = step_of(value, unit, digits);
     double scaled = rounded_to(size / step->scale, digits);
     if (unit == UNIT_POWER && digits == 1 && step->scale == 1 && scaled == 0.5)
         return (struct figures){
@@ -238,4 +243,18 @@ const char *quantity_text(struct arena *arena, double value, enum unit unit, uns
 {
     struct figures figures = figures_of(arena, value, unit, digits);
     return figures_text(arena, &figures);
+}
+
+const char *uncertain_text(struct arena *arena, double value, double uncertainty, enum unit unit,
+                           unsigned digits)
+{
+    enum { UNCERTAINTY_DIGITS = 2 };
+    struct figures figures = figures_of(arena, value, unit, digits);
+    const struct step *step = step_of(value, unit, digits);
+    double scaled = rounded_to(fmin(uncertainty, 1e18) / step->scale, UNCERTAINTY_DIGITS);
+    struct figures spread =
+        figures_scaled(arena, scaled, 1, step->text,
+                       scaled == 0 ? 0 : decimals_for(scaled, 1, UNCERTAINTY_DIGITS));
+    return arena_print(arena, "%s ± %s", figures_text(arena, &figures),
+                       figures_text(arena, &spread));
 }

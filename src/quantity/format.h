@@ -41,4 +41,9 @@ unsigned decimals_for(double value, double scale, unsigned digits);
 const char *figures_text(struct arena *arena, const struct figures *figures);
 const char *quantity_text(struct arena *arena, double value, enum unit unit, unsigned digits);
 
+/* "0.5576 mW ± 0.049 mW": the value to `digits` figures, its expanded uncertainty, at least 0, to
+   two and in the value's prefix. */
+const char *uncertain_text(struct arena *arena, double value, double uncertainty, enum unit unit,
+                           unsigned digits);
+
 #endif

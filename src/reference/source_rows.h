@@ -9,7 +9,7 @@ SOURCE(JAN_C_62, TRUST_SECOND_HAND, "jan-c-62",
 SOURCE(TWENTY_TIMES, TRUST_COMMON_PRACTICE, "twenty-times",
        "a bypass leaks less than a twentieth of the current of what it bridges")
 SOURCE(VALVE_RATING, TRUST_SECOND_HAND, "valve-rating",
-       "the maker's maximum rating, from the book's row or the row in the job")
+       "the maker’s maximum rating, from the book’s row or the row in the job")
 SOURCE(MARKED_RATING, TRUST_SEEN, "marked-rating", "the rating marked on the part")
 SOURCE(MARKED_TOLERANCE, TRUST_SEEN, "marked-tolerance", "the tolerance marked on the part")
 SOURCE(ELECTROLYTIC_TOLERANCE, TRUST_COMMON_PRACTICE, "electrolytic-tolerance",
@@ -25,22 +25,22 @@ SOURCE(TOUCH_CURRENT, TRUST_SECOND_HAND, "en-50699",
 SOURCE(OIL_PAPER_TEMPERATURE, TRUST_SEEN, "oil-paper-temperature",
        "insulation correction table of oil-filled transformers, 0 to 75 °C")
 SOURCE(FILM_TEMPERATURE, TRUST_RECALLED, "film-temperature",
-       "makers' general data of film capacitors, insulation against temperature, 20 to 35 °C")
+       "makers’ general data of film capacitors, insulation against temperature, 20 to 35 °C")
 SOURCE(ELECTROLYTIC_TEMPERATURE, TRUST_SECOND_HAND, "electrolytic-temperature",
        "leakage of aluminium electrolytics rises 2 to 3 times from 20 °C to 60 °C")
 SOURCE(DEFAULT_TEMPERATURE, TRUST_RECALLED, "default-temperature",
-       "taken as paper: a doubling in 10 K, labelled default")
+       "where no figure is known, as for paper: a doubling in 10 K")
 SOURCE(VISHAY_038, TRUST_SEEN, "vishay-038",
        "Vishay BCcomponents 038 RSU data sheet, document 28309, 2005")
 SOURCE(LARGE_CAN_SHEETS, TRUST_SECOND_HAND, "large-can-sheets",
-       "makers' sheets of large can electrolytics, 3 √(CV) after 5 min (root sign recalled)")
+       "makers’ sheets of large can electrolytics, 3 √(CV) after 5 min (root sign recalled)")
 SOURCE(IEC_60063, TRUST_SEEN, "iec-60063", "IEC 60063, preferred number series")
 SOURCE(IEC_60063_E3, TRUST_RECALLED, "iec-60063-e3", "IEC 60063, series E3")
-SOURCE(VALVE_BOOK, TRUST_SECOND_HAND, "valve-book", "makers' manuals, as named beside the row")
+SOURCE(VALVE_BOOK, TRUST_SECOND_HAND, "valve-book", "makers’ manuals, as named beside the row")
 SOURCE(GRID_CURRENT_LAW, TRUST_RECALLED, "grid-current-law",
-       "grid current 15 µA × exp(Vgk/0.23 V), labelled default")
+       "grid current 15 µA × exp(Vgk/0.23 V), a default")
 SOURCE(THREE_HALVES_LAW, TRUST_DERIVED, "three-halves-law",
-       "three-halves-power law pinned to one row of a maker's manual")
+       "three-halves-power law pinned to one row of a maker’s manual")
 SOURCE(CURIE_VON_SCHWEIDLER, TRUST_SEEN, "curie-von-schweidler",
        "Curie - von Schweidler law of absorption with conduction")
 SOURCE(JOB, TRUST_SEEN, "job", "given in the job for this place")
@@ -66,13 +66,15 @@ SOURCE(RESIDUAL_PLUG, TRUST_SECOND_HAND, "iec-60335-residual",
 SOURCE(RESIDUAL_INSIDE, TRUST_SECOND_HAND, "iec-60204-residual",
        "IEC 60204-1: 60 V or less 5 s after switching off")
 SOURCE(COPPER, TRUST_RECALLED, "copper", "copper, 0.393 % per kelvin at 20 °C")
-SOURCE(RIPPLE, TRUST_DERIVED, "ripple",
-       "first harmonic of the reservoir's sawtooth, an upper figure; V = I/(fC) beside it")
+SOURCE(
+    RIPPLE, TRUST_DERIVED, "ripple",
+    "first harmonic of the reservoir’s sawtooth, an upper figure; beside it the textbook’s I/(fC)")
 SOURCE(METER_LOADING, TRUST_SEEN, "meter-loading",
        "Helfrick and Cooper, voltmeter loading, example 4-5")
 SOURCE(RESISTOR_TOLERANCE, TRUST_COMMON_PRACTICE, "resistor-tolerance",
        "20 % where a resistor bears no tolerance")
-SOURCE(WINDING_TOLERANCE, TRUST_POLICY, "winding-tolerance", "shop policy for windings")
+SOURCE(WINDING_TOLERANCE, TRUST_POLICY, "winding-tolerance",
+       "the tolerance of windings that bear none")
 SOURCE(NO_LOAD, TRUST_DERIVED, "no-load",
        "peak of the secondary with the mains a tenth high and nothing drawn")
 SOURCE(REFORM_REST, TRUST_SEEN, "eia-815",

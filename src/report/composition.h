@@ -82,6 +82,9 @@ struct figures figures_plain(const struct composition *composition, double value
                              unsigned decimals);
 struct figures figures_unit(const struct composition *composition, double value, enum unit unit,
                             unsigned digits);
+/* "0.5576 mW ± 0.049 mW"; without the uncertainty when that is not finite; NULL: no value. */
+const char *text_uncertain(const struct composition *composition, double value, double uncertainty,
+                           enum unit unit, unsigned digits);
 const char *text_unit(const struct composition *composition, double value, enum unit unit,
                       unsigned digits);
 /* The same for values that were set, not measured: 50 V and 45 °C without idle zeros. */
@@ -107,7 +110,7 @@ const char *text_marking(const struct composition *composition, const struct mar
 /* Words joined with ", " and the like, NULL and "" left out. */
 const char *text_join(struct arena *arena, const char *separator, const char *const *texts,
                       size_t count);
-/* A sentence of a text as typed: its first letter; its full stop. NULL stays NULL. */
+/* A sentence of a text as typed: its first letter and its signs; its full stop. NULL stays NULL. */
 const char *text_sentence(struct arena *arena, const char *text);
 const char *text_stopped(struct arena *arena, const char *text);
 /* Refs one after the other get commas between them: "C7, C14". NULL stays. */

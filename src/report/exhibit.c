@@ -1,4 +1,5 @@
 #include "report/composition.h"
+#include "report/typography.h"
 
 #include "job/part.h"
 
@@ -165,10 +166,23 @@ void table_drop_empty(struct table_builder *builder)
         table->columns[i].width_percent *= before / after;
 }
 
+static void typeset_table(struct arena *arena, struct table *table)
+{
+    for (size_t i = 0; i < table->row_count; i++)
+        for (size_t j = 0; j < table->column_count; j++) {
+            struct cell *cell = &table->rows[i].cells[j];
+            cell->text = text_typeset(arena, cell->text);
+            cell->second = text_typeset(arena, cell->second);
+        }
+    for (size_t i = 0; i < table->note_count; i++)
+        table->notes[i] = text_typeset(arena, table->notes[i]);
+}
+
 void table_place(struct table_builder *builder, enum numbered kind, const char *caption)
 {
     if (builder->table->row_count == 0)
         return;
+    typeset_table(builder->composition->arena, builder->table);
     builder->table->caption = caption;
     builder->exhibit->number = exhibit_number(builder->composition, kind);
     exhibit_place(builder->composition, builder->exhibit);
@@ -230,6 +244,15 @@ const char *text_unit(const struct composition *composition, double value, enum 
                       unsigned digits)
 {
     return text_set(composition->arena, value, unit, digits);
+}
+
+const char *text_uncertain(const struct composition *composition, double value, double uncertainty,
+                           enum unit unit, unsigned digits)
+{
+    if (!isfinite(value) || !isfinite(uncertainty))
+        return text_unit(composition, value, unit, digits);
+    return uncertain_text(composition->arena, value, uncertainty, unit,
+                          digits_needed(value, digits));
 }
 
 const char *text_micro(struct arena *arena, double ampere, unsigned digits)
@@ -303,7 +326,7 @@ const char *text_join(struct arena *arena, const char *separator, const char *co
 
 const char *text_sentence(struct arena *arena, const char *text)
 {
-    char *copy = arena_copy(arena, text);
+    char *copy = arena_copy(arena, text_typeset(arena, text));
     if (copy && copy[0] >= 'a' && copy[0] <= 'z')
         copy[0] = (char)(copy[0] - 'a' + 'A');
     return copy;

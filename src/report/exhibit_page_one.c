@@ -1,5 +1,6 @@
 /* Page 1: who, what, when, and the headline "kept original parts: n of m". */
 #include "report/composition.h"
+#include "report/typography.h"
 
 #include <string.h>
 
@@ -102,7 +103,8 @@ static void add_fact(const struct composition *composition, struct fact_list *li
                      const char *text)
 {
     if (text && *text)
-        list->items[list->count++] = (struct fact){phrase_in(&composition->say, "fact", key), text};
+        list->items[list->count++] = (struct fact){phrase_in(&composition->say, "fact", key),
+                                                   text_typeset(composition->arena, text)};
 }
 
 static const char *set_text(const struct composition *composition)

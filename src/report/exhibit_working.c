@@ -3,6 +3,7 @@
  * its numbers, what comes out, where it is from.
  */
 #include "report/held_words.h"
+#include "report/typography.h"
 
 #include "job/part.h"
 
@@ -18,13 +19,14 @@ struct sheet_of_working {
 static void add(struct sheet_of_working *sheet, const char *key, const char *formula,
                 const char *value, const char *source)
 {
+    struct arena *arena = sheet->composition->arena;
     if (sheet->working->line_count == LINES_MAX)
         return;
     sheet->working->lines[sheet->working->line_count++] =
         (struct working_line){.name = phrase_in(&sheet->composition->say, "working", key),
-                              .formula = formula ? formula : "",
+                              .formula = formula ? text_typeset(arena, formula) : "",
                               .value = value ? value : "",
-                              .source = source ? source : ""};
+                              .source = source ? text_typeset(arena, source) : ""};
 }
 
 /* ---- numbers; formulas are written with the signs of the trade */
@@ -43,6 +45,13 @@ static const char *plain(const struct sheet_of_working *sheet, double value, uns
 {
     return isfinite(value) ? quantity_text(sheet->composition->arena, value, UNIT_NONE, digits)
                            : NULL;
+}
+
+/* "0.5576 mW ± 0.049 mW"; the uncertainty is left out where it is none. */
+static const char *uncertain(const struct sheet_of_working *sheet, double value, double uncertainty,
+                             enum unit unit)
+{
+    return text_uncertain(sheet->composition, value, uncertainty, unit, 4);
 }
 
 #define FORMULA(sheet, ...) arena_print((sheet)->composition->arena, __VA_ARGS__)
@@ -125,7 +134,8 @@ static void add_scaling(struct sheet_of_working *sheet, const struct capacitor_f
                     figure(sheet, part->working_c, UNIT_TEMPERATURE),
                     figure(sheet, found->temperature_c, UNIT_TEMPERATURE),
                     plain(sheet, part->theta_k, 3), plain(sheet, part->temperature_factor, 3)),
-            FORMULA(sheet, "%s ± %s", amps(sheet, found->warm_a), amps(sheet, part->uncertainty_a)),
+            FORMULA(sheet, "%s ± %s", amps(sheet, found->warm_a),
+                    text_micro(sheet->composition->arena, part->uncertainty_a, 2)),
             source(sheet, part->theta_source));
     if (given->conductance_s > 0)
         add(sheet, "leak", FORMULA(sheet, "R_L = V_service / I_warm"),
@@ -236,11 +246,21 @@ static const char *formula_of(enum criterion_key key)
     return "";
 }
 
-static const char *criterion_value(const struct sheet_of_working *sheet,
-                                   const struct criterion *criterion, double value)
+static const char *criterion_limit(const struct sheet_of_working *sheet,
+                                   const struct criterion *criterion)
 {
-    return criterion->unit == UNIT_CURRENT ? amps(sheet, value)
-                                           : figure(sheet, value, criterion->unit);
+    return criterion->unit == UNIT_CURRENT ? amps(sheet, criterion->limit)
+                                           : figure(sheet, criterion->limit, criterion->unit);
+}
+
+static const char *criterion_figure(const struct sheet_of_working *sheet,
+                                    const struct criterion *criterion)
+{
+    if (criterion->unit != UNIT_CURRENT)
+        return uncertain(sheet, criterion->value, criterion->uncertainty, criterion->unit);
+    const char *current = amps(sheet, criterion->value);
+    const char *spread = text_micro(sheet->composition->arena, criterion->uncertainty, 2);
+    return current && spread ? FORMULA(sheet, "%s ± %s", current, spread) : current;
 }
 
 /* A reservoir's heat has a part that no leak makes. */
@@ -260,9 +280,8 @@ static void add_criteria(struct sheet_of_working *sheet, const struct capacitor_
     struct composition *composition = sheet->composition;
     for (size_t i = 0; i < part->criterion_count; i++) {
         const struct criterion *criterion = &part->criteria[i];
-        const char *value = criterion_value(sheet, criterion, criterion->value);
-        const char *limit = criterion_value(sheet, criterion, criterion->limit);
-        const char *u = criterion_value(sheet, criterion, criterion->uncertainty);
+        const char *limit = criterion_limit(sheet, criterion);
+        const char *value = criterion_figure(sheet, criterion);
         const char *name =
             phrase_in(&composition->say, "criterion", criterion_key_text(criterion->key));
         const char *parts[] = {
@@ -273,8 +292,7 @@ static void add_criteria(struct sheet_of_working *sheet, const struct capacitor_
             limit ? FORMULA(sheet, "%s %s", criterion->upper ? "≤" : "≥", limit) : NULL,
         };
         add(sheet, "criterion", text_join(composition->arena, ", ", parts, 5),
-            FORMULA(sheet, "%s%s%s; %s", value ? value : "", value && u ? " ± " : "",
-                    value && u ? u : "",
+            FORMULA(sheet, "%s; %s", value ? value : "",
                     phrase_in(&composition->say, "outcome", outcome_text(criterion->outcome))),
             criterion->source == SOURCE_POLICY ? say(sheet, "policy")
                                                : source(sheet, criterion->source));
@@ -286,11 +304,11 @@ static void add_limit(struct sheet_of_working *sheet, const struct capacitor_fin
     if (!isfinite(part->limit_a))
         return;
     add(sheet, "limit_warm",
-        part->ageing_margin > 1 ? FORMULA(sheet, "%s, / %s", say(sheet, "largest_leak"),
+        part->ageing_margin > 1 ? FORMULA(sheet, "%s, ÷ %s", say(sheet, "largest_leak"),
                                           plain(sheet, part->ageing_margin, 2))
                                 : say(sheet, part->limit_is_heat ? "largest_heat" : "largest_leak"),
         amps(sheet, part->limit_a), NULL);
-    add(sheet, "limit_bench", FORMULA(sheet, "/ %s", plain(sheet, part->temperature_factor, 3)),
+    add(sheet, "limit_bench", FORMULA(sheet, "÷ %s", plain(sheet, part->temperature_factor, 3)),
         amps(sheet, part->bench_limit_a), NULL);
     if (isfinite(part->test_limit_a))
         add(sheet, "limit_test",
@@ -328,8 +346,7 @@ static void held_line(struct sheet_of_working *sheet, const char *key, const cha
     add(sheet, key,
         FORMULA(sheet, "%s%s%s", formula ? formula : "", formula && limits ? "; " : "",
                 limits ? limits : ""),
-        FORMULA(sheet, "%s ± %s%s%s", figure(sheet, held->value, held->unit),
-                figure(sheet, isfinite(held->uncertainty) ? held->uncertainty : 0, held->unit),
+        FORMULA(sheet, "%s%s%s", uncertain(sheet, held->value, held->uncertainty, held->unit),
                 words ? "; " : "", words ? words : ""),
         held->source == SOURCE_POLICY ? say(sheet, "policy") : source(sheet, held->source));
 }

@@ -1,5 +1,6 @@
 #include "report/prose.h"
 #include "report/tree_memory.h"
+#include "report/typography.h"
 
 #include "base/memory.h"
 
@@ -131,6 +132,22 @@ static void warn(struct composition *composition, const struct source *source, s
             "a link is left out of the record, its words are kept");
 }
 
+static bool is_text(cmark_node *node)
+{
+    return cmark_node_get_type(node) == CMARK_NODE_TEXT;
+}
+
+static void typeset(struct arena *arena, cmark_node *tree)
+{
+    struct node_list list = nodes_where(arena, tree, is_text);
+    for (size_t i = 0; i < list.count; i++) {
+        const char *text = cmark_node_get_literal(list.items[i]);
+        const char *set = text_typeset(arena, text);
+        if (set != text && !cmark_node_set_literal(list.items[i], set))
+            memory_exhausted();
+    }
+}
+
 void prose_clean(struct composition *composition, cmark_node *tree, const struct source *source,
                  struct position at)
 {
@@ -145,6 +162,7 @@ void prose_clean(struct composition *composition, cmark_node *tree, const struct
     }
     if (list.count)
         cmark_consolidate_text_nodes(tree);
+    typeset(composition->arena, tree);
 }
 
 static bool is_heading(cmark_node *node)

@@ -7,7 +7,8 @@
 #include "report/composition.h"
 
 /* Parse text by itself and append its blocks to root: its headings lowered below `level`, raw
-   HTML, pictures and links other than http, https, mailto and tel taken out with a warning. */
+   HTML, pictures and links other than http, https, mailto and tel taken out with a warning, the
+   signs of print put in. */
 void prose_graft(struct composition *composition, cmark_node *root, const struct prose *prose,
                  int level);
 

@@ -347,7 +347,7 @@ for opener in openers:
                 fail(name, repr(opener[:30]), f"{tag}: {ours} instead of {plain}")
         check_links(name, page, ("http://one.example", "http://two.example"))
         for line in wanted.get(name.replace(".html", ".md"), []):
-            start = re.sub(r"[\\*]", "", line[4:])[:40]
+            start = re.sub(r"[\\*]", "", line[4:]).replace("\xa0", " ")[:40]
             if start not in page.words():
                 fail(name, repr(opener[:30]), "hides the caution", start)
     text = pdf_text("jobs/hostile/shop.pdf")

@@ -86,6 +86,19 @@ static void texts(void **state)
     arena_release(&arena);
 }
 
+static void uncertainty_stands_in_the_unit_of_its_value(void **state)
+{
+    (void)state;
+    struct arena arena = {0};
+    assert_string_equal(uncertain_text(&arena, 0.55764e-3, 49.23e-6, UNIT_POWER, 4),
+                        "0.5576" NB "mW ± 0.049" NB "mW");
+    assert_string_equal(uncertain_text(&arena, 164900, 370400, UNIT_NONE, 4),
+                        "164" THIN "900 ± 370" THIN "000");
+    assert_string_equal(uncertain_text(&arena, -4.4, 0, UNIT_PERCENT, 2),
+                        MINUS "4.4" NB "% ± 0" NB "%");
+    arena_release(&arena);
+}
+
 static void fixed_places(void **state)
 {
     (void)state;
@@ -208,6 +221,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(texts),
+        cmocka_unit_test(uncertainty_stands_in_the_unit_of_its_value),
         cmocka_unit_test(fixed_places),
         cmocka_unit_test(places),
         cmocka_unit_test(texts_read_back),

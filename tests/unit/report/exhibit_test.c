@@ -147,7 +147,7 @@ static void test_leakage_notes(void **state)
     cell = row_of(table, "C20")->cells;
     assert_string_equal(note_of(table, cell, 2),
                         "Against the rule named JAN-C-62, 1100\u00A0µA. Other rules for "
-                        "16\u00A0µF 450\u00A0V: 25\u00A0µA (0.002 CV + 3 µA).");
+                        "16\u00A0µF 450\u00A0V: 25\u00A0µA (0.002 CV + 3\u00A0µA).");
     close_record(&opened);
 }
 
