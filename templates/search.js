@@ -433,7 +433,7 @@
       cell("p2 k-set", setName(job)) +
       cell("p2", parts.type.text(part) || parts.kind.text(part)) +
       /* a number stays with its unit */
-      cell("p2", parts.marked.text(part).replace(/(\d) (?=\S)/g, "$1\u00a0")) +
+      cell("p2", parts.marked.text(part).replace(/u(?=F\b)/g, "\u00b5").replace(/(\d) (?=\S)/g, "$1\u00a0")) +
       cell("p2", parts.place.text(part)) +
       cell("n p1 k-leakage", number(parts.leakage.text(part)), "leakage") +
       cell("n p1 k-limit", number(parts.limit.text(part)), "limit") +
@@ -492,7 +492,7 @@
       return "No fact is named " + found.unknown.map(function (term) { return term.key; }).join(", ") + ".";
     if (!query) return several(jobCount, "set", "sets") + ", " + several(partCount, "part", "parts") + ".";
     var sets = several(found.jobs.count, "set", "sets");
-    if (!found.jobs.count) return "Nothing is found among " + several(jobCount, "set", "sets") + ".";
+    if (!found.jobs.count) return "Nothing was found among " + several(jobCount, "set", "sets") + ".";
     return (found.parts.count ? several(found.parts.count, "part", "parts") + " in " + sets : sets) +
       ", of " + count(jobCount) + ".";
   }

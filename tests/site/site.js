@@ -93,7 +93,7 @@ async function searches(browser) {
     same((await heads(page, 'sets')).sort(), jobs, `sets of ${query.join(' ')}`);
     const status = await page.textContent('#status');
     const says = query[0] === 'made=up' ? 'No fact is named made.'
-      : !jobs.length ? 'Nothing is found among ' : parts.length ? `${parts.length} part${parts.length === 1 ? '' : 's'} in ` : `${jobs.length} set`;
+      : !jobs.length ? 'Nothing was found among ' : parts.length ? `${parts.length} part${parts.length === 1 ? '' : 's'} in ` : `${jobs.length} set`;
     check(status.startsWith(says), `status of ${query.join(' ')}: ${status}`);
     check((await page.isVisible('#parts-found')) === parts.length > 0, `parts shown for ${query.join(' ')}`);
   }
@@ -115,7 +115,7 @@ async function letterByLetter(browser) {
     const parts = hits.filter((hit) => hit.hit === 'part').map((hit) => `${hit.set.job} ${hit.ref}`);
     const jobs = [...new Set(hits.map((hit) => (hit.hit === 'part' ? hit.set.job : hit.job)))];
     const status = (await page.textContent('#status')).replace(/\u2009/g, '');
-    const says = !jobs.length ? `Nothing is found among ${sets} sets.`
+    const says = !jobs.length ? `Nothing was found among ${sets} sets.`
       : `${parts.length ? `${parts.length} part${parts.length === 1 ? '' : 's'} in ` : ''}${jobs.length} set${jobs.length === 1 ? '' : 's'}, of ${sets}.`;
     same(status, says, `letter by letter, ${text}`);
     same(await heads(page, 'parts'), parts.slice(-200).reverse(), `parts, latest job first, ${text}`);
