@@ -89,7 +89,9 @@ static const struct command_row command_rows[] = {
     {"prove", "FOLDER", "has anything in a copy been changed?",
      "Holds every file against manifest.sha256, looks for files added or lost, checks the\n"
      "record's fingerprint and, inside the archive, the chain of seals.txt. `sha256sum -c\n"
-     "manifest.sha256` checks the files alone. Exit 1 when something differs.\n",
+     "manifest.sha256` checks the files alone. Exit 1 when something differs. No difference\n"
+     "means that nothing was changed since the copy was written, or sealed, unless all of it\n"
+     "was written anew; it does not mean that the figures are true.\n",
      COMMAND_PROVE, 1, 1},
     {"fields", "[--schema]", "every key of a job file",
      "Each key with its unit, choices and an example, or a JSON Schema for editors.\n",

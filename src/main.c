@@ -489,7 +489,7 @@ static int command_prove(struct session *session)
     else if (proof.chain_checked)
         printf("sealed, chain of %u checked\n", proof.chain_lines);
     else
-        puts("sealed, seals.txt not at hand");
+        puts("sealed, chain not checked: seals.txt not at hand");
     return proof.count ? EXIT_NO : EXIT_DONE;
 }
 
