@@ -1,10 +1,14 @@
 #!/usr/bin/env python3
 """recompute.py FINDINGS.jsonl OUTPUT: shares, drift, recall and call-backs computed anew from the output of
-assess --json and from the job files' own words, compared with the CSV files beside statistics.html. Shares no
-code with the program: Student's t by integrating its density, Wilson's interval by solving its equation."""
+assess --json and from the job files' own words, compared with the CSV files beside statistics.html, and with
+the tables of the page itself. Shares no code with the program: Student's t by integrating its density, Wilson's interval by solving its equation."""
 import csv
+import datetime
+import html
 import json
 import math
+import re
+import statistics
 import sys
 
 findings = [json.loads(line) for line in open(sys.argv[1])]
@@ -125,6 +129,44 @@ for row in rows:
 for key in groups:
     if key not in seen:
         wrong.append("group %s is missing in statistics.csv" % (key,))
+# The page: the same rows, in per cent to a tenth.
+with open(output + "/statistics.html", encoding="utf-8") as file:
+    page = file.read()
+
+
+def page_rows(name):
+    """The cells of each row of a table of the page, as text."""
+    table = re.search(r'id="table_%s">(.*?)</table>' % name, page, re.S)
+    for line in re.findall(r"<tr>(<th scope=\"row\".*?)</tr>", table.group(1) if table else "", re.S):
+        yield [html.unescape(re.sub(r"<[^>]*>", "", cell)).replace("\u2009", "")
+               for cell in re.findall(r"<t[hd][^>]*>(.*?)</t[hd]>", line, re.S)]
+
+
+for grouping in ("type", "place", "decade", "maker"):
+    shown = {cells[0].lower(): [float(figure) for cell in cells[1:] for figure in re.findall(r"[\d.]+", cell)]
+             for cells in page_rows(grouping)}
+    for row in rows:
+        if row["grouping"] != grouping or not row["label"]:
+            continue
+        figures = [float(row[name]) for name in ("failed", "read", "sets")]
+        if row["share"]:
+            figures += [100 * float(row[name]) for name in ("share", "low", "high")]
+        figures.append(float(row["unread"]))
+        if row["share"] and float(row["unread"]):
+            figures += [100 * float(row[name]) for name in ("share_if_unread_good", "share_if_unread_failed")]
+        figures.append(float(row["not judged"]))
+        got = shown.pop(row["label"].lower(), None)
+        if got is None or len(got) != len(figures):
+            wrong.append("statistics.html: %s %s: %s, not %s" % (grouping, row["label"], got, figures))
+            continue
+        for a, b in zip(got, figures):
+            compared += 1
+            if abs(a - b) > 0.0501:
+                wrong.append("statistics.html: %s %s: %s, not %s" % (grouping, row["label"], a, b))
+    if shown:
+        wrong.append("statistics.html: the table by %s has rows that statistics.csv has not: %s" % (grouping, list(shown)))
+if not any(float(row["unread"]) for row in rows):
+    wrong.append("no part was replaced unread: the shares with and without them are not told apart")
 if intervals < 10:
     wrong.append("only %d groups have an interval: too few to check" % intervals)
 
@@ -132,6 +174,7 @@ if intervals < 10:
 by_number = {job["job"]: job for job in findings}
 again = {(row["job"], row["ref"]): row for row in csv.DictReader(open(output + "/revisits.csv"))}
 revisits = 0
+drifts = {}
 for job in findings:
     if not job["continues"]:
         continue
@@ -156,8 +199,30 @@ for job in findings:
         factor = None if bound else b["current_a"] / a["current_a"]
         close(float(row["leakage_factor"]) if row["leakage_factor"] else None, factor,
               "%s %s leakage factor" % (job["job"], part["ref"]), 1e-3)
+        away = datetime.date.fromisoformat(job["received"]) - datetime.date.fromisoformat(
+            by_number[job["continues"]]["returned"])
+        close(float(row["years"]), away.days / 365.25, "%s %s years" % (job["job"], part["ref"]), 2e-3)
+        drift = drifts.setdefault(part["type"], {"parts": 0, "judged": 0, "failed": 0, "a year": []})
+        drift["parts"] += 1
+        drift["judged"] += part["outcome_found"] != "not judged"
+        drift["failed"] += part["outcome_found"] == "fail"
+        if factor:
+            drift["a year"].append(factor ** (365.25 / away.days))
         if row["outcome"] != part["outcome_found"]:
             wrong.append("%s %s: outcome %s" % (job["job"], part["ref"], row["outcome"]))
+# The page's table of them: counts, and the leakage's growth in a year, median and middle half.
+shown = {cells[0]: cells[1:] for cells in page_rows("drift")}
+for label, drift in drifts.items():
+    cells = shown.get(label, [""] * 4)
+    figures = [float(figure) for cell in cells[:4] for figure in re.findall(r"[\d.]+", cell)]
+    expected = [drift["parts"], drift["judged"], drift["failed"]]
+    if drift["a year"]:
+        low, middle, high = (statistics.quantiles(drift["a year"], n=4, method="inclusive")
+                             if len(drift["a year"]) > 1 else drift["a year"] * 3)
+        expected += [middle, low, high]
+    compared += len(expected)
+    if len(figures) != len(expected) or any(abs(a - b) > 0.0051 + 0.001 * b for a, b in zip(figures, expected)):
+        wrong.append("statistics.html: %s met again: %s, not %s" % (label, figures, expected))
 if revisits < 10:
     wrong.append("only %d parts met again: too few to check" % revisits)
 
