@@ -147,6 +147,24 @@ there out/jobs/good/client/good.pdf
 tells 'archive/zero.yaml: error: '
 tells 'archive/folder.yaml: error: '
 
+# ---- what the bench wrote down amiss or left out is told and not judged; the rest of the record is made
+rm -rf archive out
+archive_of archive
+sed 's/^received.*/&\nreturned: 2031-03-03/' "$root/tests/golden/assessment/bench.yaml" >archive/bench.yaml
+sed 's/^job: .*/job: order/; s/30 s 2 mA/30 s 0.9 mA/' archive/bench.yaml >archive/order.yaml
+expect 0 "$program" publish archive -o out
+reasons() { # JOB REASON-OF-THE-LOG
+    for file in shop.md "client/$1.md" shop.html "sale/$1.html"; do
+        for words in "$2" 'not judged: the job does not say: frequency' 'not judged: the job does not say: meter' \
+            'ot judged: no table has the colours white pink red gold'; do
+            grep -q -i "$words" "out/jobs/$1/$file" || say_failed "$1: $file does not say '$words'"
+        done
+    done
+    there "out/jobs/$1/client/$1.pdf"
+}
+reasons bench 'Not judged: its log holds a current that the limiter cannot pass'
+reasons order 'Not judged: its log goes back in time'
+
 # ---- a test above the marked volts is a warning that the record prints
 rm -rf archive out
 archive_of archive good
