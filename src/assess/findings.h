@@ -206,6 +206,9 @@ struct capacitor_findings {
     double sheet_voltage_v, sheet_soak_s, sheet_limit_a, sheet_limit_ohm, sheet_series_max_ohm;
     int sheet_instrument; /* index: what tells the limit, else the one for leakage; -1: none named
                            */
+    /* why the sheet gives no limit, read or not (WHY_NONE: it does), and what the job leaves out */
+    enum reason sheet_why;
+    const char *sheet_missing;
     bool sheet_proves_fail_only; /* the volts stay so far below service that no reading passes */
     bool sheet_not_with_this_meter;
     /* where it is not: volts at which this meter would do, within the marked (NaN: none would), and

@@ -147,6 +147,17 @@ static void find_limit(const struct assessment *assessment, size_t index, struct
         plan->service_v = part->part->marked.rated.value;
 }
 
+/* A part that was not read has that as its reason; the sheet asks for more before it is. */
+static void say_why_none(struct assessment *assessment, size_t index, const struct plan *plan)
+{
+    struct capacitor_findings *part = &assessment->capacitors[index];
+    const struct place_case *place = &assessment->work[index].place;
+    if (!isnan(plan->limit_a) || part->limit_none)
+        return;
+    part->sheet_why = place->why;
+    part->sheet_missing = place->why == WHY_MISSING_FACT ? place->missing : NULL;
+}
+
 /* What would do where this meter does not: volts that the part bears, or a finer meter. */
 static void say_what_would_do(const struct plan *plan, struct capacitor_findings *part)
 {
@@ -180,6 +191,8 @@ void sheet_plan(struct assessment *assessment, size_t index)
     part->sheet_voltage_v = part->sheet_soak_s = NAN;
     part->sheet_limit_a = part->sheet_limit_ohm = part->sheet_series_max_ohm = NAN;
     part->sheet_volts_needed_v = part->sheet_uncertainty_max_a = NAN;
+    part->sheet_why = WHY_NONE;
+    part->sheet_missing = NULL;
     part->sheet_instrument = leakage_instrument(assessment->job);
     if (part->no_reading_passes)
         return;
@@ -189,6 +202,7 @@ void sheet_plan(struct assessment *assessment, size_t index)
                         .most_v = rated->set ? rated->value : part->service_v,
                         .electrolytic = dielectric_is_electrolytic(part->part->type)};
     find_limit(assessment, index, &plan);
+    say_why_none(assessment, index, &plan);
     part->sheet_instrument = better_instrument(plan, part->sheet_instrument);
     plan.instrument = instrument_of(assessment->job, part->sheet_instrument);
     double volts_v = test_volts(&plan);

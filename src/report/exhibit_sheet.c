@@ -51,6 +51,19 @@ static void set_test(const struct composition *composition, struct cell *cells,
         figures_plain(composition, ohm, 1e6, in_kiloohms ? 3 : decimals_for(ohm, 1e6, 2));
 }
 
+/* "No limit yet: the job does not say: feed." */
+static const char *no_limit_text(const struct composition *composition,
+                                 const struct capacitor_findings *part)
+{
+    const struct phrasing *say = &composition->say;
+    struct capacitor_findings asked = *part;
+    asked.missing = part->sheet_missing;
+    const char *why =
+        phrase_of(say, arena_print(say->arena, "why.%s", reason_text(part->sheet_why)),
+                  part_values(say, composition->job, &asked));
+    return phrase(say, "sheet.no_limit", "why", why, NULL);
+}
+
 static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
                             const struct capacitor_findings *part)
 {
@@ -61,8 +74,8 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
         return;
     if (part->sheet_not_with_this_meter)
         table_note(builder, cell, phrase_of(say, "sheet.not_with_this_meter", values));
-    else if (part->missing)
-        table_note(builder, cell, phrase_of(say, "sheet.missing_fact", values));
+    else if (part->sheet_why != WHY_NONE)
+        table_note(builder, cell, no_limit_text(composition, part));
     else if (isnan(part->sheet_voltage_v) && part->part->marked.rated.set)
         table_note(builder, cell,
                    phrase(say, "sheet.no_volts", "rated",
@@ -76,8 +89,6 @@ static void add_sheet_notes(struct table_builder *builder, struct cell *cell,
         table_note(builder, cell,
                    phrase(say, "sheet.by_instrument", "instrument",
                           composition->job->instruments[part->sheet_instrument].name, NULL));
-    if (part->why == WHY_OPEN_RESISTOR)
-        table_note(builder, cell, phrase_of(say, "sheet.open_resistor", values));
     if (isfinite(part->sheet_series_max_ohm))
         table_note(builder, cell,
                    phrase(say, "sheet.series_max", "ohm",

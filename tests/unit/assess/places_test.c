@@ -627,6 +627,9 @@ static void test_missing_facts(void **state)
     assert_int_equal(bench_part(&bench, "C1")->why, WHY_NO_READING);
     assert_int_equal(bench_part(&bench, "C1")->advice, ADVICE_MEASURE_AGAIN);
     assert_true(isnan(bench_part(&bench, "C2")->limit_a));
+    /* The sheet comes before any reading and names what a limit wants. */
+    assert_int_equal(bench_part(&bench, "C2")->sheet_why, WHY_MISSING_FACT);
+    assert_non_null(bench_part(&bench, "C2")->sheet_missing);
     assert_string_equal(bench.findings->stages[0].phases[PHASE_FOUND].missing, "supply");
     bench_release(&bench);
 }
