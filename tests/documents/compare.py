@@ -304,6 +304,24 @@ def check_sale(folder, owner):
                         wrong(f"{path} holds '{word}'")
 
 
+def judged(node):
+    """Every figure of the findings that was held against a limit."""
+    if isinstance(node, dict) and "source" in node and node.get("outcome", "not judged") != "not judged":
+        yield node
+    for below in node.values() if isinstance(node, dict) else node if isinstance(node, list) else ():
+        yield from judged(below)
+
+
+def check_sources(job, found):
+    """Each names the source of its limit."""
+    figures_judged = list(judged(found))
+    if len(figures_judged) < 20:
+        wrong(f"{job}: only {len(figures_judged)} figures are judged: nothing is looked at")
+    for figure in figures_judged:
+        if figure["source"] in (None, "", "none"):
+            wrong(f"{job}: judged without a source: {figure}")
+
+
 counts = read_counts(counts_file)
 compare_itself(os.path.join(site, "jobs", "2031-014", "client", "2031-014"))
 records = 0
@@ -312,6 +330,7 @@ for line in open(findings_file, encoding="utf-8"):
     job = found["job"]
     folder = os.path.join(site, "jobs", job)
     check_counts(job, found)
+    check_sources(job, found)
     stems = [os.path.join(folder, "shop")]
     for copy in ("client", "sale"):
         if os.path.isdir(os.path.join(folder, copy)):
