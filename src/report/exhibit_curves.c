@@ -117,9 +117,11 @@ static const char *fit_sentence(const struct composition *composition,
     const struct phrasing *say = &composition->say;
     if (absorption->status != ABSORPTION_RESOLVED)
         return phrase(say, "soak.not_resolved", NULL);
-    return phrase(say, "soak.resolved", "steady",
-                  text_micro(composition->arena, absorption->steady_a, 2), "error",
-                  text_micro(composition->arena, 2 * absorption->steady_error_a, 1), NULL);
+    double error_a = 2 * absorption->steady_error_a;
+    struct figures steady = figures_scaled(composition->arena, absorption->steady_a, 1e-6, "µA",
+                                           decimals_for(error_a, 1e-6, 1));
+    return phrase(say, "soak.resolved", "steady", figures_text(composition->arena, &steady),
+                  "error", text_micro(composition->arena, error_a, 1), NULL);
 }
 
 static void place_soak(struct composition *composition, size_t index)

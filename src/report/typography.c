@@ -16,13 +16,13 @@ static bool is_letter(char byte)
     return (byte >= 'a' && byte <= 'z') || (byte >= 'A' && byte <= 'Z') || (byte & 0x80);
 }
 
-/* Length of the unit of measure that text begins with; 0: none, or a longer word. */
+/* Length of the unit or root sign that text begins with; 0: none, or a longer word. */
 static size_t unit_length(const char *text)
 {
     static const char *const units[] = {
         "%",  "A",  "mA", "uA",  "µA", "V",    "mV",   "kV", "W",   "mW",  "ohm", "Ω",  "kΩ", "MΩ",
         "GΩ", "pF", "nF", "uF",  "µF", "H",    "mH",   "Hz", "kHz", "MHz", "s",   "ms", "m",  "min",
-        "h",  "mm", "cm", "c/s", "dB", "kc/s", "Mc/s", "K",  "C",   "°C",  "uV",  "µV",
+        "h",  "mm", "cm", "c/s", "dB", "kc/s", "Mc/s", "K",  "C",   "°C",  "uV",  "µV", "√",
     };
     for (size_t i = 0; i < sizeof units / sizeof *units; i++) {
         size_t length = strlen(units[i]);
