@@ -27,7 +27,7 @@ static size_t unit_length(const char *text)
     for (size_t i = 0; i < sizeof units / sizeof *units; i++) {
         size_t length = strlen(units[i]);
         if (strncmp(text, units[i], length) == 0 && !is_letter(text[length]) &&
-            !is_figure(text[length]) && text[length] != '/')
+            !is_figure(text[length]))
             return length;
     }
     return 0;

@@ -14,7 +14,7 @@ static void signs(void **state)
         {"C4 has gone from 0.12 uA to 0.44uA", "C4 has gone from 0.12" NB "µA to 0.44µA"},
         {"13.7 V at its cathode, 38 C", "13.7" NB "V at its cathode, 38" NB "C"},
         {"insulation 2 MΩ, 500 V, 5 %", "insulation 2" NB "MΩ, 500" NB "V, 5" NB "%"},
-        {"12 W/(m² K)", "12 W/(m² K)"},
+        {"12 W/(m² K)", "12" NB "W/(m² K)"},
         {"75 µA (3 √(CV))", "75" NB "µA (3" NB "√(CV))"},
     };
     struct arena arena = {0};
