@@ -135,7 +135,11 @@ blind: all
 	python3 tests/oracle/blind/blind.py $(BUILD)/gridleak $(BUILD)/oracle/blind $(SEED) $(COUNT)
 
 lint:
-	LINT=all tests/lint/run.sh
+	tests/lint/run.sh
+
+# The same with the static analyser as deep as it goes.
+analyse:
+	LINT=deep tests/lint/run.sh
 
 # By time instead of a count, and more calls than the sample, of make check.
 fuzz:
@@ -174,4 +178,4 @@ clean:
 	rm -rf $(BUILD)
 
 -include $(shell find $(BUILD)/src -name '*.d' 2>/dev/null)
-.PHONY: fuzzers oracle blind all man schema unit packages check-packages demo check lint fuzz fault check-memory coverage golden-update format install uninstall clean
+.PHONY: fuzzers oracle blind all man schema unit packages check-packages demo check lint analyse fuzz fault check-memory coverage golden-update format install uninstall clean

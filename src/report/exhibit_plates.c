@@ -56,11 +56,10 @@ static bool is_second(const struct composition *composition, size_t index)
     return false;
 }
 
-/* What the pair shows and when it was taken. */
-static const char *caption(const struct composition *composition, size_t first, int second)
+/* What the pair shows and when it was taken; other NULL: it stands alone. */
+static const char *caption(const struct composition *composition, const struct photo *photo,
+                           const struct photo *other)
 {
-    const struct photo *photo = &composition->job->photos[first];
-    const struct photo *other = second == NOT_LISTED ? NULL : &composition->job->photos[second];
     const char *dates[] = {date_text(&photo->taken), other ? date_text(&other->taken) : NULL};
     const char *taken =
         text_join(composition->arena, phrase(&composition->say, "plate.and", NULL), dates, 2);
@@ -87,7 +86,9 @@ void exhibit_plates(struct composition *composition, size_t index)
         add_picture(composition, &exhibit->plate, swapped ? (size_t)partner : i, partner >= 0);
         if (partner >= 0)
             add_picture(composition, &exhibit->plate, swapped ? i : (size_t)partner, true);
-        exhibit->plate.caption = caption(composition, i, partner);
+        const struct photo *photos = composition->job->photos;
+        exhibit->plate.caption =
+            caption(composition, &photos[i], partner == NOT_LISTED ? NULL : &photos[partner]);
         exhibit->number = exhibit_number(composition, NUMBERED_PLATE);
         exhibit_place(composition, exhibit);
     }
