@@ -255,6 +255,11 @@ const char *quantity_hint(struct arena *arena, enum quantity_status status, cons
     case QUANTITY_UNREADABLE:
         return NULL;
     case QUANTITY_NO_UNIT:
+        if (form->unit == UNIT_RESISTANCE) { /* the two that the trade writes beside each other */
+            cut = cut_number(text);
+            return arena_print(arena, "write %.*s ohm or %.*sk", (int)(cut.rest - cut.number),
+                               cut.number, (int)(cut.rest - cut.number), cut.number);
+        }
         return form->unit == UNIT_COUNT
                    ? NULL
                    : arena_print(arena, "add the unit, as in %s", unit_example(form->unit));

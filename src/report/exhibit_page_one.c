@@ -245,7 +245,7 @@ static void add_lines(struct composition *composition, struct headline *headline
     if (total->restuffed)
         add_line(headline, STROKE_SHELL,
                  phrase(say, "headline.restuffed", "n", number_text(composition, total->restuffed),
-                        NULL));
+                        "one", total->restuffed == 1 ? "1" : NULL, NULL));
     if (total->removed)
         add_line(headline, STROKE_REMOVED,
                  phrase(say, "headline.removed", "n", number_text(composition, total->removed),
